@@ -1,0 +1,156 @@
+/** Answers to questions: a verdict of a closed list, what it rests on, and what was tried. */
+import type { Structure } from "../carriers/structure.ts";
+import type { Evidence } from "../evidence/format.ts";
+import type { EndReason } from "../logic/meter.ts";
+import type { Theory } from "../logic/theory.ts";
+
+/** `derive` and claims. */
+export type ClaimVerdict = "holds" | "fails" | "open";
+export type FiniteVerdict =
+  | "finite"
+  | "infinite-only"
+  | "inconsistent"
+  | "no-finite-model"
+  | "consistent"
+  | "open";
+export type CompareVerdict =
+  | "equivalent"
+  | "stronger"
+  | "weaker"
+  | "incomparable"
+  | "at-least-as-strong"
+  | "at-most-as-strong"
+  | "open";
+export type IndependenceVerdict = "independent" | "redundant" | "open";
+export type DualVerdict = "equivalent" | "different" | "open";
+export type Verdict = ClaimVerdict | FiniteVerdict | CompareVerdict | IndependenceVerdict | DualVerdict;
+
+/** How a search went. The sizes it has finished are certain; where it ended, nothing is said beyond them. */
+export interface Search {
+  /** What was looked for, for people: "a countermodel", "a model". */
+  readonly sought: string;
+  /** There is none on 1, 2, …, this many points; 0 when not even one point was finished. */
+  readonly noneUpTo: number;
+  /** The size at which one was found; null when none was. */
+  readonly foundAt: number | null;
+  /** Why the search ended before the last size; null when it found one or finished all sizes asked for. */
+  readonly ended: EndReason | null;
+  /** The size that was being searched when the work ended; null when it did not end early. */
+  readonly endedAt: number | null;
+}
+
+interface AnswerBase {
+  /** Steps spent on the question. */
+  readonly steps: number;
+  /** Accepted by the checker; null when the verdict is `open` or nothing was established. */
+  readonly evidence: Evidence | null;
+}
+
+/** `T ⊨ φ` and the other claims. */
+export interface ClaimAnswer extends AnswerBase {
+  readonly question: "claim";
+  readonly verdict: ClaimVerdict;
+  /** For people: what the structures below are, in the order found. */
+  readonly structures: readonly ShownStructure[];
+  readonly searches: readonly Search[];
+  /** For `independent`: each axiom's own verdict; else null. */
+  readonly axioms: readonly AxiomAnswer[] | null;
+}
+
+/** A structure that an answer rests on. */
+export interface ShownStructure {
+  /** What it shows, for people, as a noun phrase: "countermodel", "model of Order in which irr fails". */
+  readonly role: string;
+  readonly structure: Structure;
+}
+
+export interface FiniteAnswer extends AnswerBase {
+  readonly question: "check-finite";
+  readonly verdict: FiniteVerdict;
+  /** The size of a smallest model; null while smaller sizes are unsettled or no finite model is known. */
+  readonly leastSize: number | null;
+  /** The size of the model that is shown; null when there is none. */
+  readonly modelSize: number | null;
+  /** There is no model on 1, …, this many points. */
+  readonly noModelUpTo: number;
+  readonly model: Structure | null;
+  readonly search: Search;
+}
+
+export interface ModelsAnswer extends AnswerBase {
+  readonly question: "models";
+  readonly verdict: null;
+  readonly size: number;
+  /** Pairwise not isomorphic, in the order found. */
+  readonly models: readonly Structure[];
+  /** Whether these are all, up to isomorphism. */
+  readonly complete: boolean;
+  readonly ended: EndReason | null;
+}
+
+export interface AxiomAnswer {
+  readonly label: string;
+  readonly verdict: IndependenceVerdict;
+  /** A structure where all axioms but this one hold; null unless independent. */
+  readonly witness: Structure | null;
+  readonly search: Search;
+}
+
+export interface IndependenceAnswer extends AnswerBase {
+  readonly question: "independence";
+  readonly verdict: null;
+  readonly axioms: readonly AxiomAnswer[];
+}
+
+/** One pair of a comparison, by the numbers of the two theories in the list asked about. */
+export interface PairAnswer {
+  readonly left: number;
+  readonly right: number;
+  readonly verdict: CompareVerdict;
+  /** A model of the left theory that is none of the right one; null when none is known. */
+  readonly leftOnly: Structure | null;
+  /** A model of the right theory that is none of the left one; null when none is known. */
+  readonly rightOnly: Structure | null;
+  /** False when a common model is known, true when it is derived that there is none, else null. */
+  readonly jointlyInconsistent: boolean | null;
+  readonly common: Structure | null;
+}
+
+export interface CompareAnswer extends AnswerBase {
+  readonly question: "compare";
+  readonly verdict: CompareVerdict | null;
+  readonly names: readonly string[];
+  readonly pairs: readonly PairAnswer[];
+  /** Names of theories shown to be equivalent, together; every name occurs once. */
+  readonly classes: readonly (readonly string[])[];
+}
+
+export interface DualAnswer extends AnswerBase {
+  readonly question: "dualise";
+  readonly verdict: null;
+  /** The theory, its converse, its complement, and the complement of its converse, with their names. */
+  readonly duals: readonly { readonly name: string; readonly theory: Theory }[];
+  readonly pairs: readonly {
+    readonly left: number;
+    readonly right: number;
+    readonly verdict: DualVerdict;
+    /** A model of one and not the other, and which of the two it is a model of; null when none is known. */
+    readonly witness: { readonly structure: Structure; readonly modelOf: number } | null;
+  }[];
+}
+
+export type Answer =
+  | ClaimAnswer
+  | FiniteAnswer
+  | ModelsAnswer
+  | IndependenceAnswer
+  | CompareAnswer
+  | DualAnswer;
+
+/** Told by a question while it works, for progress displays. Nothing of an answer depends on it. */
+export interface Progress {
+  /** For people: "models on 7 points". */
+  readonly doing: string;
+  readonly steps: number;
+  readonly limit: number;
+}
