@@ -1,0 +1,210 @@
+import { HEADER, LEVELS_WORD } from "./arena.ts";
+import { type Core, literalOfReason, NONE } from "./core.ts";
+
+/*
+ * ┌──────────────────────────────────────────────────────────────────────────────────────────────────────────────┐
+ * │ analyse: learns a clause from a conflict, by resolving up to the first unique implication point of the current │
+ * │ level (Marques-Silva & Sakallah 1999; Zhang, Madigan, Moskewicz & Malik 2001), without the literals that the   │
+ * │ others imply (Sörensson & Biere 2009).                                                                         │
+ * │                                                                                                                │
+ * │ Before: all literals of the conflict are false, at least one of them since the current level, which is above   │
+ * │ 0 and began with a decision.                                                                                   │
+ * │ After: `clause` holds the learned clause, which follows from the kept clauses; its first literal is the only   │
+ * │ one of the current level, its second is of the level that is returned: below that level there is nothing the   │
+ * │ clause would add. `clauseLevels` is set; activities have been raised; nothing has been taken back.             │
+ * └──────────────────────────────────────────────────────────────────────────────────────────────────────────────┘
+ */
+export function analyse(core: Core, conflict: number): number {
+  const { seen, levels, reasons, trail, clause, marked, level } = core;
+  const { words } = core.arena;
+  let markedSize = 0;
+  let size = 1;
+  let open = 0;
+  let index = core.trailSize - 1;
+  let reason = conflict;
+  // The literal that the reason implies; the conflict implies none.
+  let implied = -1;
+
+  for (;;) {
+    if (reason >= 0) {
+      if (words[reason + LEVELS_WORD] !== 0) {
+        core.bumpClause(reason);
+        renewLevels(core, reason);
+      }
+      const from = reason + HEADER + (implied < 0 ? 0 : 1);
+      const stop = reason + HEADER + words[reason]!;
+      for (let at = from; at < stop; at += 1) {
+        const literal = words[at]!;
+        const variable = literal >> 1;
+        if (seen[variable] !== 0 || levels[variable] === 0) continue;
+        seen[variable] = 1;
+        marked[markedSize++] = variable;
+        core.bump(variable);
+        if (levels[variable]! >= level) open += 1;
+        else clause[size++] = literal;
+      }
+    } else {
+      let literal = literalOfReason(reason);
+      for (let times = implied < 0 ? 2 : 1; times > 0; times -= 1, literal = core.conflictLiteral) {
+        const variable = literal >> 1;
+        if (seen[variable] !== 0 || levels[variable] === 0) continue;
+        seen[variable] = 1;
+        marked[markedSize++] = variable;
+        core.bump(variable);
+        if (levels[variable]! >= level) open += 1;
+        else clause[size++] = literal;
+      }
+    }
+    while (seen[trail[index]! >> 1] === 0) index -= 1;
+    implied = trail[index]!;
+    index -= 1;
+    open -= 1;
+    if (open === 0) break;
+    reason = reasons[implied >> 1]!;
+  }
+  clause[0] = implied ^ 1;
+  core.clauseSize = size;
+  markedSize = minimise(core, markedSize);
+  for (let at = 0; at < markedSize; at += 1) seen[marked[at]!] = 0;
+  core.clauseLevels = countLevels(core, clause, 0, core.clauseSize);
+  return arrangeSecond(core);
+}
+
+/** Takes out of `clause` the literals that the others imply, by the reasons of their level and lower ones. */
+function minimise(core: Core, markedBefore: number): number {
+  const { clause, levels, reasons } = core;
+  let mask = 0;
+  for (let at = 1; at < core.clauseSize; at += 1) mask |= 1 << (levels[clause[at]! >> 1]! & 31);
+  let markedSize = markedBefore;
+  let kept = 1;
+  for (let at = 1; at < core.clauseSize; at += 1) {
+    const literal = clause[at]!;
+    if (reasons[literal >> 1] !== NONE) {
+      const after = redundant(core, literal, mask, markedSize);
+      if (after >= 0) {
+        markedSize = after;
+        continue;
+      }
+      markedSize = ~after;
+    }
+    clause[kept++] = literal;
+  }
+  core.clauseSize = kept;
+  return markedSize;
+}
+
+/** Marks of {@link Core.seen} beside 1, which is: in the learned clause, or implied by it. */
+const NOT_IMPLIED = 2;
+
+/**
+ * Whether a literal is implied by others of the learned clause. `mask` has a bit for every level in it, modulo 32: a
+ * literal of another level cannot be implied. Returns the number of marked variables; its complement if it is not.
+ */
+function redundant(core: Core, literal: number, mask: number, markedBefore: number): number {
+  const { seen, levels, reasons, marked, stack } = core;
+  const { words } = core.arena;
+  let markedSize = markedBefore;
+  let depth = 1;
+  stack[0] = literal;
+  while (depth > 0) {
+    depth -= 1;
+    const reason = reasons[stack[depth]! >> 1]!;
+    let at = 0;
+    let stop = 1;
+    if (reason >= 0) {
+      at = reason + HEADER + 1;
+      stop = reason + HEADER + words[reason]!;
+    }
+    for (; at < stop; at += 1) {
+      const other = reason >= 0 ? words[at]! : literalOfReason(reason);
+      const variable = other >> 1;
+      const mark = seen[variable]!;
+      if (mark === 1 || levels[variable] === 0) continue;
+      if (
+        mark === NOT_IMPLIED ||
+        reasons[variable] === NONE ||
+        (mask & (1 << (levels[variable]! & 31))) === 0
+      ) {
+        // What was marked on the way is not known to be implied.
+        let kept = markedBefore;
+        for (let index = markedBefore; index < markedSize; index += 1) seen[marked[index]!] = 0;
+        if (mark === 0) {
+          seen[variable] = NOT_IMPLIED;
+          marked[kept++] = variable;
+        }
+        return ~kept;
+      }
+      seen[variable] = 1;
+      marked[markedSize++] = variable;
+      stack[depth++] = other;
+    }
+  }
+  return markedSize;
+}
+
+/** How many decision levels the literals span (the "literal block distance" of Audemard & Simon 2009). */
+function countLevels(core: Core, literals: Int32Array, from: number, length: number): number {
+  const { levels, stamps } = core;
+  core.stamp += 1;
+  const { stamp } = core;
+  let count = 0;
+  for (let at = from; at < from + length; at += 1) {
+    const level = levels[literals[at]! >> 1]!;
+    if (stamps[level] === stamp) continue;
+    stamps[level] = stamp;
+    count += 1;
+  }
+  return count;
+}
+
+/** Notes that a learned clause, all of whose literals are assigned, spans fewer levels than it did. */
+function renewLevels(core: Core, clause: number): void {
+  const { words } = core.arena;
+  const before = words[clause + LEVELS_WORD]!;
+  if (before <= 2) return;
+  const levels = countLevels(core, words, clause + HEADER, words[clause]!);
+  if (levels < before) words[clause + LEVELS_WORD] = levels;
+}
+
+/** Puts a literal of the highest level among all but the first second; returns its level, 0 if there is none. */
+function arrangeSecond(core: Core): number {
+  const { clause, clauseSize, levels } = core;
+  if (clauseSize === 1) return 0;
+  let highest = 1;
+  for (let at = 2; at < clauseSize; at += 1)
+    if (levels[clause[at]! >> 1]! > levels[clause[highest]! >> 1]!) highest = at;
+  const literal = clause[highest]!;
+  clause[highest] = clause[1]!;
+  clause[1] = literal;
+  return levels[literal >> 1]!;
+}
+
+/**
+ * The assumptions among the decisions that made a literal false, and the literal's own negation: together they cannot
+ * hold. Packed.
+ */
+export function blame(core: Core, assumption: number): number[] {
+  const { seen, levels, reasons, trail } = core;
+  const { words } = core.arena;
+  const found = [assumption];
+  if (levels[assumption >> 1] === 0) return found;
+  seen[assumption >> 1] = 1;
+  for (let index = core.trailSize - 1; index >= core.limits[1]!; index -= 1) {
+    const literal = trail[index]!;
+    const variable = literal >> 1;
+    if (seen[variable] === 0) continue;
+    seen[variable] = 0;
+    const reason = reasons[variable]!;
+    if (reason === NONE) found.push(literal);
+    else if (reason < 0) markAbove(core, literalOfReason(reason));
+    else
+      for (let at = reason + HEADER + 1; at < reason + HEADER + words[reason]!; at += 1)
+        markAbove(core, words[at]!);
+  }
+  seen[assumption >> 1] = 0;
+  return found;
+}
+
+function markAbove(core: Core, literal: number): void {
+  if (core.levels[literal >> 1]! > 0) core.seen[literal >> 1] = 1;
+}
