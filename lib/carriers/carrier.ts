@@ -49,8 +49,8 @@ export interface Carrier<Configuration = unknown> {
   key(configuration: Configuration): string | number;
 
   /**
-   * Permutations of the carrier under which every structure goes to an isomorphic one, for breaking symmetry. Not
-   * all need be listed.
+   * Permutations of the carrier, each its own inverse, under which every structure goes to an isomorphic one, for
+   * breaking symmetry. Not all need be listed.
    */
   symmetries(): readonly Symmetry[];
 }

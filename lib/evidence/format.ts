@@ -8,6 +8,7 @@
  * | `version`   | `1`                                                                                              |
  * | `sentences` | the closed formulas that the question is about, each once; elsewhere they go by their index here |
  * | `question`  | what was asked, expanded: no name of a definition is left in it                                  |
+ * | `digest`    | SHA-256, in hexadecimal, of the JSON text of `[sentences, question]`                             |
  * | `verdict`   | the verdict that the facts below support                                                         |
  * | `facts`     | what was established, each with the structure that shows it                                      |
  *
@@ -16,8 +17,8 @@
  * `["exists", "x", φ]`.
  *
  * A structure is `{carrier, tables}`; `tables` gives for each relation its number of places and the kinds of tuples
- * at which it holds. On the carrier `{"kind": "points", "size": n}` the kind of a tuple of points p₁ … p_k, counted
- * from 1, is the number (p₁ − 1)·n^(k−1) + … + (p_k − 1).
+ * at which it holds, in ascending order. On the carrier `{"kind": "points", "size": n}` the kind of a tuple of
+ * points p₁ … p_k, counted from 1, is the number (p₁ − 1)·n^(k−1) + … + (p_k − 1).
  */
 import type { CarrierDescription } from "../logic/structure-definition.ts";
 
@@ -26,18 +27,22 @@ export const EVIDENCE_VERSION = 1;
 
 export type FormulaRecord = readonly [string, ...(string | FormulaRecord)[]];
 
+export interface TableRecord {
+  readonly places: number;
+  readonly holds: readonly number[];
+}
 export interface StructureRecord {
   readonly carrier: CarrierDescription;
-  readonly tables: {
-    readonly [relation: string]: { readonly places: number; readonly holds: readonly number[] };
-  };
+  /** By the name of the relation, names in ascending order. */
+  readonly tables: Readonly<Record<string, TableRecord>>;
 }
 
-/** A number of a sentence in `sentences`. */
+/** The number of a sentence in `sentences`. */
 export type SentenceIndex = number;
 /** A theory: the numbers of its axioms. */
 export type TheoryRecord = readonly SentenceIndex[];
 
+/** What was asked. `claim` and `conjecture` ask the same; so do `derive` and the claim `T ⊨ φ`. */
 export type QuestionRecord =
   | {
       readonly ask: "entails" | "does-not-entail";
@@ -49,33 +54,35 @@ export type QuestionRecord =
       readonly structure: StructureRecord;
       readonly sentence: SentenceIndex;
     }
-  | {
-      readonly ask:
-        | "consistent"
-        | "infinite-only"
-        | "no-finite-model"
-        | "independent"
-        | "check-finite"
-        | "models";
-      readonly axioms: TheoryRecord;
-    }
-  | { readonly ask: "independence"; readonly axioms: TheoryRecord }
+  | { readonly ask: TheoryQuestion; readonly axioms: TheoryRecord }
   | { readonly ask: "weaker" | "equivalent"; readonly left: TheoryRecord; readonly right: TheoryRecord }
   | { readonly ask: "compare" | "dualise"; readonly theories: readonly TheoryRecord[] };
 
-/** What one structure shows: all of `holds` are true in it; of `fails`, where given, at least one is false. */
+/** Questions about one theory. `models` asks for models of a size, and each fact is one. */
+export const THEORY_QUESTIONS = [
+  "consistent",
+  "infinite-only",
+  "no-finite-model",
+  "independent",
+  "check-finite",
+  "independence",
+  "models",
+] as const;
+export type TheoryQuestion = (typeof THEORY_QUESTIONS)[number];
+
+/** What one structure shows: all of `holds` are true in it, and of `fails`, where given, at least one is false. */
 export interface StructureFact {
   readonly fact: "structure";
   readonly structure: StructureRecord;
   readonly holds: TheoryRecord;
-  /** At least one of these is false in the structure; null when nothing is said to fail. */
+  /** Null when nothing is said to fail. */
   readonly fails: TheoryRecord | null;
 }
 export type Fact = StructureFact;
 
 /**
- * The verdict that the facts support: one word; or for `independence`, `compare` and `dualise` one word for each
- * axiom or pair, pairs in the order (0,1), (0,2), …, (1,2), …; or null where a question has none.
+ * The verdict that the facts support: one word; for `independence`, `compare` and `dualise` one word for each axiom
+ * or pair, pairs in the order (0,1), (0,2), …, (1,2), …; null where a question has no verdict.
  */
 export type VerdictRecord = string | readonly string[] | null;
 
@@ -84,6 +91,7 @@ export interface Evidence {
   readonly version: typeof EVIDENCE_VERSION;
   readonly sentences: readonly FormulaRecord[];
   readonly question: QuestionRecord;
+  readonly digest: string;
   readonly verdict: VerdictRecord;
   readonly facts: readonly Fact[];
 }

@@ -1,0 +1,83 @@
+/**
+ * From circuits to clauses, by definitions in one direction (Plaisted & Greenbaum 1986) or in both (Tseitin 1968).
+ *
+ * One direction is enough to ask whether there is a model and gives fewer clauses. Both directions make every
+ * defined variable a function of the inputs, which counting needs.
+ */
+import { type Circuit, type ClauseSink, FALSE, type Reference, TRUE } from "./circuit.ts";
+
+export class Clausifier {
+  readonly #circuit: Circuit;
+  readonly #sink: ClauseSink;
+  readonly #bothWays: boolean;
+  /** The variable of each input and of each gate that has been defined, by node. */
+  readonly #variables = new Map<number, number>();
+  /** Which directions a gate has been defined in: bit 1 from its variable to it, bit 2 from it to its variable. */
+  readonly #defined = new Map<number, number>();
+
+  constructor(circuit: Circuit, sink: ClauseSink, bothWays = false) {
+    this.#circuit = circuit;
+    this.#sink = sink;
+    this.#bothWays = bothWays;
+  }
+
+  /** The variable of an input, made when it is first asked for. */
+  variableOf(input: Reference): number {
+    let variable = this.#variables.get(input);
+    if (variable === undefined) {
+      variable = this.#sink.newVariable();
+      this.#variables.set(input, variable);
+    }
+    return variable;
+  }
+
+  /** Adds clauses that say that the reference is true. */
+  assert(reference: Reference): void {
+    const waiting: Reference[] = [reference];
+    while (waiting.length > 0) {
+      const next = waiting.pop()!;
+      if (next === TRUE) continue;
+      if (next > 0 && this.#circuit.isGate(next)) {
+        const children = this.#circuit.childrenOf(next);
+        for (let i = children.length - 1; i >= 0; i -= 1) waiting.push(children[i]!);
+      } else this.#clause([], next);
+    }
+  }
+
+  /** Adds the clause `literals ∨ reference`; a disjunction is opened into its parts. */
+  #clause(literals: readonly number[], reference: Reference): void {
+    const clause = [...literals];
+    const open = [reference];
+    while (open.length > 0) {
+      const part = open.pop()!;
+      if (part === FALSE) continue;
+      if (part === TRUE) return;
+      if (part < 0 && this.#circuit.isGate(part)) {
+        const children = this.#circuit.childrenOf(-part);
+        for (let i = children.length - 1; i >= 0; i -= 1) open.push(-children[i]!);
+      } else clause.push(this.#literal(part));
+    }
+    this.#sink.addClause(clause);
+  }
+
+  /** A literal that stands for the reference, defined as far as it needs to be. */
+  #literal(reference: Reference): number {
+    const node = Math.abs(reference);
+    if (!this.#circuit.isGate(node)) return reference > 0 ? this.variableOf(node) : -this.variableOf(node);
+    this.#define(node, this.#bothWays ? 3 : reference > 0 ? 1 : 2);
+    const variable = this.variableOf(node);
+    return reference > 0 ? variable : -variable;
+  }
+
+  #define(gate: number, directions: number): void {
+    const missing = directions & ~(this.#defined.get(gate) ?? 0);
+    if (missing === 0) return;
+    this.#defined.set(gate, (this.#defined.get(gate) ?? 0) | directions);
+    const variable = this.variableOf(gate);
+    // Copied: defining children may move the circuit's storage no more, but recursion must not share a view.
+    const children = [...this.#circuit.childrenOf(gate)];
+    if ((missing & 1) !== 0) for (const child of children) this.#clause([-variable], child);
+    if ((missing & 2) !== 0)
+      this.#sink.addClause([variable, ...children.map((child) => this.#literal(-child))]);
+  }
+}

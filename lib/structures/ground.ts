@@ -1,0 +1,134 @@
+/** Grounding: a sentence over a carrier, unfolded to a circuit over the unknown entries of the tables. */
+import type { Carrier } from "../carriers/carrier.ts";
+import type { Formula, RelationSymbol } from "../logic/formula.ts";
+import type { Meter } from "../logic/meter.ts";
+import { LARGEST_TABLES } from "../logic/structure-definition.ts";
+import { type Circuit, FALSE, type Reference, TRUE } from "./circuit.ts";
+import { enter, type Plan, planSentence } from "./plan.ts";
+
+/** Visits that are counted before the meter hears of them. */
+const METERED_AT_ONCE = 1024;
+
+/** For each relation, the circuit's input for each kind of tuple: `inputs.get(name)[kind]`. */
+export type UnknownTables = ReadonlyMap<string, Int32Array>;
+
+/**
+ * Makes one input for every entry of every table, relations in the order given, kinds in ascending order.
+ * @throws WorkEnded when there would be too many
+ */
+export function unknownTables(
+  carrier: Carrier,
+  relations: readonly RelationSymbol[],
+  circuit: Circuit,
+  meter: Meter,
+): UnknownTables {
+  const entries = relations.reduce((sum, relation) => sum + carrier.kindCount(relation.places), 0);
+  if (entries > LARGEST_TABLES) meter.endForMemory();
+  const tables = new Map<string, Int32Array>();
+  for (const relation of relations) {
+    const inputs = new Int32Array(carrier.kindCount(relation.places));
+    for (let kind = 0; kind < inputs.length; kind += 1) inputs[kind] = circuit.newInput();
+    tables.set(relation.name, inputs);
+  }
+  return tables;
+}
+
+/**
+ * The circuit that is true for exactly the tables in which the sentence holds.
+ * @throws WorkEnded when the meter's budget ends, the user interrupts or memory runs out
+ */
+export function ground(
+  carrier: Carrier,
+  sentence: Formula,
+  tables: UnknownTables,
+  circuit: Circuit,
+  meter: Meter,
+): Reference {
+  const memories = new Map<number, Map<string | number, Reference>>();
+  let unmetered = 0;
+  const result = unfold(planSentence(sentence), carrier.empty);
+  meter.charge(unmetered);
+  return result;
+
+  function unfold(node: Plan, outer: unknown): Reference {
+    unmetered += 1;
+    if (unmetered >= METERED_AT_ONCE) {
+      meter.charge(unmetered);
+      unmetered = 0;
+    }
+    const configuration = enter(carrier, node, outer);
+    if (!node.recurs || node.kind === "atom" || node.kind === "equal" || node.kind === "not")
+      return compute(node, configuration);
+    let memory = memories.get(node.id);
+    if (memory === undefined) {
+      memory = new Map();
+      memories.set(node.id, memory);
+    }
+    const key = carrier.key(configuration);
+    let known = memory.get(key);
+    if (known === undefined) {
+      known = compute(node, configuration);
+      memory.set(key, known);
+    }
+    return known;
+  }
+
+  function compute(node: Plan, configuration: unknown): Reference {
+    switch (node.kind) {
+      case "true":
+        return TRUE;
+      case "false":
+        return FALSE;
+      case "atom":
+        return tables.get(node.relation.name)![carrier.kindOf(configuration, node.args)]!;
+      case "equal":
+        return carrier.same(configuration, node.left, node.right) ? TRUE : FALSE;
+      case "not":
+        return -unfold(node.body, configuration);
+      case "and":
+        return conjunction(node.parts, configuration, 1);
+      case "or":
+        return -conjunction(node.parts, configuration, -1);
+      case "implies": {
+        const first = unfold(node.first, configuration);
+        if (first === FALSE) return TRUE;
+        return circuit.or([-first, unfold(node.second, configuration)]);
+      }
+      case "iff": {
+        const first = unfold(node.first, configuration);
+        const second = unfold(node.second, configuration);
+        return circuit.and([circuit.or([-first, second]), circuit.or([first, -second])]);
+      }
+      case "forall":
+        return quantified(node, configuration, 1);
+      case "exists":
+        return -quantified(node, configuration, -1);
+    }
+  }
+
+  /** The conjunction of the parts, each times the sign. */
+  function conjunction(parts: readonly Plan[], configuration: unknown, sign: 1 | -1): Reference {
+    const references: Reference[] = [];
+    for (const part of parts) {
+      const reference = sign * unfold(part, configuration);
+      if (reference === FALSE) return FALSE;
+      references.push(reference);
+    }
+    return circuit.and(references);
+  }
+
+  /** The conjunction over all extensions of the body, times the sign. */
+  function quantified(
+    node: Plan & { kind: "forall" | "exists" },
+    configuration: unknown,
+    sign: 1 | -1,
+  ): Reference {
+    const references: Reference[] = [];
+    for (const extended of carrier.extensions(configuration, node.toCome)) {
+      const reference = sign * unfold(node.body, extended);
+      if (reference === FALSE) return FALSE;
+      references.push(reference);
+    }
+    return circuit.and(references);
+  }
+}

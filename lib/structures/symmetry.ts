@@ -1,0 +1,60 @@
+/** Breaking symmetry: of all tables that differ by a renaming of elements, keep only small ones. */
+import type { Carrier } from "../carriers/carrier.ts";
+import type { RelationSymbol } from "../logic/formula.ts";
+import type { ClauseSink } from "./circuit.ts";
+
+/** Table positions compared over all symmetries of one search, at most; the rest is cut off. */
+const POSITIONS_BOUND = 60_000;
+
+/** A table entry of an unknown structure: its relation's number of places, its kind, and its variable. */
+interface Entry {
+  readonly relation: number;
+  readonly places: number;
+  readonly kind: number;
+}
+
+/**
+ * Adds clauses that keep, of every set of isomorphic structures on the carrier, at least the one whose table is
+ * least in lexicographic order, false before true (Crawford, Ginsberg, Luks & Roy 1996). One chain of clauses for
+ * each symmetry that the carrier lists; a chain may be cut short, which keeps more structures and loses none.
+ *
+ * @param variableOf the variable of an entry: relation by its number in `relations`, then kind
+ */
+export function breakSymmetry(
+  carrier: Carrier,
+  relations: readonly RelationSymbol[],
+  variableOf: (relation: number, kind: number) => number,
+  sink: ClauseSink,
+): void {
+  const symmetries = carrier.symmetries();
+  if (symmetries.length === 0) return;
+  const entries: Entry[] = [];
+  // Relations with few places first: their entries say most about which elements can be exchanged.
+  const order = relations
+    .map((_, index) => index)
+    .sort((a, b) => relations[a]!.places - relations[b]!.places);
+  for (const relation of order) {
+    const { places } = relations[relation]!;
+    for (let kind = 0; kind < carrier.kindCount(places); kind += 1) entries.push({ relation, places, kind });
+  }
+  const each = Math.max(2 * (carrier.size ?? 1), Math.floor(POSITIONS_BOUND / symmetries.length));
+  for (const symmetry of symmetries) {
+    let equalSoFar: number | null = null;
+    let compared = 0;
+    for (const { relation, places, kind } of entries) {
+      const image = symmetry.image(places, kind);
+      // Where the image comes earlier, an exchange has already made the two entries equal.
+      if (image <= kind) continue;
+      const own = variableOf(relation, kind);
+      const other = variableOf(relation, image);
+      const soFar: readonly number[] = equalSoFar === null ? [] : [-equalSoFar];
+      sink.addClause([...soFar, -own, other]);
+      compared += 1;
+      if (compared >= each) break;
+      const stillEqual = sink.newVariable();
+      sink.addClause([...soFar, -own, stillEqual]);
+      sink.addClause([...soFar, other, stillEqual]);
+      equalSoFar = stillEqual;
+    }
+  }
+}
