@@ -1,6 +1,9 @@
 import type { PointsDescription } from "../logic/structure-definition.ts";
 import type { Carrier, Symmetry } from "./carrier.ts";
 
+/** Points beyond which only neighbours are exchanged to break symmetry. */
+const MANY_POINTS = 40;
+
 /** The points that have been named, each from 0 to n − 1, in the order of naming. */
 export type PointsConfiguration = readonly number[];
 
@@ -51,11 +54,15 @@ export class Points implements Carrier<PointsConfiguration> {
     return key <= Number.MAX_SAFE_INTEGER ? key : configuration.join();
   }
 
-  /** The exchanges of two points: every permutation of the points is made of them. */
+  /**
+   * The exchanges of two points, of which every permutation is made; on many points those of neighbours only, since
+   * the others would cost more than they save.
+   */
   symmetries(): readonly Symmetry[] {
     const found: Symmetry[] = [];
+    const farthest = this.size <= MANY_POINTS ? this.size : 1;
     for (let first = 0; first < this.size; first += 1)
-      for (let second = first + 1; second < this.size; second += 1)
+      for (let second = first + 1; second < Math.min(this.size, first + 1 + farthest); second += 1)
         found.push(new Exchange(this.size, first, second));
     return found;
   }

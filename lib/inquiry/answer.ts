@@ -85,6 +85,8 @@ export interface ModelsAnswer extends AnswerBase {
   readonly models: readonly Structure[];
   /** Whether these are all, up to isomorphism. */
   readonly complete: boolean;
+  /** Whether there are others, which are not shown; false when that is not known. */
+  readonly more: boolean;
   readonly ended: EndReason | null;
 }
 
@@ -123,6 +125,8 @@ export interface CompareAnswer extends AnswerBase {
   readonly pairs: readonly PairAnswer[];
   /** Names of theories shown to be equivalent, together; every name occurs once. */
   readonly classes: readonly (readonly string[])[];
+  /** Whether the user interrupted; pairs after that were not searched. */
+  readonly interrupted: boolean;
 }
 
 export interface DualAnswer extends AnswerBase {
@@ -130,13 +134,18 @@ export interface DualAnswer extends AnswerBase {
   readonly verdict: null;
   /** The theory, its converse, its complement, and the complement of its converse, with their names. */
   readonly duals: readonly { readonly name: string; readonly theory: Theory }[];
-  readonly pairs: readonly {
-    readonly left: number;
-    readonly right: number;
-    readonly verdict: DualVerdict;
-    /** A model of one and not the other, and which of the two it is a model of; null when none is known. */
-    readonly witness: { readonly structure: Structure; readonly modelOf: number } | null;
-  }[];
+  readonly pairs: readonly DualPair[];
+  /** Whether the user interrupted; pairs after that were not searched. */
+  readonly interrupted: boolean;
+}
+
+/** One pair of the four duals, by their numbers. */
+export interface DualPair {
+  readonly left: number;
+  readonly right: number;
+  readonly verdict: DualVerdict;
+  /** A model of one and not the other, and which of the two it is a model of; null when none is known. */
+  readonly witness: { readonly structure: Structure; readonly modelOf: number } | null;
 }
 
 export type Answer =

@@ -4,20 +4,29 @@
  * One direction is enough to ask whether there is a model and gives fewer clauses. Both directions make every
  * defined variable a function of the inputs, which counting needs.
  */
+import type { Meter } from "../logic/meter.ts";
 import { type Circuit, type ClauseSink, FALSE, type Reference, TRUE } from "./circuit.ts";
+
+/** Clauses that are counted before the meter hears of them. */
+const METERED_AT_ONCE = 1024;
 
 export class Clausifier {
   readonly #circuit: Circuit;
   readonly #sink: ClauseSink;
+  readonly #meter: Meter;
   readonly #bothWays: boolean;
+  /** Clauses that the meter has not heard of yet. */
+  #unmetered = 0;
   /** The variable of each input and of each gate that has been defined, by node. */
   readonly #variables = new Map<number, number>();
   /** Which directions a gate has been defined in: bit 1 from its variable to it, bit 2 from it to its variable. */
   readonly #defined = new Map<number, number>();
 
-  constructor(circuit: Circuit, sink: ClauseSink, bothWays = false) {
+  /** @param meter counts a thousandth of a step for each clause */
+  constructor(circuit: Circuit, sink: ClauseSink, meter: Meter, bothWays = false) {
     this.#circuit = circuit;
     this.#sink = sink;
+    this.#meter = meter;
     this.#bothWays = bothWays;
   }
 
@@ -31,7 +40,10 @@ export class Clausifier {
     return variable;
   }
 
-  /** Adds clauses that say that the reference is true. */
+  /**
+   * Adds clauses that say that the reference is true.
+   * @throws WorkEnded when the meter's budget ends or the user interrupts
+   */
   assert(reference: Reference): void {
     const waiting: Reference[] = [reference];
     while (waiting.length > 0) {
@@ -57,7 +69,16 @@ export class Clausifier {
         for (let i = children.length - 1; i >= 0; i -= 1) open.push(-children[i]!);
       } else clause.push(this.#literal(part));
     }
+    this.#add(clause);
+  }
+
+  #add(clause: readonly number[]): void {
     this.#sink.addClause(clause);
+    this.#unmetered += 1;
+    if (this.#unmetered >= METERED_AT_ONCE) {
+      this.#meter.charge(this.#unmetered);
+      this.#unmetered = 0;
+    }
   }
 
   /** A literal that stands for the reference, defined as far as it needs to be. */
@@ -74,7 +95,6 @@ export class Clausifier {
     if (missing === 0) return;
     this.#defined.set(gate, (this.#defined.get(gate) ?? 0) | directions);
     const variable = this.variableOf(gate);
-    // Copied: defining children may move the circuit's storage no more, but recursion must not share a view.
     const children = [...this.#circuit.childrenOf(gate)];
     if ((missing & 1) !== 0) for (const child of children) this.#clause([-variable], child);
     if ((missing & 2) !== 0)

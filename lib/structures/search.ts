@@ -39,7 +39,7 @@ export interface Layout {
 export function layOut(task: SearchTask, sink: ClauseSink, meter: Meter, bothWays = false): Layout {
   const circuit = new Circuit(meter);
   const tables = unknownTables(task.carrier, task.relations, circuit, meter);
-  const clausifier = new Clausifier(circuit, sink, bothWays);
+  const clausifier = new Clausifier(circuit, sink, meter, bothWays);
   const variables = task.relations.map((relation) =>
     tables.get(relation.name)!.map((input) => clausifier.variableOf(input)),
   );
@@ -51,7 +51,7 @@ export function layOut(task: SearchTask, sink: ClauseSink, meter: Meter, bothWay
       return { variables, contradictory: true };
     }
   }
-  breakSymmetry(task.carrier, task.relations, (relation, kind) => variables[relation]![kind]!, sink);
+  breakSymmetry(task.carrier, task.relations, (relation, kind) => variables[relation]![kind]!, sink, meter);
   return { variables, contradictory: false };
 }
 

@@ -1,6 +1,7 @@
 /** Breaking symmetry: of all tables that differ by a renaming of elements, keep only small ones. */
 import type { Carrier } from "../carriers/carrier.ts";
 import type { RelationSymbol } from "../logic/formula.ts";
+import type { Meter } from "../logic/meter.ts";
 import type { ClauseSink } from "./circuit.ts";
 
 /** Table positions compared over all symmetries of one search, at most; the rest is cut off. */
@@ -19,12 +20,14 @@ interface Entry {
  * each symmetry that the carrier lists; a chain may be cut short, which keeps more structures and loses none.
  *
  * @param variableOf the variable of an entry: relation by its number in `relations`, then kind
+ * @throws WorkEnded when the meter's budget ends or the user interrupts
  */
 export function breakSymmetry(
   carrier: Carrier,
   relations: readonly RelationSymbol[],
   variableOf: (relation: number, kind: number) => number,
   sink: ClauseSink,
+  meter: Meter,
 ): void {
   const symmetries = carrier.symmetries();
   if (symmetries.length === 0) return;
@@ -37,7 +40,7 @@ export function breakSymmetry(
     const { places } = relations[relation]!;
     for (let kind = 0; kind < carrier.kindCount(places); kind += 1) entries.push({ relation, places, kind });
   }
-  const each = Math.max(2 * (carrier.size ?? 1), Math.floor(POSITIONS_BOUND / symmetries.length));
+  const each = Math.max(1, Math.floor(POSITIONS_BOUND / symmetries.length));
   for (const symmetry of symmetries) {
     let equalSoFar: number | null = null;
     let compared = 0;
@@ -56,5 +59,6 @@ export function breakSymmetry(
       sink.addClause([...soFar, other, stillEqual]);
       equalSoFar = stillEqual;
     }
+    meter.charge(compared);
   }
 }

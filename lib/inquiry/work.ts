@@ -1,0 +1,30 @@
+/** What a question may spend and whom it tells how far it is. */
+import { DEFAULT_BUDGET, Meter } from "../logic/meter.ts";
+
+/** Sizes that a search for finite structures goes through when the user does not say. */
+export const DEFAULT_LARGEST_SIZE = 8;
+
+/** How a question is to be worked on. Nothing in an answer depends on the two functions. */
+export interface Work {
+  /** Steps for the whole question. */
+  readonly budget: number;
+  /** Sizes 1, 2, …, this many points are searched. */
+  readonly upTo: number;
+  /** Whether the user has asked to stop; polled often. */
+  readonly isInterrupted: () => boolean;
+  /** Told what is being done, for people: "models on 7 points". */
+  readonly report: (doing: string) => void;
+}
+
+/** Work with the default budget and sizes, which nobody watches. */
+export const unwatchedWork: Work = {
+  budget: DEFAULT_BUDGET,
+  upTo: DEFAULT_LARGEST_SIZE,
+  isInterrupted: () => false,
+  report: () => undefined,
+};
+
+/** A meter for one of `shares` equal parts of a question, so that no part takes what is another's. */
+export function meterFor(work: Work, shares = 1): Meter {
+  return new Meter(Math.max(1, Math.floor(work.budget / shares)), work.isInterrupted);
+}
