@@ -1,0 +1,259 @@
+/** Answers as they are shown: the line of the verdict, what was asked, and the structures that it rests on. */
+
+import type {
+  Answer,
+  AxiomAnswer,
+  ClaimAnswer,
+  CompareAnswer,
+  DualAnswer,
+  IndependenceAnswer,
+  ModelsAnswer,
+} from "../../lib/inquiry/answer.ts";
+import { DEFAULT_LARGEST_SIZE } from "../../lib/inquiry/work.ts";
+import type { Claim, NamedTheory, Statement } from "../../lib/language/statements.ts";
+import { type Formula, usesIdentity } from "../../lib/logic/formula.ts";
+import { sentencesOf } from "../../lib/logic/theory.ts";
+import type { MimeBundle } from "../session/evaluator.ts";
+import { type Block, code, type Inline, line, note, verdict } from "./blocks.ts";
+import { renderBundle } from "./bundle.ts";
+import { sizeOf, structureBlocks } from "./structures.ts";
+import { budgetOf, claimOf, endText, pairReason, summarise } from "./summaries.ts";
+import { counted, onSizesTo } from "./text.ts";
+import { theoryTable } from "./theories.ts";
+
+/** Structures that stand open below an answer; the rest are folded. */
+const OPEN_STRUCTURES = 4;
+
+/** What is displayed for a statement, and the one line for `eval` and the ledger. */
+export interface Shown {
+  readonly summary: string;
+  readonly data: MimeBundle;
+}
+
+/** An answer as a display. {@link prepareDrawing} must have been awaited. */
+export function showAnswer(statement: Statement, answer: Answer): Shown {
+  const summary = summarise(statement, answer);
+  const blocks: Block[] = [line(...verdictLine(summary, answer)), line(...questionOf(statement))];
+  if (isWithoutIdentity(statement))
+    blocks.push(note("Asked without identity: = does not occur in these sentences."));
+  blocks.push(...detailsOf(statement, answer));
+  return { summary, data: renderBundle(blocks, "with-latex") };
+}
+
+/** The summary with the verdict set apart, where there is one verdict. */
+function verdictLine(summary: string, answer: Answer): readonly Inline[] {
+  const word = answer.verdict;
+  if (word === null || !summary.startsWith(`${word}:`)) return [summary];
+  return [verdict(word), summary.slice(word.length)];
+}
+
+/** What was asked, as the user wrote it. */
+function questionOf(statement: Statement): readonly Inline[] {
+  return [code(statement.text.replace(/\s+/g, " "))];
+}
+
+function isWithoutIdentity(statement: Statement): boolean {
+  return statement.kind !== "describe" && statement.kind !== "relation" && statement.kind !== "define"
+    ? !sentencesAsked(statement).some(usesIdentity)
+    : false;
+}
+
+/** All sentences that a question is about. */
+function sentencesAsked(statement: Statement): readonly Formula[] {
+  const ofTheories = (...theories: readonly NamedTheory[]) =>
+    theories.flatMap(({ theory }) => sentencesOf(theory));
+  switch (statement.kind) {
+    case "check-finite":
+    case "independence":
+    case "models":
+    case "dualise":
+      return ofTheories(statement.theory);
+    case "compare":
+      return ofTheories(...statement.theories);
+    default: {
+      const claim = claimOf(statement);
+      return claim === null ? [] : sentencesClaimed(claim);
+    }
+  }
+}
+
+function sentencesClaimed(claim: Claim): readonly Formula[] {
+  switch (claim.kind) {
+    case "entails":
+    case "does-not-entail":
+      return [...sentencesOf(claim.premises.theory), claim.conclusion.formula];
+    case "true-in":
+    case "false-in":
+      return [claim.sentence.formula];
+    case "weaker":
+    case "equivalent":
+      return [...sentencesOf(claim.left.theory), ...sentencesOf(claim.right.theory)];
+    default:
+      return sentencesOf(claim.theory.theory);
+  }
+}
+
+function detailsOf(statement: Statement, answer: Answer): readonly Block[] {
+  switch (answer.question) {
+    case "claim":
+      return claimBlocks(answer);
+    case "check-finite":
+      return answer.model === null ? [] : structureBlocks("model", answer.model);
+    case "models":
+      return modelsBlocks(answer);
+    case "independence":
+      return axiomsBlocks(answer, answer.axioms, statement);
+    case "compare":
+      return compareBlocks(answer, statement);
+    case "dualise":
+      return dualBlocks(answer, statement);
+  }
+  function claimBlocks(claim: ClaimAnswer): readonly Block[] {
+    if (claim.axioms !== null) return axiomsBlocks(claim, claim.axioms, statement);
+    return foldRest(claim.structures.map(({ role, structure }) => structureBlocks(role, structure)));
+  }
+}
+
+/** The first few open, the rest folded. */
+function foldRest(groups: readonly (readonly Block[])[]): readonly Block[] {
+  const rest = groups.slice(OPEN_STRUCTURES);
+  const blocks = groups.slice(0, OPEN_STRUCTURES).flat();
+  if (rest.length > 0)
+    blocks.push({ kind: "fold", title: `${counted(rest.length, "more structure")}`, blocks: rest.flat() });
+  return blocks;
+}
+
+function modelsBlocks(answer: ModelsAnswer): readonly Block[] {
+  return foldRest(answer.models.map((model, index) => structureBlocks(`model ${index + 1}`, model)));
+}
+
+function axiomsBlocks(
+  answer: ClaimAnswer | IndependenceAnswer,
+  axioms: readonly AxiomAnswer[],
+  statement: Statement,
+): readonly Block[] {
+  if (axioms.length === 0) return [];
+  const share = Math.max(1, Math.floor(budgetOf(statement) / axioms.length));
+  const checked = answer.evidence === null ? "" : " (checked)";
+  const table: Block = {
+    kind: "table",
+    caption: null,
+    head: ["axiom", "verdict", "on what evidence"],
+    rows: axioms.map((axiom) => [
+      [axiom.label],
+      [verdict(axiom.verdict)],
+      [axiomReason(axiom, checked, share)],
+    ]),
+    look: "prose",
+  };
+  const witnesses = axioms.flatMap(({ label, witness }) =>
+    witness === null ? [] : structureBlocks(`only ${label} fails`, witness),
+  );
+  if (witnesses.length === 0) return [table];
+  return [table, { kind: "fold", title: "The structures", blocks: witnesses }];
+}
+
+function axiomReason(axiom: AxiomAnswer, checked: string, share: number): string {
+  if (axiom.witness !== null) return `fails alone on ${sizeOf(axiom.witness)}${checked}`;
+  const { search } = axiom;
+  if (axiom.verdict === "redundant") return `follows from the others${checked}`;
+  const none = search.noneUpTo > 0 ? `no such structure ${onSizesTo(search.noneUpTo)}` : "";
+  const end = search.ended === null ? "" : endText(search.ended, share, search.endedAt);
+  return [none, end].filter(Boolean).join("; ");
+}
+
+function compareBlocks(answer: CompareAnswer, statement: Statement): readonly Block[] {
+  const checked = answer.evidence === null ? "" : " (checked)";
+  const table: Block = {
+    kind: "table",
+    caption: null,
+    head: ["left", "verdict", "right", "on what evidence"],
+    rows: answer.pairs.map((pair) => [
+      [code(answer.names[pair.left]!)],
+      [verdict(pair.verdict)],
+      [code(answer.names[pair.right]!)],
+      [
+        `${pairReason(pair, answer.names, checked)}; ${commonText(pair.jointlyInconsistent, pair.common, checked)}`,
+      ],
+    ]),
+    look: "prose",
+  };
+  const classes = answer.classes.filter((names) => names.length > 1);
+  const equivalent = classes.map((names) =>
+    line("equivalent: ", ...names.flatMap((name, i) => [i === 0 ? "" : ", ", code(name)])),
+  );
+  const structures = answer.pairs.flatMap((pair): readonly Block[] => {
+    const [left, right] = [answer.names[pair.left]!, answer.names[pair.right]!];
+    return [
+      ...(pair.leftOnly === null ? [] : structureBlocks(`model of ${left}, not of ${right}`, pair.leftOnly)),
+      ...(pair.rightOnly === null
+        ? []
+        : structureBlocks(`model of ${right}, not of ${left}`, pair.rightOnly)),
+      ...(pair.common === null ? [] : structureBlocks(`model of both ${left} and ${right}`, pair.common)),
+    ];
+  });
+  const blocks: Block[] = [table, ...equivalent, ...interruptedNote(answer.interrupted)];
+  const isOpen = answer.pairs.some(({ verdict: word }) => word === "open");
+  if (isOpen) blocks.push(rangeNote(statement));
+  if (structures.length > 0) blocks.push({ kind: "fold", title: "The structures", blocks: structures });
+  return blocks;
+}
+
+function commonText(
+  isInconsistent: boolean | null,
+  common: CompareAnswer["pairs"][number]["common"],
+  checked: string,
+): string {
+  if (common !== null) return `a common model on ${sizeOf(common)}${checked}`;
+  return isInconsistent === true ? "no common model" : "no common model found";
+}
+
+/** How far the searches of a comparison could go: where one ended is not told, so no size is claimed to be empty. */
+function rangeNote(statement: Statement): Block {
+  const options = "options" in statement ? statement.options : null;
+  const upTo = options?.upTo ?? DEFAULT_LARGEST_SIZE;
+  return note(
+    `Open: structures ${onSizesTo(upTo)} were to be searched, within ${counted(budgetOf(statement), "step")} for the whole question.`,
+  );
+}
+
+function interruptedNote(isInterrupted: boolean): readonly Block[] {
+  return isInterrupted ? [note("Interrupted: pairs that had not been reached are open.")] : [];
+}
+
+function dualBlocks(answer: DualAnswer, statement: Statement): readonly Block[] {
+  const checked = answer.evidence === null ? "" : " (checked)";
+  const name = (index: number) => answer.duals[index]!.name;
+  const table: Block = {
+    kind: "table",
+    caption: null,
+    head: ["left", "verdict", "right", "on what evidence"],
+    rows: answer.pairs.map(({ left, right, verdict: word, witness }) => [
+      [code(name(left))],
+      [verdict(word)],
+      [code(name(right))],
+      [
+        witness === null
+          ? word === "open"
+            ? "no structure found that tells them apart"
+            : `each follows from the other${checked}`
+          : `a model of ${name(witness.modelOf)} on ${sizeOf(witness.structure)} is none of ${name(witness.modelOf === left ? right : left)}${checked}`,
+      ],
+    ]),
+    look: "prose",
+  };
+  const blocks: Block[] = [table, ...interruptedNote(answer.interrupted)];
+  if (answer.pairs.some(({ verdict: word }) => word === "open")) blocks.push(rangeNote(statement));
+  const duals = answer.duals.slice(1).map(({ name: title, theory }) => theoryTable(title, theory));
+  blocks.push({ kind: "fold", title: "The duals", blocks: duals });
+  const structures = answer.pairs.flatMap(({ left, right, witness }) =>
+    witness === null
+      ? []
+      : structureBlocks(
+          `model of ${name(witness.modelOf)}, not of ${name(witness.modelOf === left ? right : left)}`,
+          witness.structure,
+        ),
+  );
+  if (structures.length > 0) blocks.push({ kind: "fold", title: "The structures", blocks: structures });
+  return blocks;
+}

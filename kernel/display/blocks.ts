@@ -1,0 +1,68 @@
+/**
+ * What is shown, before it takes a form. An answer becomes a list of blocks once, and each form (plain text, HTML,
+ * LaTeX) renders the same blocks, so that no form says more or less than another.
+ */
+import type { Formula } from "../../lib/logic/formula.ts";
+
+/** A piece of a line or of a table's cell. A bare string is prose. */
+export type Inline =
+  | string
+  | { readonly kind: "formula"; readonly formula: Formula }
+  /** What the user wrote or named. */
+  | { readonly kind: "code"; readonly text: string }
+  /** A word of the closed lists of verdicts. */
+  | { readonly kind: "verdict"; readonly word: string };
+
+export interface TableBlock {
+  readonly kind: "table";
+  /** Null for a table that the line before it explains. */
+  readonly caption: string | null;
+  readonly head: readonly string[];
+  /** Rows as long as the head; each cell a list of pieces. The first cell of a row is its head. */
+  readonly rows: readonly (readonly (readonly Inline[])[])[];
+  /** `prose` wraps its last column; `matrix` sets every cell to the same width. */
+  readonly look: "prose" | "matrix";
+}
+
+export interface PictureBlock {
+  readonly kind: "picture";
+  /** A whole SVG document with a background of its own. */
+  readonly svg: string;
+  /** Says what can be seen, for those who cannot see it. */
+  readonly alt: string;
+  readonly caption: string;
+}
+
+export type Block =
+  | { readonly kind: "line"; readonly parts: readonly Inline[] }
+  /** A remark that qualifies what stands above it. */
+  | { readonly kind: "note"; readonly parts: readonly Inline[] }
+  /** Text of a cell, to be copied; plain text and LaTeX have it too. */
+  | { readonly kind: "source"; readonly text: string }
+  | TableBlock
+  /** Only in HTML: whatever a picture shows must stand in a table or list as well. */
+  | PictureBlock
+  /** Side by side where there is room. */
+  | { readonly kind: "beside"; readonly blocks: readonly Block[] }
+  /** Closed at first in HTML; open in the other forms. */
+  | { readonly kind: "fold"; readonly title: string; readonly blocks: readonly Block[] };
+
+export function line(...parts: Inline[]): Block {
+  return { kind: "line", parts };
+}
+
+export function note(...parts: Inline[]): Block {
+  return { kind: "note", parts };
+}
+
+export function code(text: string): Inline {
+  return { kind: "code", text };
+}
+
+export function verdict(word: string): Inline {
+  return { kind: "verdict", word };
+}
+
+export function formulaOf(formula: Formula): Inline {
+  return { kind: "formula", formula };
+}

@@ -1,0 +1,167 @@
+/** The `data` of `eval --json`: what a program wants to know of an answer. The README lists the keys. */
+
+import { buildStructure } from "../../lib/carriers/structure.ts";
+import type { Answer, ClaimAnswer } from "../../lib/inquiry/answer.ts";
+import { printFormula } from "../../lib/language/printer.ts";
+import type { Definition, DescribeSubject, Statement } from "../../lib/language/statements.ts";
+import {
+  depthOf,
+  type Formula,
+  type RelationSymbol,
+  relationsOf,
+  usesIdentity,
+} from "../../lib/logic/formula.ts";
+import { type Theory, theoryDepth, theorySignature } from "../../lib/logic/theory.ts";
+import { structureData } from "./structures.ts";
+import { claimOf } from "./summaries.ts";
+import { prefixOf } from "./theories.ts";
+
+type Data = Readonly<Record<string, unknown>>;
+
+/**
+ * Plain data that `JSON.stringify` keeps as it is; formulas are text in the ASCII spelling.
+ * @param answer null for the statements that ask nothing
+ */
+export function dataOf(statement: Statement, answer: Answer | null): Data {
+  switch (answer?.question) {
+    case undefined:
+      return stated(statement);
+    case "claim":
+      return claimData(statement, answer);
+    case "check-finite":
+      return { leastSize: answer.leastSize, modelSize: answer.modelSize, noModelUpTo: answer.noModelUpTo };
+    case "models":
+      return {
+        size: answer.size,
+        models: answer.models.map((model) => structureData(model).relations),
+        complete: answer.complete,
+      };
+    case "independence":
+      return { axioms: Object.fromEntries(answer.axioms.map(({ label, verdict }) => [label, verdict])) };
+    case "compare":
+      return {
+        pairs: answer.pairs.map(({ left, right, verdict, jointlyInconsistent }) => ({
+          left: answer.names[left],
+          right: answer.names[right],
+          verdict,
+          jointlyInconsistent,
+        })),
+        classes: answer.classes,
+      };
+    case "dualise":
+      return {
+        pairs: answer.pairs.map(({ left, right, verdict }) => ({
+          left: answer.duals[left]!.name,
+          right: answer.duals[right]!.name,
+          verdict,
+        })),
+      };
+  }
+}
+
+function claimData(statement: Statement, answer: ClaimAnswer): Data {
+  const claim = claimOf(statement);
+  const size = answer.structures[0]?.structure.carrier.size ?? null;
+  // Where several searches were made, only what all of them finished is free of what was sought.
+  const noneUpTo =
+    answer.searches.length === 0 ? 0 : Math.min(...answer.searches.map((search) => search.noneUpTo));
+  const kind = { claim: claim?.kind ?? null };
+  switch (claim?.kind) {
+    case "entails":
+    case "does-not-entail":
+      return { ...kind, countermodelSize: size, noCountermodelUpTo: noneUpTo };
+    case "consistent":
+    case "infinite-only":
+    case "no-finite-model":
+      return { ...kind, modelSize: size, noModelUpTo: noneUpTo };
+    case "weaker":
+    case "equivalent":
+      return { ...kind, separatingSize: size, noneUpTo };
+    case "independent":
+      return {
+        ...kind,
+        axioms: Object.fromEntries((answer.axioms ?? []).map(({ label, verdict }) => [label, verdict])),
+      };
+    default:
+      return kind;
+  }
+}
+
+function stated(statement: Statement): Data {
+  switch (statement.kind) {
+    case "relation":
+      return { relations: statement.relations.map(relationData) };
+    case "define":
+      return definitionData(statement.definition);
+    case "describe":
+      return subjectData(statement.subject);
+    default:
+      return {};
+  }
+}
+
+function relationData({ name, places, infix }: RelationSymbol): Data {
+  return { name, places, infix };
+}
+
+function definitionData(definition: Definition): Data {
+  const { kind, name } = definition;
+  switch (definition.kind) {
+    case "formula":
+      return { kind, name, parameters: definition.parameters, formula: ascii(definition.body) };
+    case "theory":
+      return { kind, name, axioms: axiomsData(definition.theory) };
+    case "structure":
+      return { kind, name, ...structureData(buildStructure(definition.structure)) };
+  }
+}
+
+function subjectData(subject: DescribeSubject): Data {
+  switch (subject.kind) {
+    case "theory": {
+      const { theory } = subject.theory;
+      const { relations, identity } = theorySignature(theory);
+      return {
+        kind: "theory",
+        axioms: theory.axioms.map(({ label, formula }) => ({
+          label,
+          formula: ascii(formula),
+          prefix: prefixOf(formula),
+        })),
+        relations: relations.map(relationData),
+        identity,
+        depth: theoryDepth(theory),
+      };
+    }
+    case "structure":
+      return { kind: "structure", ...structureData(buildStructure(subject.structure.structure)) };
+    case "formula":
+      return {
+        kind: "formula",
+        parameters: subject.definition.parameters,
+        ...formulaData(subject.definition.body),
+      };
+    case "sentence":
+      return { kind: "sentence", ...formulaData(subject.sentence.formula) };
+    case "relation":
+      return { kind: "relation", ...relationData(subject.relation) };
+  }
+}
+
+function formulaData(formula: Formula): Data {
+  return {
+    formula: ascii(formula),
+    relations: relationsOf(formula).map(relationData),
+    identity: usesIdentity(formula),
+    depth: depthOf(formula),
+    prefix: prefixOf(formula),
+  };
+}
+
+function axiomsData(theory: Theory): readonly Data[] {
+  return theory.axioms.map(({ label, formula }) => ({ label, formula: ascii(formula) }));
+}
+
+function ascii(formula: Formula): string {
+  return printFormula(formula, "ascii");
+}

@@ -1,0 +1,221 @@
+/**
+ * The one line that says what was established, and on what evidence. It never says more than was shown: sizes that a
+ * search finished are named as such, an ended budget is named with the size it ended at, and `(checked)` stands only
+ * where the checker accepted the evidence.
+ */
+import type {
+  Answer,
+  AxiomAnswer,
+  ClaimAnswer,
+  CompareAnswer,
+  DualAnswer,
+  FiniteAnswer,
+  IndependenceAnswer,
+  ModelsAnswer,
+  PairAnswer,
+  Search,
+} from "../../lib/inquiry/answer.ts";
+import type { Claim, Statement } from "../../lib/language/statements.ts";
+import { DEFAULT_BUDGET, type EndReason } from "../../lib/logic/meter.ts";
+import { sizeOf } from "./structures.ts";
+import { counted, enumerate, grouped, onSizesTo, withArticle } from "./text.ts";
+
+/** The budget that a statement was run with, in steps. */
+export function budgetOf(statement: Statement): number {
+  return "options" in statement ? (statement.options.within ?? DEFAULT_BUDGET) : DEFAULT_BUDGET;
+}
+
+export function summarise(statement: Statement, answer: Answer): string {
+  const budget = budgetOf(statement);
+  switch (answer.question) {
+    case "claim":
+      return `${answer.verdict}: ${claimReason(statement, answer, budget)}`;
+    case "check-finite":
+      return `${answer.verdict}: ${finiteReason(answer, budget)}`;
+    case "models":
+      return modelsSummary(answer, budget);
+    case "independence":
+      return independenceSummary(answer);
+    case "compare":
+      return compareSummary(answer);
+    case "dualise":
+      return dualSummary(answer);
+  }
+}
+
+/** The claim that a statement makes; `derive` makes that of entailment. */
+export function claimOf(statement: Statement): Claim | null {
+  if (statement.kind === "claim" || statement.kind === "conjecture") return statement.claim;
+  if (statement.kind === "derive")
+    return { kind: "entails", premises: statement.premises, conclusion: statement.conclusion };
+  return null;
+}
+
+function claimReason(statement: Statement, answer: ClaimAnswer, budget: number): string {
+  const checked = answer.evidence === null ? "" : " (checked)";
+  const claim = claimOf(statement);
+  if (claim?.kind === "independent" && answer.axioms !== null)
+    return axiomsReason(answer.axioms, answer.evidence !== null);
+  const found = enumerate(
+    answer.structures.map(({ role, structure }) => `${withArticle(role)} on ${sizeOf(structure)}`),
+  );
+  if (answer.verdict === "open") {
+    const open = answer.searches
+      .filter((search) => search.foundAt === null)
+      .map((search) => searchText(search, budget, answer.steps));
+    const reasons = [...(found === "" ? [] : [`${found}${checked}`]), ...open];
+    return reasons.length === 0 ? `${stepsText(answer.steps, budget)} spent` : reasons.join("; ");
+  }
+  if (claim?.kind === "true-in" || claim?.kind === "false-in")
+    return `evaluated in ${claim.structure.text}, ${counted(claim.structure.structure.carrier.size, "point")}${checked}`;
+  if (found === "") return `${stepsText(answer.steps, budget)}${checked}`;
+  return `${found}${checked}`;
+}
+
+/** What a search without a find has shown: `no countermodel on 1 to 8 points; 12,345 of 200,000 steps`. */
+export function searchText(search: Search, budget: number, steps: number): string {
+  const none = search.noneUpTo > 0 ? `no ${bare(search.sought)} ${onSizesTo(search.noneUpTo)}` : "";
+  if (search.ended === null)
+    return none === "" ? `no size was searched for ${search.sought}` : `${none}; ${stepsText(steps, budget)}`;
+  const end = endText(search.ended, budget, search.endedAt);
+  return none === "" ? `looking for ${search.sought}, ${end}` : `${none}; ${end}`;
+}
+
+/** Why work ended, and at which size. */
+export function endText(reason: EndReason, budget: number, size: number | null): string {
+  const at = size === null ? "" : ` at ${counted(size, "point")}`;
+  switch (reason) {
+    case "budget":
+      return `the budget of ${counted(budget, "step")} ended${at}`;
+    case "interrupted":
+      return `interrupted${at}`;
+    case "memory":
+      return `the bound on memory was met${at}`;
+  }
+}
+
+function stepsText(steps: number, budget: number): string {
+  return `${grouped(steps)} of ${counted(budget, "step")}`;
+}
+
+/** `a countermodel` without its article. */
+function bare(sought: string): string {
+  return sought.replace(/^an? /, "");
+}
+
+function finiteReason(answer: FiniteAnswer, budget: number): string {
+  const checked = answer.evidence === null ? "" : " (checked)";
+  switch (answer.verdict) {
+    case "finite": {
+      const size = answer.modelSize ?? answer.leastSize ?? 0;
+      if (answer.leastSize === 1) return `a model on 1 point${checked}`;
+      if (answer.leastSize !== null)
+        return `a smallest model has ${counted(answer.leastSize, "point")}${checked}; none ${onSizesTo(answer.leastSize - 1)} (complete search)`;
+      const none = answer.noModelUpTo > 0 ? `; none ${onSizesTo(answer.noModelUpTo)} (complete search)` : "";
+      return `a model on ${counted(size, "point")}${checked}${none}; whether it is a smallest one is open`;
+    }
+    case "infinite-only":
+      return `an infinite model, and no finite one${checked}`;
+    case "inconsistent":
+      return `no model${checked}`;
+    case "no-finite-model":
+      return `no finite model${checked}; consistency is open`;
+    case "consistent":
+      return `an infinite model${checked}; finite ones are open`;
+    case "open":
+      return searchText(answer.search, budget, answer.steps);
+  }
+}
+
+function modelsSummary(answer: ModelsAnswer, budget: number): string {
+  const { models, size, complete, more, ended } = answer;
+  const points = counted(size, "point");
+  const end = more
+    ? "there are others"
+    : ended === null
+      ? "the search was not finished"
+      : endText(ended, budget, null);
+  if (models.length === 0)
+    return complete ? `no model on ${points} (complete search)` : `no model found on ${points}; ${end}`;
+  const checked = answer.evidence === null ? "" : ", each checked";
+  const found = `${counted(models.length, "model")} on ${points} up to isomorphism${checked}`;
+  return complete ? `${found}; no others (complete search)` : `at least ${found}; ${end}`;
+}
+
+function independenceSummary(answer: IndependenceAnswer): string {
+  return axiomsReason(answer.axioms, answer.evidence !== null);
+}
+
+/** How many axioms of how many, and which are not independent. */
+function axiomsReason(axioms: readonly AxiomAnswer[], isChecked: boolean): string {
+  if (axioms.length === 0) return "there are no axioms";
+  const checked = isChecked ? " (checked)" : "";
+  const labelled = (verdict: AxiomAnswer["verdict"]) =>
+    axioms.filter((axiom) => axiom.verdict === verdict).map((axiom) => axiom.label);
+  const [independent, redundant, open] = [labelled("independent"), labelled("redundant"), labelled("open")];
+  if (independent.length === axioms.length)
+    return axioms.length === 1
+      ? `the one axiom fails in a structure${checked}`
+      : `each of ${axioms.length} axioms fails alone in a structure where the others hold${checked}`;
+  const parts = [
+    `${independent.length} of ${counted(axioms.length, "axiom")} independent${independent.length > 0 ? checked : ""}`,
+  ];
+  if (redundant.length > 0) parts.push(`${enumerate(redundant)} redundant`);
+  if (open.length > 0) parts.push(`${enumerate(open)} open`);
+  return parts.join("; ");
+}
+
+function compareSummary(answer: CompareAnswer): string {
+  const checked = answer.evidence === null ? "" : " (checked)";
+  if (answer.pairs.length === 1) return pairSummary(answer.pairs[0]!, answer.names, checked);
+  if (answer.pairs.length === 0) return "one theory: nothing to compare";
+  return `${counted(answer.pairs.length, "pair")}: ${tally(
+    answer.pairs.map(({ verdict }) => verdict),
+    checked,
+  )}`;
+}
+
+/** What is known of one pair, as a sentence. */
+function pairSummary(pair: PairAnswer, names: readonly string[], checked: string): string {
+  return `${pair.verdict}: ${pairReason(pair, names, checked)}`;
+}
+
+export function pairReason(pair: PairAnswer, names: readonly string[], checked: string): string {
+  const [left, right] = [names[pair.left]!, names[pair.right]!];
+  const found: string[] = [];
+  if (pair.leftOnly !== null)
+    found.push(`a model of ${left} on ${sizeOf(pair.leftOnly)} is none of ${right}${checked}`);
+  if (pair.rightOnly !== null)
+    found.push(`a model of ${right} on ${sizeOf(pair.rightOnly)} is none of ${left}${checked}`);
+  if (
+    pair.verdict === "open" ||
+    pair.verdict === "at-least-as-strong" ||
+    pair.verdict === "at-most-as-strong"
+  ) {
+    if (pair.leftOnly === null && pair.verdict !== "at-least-as-strong")
+      found.push(`whether ${left} entails ${right} is open`);
+    if (pair.rightOnly === null && pair.verdict !== "at-most-as-strong")
+      found.push(`whether ${right} entails ${left} is open`);
+  }
+  return found.length === 0 ? `${left} and ${right}` : found.join("; ");
+}
+
+function dualSummary(answer: DualAnswer): string {
+  const checked = answer.evidence === null ? "" : " (checked)";
+  return `${counted(answer.pairs.length, "pair")} of ${answer.duals.length} duals: ${tally(
+    answer.pairs.map(({ verdict }) => verdict),
+    checked,
+  )}`;
+}
+
+/** `4 incomparable (checked); 2 open`, in the order of first occurrence. */
+function tally(verdicts: readonly string[], checked: string): string {
+  const counts = new Map<string, number>();
+  for (const verdict of verdicts) counts.set(verdict, (counts.get(verdict) ?? 0) + 1);
+  const open = counts.get("open");
+  counts.delete("open");
+  const settled = [...counts].map(([verdict, count]) => `${count} ${verdict}`);
+  const parts = settled.length === 0 ? [] : [enumerate(settled) + checked];
+  if (open !== undefined) parts.push(`${open} open`);
+  return parts.join("; ");
+}

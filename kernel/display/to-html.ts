@@ -1,0 +1,110 @@
+/**
+ * Blocks as HTML that survives the sanitising of notebooks nobody has signed: tables with captions, `<details>`,
+ * plain inline styles, and pictures as `<img>` with a data URI. It may stand on a light or a dark page, so text has
+ * the page's own colour except where it brings its background with it; rules are of a middle grey that shows on both.
+ */
+import { printFormula } from "../../lib/language/printer.ts";
+import type { Block, Inline, TableBlock } from "./blocks.ts";
+import { visible } from "./text.ts";
+
+const RULE = "#8a8a8a";
+
+/** Background of a verdict's word: what is settled one way, settled the other way, and open. Text on it is white. */
+const GROUND = { settled: "#235a5e", refuted: "#7a3140", open: "#5b5b5b" } as const;
+
+const REFUTED: ReadonlySet<string> = new Set(["fails", "inconsistent", "redundant"]);
+
+export function escapeHtml(text: string): string {
+  return visible(text)
+    .replace(/&/g, "&amp;")
+    .replace(/</g, "&lt;")
+    .replace(/>/g, "&gt;")
+    .replace(/"/g, "&quot;")
+    .replace(/'/g, "&#39;");
+}
+
+export function blocksToHtml(blocks: readonly Block[]): string {
+  return `<div style="line-height:1.5">${blocks.map(blockToHtml).join("\n")}</div>`;
+}
+
+export function inlineToHtml(parts: readonly Inline[]): string {
+  return parts.map(pieceToHtml).join("");
+}
+
+function pieceToHtml(piece: Inline): string {
+  if (typeof piece === "string") return escapeHtml(piece);
+  switch (piece.kind) {
+    case "formula":
+      return `<span>${escapeHtml(printFormula(piece.formula, "unicode"))}</span>`;
+    case "code":
+      return `<code>${escapeHtml(piece.text)}</code>`;
+    case "verdict": {
+      const ground =
+        piece.word === "open" ? GROUND.open : REFUTED.has(piece.word) ? GROUND.refuted : GROUND.settled;
+      return (
+        `<strong style="background-color:${ground};color:#ffffff;padding:1px 7px;border-radius:3px;` +
+        `white-space:nowrap">${escapeHtml(piece.word)}</strong>`
+      );
+    }
+  }
+}
+
+function blockToHtml(block: Block): string {
+  switch (block.kind) {
+    case "line":
+      return `<p style="margin:4px 0">${inlineToHtml(block.parts)}</p>`;
+    case "note":
+      return `<p style="margin:4px 0;font-style:italic">${inlineToHtml(block.parts)}</p>`;
+    case "source":
+      return `<pre style="margin:4px 0;overflow-x:auto;white-space:pre-wrap">${escapeHtml(block.text)}</pre>`;
+    case "table":
+      return tableToHtml(block);
+    case "picture": {
+      const data = Buffer.from(block.svg, "utf8").toString("base64");
+      const caption = block.caption === "" ? "" : `<br><small>${escapeHtml(block.caption)}</small>`;
+      return (
+        `<div style="margin:4px 0"><img src="data:image/svg+xml;base64,${data}" alt="${escapeHtml(block.alt)}" ` +
+        `style="max-width:100%">${caption}</div>`
+      );
+    }
+    case "beside":
+      return `<div>${block.blocks
+        .map((inner) => `<div style="${BESIDE}">${blockToHtml(inner)}</div>`)
+        .join("")}</div>`;
+    case "fold":
+      return (
+        `<details style="margin:6px 0"><summary style="cursor:pointer">${escapeHtml(block.title)}</summary>` +
+        `${block.blocks.map(blockToHtml).join("\n")}</details>`
+      );
+  }
+}
+
+const BESIDE = "display:inline-block;vertical-align:top;margin:0 28px 4px 0;max-width:100%";
+
+function tableToHtml(table: TableBlock): string {
+  const matrix = table.look === "matrix";
+  const align = matrix ? "center" : "left";
+  const space = matrix ? "1px 7px" : "3px 14px 3px 4px";
+  const headCell = (title: string) =>
+    `<th scope="col" style="text-align:${align};padding:${space};border-bottom:1px solid ${RULE}">${escapeHtml(title)}</th>`;
+  const rows = table.rows.map((row) => {
+    const cells = row.map((cell, column) => {
+      const inner = inlineToHtml(cell);
+      if (column > 0)
+        return `<td style="text-align:${align};padding:${space};vertical-align:top">${
+          matrix && inner === "1" ? "<strong>1</strong>" : inner
+        }</td>`;
+      const rule = matrix ? `;border-right:1px solid ${RULE}` : "";
+      return `<th scope="row" style="text-align:${align};padding:${space};vertical-align:top${rule}">${inner}</th>`;
+    });
+    return `<tr>${cells.join("")}</tr>`;
+  });
+  const caption =
+    table.caption === null
+      ? ""
+      : `<caption style="caption-side:top;text-align:left;padding:2px 4px;font-weight:bold">${escapeHtml(table.caption)}</caption>`;
+  return (
+    `<div style="overflow-x:auto;margin:4px 0"><table style="border-collapse:collapse;margin:0">${caption}` +
+    `<thead><tr>${table.head.map(headCell).join("")}</tr></thead><tbody>${rows.join("")}</tbody></table></div>`
+  );
+}

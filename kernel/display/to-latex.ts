@@ -1,0 +1,144 @@
+/**
+ * Blocks as LaTeX for a draft: what amsmath, amssymb, booktabs and longtable can set. Pictures are left out; what
+ * they show stands in the tables.
+ */
+import { printFormula } from "../../lib/language/printer.ts";
+import type { Block, Inline, TableBlock } from "./blocks.ts";
+import { visible } from "./text.ts";
+
+/** Rows above which a table may break across pages. */
+const LONG_TABLE = 24;
+
+/** Signs of prose that fonts for text often lack, as mathematics. */
+const SIGNS: ReadonlyMap<string, string> = new Map(
+  Object.entries({
+    "∀": "\\forall",
+    "∃": "\\exists",
+    "¬": "\\neg",
+    "∧": "\\land",
+    "∨": "\\lor",
+    "→": "\\to",
+    "↔": "\\leftrightarrow",
+    "⊨": "\\models",
+    "⊭": "\\nvDash",
+    "≠": "\\neq",
+    "⊤": "\\top",
+    "⊥": "\\bot",
+    "≤": "\\leq",
+    "≥": "\\geq",
+    "≺": "\\prec",
+    "≼": "\\preceq",
+    "≻": "\\succ",
+    "≽": "\\succeq",
+    "⊏": "\\sqsubset",
+    "⊑": "\\sqsubseteq",
+    "⊆": "\\subseteq",
+    "⊂": "\\subset",
+    "⊲": "\\vartriangleleft",
+    "⊴": "\\trianglelefteq",
+    "∈": "\\in",
+    "∘": "\\circ",
+    "∁": "\\complement",
+    "∪": "\\cup",
+    "∩": "\\cap",
+    "∼": "\\sim",
+    "≈": "\\approx",
+    "≡": "\\equiv",
+    "⁻": "{}^{-}",
+    "¹": "{}^{1}",
+    "…": "\\ldots",
+    "<": "<",
+    ">": ">",
+    "|": "|",
+  }),
+);
+
+const SPECIAL: ReadonlyMap<string, string> = new Map([
+  ["\\", "\\textbackslash{}"],
+  ["{", "\\{"],
+  ["}", "\\}"],
+  ["$", "\\$"],
+  ["&", "\\&"],
+  ["#", "\\#"],
+  ["%", "\\%"],
+  ["_", "\\_"],
+  ["^", "\\textasciicircum{}"],
+  ["~", "\\textasciitilde{}"],
+]);
+
+/** Prose as LaTeX: nothing in it is a command. */
+export function escapeLatex(text: string): string {
+  let escaped = "";
+  for (const character of visible(text)) {
+    const sign = SIGNS.get(character);
+    escaped += sign !== undefined ? `\\ensuremath{${sign}}` : (SPECIAL.get(character) ?? character);
+  }
+  return escaped;
+}
+
+export function blocksToLatex(blocks: readonly Block[]): string {
+  return blocks.map(blockToLatex).filter(Boolean).join("\n\n");
+}
+
+export function inlineToLatex(parts: readonly Inline[]): string {
+  return parts.map(pieceToLatex).join("");
+}
+
+function pieceToLatex(piece: Inline): string {
+  if (typeof piece === "string") return escapeLatex(piece);
+  switch (piece.kind) {
+    case "formula":
+      return `$${printFormula(piece.formula, "latex")}$`;
+    case "code":
+      return `\\texttt{${escapeLatex(piece.text)}}`;
+    case "verdict":
+      return `\\textbf{${escapeLatex(piece.word)}}`;
+  }
+}
+
+function blockToLatex(block: Block): string {
+  switch (block.kind) {
+    case "line":
+      return `\\noindent ${inlineToLatex(block.parts)}`;
+    case "note":
+      return `\\noindent\\emph{${inlineToLatex(block.parts)}}`;
+    case "source":
+      return block.text
+        .split("\n")
+        .map((text) => `\\noindent\\texttt{${escapeLatex(text)}}`)
+        .join("\\\\\n");
+    case "table":
+      return tableToLatex(block);
+    case "picture":
+      return "";
+    case "beside":
+      return blocksToLatex(block.blocks);
+    case "fold":
+      return `\\noindent\\emph{${escapeLatex(block.title)}}\n\n${blocksToLatex(block.blocks)}`;
+  }
+}
+
+function tableToLatex(table: TableBlock): string {
+  const last = table.head.length - 1;
+  const columns =
+    table.look === "matrix"
+      ? `c@{\\quad}${"c".repeat(last)}`
+      : `${"l".repeat(last)}p{${last > 2 ? "0.4" : "0.65"}\\linewidth}`;
+  const row = (cells: readonly string[]) => `${cells.join(" & ")} \\\\`;
+  const head = row(table.head.map(escapeLatex));
+  const rows = table.rows.map((cells) => row(cells.map(inlineToLatex)));
+  const caption = table.caption === null ? "" : `\\noindent ${escapeLatex(table.caption)}\n\n`;
+  if (table.rows.length > LONG_TABLE)
+    return [
+      `${caption}\\begin{longtable}{@{}${columns}@{}}`,
+      `\\toprule\n${head}\n\\midrule\n\\endhead`,
+      ...rows,
+      "\\bottomrule\n\\end{longtable}",
+    ].join("\n");
+  return [
+    `${caption}\\begin{center}\n\\begin{tabular}{@{}${columns}@{}}`,
+    `\\toprule\n${head}\n\\midrule`,
+    ...rows,
+    "\\bottomrule\n\\end{tabular}\n\\end{center}",
+  ].join("\n");
+}

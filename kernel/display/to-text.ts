@@ -1,0 +1,76 @@
+/** Blocks as plain text, complete by itself: what a terminal shows, and what remains when nothing richer is read. */
+import { printFormula } from "../../lib/language/printer.ts";
+import type { Block, Inline, TableBlock } from "./blocks.ts";
+import { displayWidth, padEnd, visible, wrap } from "./text.ts";
+
+/** Columns that a line of prose or a formula may take before it is broken. */
+const WIDTH = 100;
+
+export function blocksToText(blocks: readonly Block[]): string {
+  return blocks.map(blockToText).filter(Boolean).join("\n");
+}
+
+export function inlineToText(parts: readonly Inline[]): string {
+  return parts.map(pieceToText).join("");
+}
+
+function pieceToText(piece: Inline): string {
+  if (typeof piece === "string") return visible(piece);
+  switch (piece.kind) {
+    case "formula":
+      return printFormula(piece.formula, "unicode");
+    case "code":
+      return visible(piece.text);
+    case "verdict":
+      return piece.word;
+  }
+}
+
+function blockToText(block: Block): string {
+  switch (block.kind) {
+    case "line":
+      return wrap(inlineToText(block.parts), WIDTH).join("\n");
+    case "note":
+      return wrap(`(${inlineToText(block.parts)})`, WIDTH).join("\n");
+    case "source":
+      return visible(block.text);
+    case "table":
+      return tableToText(block);
+    case "picture":
+      return "";
+    case "beside":
+      return blocksToText(block.blocks);
+    case "fold":
+      return `\n${visible(block.title)}\n${blocksToText(block.blocks)}`;
+  }
+}
+
+/** Columns set under each other, a rule under the head; a long last column goes on below itself. */
+function tableToText(table: TableBlock): string {
+  const head = table.head.map(visible);
+  const rows = table.rows.map((row) => row.map(inlineToText));
+  const last = head.length - 1;
+  const widths = head.map((title, column) =>
+    Math.max(displayWidth(title), ...rows.map((row) => displayWidth(row[column] ?? ""))),
+  );
+  const before = widths.slice(0, last).reduce((sum, width) => sum + width + 2, 0);
+  const lastWidth = Math.max(24, WIDTH - before);
+  const gap = table.look === "matrix" ? " " : "  ";
+  const set = (cells: readonly string[]) =>
+    cells
+      .map((cell, column) => (column === last ? cell : padEnd(cell, widths[column]!)))
+      .join(gap)
+      .trimEnd();
+  const lines = [
+    set(head),
+    "─".repeat(displayWidth(set(widths.map((width) => "x".repeat(Math.min(width, WIDTH)))))),
+  ];
+  for (const row of rows) {
+    const pieces = table.look === "prose" ? wrap(row[last]!, lastWidth) : [row[last]!];
+    lines.push(set([...row.slice(0, last), pieces[0]!]));
+    const indent = " ".repeat(widths.slice(0, last).reduce((sum, width) => sum + width + gap.length, 0) + 2);
+    for (const more of pieces.slice(1)) lines.push(indent + more);
+  }
+  const body = lines.join("\n");
+  return table.caption === null ? body : `${visible(table.caption)}\n${body}`;
+}
