@@ -1,0 +1,214 @@
+/**
+ * The whole way of a cell: text, statements, questions, answers that the checker has accepted, displays.
+ *
+ * A cell with a mistake of form runs nothing. A claim that is not established does not stop the cell: the rest runs,
+ * and the cell ends with one error that lists those claims. An interrupt stops the cell; what was shown and defined
+ * before it stays.
+ */
+import type { ClaimVerdict } from "../../lib/inquiry/answer.ts";
+import { parseCell } from "../../lib/language/parser.ts";
+import { type Scope, type Statement, scopeAfter } from "../../lib/language/statements.ts";
+import { WorkEnded } from "../../lib/logic/meter.ts";
+import { dataOf, definitionData } from "../display/data.ts";
+import { showAnswer, showDefinition, showDescription, showProgress, showTrouble } from "../display/show.ts";
+import type { CellEvent, CellOutcome, MimeBundle, StatementResult } from "./evaluator.ts";
+import { storeResult } from "./metadata.ts";
+import { answerQuestion, isQuestion, wasInterrupted } from "./run-statement.ts";
+
+/** Time without a result after which progress is shown, and between two showings, in milliseconds. */
+const FIRST_PROGRESS_MS = 1000;
+const NEXT_PROGRESS_MS = 400;
+
+/** A claim of the notebook and what it came to. */
+export interface LedgerEntry {
+  /** Numbered from 1 in the order of the session. */
+  readonly number: number;
+  readonly statement: "claim" | "conjecture";
+  readonly text: string;
+  readonly verdict: ClaimVerdict;
+  readonly summary: string;
+}
+
+/** What a session remembers from cell to cell. */
+export interface Memory {
+  scope: Scope;
+  readonly ledger: LedgerEntry[];
+  /** A new id for a display, unique in the session. */
+  nextDisplayId(): string;
+}
+
+/** The surroundings of a running cell. */
+export interface Surroundings {
+  readonly isInterrupted: () => boolean;
+  readonly show: (event: CellEvent) => void;
+  /** Milliseconds; used for progress displays only, never for an answer. */
+  readonly clock: () => number;
+}
+
+export function runCell(code: string, memory: Memory, surroundings: Surroundings): CellOutcome {
+  const { statements, diagnostics } = parseCell(code, memory.scope);
+  if (diagnostics.length > 0) {
+    const trouble = showTrouble(diagnostics, code);
+    const result: StatementResult = {
+      statement: "cell",
+      text: code,
+      verdict: null,
+      summary: trouble.summary,
+      steps: 0,
+      data: {},
+      evidence: null,
+      diagnostics,
+    };
+    return failed("Mistakes", trouble.summary, trouble.traceback, [result]);
+  }
+  const results: StatementResult[] = [];
+  const unmet: StatementResult[] = [];
+  for (const statement of statements) {
+    try {
+      if (surroundings.isInterrupted()) throw new WorkEnded("interrupted");
+      const { result, interrupted } = runStatement(statement, memory, surroundings);
+      results.push(result);
+      if (interrupted) throw new WorkEnded("interrupted");
+      if (statement.kind === "claim" && result.verdict !== "holds") unmet.push(result);
+    } catch (problem) {
+      if (problem instanceof WorkEnded)
+        return failed("Interrupted", ...interruption(statement, statements, results), results);
+      const { message, stack } = problem instanceof Error ? problem : new Error(String(problem));
+      const lines = [`A mistake of Twoplace itself in: ${statement.text}`, ...(stack ?? message).split("\n")];
+      return failed("InternalError", message, lines, results);
+    }
+  }
+  if (unmet.length > 0) return failed("FailedClaims", ...unmetClaims(unmet), results);
+  return { status: "ok", results };
+}
+
+function failed(
+  ename: string,
+  evalue: string,
+  traceback: readonly string[],
+  results: readonly StatementResult[],
+): CellOutcome {
+  return { status: "error", ename, evalue, traceback, results };
+}
+
+function interruption(
+  statement: Statement,
+  statements: readonly Statement[],
+  results: readonly StatementResult[],
+): [string, string[]] {
+  const evalue = `stopped at: ${statement.text}`;
+  const kept = `${results.length} of ${statements.length} statements were answered; all definitions before this are kept.`;
+  return [evalue, [`Interrupted: ${evalue}`, kept]];
+}
+
+function unmetClaims(unmet: readonly StatementResult[]): [string, string[]] {
+  const evalue =
+    unmet.length === 1 ? "a claim is not established" : `${unmet.length} claims are not established`;
+  return [
+    evalue,
+    [`FailedClaims: ${evalue}`, ...unmet.map((claim) => `  ${claim.text}\n    ${claim.summary}`)],
+  ];
+}
+
+/** What a statement shows, and its result. */
+interface Shown {
+  readonly result: StatementResult;
+  readonly data: MimeBundle;
+  readonly interrupted: boolean;
+}
+
+function runStatement(statement: Statement, memory: Memory, surroundings: Surroundings): Shown {
+  const display = new Display(memory.nextDisplayId(), surroundings);
+  const shown = isQuestion(statement) ? ask(statement, display, surroundings) : tell(statement);
+  memory.scope = scopeAfter(memory.scope, statement);
+  const { result } = shown;
+  if (statement.kind === "claim" || statement.kind === "conjecture")
+    memory.ledger.push({
+      number: memory.ledger.length + 1,
+      statement: statement.kind,
+      text: result.text,
+      verdict: result.verdict as ClaimVerdict,
+      summary: result.summary,
+    });
+  display.finish(shown.data, result);
+  return shown;
+}
+
+/** Answers a question, showing progress while it works. */
+function ask(
+  statement: Statement & { options: unknown },
+  display: Display,
+  surroundings: Surroundings,
+): Shown {
+  const question = statement as Extract<Statement, { options: object }>;
+  const answer = answerQuestion(question, {
+    isInterrupted: () => {
+      display.tick();
+      return surroundings.isInterrupted();
+    },
+    report: (doing) => display.doing(doing),
+  });
+  const { summary, data } = showAnswer(question, answer);
+  return {
+    result: {
+      ...resultBase(statement),
+      verdict: answer.verdict,
+      summary,
+      steps: answer.steps,
+      data: dataOf(question, answer),
+      evidence: answer.evidence,
+    },
+    data,
+    interrupted: wasInterrupted(answer),
+  };
+}
+
+/** Shows what a statement defines, declares or describes. */
+function tell(statement: Statement): Shown {
+  const { summary, data } =
+    statement.kind === "describe" ? showDescription(statement) : showDefinition(statement);
+  const result = { ...resultBase(statement), summary, data: definitionData(statement) };
+  return { result, data, interrupted: false };
+}
+
+function resultBase(statement: Statement) {
+  const { kind, text } = statement;
+  return { statement: kind, text, verdict: null, steps: 0, evidence: null, diagnostics: [] };
+}
+
+/** One statement's place on the page: progress, then the result in its stead. */
+class Display {
+  readonly #id: string;
+  readonly #surroundings: Surroundings;
+  #next: number;
+  #doing = "";
+  #begun = false;
+
+  constructor(id: string, surroundings: Surroundings) {
+    this.#id = id;
+    this.#surroundings = surroundings;
+    this.#next = surroundings.clock() + FIRST_PROGRESS_MS;
+  }
+
+  doing(doing: string): void {
+    this.#doing = doing;
+    this.tick();
+  }
+
+  /** Shows progress when it is time to. */
+  tick(): void {
+    const now = this.#surroundings.clock();
+    if (now < this.#next || this.#doing === "") return;
+    this.#next = now + NEXT_PROGRESS_MS;
+    this.#show(showProgress(this.#doing), {});
+  }
+
+  finish(data: MimeBundle, result: StatementResult): void {
+    this.#show(data, { twoplace: storeResult(result) });
+  }
+
+  #show(data: MimeBundle, metadata: Readonly<Record<string, unknown>>): void {
+    this.#surroundings.show({ kind: "display", displayId: this.#id, update: this.#begun, data, metadata });
+    this.#begun = true;
+  }
+}

@@ -1,0 +1,103 @@
+/** A session: the definitions and claims of one notebook, and everything that can be asked about them. */
+import { randomUUID } from "node:crypto";
+import { completeAt, inspectAt, isComplete } from "../../lib/language/completion.ts";
+import { parseCell } from "../../lib/language/parser.ts";
+import { emptyScope } from "../../lib/language/statements.ts";
+import { prepareDrawing } from "../display/drawing.ts";
+import { showInspection } from "../display/inspection.ts";
+import { showDescription } from "../display/show.ts";
+import type {
+  CellEvent,
+  CellOutcome,
+  Completeness,
+  Completion,
+  Evaluator,
+  ExpressionOutcome,
+  MimeBundle,
+} from "./evaluator.ts";
+import { type Memory, runCell } from "./run-cell.ts";
+
+export interface SessionOptions {
+  /** Polled by searches; true asks the running cell to stop. */
+  readonly isInterrupted: () => boolean;
+  /** Milliseconds, for progress displays. */
+  readonly clock?: () => number;
+}
+
+/** Runs cells in the caller's thread. */
+export class Session implements Evaluator {
+  readonly #isInterrupted: () => boolean;
+  readonly #clock: () => number;
+  #memory: Memory = newMemory();
+
+  constructor(options: SessionOptions) {
+    this.#isInterrupted = options.isInterrupted;
+    this.#clock = options.clock ?? Date.now;
+  }
+
+  async runCell(code: string, show: (event: CellEvent) => void): Promise<CellOutcome> {
+    await prepareDrawing();
+    return runCell(code, this.#memory, { isInterrupted: this.#isInterrupted, show, clock: this.#clock });
+  }
+
+  /** An expression is the name of a definition, a theory expression, or `verdict of claim 3`. */
+  async evaluateExpression(expression: string): Promise<ExpressionOutcome> {
+    const number = /^\s*verdict of claim (\d+)\s*$/.exec(expression)?.[1];
+    if (number !== undefined) return this.#verdictOf(Number(number));
+    await prepareDrawing();
+    const { statements, diagnostics } = parseCell(`describe ${expression.trim()}`, this.#memory.scope);
+    const [statement] = statements;
+    if (statement?.kind === "describe" && statements.length === 1)
+      return { status: "ok", data: showDescription(statement).data, metadata: {} };
+    const evalue = diagnostics[0]?.message ?? "not an expression: the name of a definition is wanted";
+    return { status: "error", ename: "Mistakes", evalue, traceback: [`Mistakes: ${evalue}`] };
+  }
+
+  #verdictOf(number: number): ExpressionOutcome {
+    const entry = this.#memory.ledger[number - 1];
+    if (entry !== undefined)
+      return {
+        status: "ok",
+        data: { "text/plain": entry.verdict, "text/markdown": entry.verdict },
+        metadata: {},
+      };
+    const count = this.#memory.ledger.length;
+    const evalue = `there is no claim ${number}; so far there ${count === 1 ? "is 1" : `are ${count}`}`;
+    return { status: "error", ename: "Mistakes", evalue, traceback: [`Mistakes: ${evalue}`] };
+  }
+
+  async complete(code: string, cursor: number): Promise<Completion> {
+    return completeAt(code, cursor, this.#memory.scope);
+  }
+
+  async inspect(code: string, cursor: number, detail: 0 | 1): Promise<MimeBundle | null> {
+    const found = inspectAt(code, cursor, this.#memory.scope);
+    return found === null ? null : showInspection(found, detail);
+  }
+
+  async isComplete(code: string): Promise<Completeness> {
+    return isComplete(code);
+  }
+
+  /** Nothing to do: the caller's own `isInterrupted` is what is polled. */
+  interrupt(): void {}
+
+  async reset(): Promise<void> {
+    this.#memory = newMemory();
+  }
+
+  async close(): Promise<void> {}
+}
+
+function newMemory(): Memory {
+  const session = randomUUID();
+  let displays = 0;
+  return {
+    scope: emptyScope,
+    ledger: [],
+    nextDisplayId: () => {
+      displays += 1;
+      return `${session}-${displays}`;
+    },
+  };
+}

@@ -1,0 +1,71 @@
+/** Imports go down only (DEVELOPERS.md, "Architecture"). */
+import { readdirSync, readFileSync } from "node:fs";
+import { dirname, join, relative, resolve } from "node:path";
+import ts from "typescript";
+import { describe, expect, it } from "vitest";
+
+const root = resolve(import.meta.dirname, "..");
+
+/** For each folder, the folders that its files may import from, besides itself. */
+const MAY_IMPORT: Readonly<Record<string, readonly string[]>> = {
+  "lib/logic": [],
+  "lib/language": ["lib/logic"],
+  "lib/carriers": ["lib/logic"],
+  "lib/evidence": ["lib/carriers", "lib/logic"],
+  "lib/structures": ["lib/evidence", "lib/carriers", "lib/logic"],
+  "lib/inquiry": ["lib/structures", "lib/evidence", "lib/carriers", "lib/logic"],
+  "kernel/display": ["kernel/session/evaluator.ts", "lib"],
+  "kernel/session": ["kernel/display", "lib"],
+  "kernel/protocol": ["kernel/session/evaluator.ts"],
+  "kernel/transport": ["kernel/protocol", "kernel/notebook", "kernel/session/evaluator.ts"],
+  "kernel/notebook": ["kernel/protocol", "kernel/transport"],
+  kernel: ["kernel", "lib"],
+};
+/** Packages that `lib` may use; it knows nothing of Node, Jupyter, files or clocks. */
+const LIB_PACKAGES = ["@noble/hashes"];
+
+const files = ["lib", "kernel"].flatMap((top) =>
+  readdirSync(join(root, top), { recursive: true, encoding: "utf8" })
+    .map((file) => join(top, file))
+    .filter((file) => file.endsWith(".ts")),
+);
+
+function importsOf(file: string): string[] {
+  return ts.preProcessFile(readFileSync(join(root, file), "utf8")).importedFiles.map((i) => i.fileName);
+}
+
+function folderOf(file: string): string {
+  return file.split("/").slice(0, -1).slice(0, 2).join("/");
+}
+
+describe("imports", () => {
+  it("covers every folder of the program", () => {
+    expect(files.length).toBeGreaterThan(20);
+    for (const file of files) expect(Object.keys(MAY_IMPORT), file).toContain(folderOf(file));
+  });
+
+  it.each(files)("%s imports downwards only", (file) => {
+    const own = folderOf(file);
+    for (const target of importsOf(file)) {
+      if (!target.startsWith(".")) {
+        if (file.startsWith("lib/"))
+          expect(
+            LIB_PACKAGES.some((name) => target.startsWith(name)),
+            `${file} uses ${target}`,
+          ).toBe(true);
+        continue;
+      }
+      const path = relative(root, resolve(root, dirname(file), target));
+      const allowed = [own, ...MAY_IMPORT[own]!].some(
+        (place) => path === place || path.startsWith(`${place}/`),
+      );
+      expect(allowed, `${file} imports ${path}`).toBe(true);
+    }
+  });
+});
+
+describe("files", () => {
+  it.each(files)("%s is one idea: at most 700 lines", (file) => {
+    expect(readFileSync(join(root, file), "utf8").split("\n").length).toBeLessThanOrEqual(700);
+  });
+});
