@@ -17,7 +17,11 @@ import type {
 } from "./messages.ts";
 
 const count = v.pipe(v.number(), v.safeInteger(), v.minValue(0));
-const json = v.record(v.string(), v.unknown());
+/** Any object; not `v.record`, which lets arrays pass. */
+const json = v.custom<Readonly<Record<string, unknown>>>(
+  (value) => typeof value === "object" && value !== null && !Array.isArray(value),
+  (issue) => `expected an object but received ${issue.received}`,
+);
 
 /** A header of version 5.x. Keys of later versions are kept if their values are plain, since replies echo it. */
 export const headerSchema = v.pipe(

@@ -59,6 +59,7 @@ export class ThreadEvaluator implements Evaluator {
   /** What was being done when the worker was ended on purpose; null when it was not. */
   #endedFor: string | null = null;
   readonly #definitions = new DefinitionLog();
+  #rebuilding = false;
 
   constructor(options: ThreadOptions = {}) {
     this.#entry = options.entry ?? ownWorker();
@@ -120,7 +121,8 @@ export class ThreadEvaluator implements Evaluator {
   }
 
   interrupt(): void {
-    if (this.#running === null) return;
+    // What is rebuilt after a loss is not the user's to stop: definitions would be lost.
+    if (this.#running === null || this.#rebuilding) return;
     Atomics.store(this.#flag, 0, 1);
     // The last resort, for work that does not poll the flag.
     this.#graceTimer ??= setTimeout(() => {
@@ -231,6 +233,7 @@ export class ThreadEvaluator implements Evaluator {
    * @returns what was kept, in words
    */
   async #rebuild(): Promise<string> {
+    this.#rebuilding = true;
     for (let begun = 0; begun < this.#definitions.texts.length && !this.#closed; ) {
       const text = this.#definitions.texts[begun]!;
       try {
@@ -243,6 +246,7 @@ export class ThreadEvaluator implements Evaluator {
         if (error instanceof WorkerLost) begun = 0;
       }
     }
+    this.#rebuilding = false;
     return this.#definitions.describe();
   }
 }
