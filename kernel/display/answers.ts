@@ -14,7 +14,7 @@ import type { Claim, NamedTheory, Statement } from "../../lib/language/statement
 import { type Formula, usesIdentity } from "../../lib/logic/formula.ts";
 import { sentencesOf } from "../../lib/logic/theory.ts";
 import type { MimeBundle } from "../session/evaluator.ts";
-import { type Block, code, type Inline, line, note, verdict } from "./blocks.ts";
+import { type Block, code, type Inline, leadingVerdict, line, note, verdict } from "./blocks.ts";
 import { renderBundle } from "./bundle.ts";
 import { sizeOf, structureBlocks } from "./structures.ts";
 import { budgetOf, claimOf, endText, pairReason, summarise } from "./summaries.ts";
@@ -44,7 +44,7 @@ export function showAnswer(statement: Statement, answer: Answer): Shown {
 function verdictLine(summary: string, answer: Answer): readonly Inline[] {
   const word = answer.verdict;
   if (word === null || !summary.startsWith(`${word}:`)) return [summary];
-  return [verdict(word), summary.slice(word.length)];
+  return [leadingVerdict(word), summary.slice(word.length + 2)];
 }
 
 /** What was asked, as the user wrote it. */

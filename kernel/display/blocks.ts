@@ -10,8 +10,8 @@ export type Inline =
   | { readonly kind: "formula"; readonly formula: Formula }
   /** What the user wrote or named. */
   | { readonly kind: "code"; readonly text: string }
-  /** A word of the closed lists of verdicts. */
-  | { readonly kind: "verdict"; readonly word: string };
+  /** A word of the closed lists of verdicts; one that leads a line is set off from what follows. */
+  | { readonly kind: "verdict"; readonly word: string; readonly leads: boolean };
 
 export interface TableBlock {
   readonly kind: "table";
@@ -44,6 +44,8 @@ export type Block =
   | PictureBlock
   /** Side by side where there is room. */
   | { readonly kind: "beside"; readonly blocks: readonly Block[] }
+  /** What belongs together, set off from what stands above. */
+  | { readonly kind: "group"; readonly blocks: readonly Block[] }
   /** Closed at first in HTML; open in the other forms. */
   | { readonly kind: "fold"; readonly title: string; readonly blocks: readonly Block[] };
 
@@ -60,7 +62,11 @@ export function code(text: string): Inline {
 }
 
 export function verdict(word: string): Inline {
-  return { kind: "verdict", word };
+  return { kind: "verdict", word, leads: false };
+}
+
+export function leadingVerdict(word: string): Inline {
+  return { kind: "verdict", word, leads: true };
 }
 
 export function formulaOf(formula: Formula): Inline {

@@ -83,10 +83,14 @@ function drawOne(relation: DrawnRelation, extents: readonly Extent[]): Plan {
   const { name, matrix, symmetric } = relation;
   const kind = orderKind(matrix);
   const empty = matrix.every((row) => !row.includes(true));
-  if (empty) return { places: layOutCircle(extents), arcs: [], remarks: [`${name} holds of no pair`] };
+  if (empty) return { places: layOutCircle(extents, 1), arcs: [], remarks: [`${name} holds of no pair`] };
   if (symmetric) {
+    const hasLoopsOnly = matrix.every((row, i) => row.every((holds, j) => i === j || !holds));
+    const remark = hasLoopsOnly
+      ? `a loop at x: ${name} holds of (x, x)`
+      : `${name} is symmetric: each line stands for both directions`;
     const plan = drawSeveral([relation], extents);
-    return { ...plan, remarks: [`${name} is symmetric: each line stands for both directions`] };
+    return { ...plan, remarks: [remark] };
   }
   if (kind !== null) {
     const pairs = coveringPairs(matrix);
@@ -113,7 +117,7 @@ function drawOne(relation: DrawnRelation, extents: readonly Extent[]): Plan {
  * points are bent apart, so that every one of them can be followed.
  */
 function drawSeveral(relations: readonly DrawnRelation[], extents: readonly Extent[]): Plan {
-  const places = layOutCircle(extents);
+  const places = layOutCircle(extents, relations.length);
   const arcs: Arc[] = [];
   const remarks = relations.length === 1 ? [] : ["an arrow from x to y: the relation holds of (x, y)"];
   if (relations.length > 1 && relations.some(({ symmetric }) => symmetric))
@@ -173,8 +177,8 @@ function loopArc(
   head: boolean,
   nested: number,
 ): Arc {
-  const reach = 26 + 15 * nested;
-  const spread = 0.62 + 0.1 * nested;
+  const reach = 26 + 19 * nested;
+  const spread = 0.55 + 0.3 * nested;
   const at = (turn: number, x: number, y: number): Place => ({
     x: place.x + Math.cos(angle + turn) * x,
     y: place.y + Math.sin(angle + turn) * y,

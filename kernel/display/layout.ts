@@ -66,13 +66,17 @@ export function layOutLayers(
   return { places, curves: arcs.map(([from, to]) => curves.get(`${from},${to}`)!) };
 }
 
-/** Points clockwise on a circle, the first on top; one point stands in the middle. */
-export function layOutCircle(extents: readonly Extent[]): readonly Place[] {
+/**
+ * Points clockwise on a circle, the first on top; one point stands in the middle.
+ * @param relations how many of them may hold between the same two points
+ */
+export function layOutCircle(extents: readonly Extent[], relations: number): readonly Place[] {
   const count = extents.length;
   if (count === 1) return [{ x: 0, y: 0 }];
   const widest = Math.max(...extents.map(({ width }) => width));
-  // Neighbours keep a gap of about two outlines; more points, more gaps.
-  const radius = Math.max(44, (count * (widest + 26)) / (2 * Math.PI));
+  // Lines that are bent apart need room between neighbours.
+  const gap = 26 + 24 * (relations - 1);
+  const radius = Math.max(44, (count * (widest + gap)) / (2 * Math.PI));
   if (count === 2)
     return [
       { x: -radius, y: 0 },

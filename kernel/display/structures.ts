@@ -12,6 +12,9 @@ const TABLE_POINTS = 16;
 /** Relations with more tuples are given by their number. */
 const LISTED_TUPLES = 400;
 
+/** Cell text longer than this is folded. */
+const SHORT_SOURCE = 160;
+
 /** How many elements: `3 points`. */
 export function sizeOf(structure: Structure): string {
   return counted(pointsOf(structure).size, "point");
@@ -37,7 +40,8 @@ export function sourceOf(structure: Structure): string | null {
  */
 export function structureBlocks(role: string, structure: Structure): readonly Block[] {
   const source = sourceOf(structure);
-  const first = source === null ? line(`${role}: ${sizeOf(structure)}`) : line(`${role}: `, code(source));
+  const isShort = source !== null && source.length <= SHORT_SOURCE;
+  const first = isShort ? line(`${role}: `, code(source)) : line(`${role}: ${sizeOf(structure)}`);
   const views: Block[] = [];
   const lists: Block[] = [];
   for (const { relation, holds } of structure.tables.values()) {
@@ -51,11 +55,11 @@ export function structureBlocks(role: string, structure: Structure): readonly Bl
   }
   const picture = drawStructure(structure);
   if (picture !== null) views.push(picture);
-  return [
-    first,
-    ...lists,
-    ...(views.length === 0 ? [] : [{ kind: "beside", blocks: views } satisfies Block]),
-  ];
+  const blocks: Block[] = [first, ...lists];
+  if (views.length > 0) blocks.push({ kind: "beside", blocks: views });
+  if (source !== null && !isShort)
+    blocks.push({ kind: "fold", title: "as cell text", blocks: [{ kind: "source", text: source }] });
+  return [{ kind: "group", blocks }];
 }
 
 /** Rows for the first place, columns for the second; 1 where the relation holds. */

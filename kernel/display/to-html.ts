@@ -43,7 +43,7 @@ function pieceToHtml(piece: Inline): string {
         piece.word === "open" ? GROUND.open : REFUTED.has(piece.word) ? GROUND.refuted : GROUND.settled;
       return (
         `<strong style="background-color:${ground};color:#ffffff;padding:1px 7px;border-radius:3px;` +
-        `white-space:nowrap">${escapeHtml(piece.word)}</strong>`
+        `white-space:nowrap">${escapeHtml(piece.word)}</strong>${piece.leads ? " " : ""}`
       );
     }
   }
@@ -71,6 +71,8 @@ function blockToHtml(block: Block): string {
       return `<div>${block.blocks
         .map((inner) => `<div style="${BESIDE}">${blockToHtml(inner)}</div>`)
         .join("")}</div>`;
+    case "group":
+      return `<div style="margin:10px 0 0 0">${block.blocks.map(blockToHtml).join("\n")}</div>`;
     case "fold":
       return (
         `<details style="margin:6px 0"><summary style="cursor:pointer">${escapeHtml(block.title)}</summary>` +

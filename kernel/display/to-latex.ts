@@ -92,7 +92,7 @@ function pieceToLatex(piece: Inline): string {
     case "code":
       return `\\texttt{${escapeLatex(piece.text)}}`;
     case "verdict":
-      return `\\textbf{${escapeLatex(piece.word)}}`;
+      return `\\textbf{${escapeLatex(piece.word)}}${piece.leads ? ": " : ""}`;
   }
 }
 
@@ -111,6 +111,7 @@ function blockToLatex(block: Block): string {
       return tableToLatex(block);
     case "picture":
       return "";
+    case "group":
     case "beside":
       return blocksToLatex(block.blocks);
     case "fold":

@@ -22,7 +22,7 @@ function pieceToText(piece: Inline): string {
     case "code":
       return visible(piece.text);
     case "verdict":
-      return piece.word;
+      return piece.leads ? `${piece.word}: ` : piece.word;
   }
 }
 
@@ -40,6 +40,8 @@ function blockToText(block: Block): string {
       return "";
     case "beside":
       return blocksToText(block.blocks);
+    case "group":
+      return `\n${blocksToText(block.blocks)}`;
     case "fold":
       return `\n${visible(block.title)}\n${blocksToText(block.blocks)}`;
   }
@@ -61,16 +63,15 @@ function tableToText(table: TableBlock): string {
       .map((cell, column) => (column === last ? cell : padEnd(cell, widths[column]!)))
       .join(gap)
       .trimEnd();
-  const lines = [
-    set(head),
-    "─".repeat(displayWidth(set(widths.map((width) => "x".repeat(Math.min(width, WIDTH)))))),
-  ];
+  const lines: string[] = [];
   for (const row of rows) {
     const pieces = table.look === "prose" ? wrap(row[last]!, lastWidth) : [row[last]!];
     lines.push(set([...row.slice(0, last), pieces[0]!]));
     const indent = " ".repeat(widths.slice(0, last).reduce((sum, width) => sum + width + gap.length, 0) + 2);
     for (const more of pieces.slice(1)) lines.push(indent + more);
   }
+  const headLine = set(head);
+  lines.unshift(headLine, "─".repeat(Math.max(...[headLine, ...lines].map(displayWidth))));
   const body = lines.join("\n");
   return table.caption === null ? body : `${visible(table.caption)}\n${body}`;
 }
