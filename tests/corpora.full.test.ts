@@ -1,0 +1,216 @@
+/**
+ * Verdicts against collected check values; tests/data/README.md says where they come from. In this version nothing is
+ * answered `holds` by derivation: an entailment that holds must come out `open`, with no countermodel.
+ */
+import { describe, expect, it } from "vitest";
+import { tuplesOf } from "../lib/carriers/structure.ts";
+import { checkFinite } from "../lib/inquiry/check-finite.ts";
+import { askEntails, askEquivalent } from "../lib/inquiry/claims.ts";
+import { compareTheories } from "../lib/inquiry/compare.ts";
+import { askIndependence } from "../lib/inquiry/independence.ts";
+import { unwatchedWork, type Work } from "../lib/inquiry/work.ts";
+import { and } from "../lib/logic/formula.ts";
+import {
+  claims,
+  entryOf,
+  infiniteOnly,
+  propertySentences,
+  questions,
+  readSentences,
+  readTheory,
+  theoryOf,
+  values,
+} from "./support/corpora.ts";
+import { lawSentence } from "./support/relation-algebra.ts";
+
+function upTo(size: number): Work {
+  return { ...unwatchedWork, upTo: size };
+}
+
+describe("claims.json: entailments (smallest countermodels by exhaustive search)", () => {
+  it.each(claims.map((claim) => [claim.id, claim] as const))("%s", (_, claim) => {
+    const [conclusion, ...premises] = readSentences([claim.conclusion, ...claim.premises]);
+    const answer = askEntails(theoryOf(premises), conclusion!, unwatchedWork);
+    if (claim.expected !== "fails") {
+      expect(answer.verdict).toBe("open");
+      expect(answer.searches[0]!.noneUpTo).toBeGreaterThanOrEqual(5);
+      return;
+    }
+    expect(answer.verdict).toBe("fails");
+    expect(answer.evidence).not.toBeNull();
+    const points = answer.structures[0]!.structure.carrier.size!;
+    const { smallest_countermodel: smallest, countermodel_status: status } = claim;
+    if (status!.startsWith("smallest")) expect(points).toBe(smallest!.points);
+    else {
+      // Only known: none on 1 to 5 points, and one on this many.
+      expect(points).toBeGreaterThan(5);
+      expect(points).toBeLessThanOrEqual(smallest!.points);
+    }
+  });
+});
+
+describe("questions.json: entailments", () => {
+  it.each(questions.map((question) => [question.id, question] as const))("%s", (_, question) => {
+    const [conclusion, ...premises] = readSentences([question.conclusion, ...question.premises]);
+    const answer = askEntails(theoryOf(premises), conclusion!, upTo(question.expected === "fails" ? 8 : 4));
+    expect(answer.verdict).toBe(question.expected === "fails" ? "fails" : "open");
+    if (question.smallest_countermodel_points !== undefined)
+      expect(answer.structures[0]!.structure.carrier.size).toBe(question.smallest_countermodel_points);
+  });
+});
+
+describe("infinite-only.json: satisfiable, without a finite model", () => {
+  it.each(infiniteOnly.map((entry) => [entry.id, entry.axioms] as const))(
+    "%s is open, none up to 6",
+    (_, axioms) => {
+      const answer = checkFinite(readTheory(axioms), upTo(6));
+      expect(answer).toMatchObject({ verdict: "open", leastSize: null, modelSize: null, noModelUpTo: 6 });
+    },
+  );
+});
+
+describe("category b: implications between properties (Burghardt 2018, arXiv 1806.05036)", () => {
+  const matrix = entryOf("b-implication-matrix").expected as Record<string, Record<string, number | null>>;
+  const single = new Set(entryOf("b-single-implications").expected as string[]);
+  const pairs = Object.entries(matrix).flatMap(([left, row]) =>
+    Object.entries(row).map(([right, points]) => ({ left, right, points })),
+  );
+
+  it("covers all ordered pairs of 24 properties", () => expect(pairs.length).toBe(24 * 23));
+
+  it.each(Object.keys(matrix))("%s against the 23 others: smallest number of points", (code) => {
+    for (const { left, right, points } of pairs.filter((pair) => pair.left === code)) {
+      const conclusion = and(...readSentences(propertySentences(right)));
+      const answer = askEntails(readTheory(propertySentences(left)), conclusion, upTo(5));
+      expect(answer.verdict, `${left} -> ${right}`).toBe(points === null ? "open" : "fails");
+      if (points !== null)
+        expect(answer.structures[0]!.structure.carrier.size, `${left} -> ${right}`).toBe(points);
+      if (single.has(`${left} -> ${right}`)) expect(points).toBeNull();
+    }
+  });
+
+  it("asymmetric and dense implies empty on up to 6 points, and fails at 7", () => {
+    const premises = readTheory([...propertySentences("as"), ...propertySentences("de")]);
+    const [empty] = readSentences(["forall x y. ~R(x,y)"]);
+    expect(askEntails(premises, empty!, upTo(6)).verdict).toBe("open");
+    expect(askEntails(premises, empty!, upTo(7)).structures[0]!.structure.carrier.size).toBe(7);
+  });
+
+  it("pairs that exclude each other from some size on occur together on a smaller one", () => {
+    for (const pair of entryOf("b-exclusions-from-size").expected as string[]) {
+      const theory = readTheory(
+        pair.split(" & ").flatMap((code) => propertySentences(code)),
+        undefined,
+      );
+      const answer = checkFinite(theory, upTo(5));
+      expect(answer.verdict, pair).toBe("finite");
+      expect(answer.leastSize, pair).toBeLessThan(5);
+    }
+  });
+});
+
+describe("category e: equivalences of axiom sets", () => {
+  const entries = values.filter((entry) => entry.id.startsWith("e-equiv"));
+  it.each(entries.map((entry) => [entry.id, entry] as const))("%s", (_, entry) => {
+    const { first, second } = entry.statement as { first: string[]; second: string[] };
+    const answer = askEquivalent(readTheory(first), readTheory(second), unwatchedWork);
+    if (entry.expected === "equivalent") {
+      expect(answer.verdict).toBe("open");
+      expect(answer.searches[0]!.noneUpTo).toBeGreaterThanOrEqual(5);
+      return;
+    }
+    expect(answer.verdict).toBe("fails");
+    const points = answer.structures[0]!.structure.carrier.size;
+    const difference = entry.smallest_difference as { points: number } | undefined;
+    expect(points).toBe(difference?.points ?? 7);
+  });
+
+  it("e-equiv-31 first differs at 7 points", () => {
+    expect(entryOf("e-equiv-31").expected).toMatch(/differ at 7$/);
+  });
+});
+
+describe("category e: independence of axioms", () => {
+  interface AxiomExpected {
+    readonly independent: boolean;
+    readonly smallest_witness?: { readonly points: number };
+  }
+  const entries = values.filter((entry) => entry.id.startsWith("e-indep"));
+  it.each(entries.map((entry) => [entry.id, entry] as const))("%s", (_, entry) => {
+    const { axioms } = entry.statement as { axioms: Record<string, string> };
+    const labels = Object.keys(axioms);
+    const answer = askIndependence(readTheory(Object.values(axioms), labels), upTo(6));
+    for (const axiom of answer.axioms) {
+      const expected = (entry.expected as Record<string, AxiomExpected>)[axiom.label]!;
+      const witness = expected.smallest_witness;
+      expect(axiom.verdict, axiom.label).toBe(witness === undefined ? "open" : "independent");
+      if (witness !== undefined) expect(axiom.witness!.carrier.size, axiom.label).toBe(witness.points);
+    }
+  });
+});
+
+describe("category c: fifteen classes of frames (Garson, Stanford Encyclopedia of Philosophy, from memory)", () => {
+  const conditions = {
+    D: "forall x. exists y. R(x,y)",
+    T: "forall x. R(x,x)",
+    B: "forall x y. R(x,y) -> R(y,x)",
+    "4": "forall x y z. R(x,y) & R(y,z) -> R(x,z)",
+    "5": "forall x y z. R(x,y) & R(x,z) -> R(y,z)",
+  } as const;
+
+  it("every pair of classes that are not included one in the other is told apart on up to 3 points", () => {
+    const { covers } = entryOf("c-cube-order").expected as { covers: [string, string][] };
+    const names = [...new Set(covers.flat())].sort();
+    expect(names.length).toBe(15);
+    const theories = names.map((name) => ({
+      name,
+      theory: readTheory([...name.slice(1)].map((letter) => conditions[letter as keyof typeof conditions])),
+    }));
+    const includes = new Set(covers.map(([weaker, stronger]) => `${weaker} ${stronger}`));
+    for (const middle of names)
+      for (const left of names)
+        for (const right of names)
+          if (includes.has(`${left} ${middle}`) && includes.has(`${middle} ${right}`))
+            includes.add(`${left} ${right}`);
+    expect(includes.size).toBe(54);
+    const answer = compareTheories(theories, upTo(4));
+    for (const pair of answer.pairs) {
+      const [left, right] = [names[pair.left]!, names[pair.right]!];
+      // A model of one that is none of the other exists unless the first is the stronger.
+      expect(pair.leftOnly !== null, `${left} without ${right}`).toBe(!includes.has(`${right} ${left}`));
+      expect(pair.rightOnly !== null, `${right} without ${left}`).toBe(!includes.has(`${left} ${right}`));
+      expect(pair.jointlyInconsistent).toBe(false);
+    }
+  });
+});
+
+describe("category h: laws of relation algebra (Tarski 1941; Schmidt & Ströhlein 1993; Maddux 2006)", () => {
+  const entries = values.filter((entry) => entry.category === "h");
+  it.each(entries.map((entry) => [entry.id, entry] as const))("%s", (_, entry) => {
+    const { law } = entry.statement as { law: string };
+    const answer = askEntails(theoryOf([]), lawSentence(law), upTo(3));
+    if (entry.expected === "not valid") {
+      expect(answer.verdict).toBe("fails");
+      const { points } = entry.smallest_counterexample as { points: number };
+      expect(answer.structures[0]!.structure.carrier.size).toBe(points);
+    } else {
+      expect(answer.verdict).toBe("open");
+      expect(answer.searches[0]!.noneUpTo).toBe(3);
+    }
+  });
+});
+
+describe("the countermodels themselves", () => {
+  it("a published countermodel of transitivity from weak connectedness is found as such (claims.json, cl-075)", () => {
+    const claim = claims.find((entry) => entry.id === "cl-075")!;
+    const [conclusion, ...premises] = readSentences([claim.conclusion, ...claim.premises]);
+    const answer = askEntails(theoryOf(premises), conclusion!, unwatchedWork);
+    const tuples = tuplesOf(answer.structures[0]!.structure, "R");
+    const has = (x: number, y: number) => tuples.some(([a, b]) => a === x && b === y);
+    const points = [1, 2, 3];
+    expect(points.every((x) => points.every((y) => has(x, y) || has(y, x)))).toBe(true);
+    expect(
+      points.some((x) => points.some((y) => points.some((z) => has(x, y) && has(y, z) && !has(x, z)))),
+    ).toBe(true);
+  });
+});
