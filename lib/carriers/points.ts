@@ -25,8 +25,12 @@ export class Points implements Carrier<PointsConfiguration> {
   }
 
   extensions(configuration: PointsConfiguration): readonly PointsConfiguration[] {
-    const extended: PointsConfiguration[] = [];
-    for (let point = 0; point < this.size; point += 1) extended.push([...configuration, point]);
+    const extended = new Array<PointsConfiguration>(this.size);
+    for (let point = 0; point < this.size; point += 1) {
+      const longer = configuration.slice();
+      longer.push(point);
+      extended[point] = longer;
+    }
     return extended;
   }
 
@@ -44,7 +48,7 @@ export class Points implements Carrier<PointsConfiguration> {
 
   kindOf(configuration: PointsConfiguration, places: readonly number[]): number {
     let kind = 0;
-    for (const place of places) kind = kind * this.size + configuration[place]!;
+    for (let i = 0; i < places.length; i += 1) kind = kind * this.size + configuration[places[i]!]!;
     return kind;
   }
 

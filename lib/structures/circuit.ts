@@ -31,6 +31,8 @@ export class Circuit {
   /** Open addressing over gate numbers, 0 where empty. Its length is a power of two. */
   #index = new Int32Array(2048);
   #gates = 0;
+  /** References about to become a gate. */
+  #scratch = new Int32Array(64);
   readonly #meter: Meter;
 
   constructor(meter: Meter) {
@@ -57,47 +59,64 @@ export class Circuit {
     return this.#children.subarray(this.#starts[node]!, this.#starts[node + 1]!);
   }
 
-  or(references: readonly Reference[]): Reference {
-    return -this.and(references.map((reference) => -reference));
+  and(first: Reference, second: Reference): Reference {
+    this.#scratch[0] = first;
+    this.#scratch[1] = second;
+    return this.#simplified(2);
   }
 
-  /** The conjunction, simplified: constants and repeats left out, contradictory references found. */
-  and(references: readonly Reference[]): Reference {
-    const sorted = Int32Array.from(references).sort();
+  or(first: Reference, second: Reference): Reference {
+    return -this.and(-first, -second);
+  }
+
+  /** The conjunction of any number of references. */
+  conjunction(references: readonly Reference[]): Reference {
+    if (references.length > this.#scratch.length) this.#scratch = new Int32Array(references.length * 2);
+    for (let i = 0; i < references.length; i += 1) this.#scratch[i] = references[i]!;
+    return this.#simplified(references.length);
+  }
+
+  /**
+   * The conjunction of the first references in the scratch array, which it reorders: constants and repeats are left
+   * out, contradictory references found.
+   */
+  #simplified(length: number): Reference {
+    const scratch = this.#scratch;
+    sortFront(scratch, length);
     let count = 0;
-    for (let i = 0; i < sorted.length; i += 1) {
-      const reference = sorted[i]!;
+    for (let i = 0; i < length; i += 1) {
+      const reference = scratch[i]!;
       if (reference === FALSE) return FALSE;
-      if (reference === TRUE || (count > 0 && sorted[count - 1] === reference)) continue;
-      sorted[count] = reference;
+      if (reference === TRUE || (count > 0 && scratch[count - 1] === reference)) continue;
+      scratch[count] = reference;
       count += 1;
     }
     // References ascend, so x and −x stand at mirrored places: walk inwards from both ends.
     for (let low = 0, high = count - 1; low < high; ) {
-      const sum = sorted[low]! + sorted[high]!;
+      const sum = scratch[low]! + scratch[high]!;
       if (sum === 0) return FALSE;
       if (sum < 0) low += 1;
       else high -= 1;
     }
     if (count === 0) return TRUE;
-    if (count === 1) return sorted[0]!;
-    return this.#gate(sorted.subarray(0, count));
+    return count === 1 ? scratch[0]! : this.#gate(count);
   }
 
-  #gate(children: Int32Array): Reference {
-    let slot = hash(children) & (this.#index.length - 1);
-    for (; this.#index[slot] !== 0; slot = (slot + 1) & (this.#index.length - 1)) {
-      const gate = this.#index[slot]!;
-      if (sameChildren(this.childrenOf(gate), children)) return gate;
-    }
-    if (this.#used + children.length > CHILDREN_BOUND) this.#meter.endForMemory();
-    if (this.#used + children.length > this.#children.length) {
-      const larger = new Int32Array(Math.max(this.#children.length * 2, this.#used + children.length));
+  /** The gate whose children are the first references in the scratch array, made if it is new. */
+  #gate(length: number): Reference {
+    const scratch = this.#scratch;
+    const mask = this.#index.length - 1;
+    let slot = hash(scratch, 0, length) & mask;
+    for (; this.#index[slot] !== 0; slot = (slot + 1) & mask)
+      if (this.#hasChildren(this.#index[slot]!, length)) return this.#index[slot]!;
+    if (this.#used + length > CHILDREN_BOUND) this.#meter.endForMemory();
+    if (this.#used + length > this.#children.length) {
+      const larger = new Int32Array(Math.max(this.#children.length * 2, this.#used + length));
       larger.set(this.#children.subarray(0, this.#used));
       this.#children = larger;
     }
-    this.#children.set(children, this.#used);
-    this.#used += children.length;
+    for (let i = 0; i < length; i += 1) this.#children[this.#used + i] = scratch[i]!;
+    this.#used += length;
     this.#starts.push(this.#used);
     const gate = this.nodeCount;
     this.#index[slot] = gate;
@@ -106,28 +125,47 @@ export class Circuit {
     return gate;
   }
 
+  #hasChildren(gate: number, length: number): boolean {
+    const start = this.#starts[gate]!;
+    if (this.#starts[gate + 1]! - start !== length) return false;
+    for (let i = 0; i < length; i += 1) if (this.#children[start + i] !== this.#scratch[i]) return false;
+    return true;
+  }
+
   #growIndex(): void {
     const old = this.#index;
     this.#index = new Int32Array(old.length * 2);
     const mask = this.#index.length - 1;
     for (const gate of old) {
       if (gate === 0) continue;
-      let slot = hash(this.childrenOf(gate)) & mask;
+      let slot = hash(this.#children, this.#starts[gate]!, this.#starts[gate + 1]!) & mask;
       while (this.#index[slot] !== 0) slot = (slot + 1) & mask;
       this.#index[slot] = gate;
     }
   }
 }
 
-function hash(children: Int32Array): number {
-  let value = children.length;
-  for (const child of children) {
-    value = Math.imul(value ^ child, 0x9e3779b1);
+/** References up to which insertion beats the library's sort. */
+const FEW = 16;
+
+function sortFront(array: Int32Array, length: number): void {
+  if (length > FEW) {
+    array.subarray(0, length).sort();
+    return;
+  }
+  for (let i = 1; i < length; i += 1) {
+    const value = array[i]!;
+    let place = i;
+    for (; place > 0 && array[place - 1]! > value; place -= 1) array[place] = array[place - 1]!;
+    array[place] = value;
+  }
+}
+
+function hash(array: Int32Array, from: number, to: number): number {
+  let value = to - from;
+  for (let i = from; i < to; i += 1) {
+    value = Math.imul(value ^ array[i]!, 0x9e3779b1);
     value ^= value >>> 15;
   }
   return value >>> 0;
-}
-
-function sameChildren(left: Int32Array, right: Int32Array): boolean {
-  return left.length === right.length && left.every((child, index) => child === right[index]);
 }

@@ -2,52 +2,30 @@
 import type { Structure } from "../carriers/structure.ts";
 import type { Formula } from "../logic/formula.ts";
 import type { Meter } from "../logic/meter.ts";
-import { enter, type Plan, planSentence } from "./plan.ts";
+import { Memory, type Plan, planSentence, type QuantifierPlan } from "./plan.ts";
 
 /** Visits that are counted before the meter hears of them. */
 const METERED_AT_ONCE = 1024;
 
 /**
  * Whether a sentence is true in a structure that interprets all its relations.
+ * @param meter counts a thousandth of a step for each subformula looked at
  * @throws WorkEnded when the meter's budget ends or the user interrupts
  */
 export function satisfies(structure: Structure, sentence: Formula, meter: Meter): boolean {
   const { carrier, tables } = structure;
-  const plan = planSentence(sentence);
-  const memories = new Map<number, Map<string | number, boolean>>();
+  const memory = new Memory<boolean>();
   let unmetered = 0;
-  const result = truth(plan, carrier.empty);
+  const result = truth(planSentence(sentence), carrier.empty);
   meter.charge(unmetered);
   return result;
 
-  function truth(node: Plan, outer: unknown): boolean {
+  function truth(node: Plan, configuration: unknown): boolean {
     unmetered += 1;
     if (unmetered >= METERED_AT_ONCE) {
       meter.charge(unmetered);
       unmetered = 0;
     }
-    const configuration = enter(carrier, node, outer);
-    if ((node.kind === "forall" || node.kind === "exists") && node.recurs)
-      return remembered(node, configuration);
-    return compute(node, configuration);
-  }
-
-  function remembered(node: Plan, configuration: unknown): boolean {
-    let memory = memories.get(node.id);
-    if (memory === undefined) {
-      memory = new Map();
-      memories.set(node.id, memory);
-    }
-    const key = carrier.key(configuration);
-    let known = memory.get(key);
-    if (known === undefined) {
-      known = compute(node, configuration);
-      memory.set(key, known);
-    }
-    return known;
-  }
-
-  function compute(node: Plan, configuration: unknown): boolean {
     switch (node.kind) {
       case "true":
         return true;
@@ -72,10 +50,23 @@ export function satisfies(structure: Structure, sentence: Formula, meter: Meter)
       case "iff":
         return truth(node.first, configuration) === truth(node.second, configuration);
       case "forall":
-        return carrier.extensions(configuration, node.toCome).every((extended) => truth(node.body, extended));
       case "exists":
-        return carrier.extensions(configuration, node.toCome).some((extended) => truth(node.body, extended));
+        return quantified(node, configuration);
     }
+  }
+
+  function quantified(node: QuantifierPlan, outer: unknown): boolean {
+    const configuration = node.places === null ? outer : carrier.restrict(outer, node.places);
+    const key = node.recurs ? carrier.key(configuration) : null;
+    const known = key === null ? undefined : memory.get(node, key);
+    if (known !== undefined) return known;
+    const extensions = carrier.extensions(configuration, node.toCome);
+    const result =
+      node.kind === "forall"
+        ? extensions.every((extended) => truth(node.body, extended))
+        : extensions.some((extended) => truth(node.body, extended));
+    if (key !== null) memory.set(node, key, result);
+    return result;
   }
 }
 

@@ -4,7 +4,7 @@ import type { Formula, RelationSymbol } from "../logic/formula.ts";
 import type { Meter } from "../logic/meter.ts";
 import { LARGEST_TABLES } from "../logic/structure-definition.ts";
 import { type Circuit, FALSE, type Reference, TRUE } from "./circuit.ts";
-import { enter, type Plan, planSentence } from "./plan.ts";
+import { Memory, type Plan, planSentence, type QuantifierPlan } from "./plan.ts";
 
 /** Visits that are counted before the meter hears of them. */
 const METERED_AT_ONCE = 1024;
@@ -44,36 +44,18 @@ export function ground(
   circuit: Circuit,
   meter: Meter,
 ): Reference {
-  const memories = new Map<number, Map<string | number, Reference>>();
+  const memory = new Memory<Reference>();
   let unmetered = 0;
   const result = unfold(planSentence(sentence), carrier.empty);
   meter.charge(unmetered);
   return result;
 
-  function unfold(node: Plan, outer: unknown): Reference {
+  function unfold(node: Plan, configuration: unknown): Reference {
     unmetered += 1;
     if (unmetered >= METERED_AT_ONCE) {
       meter.charge(unmetered);
       unmetered = 0;
     }
-    const configuration = enter(carrier, node, outer);
-    if (!node.recurs || node.kind === "atom" || node.kind === "equal" || node.kind === "not")
-      return compute(node, configuration);
-    let memory = memories.get(node.id);
-    if (memory === undefined) {
-      memory = new Map();
-      memories.set(node.id, memory);
-    }
-    const key = carrier.key(configuration);
-    let known = memory.get(key);
-    if (known === undefined) {
-      known = compute(node, configuration);
-      memory.set(key, known);
-    }
-    return known;
-  }
-
-  function compute(node: Plan, configuration: unknown): Reference {
     switch (node.kind) {
       case "true":
         return TRUE;
@@ -86,49 +68,53 @@ export function ground(
       case "not":
         return -unfold(node.body, configuration);
       case "and":
-        return conjunction(node.parts, configuration, 1);
+        return junction(node.parts, configuration, 1);
       case "or":
-        return -conjunction(node.parts, configuration, -1);
+        return junction(node.parts, configuration, -1);
       case "implies": {
         const first = unfold(node.first, configuration);
-        if (first === FALSE) return TRUE;
-        return circuit.or([-first, unfold(node.second, configuration)]);
+        return first === FALSE ? TRUE : circuit.or(-first, unfold(node.second, configuration));
       }
       case "iff": {
         const first = unfold(node.first, configuration);
         const second = unfold(node.second, configuration);
-        return circuit.and([circuit.or([-first, second]), circuit.or([first, -second])]);
+        return circuit.and(circuit.or(-first, second), circuit.or(first, -second));
       }
       case "forall":
-        return quantified(node, configuration, 1);
       case "exists":
-        return -quantified(node, configuration, -1);
+        return quantified(node, configuration);
     }
   }
 
-  /** The conjunction of the parts, each times the sign. */
-  function conjunction(parts: readonly Plan[], configuration: unknown, sign: 1 | -1): Reference {
+  /** A conjunction, or with the sign −1 a disjunction, of the parts. */
+  function junction(parts: readonly Plan[], configuration: unknown, sign: 1 | -1): Reference {
     const references: Reference[] = [];
     for (const part of parts) {
       const reference = sign * unfold(part, configuration);
-      if (reference === FALSE) return FALSE;
+      if (reference === FALSE) return sign * FALSE;
       references.push(reference);
     }
-    return circuit.and(references);
+    return sign * circuit.conjunction(references);
   }
 
-  /** The conjunction over all extensions of the body, times the sign. */
-  function quantified(
-    node: Plan & { kind: "forall" | "exists" },
-    configuration: unknown,
-    sign: 1 | -1,
-  ): Reference {
+  function quantified(node: QuantifierPlan, outer: unknown): Reference {
+    const configuration = node.places === null ? outer : carrier.restrict(outer, node.places);
+    const key = node.recurs ? carrier.key(configuration) : null;
+    const known = key === null ? undefined : memory.get(node, key);
+    if (known !== undefined) return known;
+    const sign = node.kind === "forall" ? 1 : -1;
     const references: Reference[] = [];
+    let result: Reference | null = null;
     for (const extended of carrier.extensions(configuration, node.toCome)) {
       const reference = sign * unfold(node.body, extended);
-      if (reference === FALSE) return FALSE;
+      if (reference === FALSE) {
+        result = sign * FALSE;
+        break;
+      }
       references.push(reference);
     }
-    return circuit.and(references);
+    result ??= sign * circuit.conjunction(references);
+    if (key !== null) memory.set(node, key, result);
+    return result;
   }
 }
