@@ -1,0 +1,373 @@
+/**
+ * One reader for each statement, by its first word. To add a statement: its type in statements.ts, its help in
+ * help.ts, its reader here.
+ */
+import type { RelationSymbol, Variable } from "../logic/formula.ts";
+import { readClaim, readConclusion } from "./claims.ts";
+import { countOf, kindText, readClosed } from "./formulas.ts";
+import { isRelationSign, type Token } from "./lexer.ts";
+import { isKeptWord, isVariable, type NameKind } from "./names.ts";
+import { readWhole } from "./numbers.ts";
+import { readOptions } from "./options.ts";
+import { isStatementWord, quote, type Reader } from "./reader.ts";
+import type { Definition, NamedTheory, Statement, StatementKind } from "./statements.ts";
+import { isStructureAhead, readStructure } from "./structures.ts";
+import { expressionAhead } from "./subjects.ts";
+import { readTheory } from "./theories.ts";
+import { keptSymbols } from "./tokens.ts";
+
+type WithoutBase<T> = T extends unknown ? Omit<T, "from" | "to" | "text"> : never;
+/** A statement without its source. */
+export type StatementBody = WithoutBase<Statement>;
+
+/** A name that the statement binds even if it has a mistake, so that its uses are not mistakes on top of that. */
+export interface Binding {
+  readonly name: string;
+  readonly as: NameKind | null;
+}
+
+/** Reads a statement after its first word; null after a mistake. Adds to `bindings` what it will bind. */
+export type StatementReader = (reader: Reader, bindings: Binding[]) => StatementBody | null;
+
+/** The most places that a relation may have. */
+const MOST_PLACES = 100;
+
+export const statementReaders: Readonly<Record<StatementKind, StatementReader>> = {
+  relation: readRelation,
+  define: readDefine,
+  describe: readDescribe,
+  derive: readDerive,
+  claim: (reader) => readStatedClaim(reader, "claim"),
+  conjecture: (reader) => readStatedClaim(reader, "conjecture"),
+  "check-finite": (reader) => readQuestion(reader, "check-finite"),
+  dualise: (reader) => readQuestion(reader, "dualise"),
+  compare: readCompare,
+  independence: (reader) => readQuestion(reader, "independence"),
+  models: readModels,
+};
+
+// Declarations
+
+function readRelation(reader: Reader, bindings: Binding[]): StatementBody | null {
+  const relations: RelationSymbol[] = [];
+  let sound = true;
+  do {
+    reader.crossLine();
+    const name = reader.peek();
+    if (name.kind !== "word" && name.kind !== "relation-sign") failName(reader, "relation");
+    reader.next();
+    const mistakes = reader.diagnostics.length;
+    checkNewName(reader, name, "relation");
+    if (reader.diagnostics.length === mistakes) bindings.push({ name: name.text, as: "relation" });
+    const symbol = readSymbol(reader, name);
+    if (relations.some((relation) => relation.name === name.text))
+      reader.report(
+        "relation-twice",
+        name,
+        `${quote(name.text)} is declared twice in one statement`,
+        "leave one out",
+      );
+    if (symbol === null || reader.diagnostics.length > mistakes) sound = false;
+    else relations.push(symbol);
+  } while (reader.accept("comma") !== null);
+  return sound ? { kind: "relation", relations } : null;
+}
+
+/** Reads `of 3 places` and `infix` after a name. */
+function readSymbol(reader: Reader, name: Token): RelationSymbol | null {
+  let places: number | null = 2;
+  let infix = false;
+  for (;;) {
+    if (reader.acceptWord("of") !== null) {
+      places = readWhole(reader, "how many places the relation has");
+      if (reader.acceptWord("places") === null && reader.acceptWord("place") === null)
+        reader.failExpected("`places`", `write \`relation ${name.text} of ${places ?? 3} places\``);
+    } else if (reader.acceptWord("infix") !== null) infix = true;
+    else break;
+  }
+  if (places === null) return null;
+  if (places > MOST_PLACES)
+    reader.report(
+      "size-too-large",
+      name,
+      `${quote(name.text)} would have ${places} places; the most is ${MOST_PLACES}`,
+    );
+  if (infix && places !== 2)
+    reader.report(
+      "places-differ",
+      name,
+      `${quote(name.text)} has ${countOf(places, "place")}, and only a relation of 2 places stands between its arguments`,
+      "leave out `infix`",
+    );
+  return { name: name.text, places, infix };
+}
+
+function failName(reader: Reader, what: string): never {
+  const token = reader.peek();
+  if (token.kind === "number" || token.kind === "end" || token.kind === "unknown")
+    return reader.failExpected(`the name of a ${what}`);
+  if (keptSymbols.has(token.text) || reader.peek().kind !== "relation-sign")
+    return reader.fail(
+      "kept-word",
+      token,
+      `${quote(token.text)} is a sign of the language and cannot be the name of a ${what}`,
+      "take another name",
+    );
+  return reader.failExpected(`the name of a ${what}`);
+}
+
+/** Reports whatever keeps a word or symbol from becoming a name. */
+function checkNewName(reader: Reader, name: Token, what: "relation" | "definition"): void {
+  const text = name.text;
+  if (isVariable(text))
+    return reader.report(
+      "variable-as-name",
+      name,
+      `${quote(text)} is a variable and cannot be the name of a ${what}`,
+      `begin with a capital letter, \`${text[0]!.toUpperCase()}${text.slice(1)}\`, or use a longer word`,
+    );
+  if (isKeptWord(text) || keptSymbols.has(text))
+    return reader.report(
+      "kept-word",
+      name,
+      `${quote(text)} ${keptSymbols.has(text) ? "is kept for relation terms" : "is a word of the language"} and cannot be the name of a ${what}`,
+      "take another name",
+    );
+  if (name.kind === "relation-sign" && !isRelationSign(text))
+    return reader.report(
+      "kept-word",
+      name,
+      `${quote(text)} cannot be the name of a ${what}`,
+      "take another name",
+    );
+  const named = reader.names.find(text);
+  if (named === null || named.kind === "damaged") return;
+  const isRelation = named.kind === "relation";
+  if (isRelation === (what === "relation")) return;
+  reader.report(
+    "name-taken",
+    name,
+    isRelation && !reader.names.isDeclared
+      ? `${quote(text)} is the relation that is there while none is declared`
+      : `${quote(text)} is already ${kindText(named.kind)}`,
+    "take another name",
+  );
+}
+
+function readDefine(reader: Reader, bindings: Binding[]): StatementBody | null {
+  const name = reader.peek();
+  if (name.kind !== "word") failName(reader, "definition");
+  reader.next();
+  const mistakes = reader.diagnostics.length;
+  checkNewName(reader, name, "definition");
+  const bind = (as: NameKind | null) => {
+    bindings.length = 0;
+    bindings.push({ name: name.text, as });
+  };
+  const isFree = reader.diagnostics.length === mistakes;
+  if (isFree) bind(null);
+  const parameters = reader.at("open") ? readParameters(reader, name) : null;
+  if (isFree && parameters !== null) bind("formula");
+  readAssign(reader);
+  reader.crossLine();
+  const kind = parameters !== null ? "formula" : expressionAhead(reader);
+  if (isFree && kind !== "unknown") bind(kind);
+  const definition = readDefinition(reader, name.text, parameters, kind);
+  return definition === null || reader.diagnostics.length > mistakes ? null : { kind: "define", definition };
+}
+
+function readAssign(reader: Reader): void {
+  const sign = reader.peek();
+  if (sign.kind === "equal" || sign.kind === "colon") {
+    reader.report("unexpected", sign, `expected \`:=\`, found ${quote(sign.text)}`, "write `:=`");
+    reader.next();
+    if (sign.kind === "colon") reader.accept("equal");
+  } else reader.expect("assign", "a definition is written `define Name := …` or `define Name(x, y) := …`");
+}
+
+function readParameters(reader: Reader, name: Token): readonly Variable[] {
+  reader.next();
+  const parameters: Variable[] = [];
+  reader.withLines(false, () => {
+    if (reader.accept("close") !== null) {
+      reader.report(
+        "unexpected",
+        reader.last,
+        "expected a variable, found `)`",
+        `write \`define ${name.text} := …\``,
+      );
+      return;
+    }
+    do {
+      const token = reader.peek();
+      if (token.kind !== "word" || !isVariable(token.text))
+        reader.failExpected(
+          `a variable as parameter of ${quote(name.text)}`,
+          "variables are single lower-case letters with digits or primes",
+        );
+      reader.next();
+      if (parameters.includes(token.text))
+        reader.report(
+          "variable-twice",
+          token,
+          `${quote(name.text)} has two parameters ${quote(token.text)}`,
+          "give one of them another name",
+        );
+      parameters.push(token.text);
+    } while (reader.accept("comma") !== null);
+    reader.expect("close");
+  });
+  return parameters;
+}
+
+function readDefinition(
+  reader: Reader,
+  name: string,
+  parameters: readonly Variable[] | null,
+  kind: ReturnType<typeof expressionAhead>,
+): Definition | null {
+  switch (kind) {
+    case "theory": {
+      const theory = readTheory(reader);
+      return theory === null ? null : { kind, name, theory: theory.theory };
+    }
+    case "structure": {
+      const structure = readStructure(reader);
+      return structure === null ? null : { kind, name, structure: structure.structure };
+    }
+    case "formula": {
+      const body = readClosed(reader, `the definition of ${quote(name)}`, parameters ?? []);
+      return body === null ? null : { kind, name, parameters: parameters ?? [], body: body.formula };
+    }
+    case "relation":
+      return failRelation(reader, "a theory, a structure or a formula");
+    case "unknown":
+      return readUnknown(reader);
+  }
+}
+
+function failRelation(reader: Reader, expected: string): never {
+  const token = reader.peek();
+  return reader.fail(
+    "wrong-kind",
+    token,
+    `${quote(token.text)} is a relation, where ${expected} is expected`,
+    "write a formula with its arguments",
+  );
+}
+
+/** Reports a name that could be of any kind; null. */
+function readUnknown(reader: Reader): null {
+  const name = reader.next();
+  if (reader.names.find(name.text)?.kind === "damaged") return null;
+  const near = reader.names.nearest(name.text, ["relation", "formula", "theory", "structure"]);
+  reader.report(
+    "unknown-name",
+    name,
+    `${quote(name.text)} is not defined`,
+    near === null ? null : `write \`${near}\``,
+  );
+  return null;
+}
+
+// Questions
+
+function readDescribe(reader: Reader): StatementBody | null {
+  const token = reader.peek();
+  const kind = expressionAhead(reader);
+  switch (kind) {
+    case "relation": {
+      reader.next();
+      const named = reader.names.find(token.text);
+      return named?.kind === "relation"
+        ? { kind: "describe", subject: { kind: "relation", relation: named.relation } }
+        : null;
+    }
+    case "theory": {
+      const theory = readTheory(reader);
+      return theory === null ? null : { kind: "describe", subject: { kind: "theory", theory } };
+    }
+    case "structure": {
+      const structure = readStructure(reader);
+      return structure === null ? null : { kind: "describe", subject: { kind: "structure", structure } };
+    }
+    case "formula": {
+      const named = token.kind === "word" ? reader.names.find(token.text) : null;
+      const { kind: after, from } = reader.peekAfter(1);
+      const isBare = after === "end" || after === "semicolon" || reader.peekAfter(1).lineStart;
+      if (named?.kind === "formula" && isBare && from >= token.to) {
+        reader.next();
+        return { kind: "describe", subject: { kind: "formula", definition: named.definition } };
+      }
+      const sentence = readClosed(reader, "the sentence");
+      return sentence === null ? null : { kind: "describe", subject: { kind: "sentence", sentence } };
+    }
+    case "unknown":
+      return readUnknown(reader);
+  }
+}
+
+function readDerive(reader: Reader): StatementBody | null {
+  if (isStructureAhead(reader))
+    reader.fail(
+      "wrong-kind",
+      reader.peek(),
+      `${quote(reader.peek().text)} is a structure, and \`derive\` asks about a theory`,
+      "write `claim A ⊨ φ` for a structure A",
+    );
+  const premises = readTheory(reader);
+  if (reader.at("does-not-entail"))
+    reader.failExpected("`⊨`", "write `claim T ⊭ φ`, or `derive T ⊨ φ`: it gives the countermodel");
+  reader.expect("entails");
+  const conclusion = readConclusion(reader);
+  const options = readOptions(reader);
+  return premises === null || conclusion === null ? null : { kind: "derive", premises, conclusion, options };
+}
+
+function readStatedClaim(reader: Reader, kind: "claim" | "conjecture"): StatementBody | null {
+  const claim = readClaim(reader);
+  const options = readOptions(reader);
+  return claim === null ? null : { kind, claim, options };
+}
+
+function readQuestion(
+  reader: Reader,
+  kind: "check-finite" | "dualise" | "independence",
+): StatementBody | null {
+  const theory = readTheory(reader);
+  const options = readOptions(reader);
+  return theory === null ? null : { kind, theory, options };
+}
+
+function readCompare(reader: Reader): StatementBody | null {
+  const first = reader.peek();
+  const theories: (NamedTheory | null)[] = [];
+  do {
+    reader.crossLine();
+    theories.push(readTheory(reader));
+  } while (reader.accept("comma") !== null);
+  const options = readOptions(reader);
+  if (theories.length === 1)
+    reader.report(
+      "unexpected",
+      { from: first.from, to: reader.last.to },
+      "expected two theories or more, found one",
+      "write `compare T, U`",
+    );
+  const known = theories.filter((theory) => theory !== null);
+  return known.length < theories.length ? null : { kind: "compare", theories: known, options };
+}
+
+function readModels(reader: Reader): StatementBody | null {
+  const theory = readTheory(reader);
+  reader.expectWord("of", "write `models T of size 4`");
+  reader.expectWord("size", "write `models T of size 4`");
+  const size = readWhole(reader, "how many points the models have");
+  const options = readOptions(reader);
+  return theory === null || size === null ? null : { kind: "models", theory, size, options };
+}
+
+/** The word that a misspelled statement word means, by `readers`; see parser.ts. */
+export function isReadable(word: string): word is StatementKind {
+  return isStatementWord(word) && Object.hasOwn(statementReaders, word);
+}
