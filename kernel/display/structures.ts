@@ -47,7 +47,7 @@ export function structureBlocks(role: string, structure: Structure): readonly Bl
   for (const { relation, holds } of structure.tables.values()) {
     if (relation.places === 2 && pointsOf(structure).size <= TABLE_POINTS)
       views.push(matrixTable(structure, relation.name));
-    else if (source === null) {
+    else if (!isShort) {
       const count = countOf(holds);
       if (count > LISTED_TUPLES) lists.push(line(`${relation.name}: ${counted(count, "tuple")}, not listed`));
       else lists.push(line(`${relation.name} = ${setOf(structure, relation.name)}`));

@@ -69,7 +69,15 @@ function claimReason(statement: Statement, answer: ClaimAnswer, budget: number):
   if (claim?.kind === "true-in" || claim?.kind === "false-in")
     return `evaluated in ${claim.structure.text}, ${counted(claim.structure.structure.carrier.size, "point")}${checked}`;
   if (found === "") return `${stepsText(answer.steps, budget)}${checked}`;
-  return `${found}${checked}`;
+  return `${found}${checked}${fewerText(answer.searches)}`;
+}
+
+/** That the structure found is a smallest one, where the search went through all smaller sizes. */
+function fewerText(searches: readonly Search[]): string {
+  const [search] = searches;
+  if (searches.length !== 1 || search === undefined || search.foundAt === null || search.foundAt === 1)
+    return "";
+  return search.noneUpTo === search.foundAt - 1 ? "; none on fewer (complete search)" : "";
 }
 
 /** What a search without a find has shown: `no countermodel on 1 to 8 points; 12,345 of 200,000 steps`. */
