@@ -221,13 +221,18 @@ describe("random frames", () => {
           const changed =
             name === "header.msg_type"
               ? { ...message, header: { ...header, msg_type: value } }
-              : { ...message, header, [name]: name === "channel" ? String(value) : value };
+              : {
+                  ...message,
+                  header,
+                  [name]: name === "channel" && each === "v1" ? JSON.stringify(value) : value,
+                };
           await feed(encodeFrame(changed as unknown as Message, each), each);
         },
       ),
       check,
     );
-    expect(recorder.problems).toEqual([]);
+    // Not their order: mutated frames repeat the id of the request they come from.
+    expect(recorder.schemaProblems).toEqual([]);
     expect(recorder.messages).toBeGreaterThan(400);
   });
 

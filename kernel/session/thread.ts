@@ -3,8 +3,6 @@
  * seen at once. If the worker dies, the running cell ends with an error that says so, and a new worker gets the
  * definitions that earlier cells made.
  */
-import { createRequire } from "node:module";
-import { pathToFileURL } from "node:url";
 import { Worker } from "node:worker_threads";
 import type {
   CellEvent,
@@ -153,11 +151,16 @@ export class ThreadEvaluator implements Evaluator {
   }
 
   #start(): Worker {
-    const start: WorkerStart = { interruptFlag: this.#flag.buffer as SharedArrayBuffer };
-    const worker = new Worker(this.#entry, {
+    const start: WorkerStart = {
+      interruptFlag: this.#flag.buffer as SharedArrayBuffer,
+      entry: this.#entry.href,
+    };
+    const isSource = this.#entry.pathname.endsWith(".ts");
+    const worker = new Worker(isSource ? new URL("./worker-sources.mjs", import.meta.url) : this.#entry, {
       workerData: start,
       resourceLimits: { maxOldGenerationSizeMb: this.#heap },
-      ...(this.#entry.pathname.endsWith(".ts") ? { execArgv: ["--import", loaderOfTypeScript()] } : {}),
+      // Those of the main thread may name a loader that does not work in others.
+      execArgv: [],
     });
     let reason = "";
     worker.on("message", (report: WorkerReport) => this.#take(report));
@@ -265,10 +268,4 @@ function definitionsIn(event: CellEvent): StatementResult[] {
 /** The worker's file stands beside this one, as TypeScript in the sources and as JavaScript when bundled. */
 function ownWorker(): URL {
   return new URL(import.meta.url.endsWith(".ts") ? "./worker.ts" : "./worker.js", import.meta.url);
-}
-
-/** Where the loader is that lets a thread run TypeScript; only sources need it. */
-function loaderOfTypeScript(): string {
-  // Not `import.meta.resolve`, which the module runner of the tests lacks.
-  return pathToFileURL(createRequire(import.meta.url).resolve("tsx")).href;
 }

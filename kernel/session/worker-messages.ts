@@ -26,6 +26,8 @@ export type WorkerReport =
 export interface WorkerStart {
   /** One 32-bit integer, 1 while an interrupt is asked for; searches poll it. */
   readonly interruptFlag: SharedArrayBuffer;
+  /** The URL of the worker's own file, for the loader of sources. */
+  readonly entry: string;
 }
 
 /** What the worker makes its evaluator from. */

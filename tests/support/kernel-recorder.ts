@@ -40,7 +40,12 @@ export class Recorder {
     return this.#types;
   }
 
-  /** What was wrong with messages, and with their order; empty if nothing was. */
+  /** What broke a schema; empty if nothing did. */
+  get schemaProblems(): readonly string[] {
+    return this.#problems;
+  }
+
+  /** What was wrong with messages, and with their order; empty if nothing was. Each request has an id of its own. */
   get problems(): readonly string[] {
     return [...this.#problems, ...this.#orderProblems()];
   }
