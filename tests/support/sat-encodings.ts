@@ -24,6 +24,8 @@ export interface Encoding {
   readonly points: number;
   readonly relations: readonly RelationSymbol[];
   readonly sentences: readonly Formula[];
+  /** `hard` takes a solver a tenth of a second or more. */
+  readonly level: "small" | "hard";
   /** What is known of it, with the reason; null where only solvers say. */
   readonly expected: { readonly satisfiable: boolean; readonly because: string } | null;
 }
@@ -207,6 +209,8 @@ const quasigroup = [
 const idempotent = all("x", T("x", "x", "x"));
 /** ((y·x)·y)·y = x. */
 const shortIdentity = all("xyab", implies(and(T("y", "x", "a"), T("a", "y", "b")), T("b", "y", "x")));
+/** ((x·y)·y)·y = x. */
+const cubeIdentity = all("xyzw", implies(and(T("x", "y", "z"), T("z", "y", "w")), T("w", "y", "x")));
 /** (x·y)·(y·x) = x. */
 const selfOrthogonal = all("xyab", implies(and(T("x", "y", "a"), T("y", "x", "b")), T("a", "b", "x")));
 const steiner = [
@@ -237,94 +241,148 @@ const oneToOne = all("xyz", implies(and(R("x", "z"), R("y", "z")), equal("x", "y
 const functional = all("xyz", implies(and(R("x", "y"), R("x", "z")), equal("y", "z")));
 const notOnto = some("y", all("x", not(R("x", "y"))));
 
+const threeBeaten = all(
+  "xyz",
+  some("w", and(R("w", "x"), R("w", "y"), R("w", "z"), differ("w", "x"), differ("w", "y"), differ("w", "z"))),
+);
+const uniqueBetween = all(
+  "xz",
+  implies(
+    R("x", "z"),
+    some(
+      "y",
+      and(R("x", "y"), R("y", "z"), all("w", implies(and(R("x", "w"), R("w", "z")), equal("w", "y")))),
+    ),
+  ),
+);
+const squareOfS = all("xy", iff(R("x", "y"), some("z", and(S("x", "z"), S("z", "y")))));
+const sharesSuccessor = all(
+  "xy",
+  iff(R("x", "y"), and(differ("x", "y"), some("z", and(S("x", "z"), S("y", "z"))))),
+);
+const group = [
+  ...operation,
+  some("e", all("x", and(T("e", "x", "x"), T("x", "e", "x"), some("y", T("y", "x", "e"))))),
+  all("xyzabc", implies(and(T("x", "y", "a"), T("y", "z", "b"), T("a", "z", "c")), T("x", "b", "c"))),
+];
+
+/** Sizes to ask for, and whether there is a structure of the size; null where only solvers say. */
+type Sizes = readonly (readonly [points: number, satisfiable: boolean | null])[];
+
 function family(
   name: string,
   sentences: readonly Formula[],
-  sizes: readonly (readonly [number, boolean | null])[],
-  because: string,
+  sizes: { readonly small?: Sizes; readonly hard?: Sizes },
+  because = "",
   relations: readonly RelationSymbol[] = [relationR],
 ): Encoding[] {
-  return sizes.map(([points, satisfiable]) => ({
-    name,
-    points,
-    relations,
-    sentences,
-    expected: satisfiable === null ? null : { satisfiable, because },
-  }));
+  return (["small", "hard"] as const).flatMap((level) =>
+    (sizes[level] ?? []).map(([points, satisfiable]) => ({
+      name,
+      points,
+      relations,
+      sentences,
+      level,
+      expected: satisfiable === null ? null : { satisfiable, because },
+    })),
+  );
 }
 
 export const encodings: readonly Encoding[] = [
   ...family(
     "asymmetric, dense, not empty",
     [asymmetric, dense, some("xy", R("x", "y"))],
-    [
-      [6, false],
-      [7, true],
-      [9, true],
-    ],
-    "the least such relation has 7 points: exhaustive search for issue 1's check values",
+    {
+      small: [
+        [6, false],
+        [7, true],
+        [9, true],
+      ],
+    },
+    "the least such relation has 7 points: exhaustive search",
   ),
-  ...family(
-    "asymmetric, dense, serial",
-    [asymmetric, dense, serial],
-    [
+  ...family("asymmetric, dense, degree 3", [asymmetric, dense, degree(3)], {
+    small: [
       [7, null],
       [8, null],
+      [9, null],
       [10, null],
+      [11, null],
     ],
-    "",
-  ),
+  }),
+  ...family("asymmetric, one between", [asymmetric, serial, uniqueBetween], {
+    small: [
+      [7, null],
+      [9, null],
+      [11, null],
+    ],
+    hard: [[13, null]],
+  }),
   ...family(
     "tournament, any two beaten",
     [...tournament, bothBeaten],
-    [
-      [6, false],
-      [7, true],
-      [8, true],
-      [9, true],
-    ],
+    {
+      small: [
+        [6, false],
+        [7, true],
+        [9, true],
+      ],
+    },
     "Schütte's problem for k = 2: least 7 points (Erdős 1963; E. & G. Szekeres 1965)",
+  ),
+  ...family(
+    "tournament, any three beaten",
+    [...tournament, threeBeaten],
+    {
+      small: [[10, false]],
+      hard: [
+        [12, false],
+        [13, false],
+        [14, false],
+      ],
+    },
+    "Schütte's problem for k = 3: least 19 points (E. & G. Szekeres 1965)",
   ),
   ...family(
     "tournament with extensions",
     [...tournament, extension],
-    [
-      [7, null],
-      [8, null],
-      [9, null],
-      [11, null],
-    ],
-    "",
+    {
+      small: [
+        [7, true],
+        [8, false],
+        [9, true],
+      ],
+    },
+    "such tournaments exist from 7 points on, except on 8: exhaustive search",
   ),
   ...family(
     "graph with extensions",
     [...graph, extension],
-    [
-      [8, false],
-      [9, true],
-      [10, null],
-    ],
+    {
+      small: [
+        [8, false],
+        [9, true],
+        [10, null],
+      ],
+    },
     "the least graph of this kind has 9 points (Bonato & Cameron 2001; from memory)",
   ),
   ...family(
     "graph, one common neighbour",
     [...graph, all("xy", implies(differ("x", "y"), oneCommonNeighbour("x", "y")))],
-    [
-      [8, false],
-      [9, true],
-      [10, false],
-      [11, true],
-    ],
+    {
+      small: [
+        [8, false],
+        [9, true],
+        [10, false],
+        [11, true],
+      ],
+      hard: [
+        [14, false],
+        [16, false],
+      ],
+    },
     "friendship graphs are windmills, of odd size (Erdős, Rényi & Sós 1966)",
-  ),
-  ...family(
-    "polarity",
-    [symmetric, all("xy", implies(differ("x", "y"), oneCommonNeighbour("x", "y"))), degree(3)],
-    [
-      [7, null],
-      [8, null],
-    ],
-    "",
   ),
   ...family(
     "strongly regular, degree 3",
@@ -334,11 +392,13 @@ export const encodings: readonly Encoding[] = [
       degree(3),
       all("xy", implies(and(differ("x", "y"), not(R("x", "y"))), oneCommonNeighbour("x", "y"))),
     ],
-    [
-      [8, false],
-      [9, false],
-      [10, true],
-    ],
+    {
+      small: [
+        [8, false],
+        [9, false],
+        [10, true],
+      ],
+    },
     "girth 5 and diameter 2 mean 10 points (Hoffman & Singleton 1960)",
   ),
   ...family(
@@ -348,89 +408,104 @@ export const encodings: readonly Encoding[] = [
       all("xy", implies(R("x", "y"), oneCommonNeighbour("x", "y"))),
       all("xy", implies(and(differ("x", "y"), not(R("x", "y"))), twoCommonNeighbours("x", "y"))),
     ],
-    [
-      [8, null],
-      [9, true],
-    ],
+    { small: [[9, true]], hard: [[12, null]] },
     "the lattice graph on 3 × 3 points",
   ),
   ...family(
     "no triangle, no independent four",
     [...graph, triangleFree, clique("abcd", not)],
-    [
-      [8, true],
-      [9, false],
-    ],
+    {
+      small: [
+        [8, true],
+        [9, false],
+      ],
+    },
     "R(3, 4) = 9 (Greenwood & Gleason 1955)",
   ),
   ...family(
-    "no triangle, no independent five",
-    [...graph, triangleFree, clique("abcde", not)],
-    [
-      [12, true],
-      [13, true],
-    ],
-    "R(3, 5) = 14 (Greenwood & Gleason 1955)",
+    "no four alike",
+    [...graph, clique("abcd", (edge) => edge), clique("abcd", not)],
+    {
+      hard: [
+        [15, true],
+        [16, true],
+        [17, true],
+      ],
+    },
+    "R(4, 4) = 18 (Greenwood & Gleason 1955)",
   ),
   ...family(
     "lattice, complemented, not modular",
     [...lattice, complemented, pentagon],
-    [
-      [6, null],
-      [7, null],
-      [8, null],
-    ],
-    "",
+    {
+      small: [
+        [7, true],
+        [8, true],
+      ],
+      hard: [[10, true]],
+    },
+    "the pentagon with further complements beside it",
   ),
   ...family(
     "lattice, nothing covers one",
     [...lattice, noAtomsFromBelow, some("xy", differ("x", "y"))],
-    [
-      [6, false],
-      [7, false],
-      [8, false],
-    ],
+    {
+      small: [
+        [6, false],
+        [8, false],
+      ],
+      hard: [
+        [12, false],
+        [14, false],
+      ],
+    },
     "an element that covers the least one has one element below it",
   ),
   ...family(
     "order without a last element",
     [...strictOrder, serial],
-    [
-      [6, false],
-      [8, false],
-      [10, false],
-      [12, false],
-    ],
+    {
+      small: [
+        [6, false],
+        [12, false],
+      ],
+    },
     "a finite order has a maximal element",
   ),
   ...family(
-    "directed order, two maximal",
+    "directed order, nothing comparable with all",
     [
       ...partialOrder,
       all("xy", some("z", and(R("z", "x"), R("z", "y")))),
-      some(
-        "xy",
-        and(
-          differ("x", "y"),
-          all("z", implies(or(R("x", "z"), R("y", "z")), or(equal("x", "z"), equal("y", "z")))),
-        ),
-      ),
       all("x", some("y", and(not(R("x", "y")), not(R("y", "x"))))),
     ],
-    [
-      [6, false],
-      [8, false],
-    ],
-    "a finite directed order has a least element, comparable with all",
+    {
+      small: [
+        [6, false],
+        [8, false],
+      ],
+      hard: [
+        [12, false],
+        [14, false],
+        [16, false],
+      ],
+    },
+    "a finite directed order has a least element",
   ),
   ...family(
     "one to one, not onto",
     [functional, serial, oneToOne, notOnto],
-    [
-      [6, false],
-      [7, false],
-      [8, false],
-    ],
+    {
+      small: [
+        [6, false],
+        [8, false],
+      ],
+      hard: [
+        [10, false],
+        [11, false],
+        [12, false],
+      ],
+    },
     "pigeonhole principle",
   ),
   ...family(
@@ -447,60 +522,121 @@ export const encodings: readonly Encoding[] = [
         ),
       ),
     ],
-    [
-      [4, null],
-      [6, null],
-      [8, null],
-      [10, null],
-    ],
-    "",
+    {
+      small: [
+        [4, null],
+        [6, null],
+        [8, null],
+      ],
+    },
   ),
   ...family(
     "grid",
     grid,
-    [
-      [9, true],
-      [10, true],
-      [11, false],
-      [12, true],
-    ],
+    {
+      small: [
+        [9, true],
+        [11, false],
+        [12, true],
+      ],
+      hard: [
+        [13, false],
+        [17, false],
+        [19, false],
+      ],
+    },
     "the size is a product of two numbers above 1",
+    [relationR, relationS],
+  ),
+  ...family(
+    "square is a tournament",
+    [...tournament, squareOfS],
+    {
+      small: [
+        [7, null],
+        [9, null],
+      ],
+    },
+    "",
+    [relationR, relationS],
+  ),
+  ...family(
+    "common successors, degree 3",
+    [...graph, triangleFree, degree(3), sharesSuccessor, all("xy", or(not(S("x", "y")), not(S("y", "x"))))],
+    {
+      small: [[8, null]],
+      hard: [
+        [9, false],
+        [10, null],
+      ],
+    },
+    "degrees of a graph have an even sum",
     [relationR, relationS],
   ),
   ...family(
     "quasigroup ((yx)y)y = x",
     [...quasigroup, idempotent, shortIdentity],
-    [
-      [5, true],
-      [6, false],
-      [7, true],
-      [8, true],
-      [9, false],
-    ],
-    "spectrum of QG5 (Fujita, Slaney & Bennett 1993)",
+    {
+      small: [
+        [6, false],
+        [7, true],
+        [8, true],
+        [9, false],
+      ],
+      hard: [
+        [10, false],
+        [11, true],
+        [12, false],
+      ],
+    },
+    "spectrum of the law (Fujita, Slaney & Bennett 1993)",
+    [ternary],
+  ),
+  ...family(
+    "quasigroup ((xy)y)y = x",
+    [...quasigroup, idempotent, cubeIdentity],
+    { small: [[7, null]], hard: [[10, null]] },
+    "",
     [ternary],
   ),
   ...family(
     "quasigroup (xy)(yx) = x",
     [...quasigroup, idempotent, selfOrthogonal],
-    [
-      [5, null],
-      [6, null],
-      [7, null],
-      [8, null],
-    ],
+    {
+      small: [
+        [6, null],
+        [7, null],
+        [8, null],
+      ],
+    },
     "",
     [ternary],
   ),
   ...family(
     "triple system",
     steiner,
-    [
-      [7, true],
-      [8, false],
-      [9, true],
-    ],
+    {
+      small: [
+        [7, true],
+        [8, false],
+        [9, true],
+      ],
+      hard: [[11, false]],
+    },
     "sizes 1 and 3 modulo 6 (Kirkman 1847)",
+    [ternary],
+  ),
+  ...family(
+    "group, not commutative",
+    [...group, some("xyz", and(T("x", "y", "z"), not(T("y", "x", "z"))))],
+    {
+      small: [
+        [5, false],
+        [6, true],
+      ],
+      hard: [[7, false]],
+    },
+    "the least one has 6 elements: textbook",
     [ternary],
   ),
 ];
