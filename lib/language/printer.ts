@@ -1,6 +1,6 @@
 /**
  * Formulas and theories as text, with the fewest brackets. What is printed reads back as the same formula wherever
- * the relations are declared and no definition has the name of a juxtaposed atom.
+ * the relations are declared; see the parameter `scope` for names that look like juxtaposed atoms.
  *
  * | notation | style                                                                                     |
  * | ---      | ---                                                                                       |

@@ -118,40 +118,40 @@ function failName(reader: Reader, what: string): never {
 
 /** Reports whatever keeps a word or symbol from becoming a name. */
 function checkNewName(reader: Reader, name: Token, what: "relation" | "definition"): void {
-  const text = name.text;
+  const problem = findNameProblem(reader, name, what);
+  if (problem !== null) reader.report(problem.code, name, problem.message, problem.suggestion);
+}
+
+function findNameProblem(
+  reader: Reader,
+  { text, kind }: Token,
+  what: "relation" | "definition",
+): { readonly code: string; readonly message: string; readonly suggestion: string } | null {
+  const shown = quote(text);
+  const suggestion = "take another name";
   if (isVariable(text))
-    return reader.report(
-      "variable-as-name",
-      name,
-      `${quote(text)} is a variable and cannot be the name of a ${what}`,
-      `begin with a capital letter, \`${text[0]!.toUpperCase()}${text.slice(1)}\`, or use a longer word`,
-    );
-  if (isKeptWord(text) || keptSymbols.has(text))
-    return reader.report(
-      "kept-word",
-      name,
-      `${quote(text)} ${keptSymbols.has(text) ? "is kept for relation terms" : "is a word of the language"} and cannot be the name of a ${what}`,
-      "take another name",
-    );
-  if (name.kind === "relation-sign" && !isRelationSign(text))
-    return reader.report(
-      "kept-word",
-      name,
-      `${quote(text)} cannot be the name of a ${what}`,
-      "take another name",
-    );
+    return {
+      code: "variable-as-name",
+      message: `${shown} is a variable and cannot be the name of a ${what}`,
+      suggestion: `begin with a capital letter, \`${text[0]!.toUpperCase()}${text.slice(1)}\`, or use a longer word`,
+    };
+  if (keptSymbols.has(text)) {
+    const message = `${shown} is kept for relation terms and cannot be the name of a ${what}`;
+    return { code: "kept-word", message, suggestion };
+  }
+  if (isKeptWord(text) || (kind === "relation-sign" && !isRelationSign(text))) {
+    const message = `${shown} is a word of the language and cannot be the name of a ${what}`;
+    return { code: "kept-word", message, suggestion };
+  }
   const named = reader.names.find(text);
-  if (named === null || named.kind === "damaged") return;
+  if (named === null || named.kind === "damaged") return null;
   const isRelation = named.kind === "relation";
-  if (isRelation === (what === "relation")) return;
-  reader.report(
-    "name-taken",
-    name,
+  if (isRelation === (what === "relation")) return null;
+  const message =
     isRelation && !reader.names.isDeclared
-      ? `${quote(text)} is the relation that is there while none is declared`
-      : `${quote(text)} is already ${kindText(named.kind)}`,
-    "take another name",
-  );
+      ? `${shown} is the relation that is there while none is declared`
+      : `${shown} is already ${kindText(named.kind)}`;
+  return { code: "name-taken", message, suggestion };
 }
 
 function readDefine(reader: Reader, bindings: Binding[]): StatementBody | null {
