@@ -59,14 +59,7 @@ const chain = structureOf(3, [R, [[1, 2], [2, 3], [1, 3]]]); // biome-ignore for
 const mixed = structureOf(4, [R, [[1, 2], [2, 3], [3, 1]]], [between, [[1, 2, 3], [3, 2, 1]]], [deep, [[2], [4]]]); // biome-ignore format: a table
 
 /** Evidence of no content: displays ask only whether there is any. */
-const evidence: Evidence = {
-  format: EVIDENCE_FORMAT,
-  version: EVIDENCE_VERSION,
-  sentences: [],
-  question: { ask: "models", axioms: [] },
-  verdict: null,
-  facts: [],
-};
+const evidence = { format: EVIDENCE_FORMAT, version: EVIDENCE_VERSION } as Evidence;
 
 function stated(kind: StatementKind, rest: object, options: object = {}): Statement {
   const text = `${kind} …`;
@@ -463,7 +456,7 @@ describe("answers", () => {
   it("gives relations of one and three places as lists", () => {
     const plain = showAnswer(cases[8]!.statement, cases[8]!.answer).data["text/plain"]!;
     expect(plain).toContain("Between is { (1,2,3), (3,2,1) }");
-    expect(plain).toContain("Deep is { (2), (4) }");
+    expect(plain.replace(/\s+/g, " ")).toContain("Deep is { (2), (4) }");
   });
 
   it("says when a question is asked without identity, and only then", () => {
@@ -499,10 +492,8 @@ describe("hostile names", () => {
   const other: RelationSymbol = { name: `${name}2`, places: 2, infix: false };
   const mark: RelationSymbol = { name: "<b>&", places: 1, infix: false };
   const structure = structureOf(2, [relation, [[1, 2], [2, 1], [1, 1]]], [other, [[1, 2]]], [mark, [[1]]]); // biome-ignore format: a table
-  const theory: NamedTheory = {
-    text: name,
-    theory: theoryOf({ [name]: forall("x", not(atom(relation, "x", "x"))) }),
-  };
+  // Relations in formulas have names that the language can read; everything else may be anything.
+  const theory: NamedTheory = { text: name, theory: theoryOf({ [name]: irr }) };
 
   it("are text in every form", () => {
     const statement = {
