@@ -3,7 +3,6 @@ import { buildStructure } from "../../lib/carriers/structure.ts";
 import type { Definition, DescribeSubject, Statement } from "../../lib/language/statements.ts";
 import { depthOf, type Formula, relationsOf, usesIdentity, variablesOf } from "../../lib/logic/formula.ts";
 import type { Theory } from "../../lib/logic/theory.ts";
-import type { MimeBundle } from "../session/evaluator.ts";
 import type { Shown } from "./answers.ts";
 import { type Block, code, formulaOf, type Inline, line } from "./blocks.ts";
 import { renderBundle } from "./bundle.ts";
@@ -51,16 +50,15 @@ function definitionText(definition: Definition): string {
 
 /** `describe X`. {@link prepareDrawing} must have been awaited. */
 export function showDescription(statement: Statement & { readonly kind: "describe" }): Shown {
-  const { summary, blocks } = describe(statement.subject);
+  const { summary, blocks } = describeSubject(statement.subject);
   return { summary, data: renderBundle(blocks, "with-latex") };
 }
 
-/** A definition as `inspect` shows it: its description, or the parameters and body of a formula. */
-export function showInspection(subject: DescribeSubject): MimeBundle {
-  return renderBundle(describe(subject).blocks, "with-latex");
-}
-
-function describe(subject: DescribeSubject): { readonly summary: string; readonly blocks: readonly Block[] } {
+/** The line and the blocks of a description. */
+export function describeSubject(subject: DescribeSubject): {
+  readonly summary: string;
+  readonly blocks: readonly Block[];
+} {
   switch (subject.kind) {
     case "theory": {
       const { text, theory } = subject.theory;
