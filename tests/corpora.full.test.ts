@@ -30,7 +30,8 @@ function upTo(size: number): Work {
 describe("claims.json: entailments (smallest countermodels by exhaustive search)", () => {
   it.each(claims.map((claim) => [claim.id, claim] as const))("%s", (_, claim) => {
     const [conclusion, ...premises] = readSentences([claim.conclusion, ...claim.premises]);
-    const answer = askEntails(theoryOf(premises), conclusion!, unwatchedWork);
+    // The graph of cl-253 needs 9 points (Bonato 2009), one more than the default.
+    const answer = askEntails(theoryOf(premises), conclusion!, upTo(claim.id === "cl-253" ? 9 : 8));
     if (claim.expected !== "fails") {
       expect(answer.verdict).toBe("open");
       expect(answer.searches[0]!.noneUpTo).toBeGreaterThanOrEqual(5);

@@ -8,12 +8,15 @@
 import type { ClaimVerdict } from "../../lib/inquiry/answer.ts";
 import { parseCell } from "../../lib/language/parser.ts";
 import { type Scope, type Statement, scopeAfter } from "../../lib/language/statements.ts";
-import { WorkEnded } from "../../lib/logic/meter.ts";
-import { dataOf, definitionData } from "../display/data.ts";
-import { showAnswer, showDefinition, showDescription, showProgress, showTrouble } from "../display/show.ts";
+import { type Spent, WorkEnded } from "../../lib/logic/meter.ts";
+import { showAnswer } from "../display/answers.ts";
+import { showProgress } from "../display/bundle.ts";
+import { dataOf } from "../display/data.ts";
+import { showDefinition, showDescription } from "../display/definitions.ts";
+import { showTrouble } from "../display/trouble.ts";
 import type { CellEvent, CellOutcome, MimeBundle, StatementResult } from "./evaluator.ts";
 import { storeResult } from "./metadata.ts";
-import { answerQuestion, isQuestion, wasInterrupted } from "./run-statement.ts";
+import { answerQuestion, isQuestion, type Question, wasInterrupted } from "./run-statement.ts";
 
 /** Time without a result after which progress is shown, and between two showings, in milliseconds. */
 const FIRST_PROGRESS_MS = 1000;
@@ -48,18 +51,19 @@ export interface Surroundings {
 export function runCell(code: string, memory: Memory, surroundings: Surroundings): CellOutcome {
   const { statements, diagnostics } = parseCell(code, memory.scope);
   if (diagnostics.length > 0) {
-    const trouble = showTrouble(diagnostics, code);
+    const evalue =
+      diagnostics.length === 1 ? diagnostics[0]!.message : `${diagnostics.length} mistakes; nothing was run`;
     const result: StatementResult = {
       statement: "cell",
       text: code,
       verdict: null,
-      summary: trouble.summary,
+      summary: evalue,
       steps: 0,
       data: {},
       evidence: null,
       diagnostics,
     };
-    return failed("Mistakes", trouble.summary, trouble.traceback, [result]);
+    return failed("Mistakes", evalue, showTrouble(diagnostics, code), [result]);
   }
   const results: StatementResult[] = [];
   const unmet: StatementResult[] = [];
@@ -135,23 +139,18 @@ function runStatement(statement: Statement, memory: Memory, surroundings: Surrou
 }
 
 /** Answers a question, showing progress while it works. */
-function ask(
-  statement: Statement & { options: unknown },
-  display: Display,
-  surroundings: Surroundings,
-): Shown {
-  const question = statement as Extract<Statement, { options: object }>;
+function ask(question: Question, display: Display, surroundings: Surroundings): Shown {
   const answer = answerQuestion(question, {
-    isInterrupted: () => {
-      display.tick();
+    isInterrupted: (spent) => {
+      display.tick(spent);
       return surroundings.isInterrupted();
     },
-    report: (doing) => display.doing(doing),
+    report: (doing) => display.note(doing),
   });
   const { summary, data } = showAnswer(question, answer);
   return {
     result: {
-      ...resultBase(statement),
+      ...resultBase(question),
       verdict: answer.verdict,
       summary,
       steps: answer.steps,
@@ -164,10 +163,10 @@ function ask(
 }
 
 /** Shows what a statement defines, declares or describes. */
-function tell(statement: Statement): Shown {
+function tell(statement: Exclude<Statement, Question>): Shown {
   const { summary, data } =
     statement.kind === "describe" ? showDescription(statement) : showDefinition(statement);
-  const result = { ...resultBase(statement), summary, data: definitionData(statement) };
+  const result = { ...resultBase(statement), summary, data: dataOf(statement, null) };
   return { result, data, interrupted: false };
 }
 
@@ -190,17 +189,17 @@ class Display {
     this.#next = surroundings.clock() + FIRST_PROGRESS_MS;
   }
 
-  doing(doing: string): void {
+  /** Notes what is being done. */
+  note(doing: string): void {
     this.#doing = doing;
-    this.tick();
   }
 
   /** Shows progress when it is time to. */
-  tick(): void {
+  tick({ steps, limit }: Spent): void {
     const now = this.#surroundings.clock();
     if (now < this.#next || this.#doing === "") return;
     this.#next = now + NEXT_PROGRESS_MS;
-    this.#show(showProgress(this.#doing), {});
+    this.#show(showProgress({ doing: this.#doing, steps, limit }), {});
   }
 
   finish(data: MimeBundle, result: StatementResult): void {

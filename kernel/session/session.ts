@@ -5,7 +5,7 @@ import { parseCell } from "../../lib/language/parser.ts";
 import { emptyScope } from "../../lib/language/statements.ts";
 import { prepareDrawing } from "../display/drawing.ts";
 import { showInspection } from "../display/inspection.ts";
-import { showDescription } from "../display/show.ts";
+import { showDescription } from "../display/definitions.ts";
 import type {
   CellEvent,
   CellOutcome,

@@ -20,7 +20,7 @@ export type CheckResult =
  */
 export function checkEvidence(
   value: unknown,
-  meter: Meter = new Meter(Number.MAX_SAFE_INTEGER / 1000),
+  meter: Meter = new Meter(Number.POSITIVE_INFINITY),
 ): CheckResult {
   try {
     const { evidence, formulas } = readEvidence(value);

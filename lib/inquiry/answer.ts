@@ -161,5 +161,6 @@ export interface Progress {
   /** For people: "models on 7 points". */
   readonly doing: string;
   readonly steps: number;
+  /** Infinite for work that needs no limit. */
   readonly limit: number;
 }

@@ -4,16 +4,15 @@ import type { Evidence } from "../evidence/format.ts";
 import { Meter, WorkEnded } from "../logic/meter.ts";
 import type { Work } from "./work.ts";
 
-/** More than any check can spend: a check is bounded by the search that came before it. */
-const UNBOUNDED = 1e12;
-
 /**
  * The evidence, once the checker has accepted it.
  * @throws WorkEnded when the user interrupts the check
  * @throws Error when the checker rejects it, which is a bug of ours and never shown as a verdict
  */
 export function certify(evidence: Evidence, work: Work): Evidence {
-  const meter = new Meter(UNBOUNDED, work.isInterrupted);
+  work.report("checking the evidence");
+  // Without a limit: what there is to check is bounded by the search that came before.
+  const meter = new Meter(Number.POSITIVE_INFINITY, work.isInterrupted);
   const result = checkEvidence(evidence, meter);
   if (result.accepted) return evidence;
   if (meter.ended !== null) throw new WorkEnded(meter.ended);

@@ -1,5 +1,5 @@
 /** What a question may spend and whom it tells how far it is. */
-import { DEFAULT_BUDGET, Meter } from "../logic/meter.ts";
+import { DEFAULT_BUDGET, Meter, type Poll } from "../logic/meter.ts";
 
 /** Sizes that a search for finite structures goes through when the user does not say. */
 export const DEFAULT_LARGEST_SIZE = 8;
@@ -10,8 +10,8 @@ export interface Work {
   readonly budget: number;
   /** Sizes 1, 2, …, this many points are searched. */
   readonly upTo: number;
-  /** Whether the user has asked to stop; polled often. */
-  readonly isInterrupted: () => boolean;
+  /** Whether the user has asked to stop; polled often, with what the part of the question has spent. */
+  readonly isInterrupted: Poll;
   /** Told what is being done, for people: "models on 7 points". */
   readonly report: (doing: string) => void;
 }

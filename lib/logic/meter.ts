@@ -19,24 +19,33 @@ export class WorkEnded extends Error {
 
 export const DEFAULT_BUDGET = 200_000;
 
-export class Meter {
-  /** Steps that may be spent. */
+/** How far work has come. */
+export interface Spent {
+  /** Whole steps spent so far, a begun step counted as one. */
+  readonly steps: number;
+  /** Steps that may be spent; infinite for work that is bounded otherwise. */
+  readonly limit: number;
+}
+
+/** Asked again and again while work goes on: whether the user has asked to stop. */
+export type Poll = (spent: Spent) => boolean;
+
+export class Meter implements Spent {
   readonly limit: number;
   /** Null while work may go on. */
   ended: EndReason | null = null;
   #thousandths = 0;
-  readonly #isInterrupted: () => boolean;
+  readonly #isInterrupted: Poll;
 
   /**
    * @param limit steps that may be spent
-   * @param isInterrupted asked at every {@link spend}: whether the user has asked to stop
+   * @param isInterrupted asked at every {@link spend}
    */
-  constructor(limit: number = DEFAULT_BUDGET, isInterrupted: () => boolean = () => false) {
+  constructor(limit: number = DEFAULT_BUDGET, isInterrupted: Poll = () => false) {
     this.limit = limit;
     this.#isInterrupted = isInterrupted;
   }
 
-  /** Whole steps spent so far, a begun step counted as one. */
   get steps(): number {
     return Math.min(this.limit, Math.ceil(this.#thousandths / 1000));
   }
@@ -54,7 +63,7 @@ export class Meter {
     if (this.ended !== null) return false;
     this.#thousandths += thousandths;
     if (this.#thousandths > this.limit * 1000) this.ended = "budget";
-    else if (this.#isInterrupted()) this.ended = "interrupted";
+    else if (this.#isInterrupted(this)) this.ended = "interrupted";
     return this.ended === null;
   }
 
