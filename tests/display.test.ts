@@ -1,4 +1,6 @@
 /** What is shown for answers and definitions, in all forms. */
+import fc from "fast-check";
+import temml from "temml";
 import { beforeAll, describe, expect, it } from "vitest";
 import { showAnswer } from "../kernel/display/answers.ts";
 import { formulaOf, verdict } from "../kernel/display/blocks.ts";
@@ -7,12 +9,22 @@ import { dataOf } from "../kernel/display/data.ts";
 import { showDefinition, showDescription } from "../kernel/display/definitions.ts";
 import { prepareDrawing } from "../kernel/display/drawing.ts";
 import { sanitiseHtml } from "../kernel/display/safe-html.ts";
+import { sourceOf, structureData } from "../kernel/display/structures.ts";
 import { prefixOf } from "../kernel/display/theories.ts";
+import { SIGNS } from "../kernel/display/to-latex.ts";
 import type { MimeBundle } from "../kernel/session/evaluator.ts";
 import { buildStructure, type Structure } from "../lib/carriers/structure.ts";
 import { EVIDENCE_FORMAT, EVIDENCE_VERSION, type Evidence } from "../lib/evidence/format.ts";
 import type { Answer, AxiomAnswer, ClaimAnswer, Search } from "../lib/inquiry/answer.ts";
-import type { Claim, NamedTheory, Statement, StatementKind } from "../lib/language/statements.ts";
+import { parseCell } from "../lib/language/parser.ts";
+import {
+  type Claim,
+  emptyScope,
+  type NamedTheory,
+  type Scope,
+  type Statement,
+  type StatementKind,
+} from "../lib/language/statements.ts";
 import {
   and,
   atom,
@@ -483,6 +495,43 @@ describe("answers", () => {
     checkBundle(data);
     expect(data["text/html"]).toContain("6 more structures</summary>");
     expect(data["text/plain"]).toContain("R: 900 tuples, not listed");
+  });
+});
+
+describe("text of cells", () => {
+  const scope: Scope = { ...emptyScope, declared: [R, between, deep, { name: "≺", places: 2, infix: true }] };
+
+  it("reads back as the structure that it was written for", () => {
+    const point = (size: number) => fc.integer({ min: 1, max: size });
+    const structures = fc.integer({ min: 1, max: 5 }).chain((size) => {
+      const tables = scope.declared.map((relation) =>
+        fc
+          .array(fc.array(point(size), { minLength: relation.places, maxLength: relation.places }), {
+            maxLength: 12,
+          })
+          .map((tuples): [RelationSymbol, number[][]] => [relation, tuples]),
+      );
+      return fc.tuple(...tables).map((all) => structureOf(size, ...all));
+    });
+    fc.assert(
+      fc.property(structures, (structure) => {
+        const { statements, diagnostics } = parseCell(`define A := ${sourceOf(structure)}`, scope);
+        expect(diagnostics).toEqual([]);
+        const [statement] = statements;
+        if (statement?.kind !== "define" || statement.definition.kind !== "structure")
+          throw new Error("no structure");
+        expect(structureData(buildStructure(statement.definition.structure))).toEqual(
+          structureData(structure),
+        );
+      }),
+      { seed: 20260404 },
+    );
+  });
+});
+
+describe("signs of LaTeX", () => {
+  it.each([...SIGNS])("%s is a command that a reader of mathematics knows", (_, command) => {
+    expect(temml.renderToString(command, { throwOnError: true })).toContain("<math>");
   });
 });
 

@@ -53,12 +53,11 @@ function questionOf(statement: Statement): readonly Inline[] {
 }
 
 function isWithoutIdentity(statement: Statement): boolean {
-  return statement.kind !== "describe" && statement.kind !== "relation" && statement.kind !== "define"
-    ? !sentencesAsked(statement).some(usesIdentity)
-    : false;
+  const asked = sentencesAsked(statement);
+  return asked.length > 0 && !asked.some(usesIdentity);
 }
 
-/** All sentences that a question is about. */
+/** All sentences that a question puts to theories; for truth in a given structure there is no question of identity. */
 function sentencesAsked(statement: Statement): readonly Formula[] {
   const ofTheories = (...theories: readonly NamedTheory[]) =>
     theories.flatMap(({ theory }) => sentencesOf(theory));
@@ -84,7 +83,7 @@ function sentencesClaimed(claim: Claim): readonly Formula[] {
       return [...sentencesOf(claim.premises.theory), claim.conclusion.formula];
     case "true-in":
     case "false-in":
-      return [claim.sentence.formula];
+      return [];
     case "weaker":
     case "equivalent":
       return [...sentencesOf(claim.left.theory), ...sentencesOf(claim.right.theory)];
@@ -110,6 +109,12 @@ function detailsOf(statement: Statement, answer: Answer): readonly Block[] {
   }
   function claimBlocks(claim: ClaimAnswer): readonly Block[] {
     if (claim.axioms !== null) return axiomsBlocks(claim, claim.axioms, statement);
+    const kind = claimOf(statement)?.kind;
+    // The reader knows the structure: it has been defined, and often several claims about it follow each other.
+    if ((kind === "true-in" || kind === "false-in") && claim.structures.length > 0) {
+      const blocks = claim.structures.flatMap(({ role, structure }) => structureBlocks(role, structure));
+      return [{ kind: "fold", title: "The structure", blocks }];
+    }
     return foldRest(claim.structures.map(({ role, structure }) => structureBlocks(role, structure)));
   }
 }

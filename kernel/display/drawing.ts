@@ -96,8 +96,13 @@ function drawOne(relation: DrawnRelation, extents: readonly Extent[]): Plan {
     const pairs = coveringPairs(matrix);
     const { places, curves } = layOutLayers(extents, pairs);
     const arcs = curves.map((curve): Arc => ({ curve, stroke: 0, headAtEnd: false, headAtStart: false }));
-    const loops = kind === "partial-order" ? "loops and " : "";
-    return { places, arcs, remarks: [`${name} by upward lines; ${loops}transitive pairs left out`] };
+    const isReduced = pairs.length < pairsOf(matrix).filter(([i, j]) => i !== j).length;
+    const omitted = [
+      ...(kind === "partial-order" ? ["loops"] : []),
+      ...(isReduced ? ["transitive pairs"] : []),
+    ];
+    const remark = omitted.length === 0 ? "" : `; ${enumerate(omitted)} left out`;
+    return { places, arcs, remarks: [`${name} by upward lines${remark}`] };
   }
   if (isAcyclic(matrix)) {
     const pairs = pairsOf(matrix).filter(([i, j]) => i !== j);

@@ -76,7 +76,7 @@ const SILENT: ReadonlySet<string> = new Set([
 ]);
 
 const STYLES =
-  /^(?:background-color|border(?:-(?:top|right|bottom|left|collapse|radius|color|style|width))?|caption-side|color|cursor|display|font-(?:family|size|style|weight|variant)|line-height|list-style-type|(?:margin|padding)(?:-(?:top|right|bottom|left))?|(?:max-|min-)?(?:width|height)|overflow(?:-[xy])?|text-(?:align|decoration|indent|transform)|vertical-align|white-space|word-break)$/;
+  /^(?:background-color|border(?:-(?:top|right|bottom|left|collapse|radius|color|style|width))?|caption-side|color|cursor|display|font-(?:family|size|style|weight|variant)|line-height|list-style-type|(?:margin|padding)(?:-(?:top|right|bottom|left))?|(?:max-|min-)?(?:width|height)|overflow(?:-[xy])?|table-layout|text-(?:align|decoration|indent|transform)|vertical-align|white-space|word-break)$/;
 
 /** Values without functions, escapes, addresses or variables. */
 const STYLE_VALUE = /^[a-z0-9#%.,\s-]+$/i;

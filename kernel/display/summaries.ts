@@ -145,7 +145,7 @@ function modelsSummary(answer: ModelsAnswer, budget: number): string {
       : endText(ended, budget, null);
   if (models.length === 0)
     return complete ? `no model on ${points} (complete search)` : `no model found on ${points}; ${end}`;
-  const checked = answer.evidence === null ? "" : ", each checked";
+  const checked = answer.evidence === null ? "" : models.length === 1 ? ", checked" : ", each checked";
   const found = `${counted(models.length, "model")} on ${points} up to isomorphism${checked}`;
   return complete ? `${found}; no others (complete search)` : `at least ${found}; ${end}`;
 }
@@ -174,13 +174,16 @@ function axiomsReason(axioms: readonly AxiomAnswer[], isChecked: boolean): strin
 }
 
 function compareSummary(answer: CompareAnswer): string {
+  const { pairs, names } = answer;
   const checked = answer.evidence === null ? "" : " (checked)";
-  if (answer.pairs.length === 1) return pairSummary(answer.pairs[0]!, answer.names, checked);
-  if (answer.pairs.length === 0) return "one theory: nothing to compare";
-  return `${counted(answer.pairs.length, "pair")}: ${tally(
-    answer.pairs.map(({ verdict }) => verdict),
-    checked,
-  )}`;
+  if (pairs.length === 1) return pairSummary(pairs[0]!, names, checked);
+  if (pairs.length === 0) return "one theory: nothing to compare";
+  const verdicts = pairs.map((pair) => pair.verdict);
+  const settled = `${counted(pairs.length, "pair")}: ${tally(verdicts, checked)}`;
+  const halves = pairs.filter(
+    ({ verdict, leftOnly, rightOnly }) => verdict === "open" && (leftOnly ?? rightOnly) !== null,
+  );
+  return halves.length === 0 ? settled : `${settled}, in ${halves.length} one direction refuted${checked}`;
 }
 
 /** What is known of one pair, as a sentence. */

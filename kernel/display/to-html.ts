@@ -106,7 +106,7 @@ function tableToHtml(table: TableBlock): string {
       ? ""
       : `<caption style="caption-side:top;text-align:left;padding:2px 4px;font-weight:bold">${escapeHtml(table.caption)}</caption>`;
   return (
-    `<div style="overflow-x:auto;margin:4px 0"><table style="border-collapse:collapse;margin:0">${caption}` +
+    `<div style="overflow-x:auto;margin:4px 0"><table style="border-collapse:collapse;table-layout:auto;margin:0">${caption}` +
     `<thead><tr>${table.head.map(headCell).join("")}</tr></thead><tbody>${rows.join("")}</tbody></table></div>`
   );
 }

@@ -10,7 +10,7 @@ import { visible } from "./text.ts";
 const LONG_TABLE = 24;
 
 /** Signs of prose that fonts for text often lack, as mathematics. */
-const SIGNS: ReadonlyMap<string, string> = new Map(
+export const SIGNS: ReadonlyMap<string, string> = new Map(
   Object.entries({
     "∀": "\\forall",
     "∃": "\\exists",

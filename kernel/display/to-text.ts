@@ -29,7 +29,7 @@ function pieceToText(piece: Inline): string {
 function blockToText(block: Block): string {
   switch (block.kind) {
     case "line":
-      return wrap(inlineToText(block.parts), WIDTH).join("\n");
+      return lineToText(block.parts);
     case "note":
       return wrap(`(${inlineToText(block.parts)})`, WIDTH).join("\n");
     case "source":
@@ -45,6 +45,13 @@ function blockToText(block: Block): string {
     case "fold":
       return `\n${visible(block.title)}\n${blocksToText(block.blocks)}`;
   }
+}
+
+/** Prose is wrapped; what the user wrote, or may copy, keeps its line. */
+function lineToText(parts: readonly Inline[]): string {
+  const text = inlineToText(parts);
+  const isCopied = parts.some((piece) => typeof piece !== "string" && piece.kind === "code");
+  return isCopied ? text : wrap(text, WIDTH).join("\n");
 }
 
 /** Columns set under each other, a rule under the head; a long last column goes on below itself. */
