@@ -172,6 +172,7 @@ function readBody<S extends v.GenericSchema>(
   schema: S,
   body: unknown,
 ): { value: v.InferOutput<S> } | { refusal: RestResponse } {
+  if (Array.isArray(body)) return { refusal: failure(400, "the body is malformed: expected an object") };
   const read = v.safeParse(schema, body ?? {});
   return read.success
     ? { value: read.output }
