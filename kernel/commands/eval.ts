@@ -1,5 +1,5 @@
 /** `twoplace eval`: the text of one cell, from a file or standard input. */
-import type { CellEvent, CellOutcome, Evaluator } from "../session/evaluator.ts";
+import type { CellEvent, CellOutcome, Evaluator, StatementResult } from "../session/evaluator.ts";
 import { ThreadEvaluator } from "../session/thread.ts";
 import { EXIT_FAILED, EXIT_FINE, readInput } from "./exit.ts";
 
@@ -11,12 +11,17 @@ export async function evaluateText(file: string, options: { readonly json: boole
   process.once("SIGINT", () => evaluator.interrupt());
   try {
     const outcome = await evaluator.runCell(text, options.json ? () => undefined : printEvent);
-    if (options.json) process.stdout.write(`${JSON.stringify(outcome.results, null, 1)}\n`);
+    if (options.json) process.stdout.write(printResults(outcome.results));
     if (outcome.status === "error") reportError(outcome);
     return outcome.status === "ok" ? EXIT_FINE : EXIT_FAILED;
   } finally {
     await evaluator.close();
   }
+}
+
+/** One array, with an object for each statement on a line of its own. */
+function printResults(results: readonly StatementResult[]): string {
+  return `[\n${results.map((result) => JSON.stringify(result)).join(",\n")}\n]\n`;
 }
 
 /** Results go out one after another; progress goes to the terminal, where there is one. */

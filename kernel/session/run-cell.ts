@@ -67,16 +67,18 @@ export function runCell(code: string, memory: Memory, surroundings: Surroundings
   }
   const results: StatementResult[] = [];
   const unmet: StatementResult[] = [];
+  let answered = 0;
   for (const statement of statements) {
     try {
       if (surroundings.isInterrupted()) throw new WorkEnded("interrupted");
       const { result, interrupted } = runStatement(statement, memory, surroundings);
       results.push(result);
       if (interrupted) throw new WorkEnded("interrupted");
+      answered += 1;
       if (statement.kind === "claim" && result.verdict !== "holds") unmet.push(result);
     } catch (problem) {
       if (problem instanceof WorkEnded)
-        return failed("Interrupted", ...interruption(statement, statements, results), results);
+        return failed("Interrupted", ...interruption(statement, answered, statements.length), results);
       const { message, stack } = problem instanceof Error ? problem : new Error(String(problem));
       const lines = [`A mistake of Twoplace itself in: ${statement.text}`, ...(stack ?? message).split("\n")];
       return failed("InternalError", message, lines, results);
@@ -95,13 +97,9 @@ function failed(
   return { status: "error", ename, evalue, traceback, results };
 }
 
-function interruption(
-  statement: Statement,
-  statements: readonly Statement[],
-  results: readonly StatementResult[],
-): [string, string[]] {
+function interruption(statement: Statement, answered: number, of: number): [string, string[]] {
   const evalue = `stopped at: ${statement.text}`;
-  const kept = `${results.length} of ${statements.length} statements were answered; all definitions before this are kept.`;
+  const kept = `${answered} of ${of} statements had been answered; all definitions before this one are kept.`;
   return [evalue, [`Interrupted: ${evalue}`, kept]];
 }
 
@@ -148,31 +146,37 @@ function ask(question: Question, display: Display, surroundings: Surroundings): 
     report: (doing) => display.note(doing),
   });
   const { summary, data } = showAnswer(question, answer);
-  return {
-    result: {
-      ...resultBase(question),
-      verdict: answer.verdict,
-      summary,
-      steps: answer.steps,
-      data: dataOf(question, answer),
-      evidence: answer.evidence,
-    },
-    data,
-    interrupted: wasInterrupted(answer),
+  const result = {
+    statement: question.kind,
+    text: question.text,
+    verdict: answer.verdict,
+    summary,
+    steps: answer.steps,
+    data: dataOf(question, answer),
+    evidence: answer.evidence,
+    diagnostics: [],
   };
+  return { result, data, interrupted: wasInterrupted(answer) };
 }
 
 /** Shows what a statement defines, declares or describes. */
 function tell(statement: Exclude<Statement, Question>): Shown {
   const { summary, data } =
     statement.kind === "describe" ? showDescription(statement) : showDefinition(statement);
-  const result = { ...resultBase(statement), summary, data: dataOf(statement, null) };
-  return { result, data, interrupted: false };
+  return { result: resultWithoutQuestion(statement, summary), data, interrupted: false };
 }
 
-function resultBase(statement: Statement) {
-  const { kind, text } = statement;
-  return { statement: kind, text, verdict: null, steps: 0, evidence: null, diagnostics: [] };
+function resultWithoutQuestion(statement: Exclude<Statement, Question>, summary: string): StatementResult {
+  return {
+    statement: statement.kind,
+    text: statement.text,
+    verdict: null,
+    summary,
+    steps: 0,
+    data: dataOf(statement, null),
+    evidence: null,
+    diagnostics: [],
+  };
 }
 
 /** One statement's place on the page: progress, then the result in its stead. */

@@ -3,9 +3,9 @@ import { randomUUID } from "node:crypto";
 import { completeAt, inspectAt, isComplete } from "../../lib/language/completion.ts";
 import { parseCell } from "../../lib/language/parser.ts";
 import { emptyScope } from "../../lib/language/statements.ts";
+import { showDescription } from "../display/definitions.ts";
 import { prepareDrawing } from "../display/drawing.ts";
 import { showInspection } from "../display/inspection.ts";
-import { showDescription } from "../display/definitions.ts";
 import type {
   CellEvent,
   CellOutcome,

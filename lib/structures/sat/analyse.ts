@@ -15,7 +15,7 @@ import { type Core, literalOfReason, NONE } from "./core.ts";
  * └──────────────────────────────────────────────────────────────────────────────────────────────────────────────┘
  */
 export function analyse(core: Core, conflict: number): number {
-  const { seen, levels, reasons, trail, clause, marked, level } = core;
+  const { seen, origins, trail, clause, marked, level } = core;
   const { words } = core.arena;
   let markedSize = 0;
   let size = 1;
@@ -36,22 +36,24 @@ export function analyse(core: Core, conflict: number): number {
       for (let at = from; at < stop; at += 1) {
         const literal = words[at]!;
         const variable = literal >> 1;
-        if (seen[variable] !== 0 || levels[variable] === 0) continue;
+        const assigned = origins[literal & -2]!;
+        if (seen[variable] !== 0 || assigned === 0) continue;
         seen[variable] = 1;
         marked[markedSize++] = variable;
         core.bump(variable);
-        if (levels[variable]! >= level) open += 1;
+        if (assigned >= level) open += 1;
         else clause[size++] = literal;
       }
     } else {
       let literal = literalOfReason(reason);
       for (let times = implied < 0 ? 2 : 1; times > 0; times -= 1, literal = core.conflictLiteral) {
         const variable = literal >> 1;
-        if (seen[variable] !== 0 || levels[variable] === 0) continue;
+        const assigned = origins[literal & -2]!;
+        if (seen[variable] !== 0 || assigned === 0) continue;
         seen[variable] = 1;
         marked[markedSize++] = variable;
         core.bump(variable);
-        if (levels[variable]! >= level) open += 1;
+        if (assigned >= level) open += 1;
         else clause[size++] = literal;
       }
     }
@@ -60,7 +62,7 @@ export function analyse(core: Core, conflict: number): number {
     index -= 1;
     open -= 1;
     if (open === 0) break;
-    reason = reasons[implied >> 1]!;
+    reason = origins[implied | 1]!;
   }
   clause[0] = implied ^ 1;
   core.clauseSize = size;
@@ -72,14 +74,14 @@ export function analyse(core: Core, conflict: number): number {
 
 /** Takes out of `clause` the literals that the others imply, by the reasons of their level and lower ones. */
 function minimise(core: Core, markedBefore: number): number {
-  const { clause, levels, reasons } = core;
+  const { clause, origins } = core;
   let mask = 0;
-  for (let at = 1; at < core.clauseSize; at += 1) mask |= 1 << (levels[clause[at]! >> 1]! & 31);
+  for (let at = 1; at < core.clauseSize; at += 1) mask |= 1 << (origins[clause[at]! & -2]! & 31);
   let markedSize = markedBefore;
   let kept = 1;
   for (let at = 1; at < core.clauseSize; at += 1) {
     const literal = clause[at]!;
-    if (reasons[literal >> 1] !== NONE) {
+    if (origins[literal | 1] !== NONE) {
       const after = redundant(core, literal, mask, markedSize);
       if (after >= 0) {
         markedSize = after;
@@ -101,14 +103,14 @@ const NOT_IMPLIED = 2;
  * literal of another level cannot be implied. Returns the number of marked variables; its complement if it is not.
  */
 function redundant(core: Core, literal: number, mask: number, markedBefore: number): number {
-  const { seen, levels, reasons, marked, stack } = core;
+  const { seen, origins, marked, stack } = core;
   const { words } = core.arena;
   let markedSize = markedBefore;
   let depth = 1;
   stack[0] = literal;
   while (depth > 0) {
     depth -= 1;
-    const reason = reasons[stack[depth]! >> 1]!;
+    const reason = origins[stack[depth]! | 1]!;
     let at = 0;
     let stop = 1;
     if (reason >= 0) {
@@ -119,12 +121,9 @@ function redundant(core: Core, literal: number, mask: number, markedBefore: numb
       const other = reason >= 0 ? words[at]! : literalOfReason(reason);
       const variable = other >> 1;
       const mark = seen[variable]!;
-      if (mark === 1 || levels[variable] === 0) continue;
-      if (
-        mark === NOT_IMPLIED ||
-        reasons[variable] === NONE ||
-        (mask & (1 << (levels[variable]! & 31))) === 0
-      ) {
+      const level = origins[other & -2]!;
+      if (mark === 1 || level === 0) continue;
+      if (mark === NOT_IMPLIED || origins[other | 1] === NONE || (mask & (1 << (level & 31))) === 0) {
         // What was marked on the way is not known to be implied.
         let kept = markedBefore;
         for (let index = markedBefore; index < markedSize; index += 1) seen[marked[index]!] = 0;
@@ -144,12 +143,12 @@ function redundant(core: Core, literal: number, mask: number, markedBefore: numb
 
 /** How many decision levels the literals span (the "literal block distance" of Audemard & Simon 2009). */
 function countLevels(core: Core, literals: Int32Array, from: number, length: number): number {
-  const { levels, stamps } = core;
+  const { origins, stamps } = core;
   core.stamp += 1;
   const { stamp } = core;
   let count = 0;
   for (let at = from; at < from + length; at += 1) {
-    const level = levels[literals[at]! >> 1]!;
+    const level = origins[literals[at]! & -2]!;
     if (stamps[level] === stamp) continue;
     stamps[level] = stamp;
     count += 1;
@@ -168,15 +167,15 @@ function renewLevels(core: Core, clause: number): void {
 
 /** Puts a literal of the highest level among all but the first second; returns its level, 0 if there is none. */
 function arrangeSecond(core: Core): number {
-  const { clause, clauseSize, levels } = core;
+  const { clause, clauseSize, origins } = core;
   if (clauseSize === 1) return 0;
   let highest = 1;
   for (let at = 2; at < clauseSize; at += 1)
-    if (levels[clause[at]! >> 1]! > levels[clause[highest]! >> 1]!) highest = at;
+    if (origins[clause[at]! & -2]! > origins[clause[highest]! & -2]!) highest = at;
   const literal = clause[highest]!;
   clause[highest] = clause[1]!;
   clause[1] = literal;
-  return levels[literal >> 1]!;
+  return origins[literal & -2]!;
 }
 
 /**
@@ -184,17 +183,17 @@ function arrangeSecond(core: Core): number {
  * hold. Packed.
  */
 export function blame(core: Core, assumption: number): number[] {
-  const { seen, levels, reasons, trail } = core;
+  const { seen, origins, trail } = core;
   const { words } = core.arena;
   const found = [assumption];
-  if (levels[assumption >> 1] === 0) return found;
+  if (origins[assumption & -2] === 0) return found;
   seen[assumption >> 1] = 1;
   for (let index = core.trailSize - 1; index >= core.limits[1]!; index -= 1) {
     const literal = trail[index]!;
     const variable = literal >> 1;
     if (seen[variable] === 0) continue;
     seen[variable] = 0;
-    const reason = reasons[variable]!;
+    const reason = origins[literal | 1]!;
     if (reason === NONE) found.push(literal);
     else if (reason < 0) markAbove(core, literalOfReason(reason));
     else
@@ -206,5 +205,5 @@ export function blame(core: Core, assumption: number): number[] {
 }
 
 function markAbove(core: Core, literal: number): void {
-  if (core.levels[literal >> 1]! > 0) core.seen[literal >> 1] = 1;
+  if (core.origins[literal & -2]! > 0) core.seen[literal >> 1] = 1;
 }

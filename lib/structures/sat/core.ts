@@ -49,13 +49,8 @@ export class Core {
   given: number[] = [];
   /** Offsets of the learned clauses in the arena. */
   learned: number[] = [];
-  /** For a literal p, what is implied by p in clauses of two literals: (¬p ∨ q) puts q here. */
-  readonly implied = new WatchLists(1);
-  /**
-   * For a literal p, the clauses of the arena that watch ¬p, as pairs: the clause, and some literal of it, the
-   * blocker; while that is true the clause need not be looked at (Sörensson & Eén 2008).
-   */
-  readonly watches = new WatchLists(2);
+  /** Which clauses are to be looked at when a literal becomes true. */
+  readonly watches = new WatchLists();
   /** False once the clauses are contradictory by themselves. */
   consistent = true;
 
@@ -65,10 +60,12 @@ export class Core {
   variables = 0;
   /** By literal: 1 true, −1 false, 0 unassigned. */
   values: Int8Array = new Int8Array(16);
-  /** By variable: the decision level at which it was assigned. Meaningless while it is unassigned. */
-  levels: Int32Array = new Int32Array(8);
-  /** By variable: why it was assigned, see {@link twoLiteralReason}. Meaningless while it is unassigned. */
-  reasons: Int32Array = new Int32Array(8);
+  /**
+   * For variable v, at 2v the decision level at which it was assigned, at 2v + 1 the reason, see
+   * {@link twoLiteralReason}; so, for a literal, at `literal & −2` and at `literal | 1`. Meaningless while it is
+   * unassigned.
+   */
+  origins: Int32Array = new Int32Array(16);
   /** The assigned literals, the oldest first. */
   trail: Int32Array = new Int32Array(8);
   trailSize = 0;
@@ -145,7 +142,7 @@ export class Core {
   newVariable(): number {
     this.variables += 1;
     const variable = this.variables;
-    if (variable >= this.levels.length) this.#reserve(variable * 2);
+    if (variable >= this.trail.length) this.#reserve(variable * 2);
     this.saved[variable] = 1;
     this.heap.insert(variable);
     return variable;
@@ -155,8 +152,7 @@ export class Core {
     const values = new Int8Array(variables * 2);
     values.set(this.values);
     this.values = values;
-    this.levels = grownInt32(this.levels, variables);
-    this.reasons = grownInt32(this.reasons, variables);
+    this.origins = grownInt32(this.origins, variables * 2);
     this.trail = grownInt32(this.trail, variables);
     this.clause = grownInt32(this.clause, variables);
     this.marked = grownInt32(this.marked, variables);
@@ -171,7 +167,6 @@ export class Core {
       heap.activity = activity;
       heap.reserve(variables);
     }
-    this.implied.reserve(variables * 2);
     this.watches.reserve(variables * 2);
   }
 
@@ -190,14 +185,14 @@ export class Core {
     const first = literals[0]!;
     const second = literals[1]!;
     if (length === 2) {
-      this.implied.push(first ^ 1, second, 0);
-      this.implied.push(second ^ 1, first, 0);
+      this.watches.implies(first ^ 1, second);
+      this.watches.implies(second ^ 1, first);
       return twoLiteralReason(second);
     }
     const clause = this.arena.add(literals, length, levels);
     (levels === 0 ? this.given : this.learned).push(clause);
-    this.watches.push(first ^ 1, clause, second);
-    this.watches.push(second ^ 1, clause, first);
+    this.watches.watch(first ^ 1, clause, second);
+    this.watches.watch(second ^ 1, clause, first);
     return clause;
   }
 
@@ -230,8 +225,8 @@ export class Core {
   assign(literal: number, reason: number): void {
     this.values[literal] = 1;
     this.values[literal ^ 1] = -1;
-    this.levels[literal >> 1] = this.level;
-    this.reasons[literal >> 1] = reason;
+    this.origins[literal & -2] = this.level;
+    this.origins[literal | 1] = reason;
     this.trail[this.trailSize] = literal;
     this.trailSize += 1;
   }

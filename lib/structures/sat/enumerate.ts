@@ -97,7 +97,7 @@ class EnumerationRun {
     const decision = core.trail[core.limits[level]!]!;
     const below = level - 1;
     const kept = this.#asserted.filter((entry) => entry.level <= below);
-    const reasons = kept.map(({ literal }) => core.reasons[literal >> 1]!);
+    const reasons = kept.map(({ literal }) => core.origins[literal | 1]!);
     core.cancel(below);
     this.#asserted = kept;
     this.#bound = below;

@@ -1,5 +1,6 @@
 import { HEADER } from "./arena.ts";
 import { type Core, NONE, twoLiteralReason } from "./core.ts";
+import { HEAD, ROOM_WORD, SIZE_WORD, WATCHES } from "./watches.ts";
 
 /** The meter is told of work after this many visits. */
 const REPORT_AFTER = 4096;
@@ -18,29 +19,29 @@ const REPORT_AFTER = 4096;
  * └──────────────────────────────────────────────────────────────────────────────────────────────────────────────┘
  */
 export function propagate(core: Core): number {
-  const { values, levels, reasons, trail, level, implied, watches } = core;
+  const { values, origins, trail, level, watches } = core;
   const { words } = core.arena;
-  const impliedPool = implied.pool;
-  let pool = watches.pool;
-  const { start, size, room } = watches;
-  let { trailSize, head, visits } = core;
-  const before = head;
+  const { heads } = watches;
+  let { pool } = watches;
+  let { trailSize, head: queue, visits } = core;
+  const before = queue;
   let conflict = NONE;
 
-  while (head < trailSize && conflict === NONE) {
+  while (queue < trailSize && conflict === NONE) {
     if (visits - core.reported >= REPORT_AFTER) {
       core.visits = visits;
       if (!core.report()) break;
     }
-    const literal = trail[head]!;
+    const literal = trail[queue]!;
     const falsified = literal ^ 1;
-    head += 1;
+    queue += 1;
 
-    const impliedStart = implied.start[literal]!;
-    const impliedEnd = impliedStart + implied.size[literal]!;
+    const impliedHead = literal * HEAD;
+    const impliedStart = heads[impliedHead]!;
+    const impliedEnd = impliedStart + heads[impliedHead + SIZE_WORD]!;
     visits += 1 + impliedEnd - impliedStart;
     for (let at = impliedStart; at < impliedEnd; at += 1) {
-      const other = impliedPool[at]!;
+      const other = pool[at]!;
       const value = values[other]!;
       if (value > 0) continue;
       if (value < 0) {
@@ -50,17 +51,18 @@ export function propagate(core: Core): number {
       }
       values[other] = 1;
       values[other ^ 1] = -1;
-      levels[other >> 1] = level;
-      reasons[other >> 1] = twoLiteralReason(falsified);
+      origins[other & -2] = level;
+      origins[other | 1] = twoLiteralReason(falsified);
       trail[trailSize] = other;
       trailSize += 1;
     }
     if (conflict !== NONE) break;
 
     // Entries that stay are moved down from `from` to `to`.
-    let from = start[literal]!;
+    const head = impliedHead + WATCHES;
+    let from = heads[head]!;
     let to = from;
-    let end = from + size[literal]!;
+    let end = from + heads[head + SIZE_WORD]!;
     visits += (end - from) >> 1;
     scan: while (from < end) {
       const clause = pool[from]!;
@@ -88,19 +90,19 @@ export function propagate(core: Core): number {
         words[literals] = first;
         words[literals + 1] = other;
         words[at] = falsified;
-        const list = other ^ 1;
-        const used = size[list]!;
-        if (used + 2 <= room[list]!) {
-          const place = start[list]! + used;
+        const list = (other ^ 1) * HEAD + WATCHES;
+        const used = heads[list + SIZE_WORD]!;
+        if (used < heads[list + ROOM_WORD]!) {
+          const place = heads[list]! + used;
           pool[place] = clause;
           pool[place + 1] = first;
-          size[list] = used + 2;
+          heads[list + SIZE_WORD] = used + 2;
         } else {
           // The lists may move.
-          const base = start[literal]!;
-          watches.push(list, clause, first);
+          const base = heads[head]!;
+          watches.watch(other ^ 1, clause, first);
           pool = watches.pool;
-          const shift = start[literal]! - base;
+          const shift = heads[head]! - base;
           from += shift;
           to += shift;
           end += shift;
@@ -118,20 +120,20 @@ export function propagate(core: Core): number {
       words[literals + 1] = falsified;
       values[first] = 1;
       values[first ^ 1] = -1;
-      levels[first >> 1] = level;
-      reasons[first >> 1] = clause;
+      origins[first & -2] = level;
+      origins[first | 1] = clause;
       trail[trailSize] = first;
       trailSize += 1;
     }
     if (from !== to) {
       if (from < end) pool.copyWithin(to, from, end);
-      size[literal] = to + (end - from) - start[literal]!;
+      heads[head + SIZE_WORD] = to + (end - from) - heads[head]!;
     }
   }
 
   core.visits = visits;
-  core.propagations += head - before;
-  core.head = head;
+  core.propagations += queue - before;
+  core.head = queue;
   core.trailSize = trailSize;
   return conflict;
 }

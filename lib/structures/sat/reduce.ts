@@ -1,5 +1,6 @@
 import { ACTIVITY_WORD, Compaction, DELETED, HEADER, LEVELS_WORD } from "./arena.ts";
 import { type Core, NONE } from "./core.ts";
+import { HEAD, SIZE_WORD, WATCHES } from "./watches.ts";
 
 /** Learned clauses that span at most as many levels are never deleted. */
 const LEVELS_KEPT = 2;
@@ -35,19 +36,19 @@ export function reduce(core: Core): void {
 /** Whether a clause is the reason of an assigned literal. */
 function isReason(core: Core, clause: number): boolean {
   const first = core.arena.words[clause + HEADER]!;
-  return core.values[first]! > 0 && core.reasons[first >> 1] === clause;
+  return core.values[first]! > 0 && core.origins[first | 1] === clause;
 }
 
 /** Deletes the clauses that are true at the top level. A reason at the top level is never asked for. */
 function discardTrue(core: Core, clauses: readonly number[]): void {
   const { words } = core.arena;
-  const { values, levels } = core;
+  const { values, origins } = core;
   for (const clause of clauses) {
     const stop = clause + HEADER + words[clause]!;
     for (let at = clause + HEADER; at < stop; at += 1) {
       const literal = words[at]!;
-      if (values[literal]! <= 0 || levels[literal >> 1] !== 0) continue;
-      if (isReason(core, clause)) core.reasons[words[clause + HEADER]! >> 1] = NONE;
+      if (values[literal]! <= 0 || origins[literal & -2] !== 0) continue;
+      if (isReason(core, clause)) origins[words[clause + HEADER]! | 1] = NONE;
       core.discard(clause);
       break;
     }
@@ -56,12 +57,13 @@ function discardTrue(core: Core, clauses: readonly number[]): void {
 
 /** Takes deleted clauses out of the arena and everything that names them. */
 function compact(core: Core): void {
-  const { watches, trail, reasons } = core;
+  const { watches, trail, origins } = core;
   const compaction = new Compaction(core.arena);
-  const { pool, start, size } = watches;
+  const { pool, heads } = watches;
   for (let literal = 2; literal < core.variables * 2 + 2; literal += 1) {
-    const begin = start[literal]!;
-    const end = begin + size[literal]!;
+    const head = literal * HEAD + WATCHES;
+    const begin = heads[head]!;
+    const end = begin + heads[head + SIZE_WORD]!;
     let to = begin;
     for (let from = begin; from < end; from += 2) {
       const clause = compaction.moved(pool[from]!);
@@ -70,12 +72,12 @@ function compact(core: Core): void {
       pool[to + 1] = pool[from + 1]!;
       to += 2;
     }
-    size[literal] = to - begin;
+    heads[head + SIZE_WORD] = to - begin;
   }
   for (let index = 0; index < core.trailSize; index += 1) {
-    const variable = trail[index]! >> 1;
-    const reason = reasons[variable]!;
-    if (reason >= 0) reasons[variable] = compaction.moved(reason);
+    const place = trail[index]! | 1;
+    const reason = origins[place]!;
+    if (reason >= 0) origins[place] = compaction.moved(reason);
   }
   core.given = movedAll(core.given, compaction);
   core.learned = movedAll(core.learned, compaction);

@@ -1,69 +1,84 @@
 import { grownInt32 } from "./literals.ts";
 
 /**
- * A growing list of records for every literal, all in one array. A list that is full moves to the end with twice
- * the room; the array is packed anew when it is full and half of it is abandoned.
+ * Words of {@link WatchLists.heads} for each literal. For either list of a literal, in turn: where it begins in the
+ * pool, how many words of it are in use, how many are set aside; the fourth word is not used. All are in one place
+ * because a literal that is propagated needs them together.
+ */
+export const HEAD = 8;
+export const SIZE_WORD = 1;
+export const ROOM_WORD = 2;
+/** Where the head of the second list of a literal begins among its words. */
+export const WATCHES = 4;
+
+/**
+ * Two growing lists for every literal p, all in one array:
+ * first, what p implies in clauses of two literals: for (¬p ∨ q) the literal q;
+ * second, the clauses of the arena that watch ¬p, as pairs: the clause, and some literal of it, the blocker; while
+ * that is true the clause need not be looked at (Sörensson & Eén 2008).
+ *
+ * A list that is full moves to the end with twice the room; the array is packed anew when it is full.
  */
 export class WatchLists {
-  /** Int32 words in a record. */
-  readonly width: number;
-  /** All lists. Readers must fetch it again after an {@link push}, which may put a new one here. */
+  /** The lists. Readers must fetch it again after {@link implies} or {@link watch}, which may put a new one here. */
   pool: Int32Array = new Int32Array(1 << 12);
-  /** By literal: where its list begins in the pool. */
-  start: Int32Array = new Int32Array(16);
-  /** By literal: how many words of its list are in use. */
-  size: Int32Array = new Int32Array(16);
-  /** By literal: how many words are set aside for its list. */
-  room: Int32Array = new Int32Array(16);
+  /** Layout at {@link HEAD}; the words of literal p begin at `p·HEAD`. */
+  heads: Int32Array = new Int32Array(16 * HEAD);
   /** Words of the pool that are set aside or abandoned. */
   #used = 0;
   /** Words of the pool that are set aside for some list. */
   #live = 0;
 
-  constructor(width: number) {
-    this.width = width;
-  }
-
   /** Makes room for literals below `literals`. */
   reserve(literals: number): void {
-    this.start = grownInt32(this.start, literals);
-    this.size = grownInt32(this.size, literals);
-    this.room = grownInt32(this.room, literals);
+    this.heads = grownInt32(this.heads, literals * HEAD);
   }
 
-  /** Adds a record of one word, or of two. */
-  push(literal: number, first: number, second: number): void {
-    const at = this.size[literal]!;
-    if (at + this.width > this.room[literal]!) this.#enlarge(literal);
-    const place = this.start[literal]! + at;
-    this.pool[place] = first;
-    if (this.width === 2) this.pool[place + 1] = second;
-    this.size[literal] = at + this.width;
+  /** Notes that `literal` implies `other`. */
+  implies(literal: number, other: number): void {
+    const head = literal * HEAD;
+    const size = this.heads[head + SIZE_WORD]!;
+    if (size === this.heads[head + ROOM_WORD]!) this.#enlarge(head);
+    this.pool[this.heads[head]! + size] = other;
+    this.heads[head + SIZE_WORD] = size + 1;
   }
 
-  #enlarge(literal: number): void {
-    const before = this.room[literal]!;
-    const room = before === 0 ? 4 * this.width : before * 2;
+  /** Notes that a clause is to be looked at when `literal` becomes true, unless `blocker` is true. */
+  watch(literal: number, clause: number, blocker: number): void {
+    const head = literal * HEAD + WATCHES;
+    const size = this.heads[head + SIZE_WORD]!;
+    if (size === this.heads[head + ROOM_WORD]!) this.#enlarge(head);
+    const place = this.heads[head]! + size;
+    this.pool[place] = clause;
+    this.pool[place + 1] = blocker;
+    this.heads[head + SIZE_WORD] = size + 2;
+  }
+
+  /** Doubles the room of a list. */
+  #enlarge(head: number): void {
+    const { heads } = this;
+    const before = heads[head + ROOM_WORD]!;
+    const room = before === 0 ? 4 : before * 2;
     if (this.#used + room > this.pool.length) this.#repack(room);
-    const from = this.start[literal]!;
-    this.pool.copyWithin(this.#used, from, from + this.size[literal]!);
-    this.start[literal] = this.#used;
-    this.room[literal] = room;
+    const from = heads[head]!;
+    this.pool.copyWithin(this.#used, from, from + heads[head + SIZE_WORD]!);
+    heads[head] = this.#used;
+    heads[head + ROOM_WORD] = room;
     this.#used += room;
     this.#live += room - before;
   }
 
   /** Packs all lists, in the order of literals, into a pool that has `extra` words to spare. */
   #repack(extra: number): void {
+    const { heads } = this;
     const needed = this.#live + extra;
-    const capacity = needed * 2 > this.pool.length ? this.pool.length * 2 + extra : this.pool.length;
-    const fresh = new Int32Array(capacity);
+    const fresh = new Int32Array(Math.max(this.pool.length, needed * 2));
     let to = 0;
-    for (let literal = 0; literal < this.start.length; literal += 1) {
-      const from = this.start[literal]!;
-      fresh.set(this.pool.subarray(from, from + this.size[literal]!), to);
-      this.start[literal] = to;
-      to += this.room[literal]!;
+    for (let head = 0; head < heads.length; head += WATCHES) {
+      const from = heads[head]!;
+      fresh.set(this.pool.subarray(from, from + heads[head + SIZE_WORD]!), to);
+      heads[head] = to;
+      to += heads[head + ROOM_WORD]!;
     }
     this.pool = fresh;
     this.#used = to;
