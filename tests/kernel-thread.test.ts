@@ -131,7 +131,14 @@ test("closing ends a running cell with an error", async () => {
   expect(await run("print x")).toMatchObject({ status: "error" });
 });
 
-test("the kernel's own worker file loads", async () => {
+test("the session itself runs in the kernel's own worker file, stops when asked, and keeps its definitions", async () => {
   evaluator = new ThreadEvaluator();
-  expect(await evaluator.runCell("", () => undefined)).toMatchObject({ status: "ok", results: [] });
+  const text = "define Endless := { irr: ∀x ¬Rxx; tra: ∀x ∀y ∀z (Rxy ∧ Ryz → Rxz); ser: ∀x ∃y Rxy }";
+  expect(await run(text)).toMatchObject({ status: "ok" });
+  // A strict order without a last element has no finite model, so the search has no end of its own.
+  const running = run("check-finite Endless up to 10000 within 1000000000 steps");
+  await new Promise((resolve) => setTimeout(resolve, 300));
+  evaluator.interrupt();
+  expect(await running).toMatchObject({ status: "error", ename: "Interrupted" });
+  expect(await evaluator.evaluateExpression("Endless")).toMatchObject({ status: "ok" });
 });

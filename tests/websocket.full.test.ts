@@ -582,6 +582,30 @@ describe("REST", () => {
   });
 });
 
+test("requests that arrive during a restart are answered by the new session", async () => {
+  inThread = true;
+  const id = await newKernelId();
+  const socket = await new RawSocket(id).open();
+  await socket.answered(socket.request("execute_request", { code: "define Marsh 1" }));
+  const restarted = ask(`/api/kernels/${id}/restart`, { method: "POST" });
+  const held = Array.from({ length: 20 }, () => socket.request("execute_request", { code: "recall" }));
+  expect((await restarted).status).toBe(200);
+  const counts: unknown[] = [];
+  for (const request of held) counts.push((await socket.answered(request)).content.execution_count);
+  // Some may have come before the restart had begun and ended with the old session; the rest count from 1.
+  const first = counts.lastIndexOf(1);
+  expect(first).toBeGreaterThanOrEqual(0);
+  expect(counts.slice(first)).toEqual(Array.from({ length: 20 - first }, (_, index) => index + 1));
+});
+
+test("there is a bound on the number of kernels", async () => {
+  const statuses: number[] = [];
+  while (statuses.at(-1) !== 503 && statuses.length < 100) {
+    statuses.push((await ask("/api/kernels", { method: "POST" })).status);
+  }
+  expect(statuses).toHaveLength(65);
+});
+
 test("a port that is taken is said so by the system's code", async () => {
   const start = startServer({ port: server.port, createEvaluator: () => new ScriptEvaluator() });
   await expect(start).rejects.toMatchObject({ code: "EADDRINUSE" });

@@ -47,7 +47,9 @@ export class Sockets {
     const kernel = kind === "kernels" && channels === "channels" ? this.#kernels.find(id!) : null;
     if (kernel === null || path.length !== 4) return false;
     const session = url.searchParams.get("session_id") ?? "";
-    this.#server.handleUpgrade(request, stream, head, (socket) => this.#serve(socket, kernel, session));
+    this.#server.handleUpgrade(request, stream, head, (socket) =>
+      this.#serve(socket, stream, kernel, session),
+    );
     return true;
   }
 
@@ -67,13 +69,24 @@ export class Sockets {
     socket.on("error", (error) => this.#log(`a socket has failed: ${error.message}`));
   }
 
-  #serve(socket: WebSocket, kernel: ServedKernel, session: string): void {
+  #serve(socket: WebSocket, stream: Duplex, kernel: ServedKernel, session: string): void {
     this.#watch(socket);
     const framing: Framing = socket.protocol === V1_SUBPROTOCOL ? "v1" : "legacy";
     const key = session === "" ? uuid() : session;
+    let corked = false;
     const client: ClientSocket = {
       send: (message) => {
-        if (socket.readyState === socket.OPEN) socket.send(encodeFrame(message, framing));
+        if (socket.readyState !== socket.OPEN) return;
+        // What is sent in one go of the loop, such as a reply and its idle, leaves in one write.
+        if (!corked) {
+          corked = true;
+          stream.cork();
+          process.nextTick(() => {
+            corked = false;
+            stream.uncork();
+          });
+        }
+        socket.send(encodeFrame(message, framing));
       },
       close: (code, reason) => socket.close(code, reason),
     };
