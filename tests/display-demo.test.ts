@@ -97,3 +97,25 @@ describe("demo notebooks", () => {
     expect(data.models).toHaveLength(count);
   });
 });
+
+describe("inspection", () => {
+  // The structure is an order, which needs the layout engine, and nothing has been run that would have loaded it.
+  it.each<[string, 0 | 1, string]>([
+    ["A", 1, "points 2 where R is { (1,2) }"],
+    ["define", 0, "define"],
+    ["T", 0, "serial"],
+    ["T", 1, "signature"],
+  ])("shows %s at detail %i in a new session", async (name, detail, expected) => {
+    const session = new Session({ isInterrupted: () => false });
+    const text =
+      "define A := points 2 where R is { (1,2) }\ndefine T := { serial: ∀x ∃y Rxy }\ndescribe A\ndescribe T";
+    const bundle = (await session.inspect(
+      text,
+      Array.from(text.slice(0, text.lastIndexOf(name))).length,
+      detail,
+    ))!;
+    checkBundle(bundle);
+    expect(bundle["text/plain"]).toContain(expected);
+    expect(bundle["text/html"]!.includes("<img")).toBe(name === "A");
+  });
+});

@@ -574,6 +574,16 @@ describe("definitions and descriptions", () => {
     expect(data["text/latex"]).toContain("longtable");
   });
 
+  it("describes a theory of very many axioms", () => {
+    const many = Object.fromEntries(Array.from({ length: 150_000 }, (_, i) => [`axiom${i + 1}`, irr]));
+    const theory = { text: "Many", theory: theoryOf(many) };
+    const { summary, data } = showDescription(
+      stated("describe", { subject: { kind: "theory", theory } }) as Statement & { kind: "describe" },
+    );
+    expect(summary).toBe("Many: a theory of 150,000 axioms");
+    expect(data["text/plain"]).toContain("axiom150000");
+  });
+
   it("describes structures, formulas, sentences and relations", () => {
     const subjects = [
       {

@@ -34,6 +34,11 @@ export function displayWidth(text: string): number {
   return width;
 }
 
+/** The columns that the widest of some texts takes; there may be very many. */
+export function widestOf(texts: readonly string[]): number {
+  return texts.reduce((widest, text) => Math.max(widest, displayWidth(text)), 0);
+}
+
 /** The text with spaces after it, up to a width in columns. */
 export function padEnd(text: string, width: number): string {
   return text + " ".repeat(Math.max(0, width - displayWidth(text)));

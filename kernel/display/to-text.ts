@@ -1,7 +1,7 @@
 /** Blocks as plain text, complete by itself: what a terminal shows, and what remains when nothing richer is read. */
 import { printFormula } from "../../lib/language/printer.ts";
 import type { Block, Inline, TableBlock } from "./blocks.ts";
-import { displayWidth, padEnd, visible, wrap } from "./text.ts";
+import { padEnd, visible, widestOf, wrap } from "./text.ts";
 
 /** Columns that a line of prose or a formula may take before it is broken. */
 const WIDTH = 100;
@@ -59,9 +59,7 @@ function tableToText(table: TableBlock): string {
   const head = table.head.map(visible);
   const rows = table.rows.map((row) => row.map(inlineToText));
   const last = head.length - 1;
-  const widths = head.map((title, column) =>
-    Math.max(displayWidth(title), ...rows.map((row) => displayWidth(row[column] ?? ""))),
-  );
+  const widths = head.map((title, column) => widestOf([title, ...rows.map((row) => row[column] ?? "")]));
   const before = widths.slice(0, last).reduce((sum, width) => sum + width + 2, 0);
   const lastWidth = Math.max(24, WIDTH - before);
   const gap = table.look === "matrix" ? " " : "  ";
@@ -78,7 +76,7 @@ function tableToText(table: TableBlock): string {
     for (const more of pieces.slice(1)) lines.push(indent + more);
   }
   const headLine = set(head);
-  lines.unshift(headLine, "─".repeat(Math.max(...[headLine, ...lines].map(displayWidth))));
+  lines.unshift(headLine, "─".repeat(widestOf([headLine, ...lines])));
   const body = lines.join("\n");
   return table.caption === null ? body : `${visible(table.caption)}\n${body}`;
 }

@@ -72,7 +72,9 @@ export class Session implements Evaluator {
 
   async inspect(code: string, cursor: number, detail: 0 | 1): Promise<MimeBundle | null> {
     const found = inspectAt(code, cursor, this.#memory.scope);
-    return found === null ? null : showInspection(found, detail);
+    if (found === null) return null;
+    await prepareDrawing();
+    return showInspection(found, detail);
   }
 
   async isComplete(code: string): Promise<Completeness> {
