@@ -106,6 +106,16 @@ describe("when the thread dies, the cell says so and definitions are made again"
     expect(await recall()).toBe("Marsh Marsh Moor");
   });
 
+  test("claims, which are not made again, are counted", async () => {
+    start();
+    await run("define Marsh 1\nclaim a\nclaim b");
+    expect(await run("exit")).toMatchObject({
+      evalue: expect.stringMatching(
+        /definitions kept: Marsh; claims of earlier cells that are forgotten: 2$/,
+      ),
+    });
+  });
+
   test("without definitions too, again and again", async () => {
     start();
     for (const _ of [1, 2]) {

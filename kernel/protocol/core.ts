@@ -12,8 +12,8 @@
 import { v4 as uuid } from "uuid";
 import * as v from "valibot";
 import type { Evaluator } from "../session/evaluator.ts";
-import { History } from "../session/history.ts";
 import { runHandler } from "./handlers.ts";
+import { History } from "./history.ts";
 import {
   type Channel,
   type Header,

@@ -10,6 +10,7 @@ export function isDefinition(result: Partial<StatementResult> | undefined): resu
 
 export class DefinitionLog {
   #texts: string[] = [];
+  #claims = 0;
 
   /** The sources, in the order in which they ran. Earlier definitions of a name stay: others may rest on them. */
   get texts(): readonly string[] {
@@ -18,6 +19,9 @@ export class DefinitionLog {
 
   add(results: readonly StatementResult[]): void {
     this.#texts.push(...results.filter(isDefinition).map((result) => result.text));
+    this.#claims += results.filter(
+      ({ statement }) => statement === "claim" || statement === "conjecture",
+    ).length;
   }
 
   drop(index: number): void {
@@ -26,13 +30,19 @@ export class DefinitionLog {
 
   clear(): void {
     this.#texts = [];
+    this.#claims = 0;
   }
 
-  /** Which names are there, in words. */
-  describe(): string {
+  /** What is left when only the texts are, in words; claims, which are not run again, are forgotten thereby. */
+  describeLoss(): string {
     const names = [...new Set(this.#texts.flatMap(namesIn))];
-    if (names.length === 0) return "there were no earlier definitions to keep";
-    return `definitions kept: ${names.join(", ")}`;
+    const kept =
+      names.length === 0
+        ? "there were no earlier definitions to keep"
+        : `definitions kept: ${names.join(", ")}`;
+    const claims = this.#claims;
+    this.#claims = 0;
+    return claims === 0 ? kept : `${kept}; claims of earlier cells that are forgotten: ${claims}`;
   }
 }
 

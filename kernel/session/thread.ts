@@ -233,7 +233,7 @@ export class ThreadEvaluator implements Evaluator {
   /**
    * Gives a new worker the definitions of earlier cells, in their order. One that ends the worker again, or fails, is
    * left out.
-   * @returns what was kept, in words
+   * @returns what was kept and what was lost, in words
    */
   async #rebuild(): Promise<string> {
     this.#rebuilding = true;
@@ -250,7 +250,7 @@ export class ThreadEvaluator implements Evaluator {
       }
     }
     this.#rebuilding = false;
-    return this.#definitions.describe();
+    return this.#definitions.describeLoss();
   }
 }
 

@@ -1,10 +1,10 @@
 /** A kernel that the server runs: one core, any number of clients, which may come and go. */
 import { v4 as uuid } from "uuid";
 import { KernelCore } from "../protocol/core.ts";
+import { History } from "../protocol/history.ts";
 import { KERNEL_NAME } from "../protocol/kernel-info.ts";
 import type { Message } from "../protocol/messages.ts";
 import type { Evaluator } from "../session/evaluator.ts";
-import { History } from "../session/history.ts";
 
 /** What the REST side tells of a kernel. */
 export interface KernelModel {

@@ -10,6 +10,7 @@
  * | `print TEXT`      | writes a line to stdout                                                 |
  * | `warn TEXT`       | writes a line to stderr                                                 |
  * | `define NAME …`   | remembers NAME, as a definition whose text is the line                  |
+ * | `claim TEXT`      | makes a claim                                                           |
  * | `recall`          | prints the names that are remembered                                    |
  * | `fail TEXT`       | the cell goes on and ends with an error                                 |
  * | `spin`            | keeps the thread busy until it is interrupted                           |
@@ -80,6 +81,9 @@ export class ScriptEvaluator implements Evaluator {
         this.#display(`d${++this.#displays}`, rest, false, show, { twoplace: result });
         break;
       }
+      case "claim":
+        results.push(resultOf("claim", `claim ${rest}`));
+        break;
       case "recall":
         show({ kind: "stream", name: "stdout", text: this.#names.join(" ") });
         break;

@@ -1,5 +1,5 @@
 /** What was run: inputs with their outputs, by session and line, kept in memory. */
-import type { HistoryEntry, HistoryQuery } from "../protocol/messages.ts";
+import type { HistoryEntry, HistoryQuery } from "./messages.ts";
 
 interface Line {
   readonly session: number;
