@@ -1,6 +1,5 @@
 /** What is shown for answers and definitions, in all forms. */
 import fc from "fast-check";
-import temml from "temml";
 import { beforeAll, describe, expect, it } from "vitest";
 import { showAnswer } from "../kernel/display/answers.ts";
 import { formulaOf, verdict } from "../kernel/display/blocks.ts";
@@ -9,8 +8,6 @@ import { dataOf } from "../kernel/display/data.ts";
 import { showDefinition, showDescription } from "../kernel/display/definitions.ts";
 import { prepareDrawing } from "../kernel/display/drawing.ts";
 import { sourceOf, structureData } from "../kernel/display/structures.ts";
-import { prefixOf } from "../kernel/display/theories.ts";
-import { SIGNS } from "../kernel/display/to-latex.ts";
 import { buildStructure, type Structure } from "../lib/carriers/structure.ts";
 import { EVIDENCE_FORMAT, EVIDENCE_VERSION, type Evidence } from "../lib/evidence/format.ts";
 import type { Answer, AxiomAnswer, ClaimAnswer, Search } from "../lib/inquiry/answer.ts";
@@ -30,7 +27,6 @@ import {
   exists,
   type Formula,
   forall,
-  iff,
   implies,
   not,
   type RelationSymbol,
@@ -475,12 +471,6 @@ describe("text of cells", () => {
   });
 });
 
-describe("signs of LaTeX", () => {
-  it.each([...SIGNS])("%s is a command that a reader of mathematics knows", (_, command) => {
-    expect(temml.renderToString(command, { throwOnError: true })).toContain("<math>");
-  });
-});
-
 describe("hostile names", () => {
   const name = `</code><script>alert("1")</script><img src=x onerror='a'>&amp;\\input{x}$ % # _ ^ ~ {`;
   const relation: RelationSymbol = { name, places: 2, infix: false };
@@ -624,22 +614,5 @@ describe("definitions and descriptions", () => {
     const bundle = showInline(verdict("open"), ", ", formulaOf(serial));
     checkBundle(bundle);
     expect(bundle["text/latex"]).toMatch(/^\\textbf\{open\}, \$[^$]+\$$/);
-  });
-});
-
-describe("prefix of a prenex form", () => {
-  const some = exists("y", atom(R, "x", "y"));
-  // By the rules for pulling quantifiers outwards (common practice).
-  it.each<[string, Formula, string]>([
-    ["in front already", serial, "∀∃"],
-    ["to the right of a conditional", forall("x", implies(atom(R, "x", "x"), some)), "∀∃"],
-    ["to the left of a conditional", forall("x", implies(some, atom(R, "x", "x"))), "∀∀"],
-    ["under a negation", not(forall("x", some)), "∃∀"],
-    ["side by side, put together", and(forall("x", some), forall("z", not(atom(R, "z", "z")))), "∀∀∃"],
-    ["on both sides of a biconditional", forall("x", iff(some, atom(R, "x", "x"))), "∀∃∀"],
-    ["none", equal("x", "y"), "none"],
-    ["many", forall(["x", "y", "z", "u", "v"], atom(R, "x", "v")), "∀⁵"],
-  ])("%s", (_, formula, prefix) => {
-    expect(prefixOf(formula)).toBe(prefix);
   });
 });
