@@ -119,6 +119,12 @@ describe("mathematics in Markdown", () => {
   });
 });
 
+it("keeps a comma with the mathematics before it", () => {
+  expect(renderMarkdown("$x$, and $y$ too")).toMatch(
+    /<span style="white-space:nowrap"><math>.*<\/math>,<\/span> and <math>/,
+  );
+});
+
 describe("sanitiseHtml", () => {
   it.each([
     ["<script>alert(1)</script>after", "after"],

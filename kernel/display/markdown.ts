@@ -64,7 +64,12 @@ export function renderMarkdown(markdown: string, attachments: Attachments = {}):
       },
     },
   });
-  return marked.parse(markdown) as string;
+  const html = marked.parse(markdown) as string;
+  // A line may break before and after mathematics, but not before the comma or full stop that belongs to it.
+  return html.replace(
+    /<math>(?:(?!<\/?math)[\s\S])*<\/math>[,.;:)]/g,
+    (whole) => `<span style="white-space:nowrap">${whole}</span>`,
+  );
 }
 
 function indexOrNothing(index: number): number | undefined {
