@@ -50,6 +50,11 @@ function makeProgram(finish: (status: number) => void): Command {
 
 /** Runs the command line and sets the process's exit status. */
 export async function main(args: readonly string[]): Promise<void> {
+  // A reader that has seen enough, like `head`, closes the pipe: that is no failure.
+  process.stdout.on("error", (problem: NodeJS.ErrnoException) => {
+    if (problem.code !== "EPIPE") throw problem;
+    process.exit();
+  });
   const program = makeProgram((status) => {
     process.exitCode = status;
   });

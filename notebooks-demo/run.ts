@@ -4,48 +4,24 @@
  */
 import { mkdir, readdir, readFile, writeFile } from "node:fs/promises";
 import { join, relative } from "node:path";
-import { type Kernel, KernelManager, ServerConnection } from "@jupyterlab/services";
-import WebSocket from "ws";
 import { printClaims } from "../kernel/commands/run.ts";
 import { notebookToHtml } from "../kernel/display/notebook-html.ts";
-import { type CellReply, type CellRunner, executeNotebook } from "../kernel/notebook/execute.ts";
-import { OutputCollector } from "../kernel/notebook/outputs.ts";
+import { executeNotebook } from "../kernel/notebook/execute.ts";
 import { readNotebook } from "../kernel/notebook/read.ts";
 import { writeNotebook } from "../kernel/notebook/write.ts";
 import { ThreadEvaluator } from "../kernel/session/thread.ts";
 import { startServer } from "../kernel/transport/server.ts";
+import { ConnectionRunner, kernelManagerFor } from "../tests/support/client-connection.ts";
 
 const source = import.meta.dirname;
 const target = join(source, "..", "out", "demo");
 
-/** Runs cells on a kernel that JupyterLab's client is connected to. */
-class ClientRunner implements CellRunner {
-  readonly #kernel: Kernel.IKernelConnection;
-  readonly #collector = new OutputCollector();
-
-  constructor(kernel: Kernel.IKernelConnection) {
-    this.#kernel = kernel;
-  }
-
-  async execute(code: string) {
-    const outputs = this.#collector.startCell();
-    const future = this.#kernel.requestExecute({ code, stop_on_error: false });
-    future.onIOPub = (message) => this.#collector.take(message);
-    const reply = await future.done;
-    return { reply: reply.content as unknown as CellReply, outputs };
-  }
-}
+// The client says on the console when sockets open and kernels end, which is nothing a reader of the demo needs.
+console.debug = () => undefined;
+console.warn = () => undefined;
 
 const server = await startServer({ port: 0, root: source, createEvaluator: () => new ThreadEvaluator() });
-const manager = new KernelManager({
-  serverSettings: ServerConnection.makeSettings({
-    baseUrl: server.url,
-    wsUrl: server.url.replace(/^http/, "ws"),
-    token: server.token,
-    appendToken: true,
-    WebSocket: WebSocket as unknown as typeof globalThis.WebSocket,
-  }),
-});
+const manager = kernelManagerFor(server);
 await mkdir(target, { recursive: true });
 let failures = 0;
 for (const name of (await readdir(source)).filter((file) => file.endsWith(".ipynb")).sort()) {
@@ -53,7 +29,11 @@ for (const name of (await readdir(source)).filter((file) => file.endsWith(".ipyn
   if ("problem" in read) throw new Error(`${name}: ${read.problem}`);
   process.stdout.write(`\n${name}\n`);
   const kernel = await manager.startNew({ name: "twoplace" });
-  const { notebook, failed } = await executeNotebook(read.notebook, new ClientRunner(kernel), printClaims);
+  const { notebook, failed } = await executeNotebook(
+    read.notebook,
+    new ConnectionRunner(kernel),
+    printClaims,
+  );
   await kernel.shutdown();
   failures += failed.length;
   for (const { number, ename, evalue } of failed)

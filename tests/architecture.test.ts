@@ -16,10 +16,11 @@ const MAY_IMPORT: Readonly<Record<string, readonly string[]>> = {
   "lib/inquiry": ["lib/structures", "lib/evidence", "lib/carriers", "lib/logic"],
   "kernel/display": ["kernel/session/evaluator.ts", "lib"],
   "kernel/session": ["kernel/display", "lib"],
-  "kernel/protocol": ["kernel/session/evaluator.ts"],
-  "kernel/transport": ["kernel/protocol", "kernel/notebook", "kernel/session/evaluator.ts"],
-  "kernel/notebook": ["kernel/protocol", "kernel/transport"],
-  kernel: ["kernel", "lib"],
+  "kernel/protocol": ["kernel/session/evaluator.ts", "package.json"],
+  "kernel/notebook": ["kernel/protocol"],
+  "kernel/transport": ["kernel/notebook", "kernel/protocol", "kernel/session/evaluator.ts"],
+  "kernel/commands": ["kernel", "lib"],
+  kernel: ["kernel/commands", "kernel/protocol"],
 };
 /** Packages that `lib` may use; it knows nothing of Node, Jupyter, files or clocks. */
 const LIB_PACKAGES = ["@noble/hashes"];
