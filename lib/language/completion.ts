@@ -26,6 +26,8 @@ export interface CompletionResult {
 
 /** The word before the cursor, with the hyphens that names and statements may have. */
 const PARTIAL = /\p{L}[\p{L}\p{M}\p{Nd}'_-]*$/u;
+/** Longer words are not completed. */
+const LONGEST_WORD = 200;
 const LATEX = /\\[a-zA-Z]*$/;
 
 /**
@@ -37,14 +39,15 @@ export function completeAt(text: string, cursor: number, scope: Scope): Completi
   const at = Math.max(0, Math.min(points.length, Math.floor(cursor)));
   const before = points.slice(0, at).join("");
   const nothing = { from: at, to: at, matches: [] };
-  if (/#[^\n]*$/.test(before)) return nothing;
-  const command = LATEX.exec(before)?.[0];
+  if (before.slice(before.lastIndexOf("\n") + 1).includes("#")) return nothing;
+  const tail = points.slice(Math.max(0, at - LONGEST_WORD), at).join("");
+  const command = LATEX.exec(tail)?.[0];
   if (command !== undefined) {
     const fitting = latexSpellings.filter(({ typed }) => typed.startsWith(command));
     const matches = fitting.map(({ symbol }): Match => ({ text: symbol, type: "symbol" }));
     return { from: at - command.length, to: at, matches: distinct(matches) };
   }
-  const partial = PARTIAL.exec(before)?.[0] ?? "";
+  const partial = PARTIAL.exec(tail)?.[0] ?? "";
   const { tokens, start } = statementBefore(before.slice(0, before.length - partial.length));
   const names = tokens.length === 0 ? null : readCell(before.slice(0, start), scope).names;
   const wanted = partial.toLowerCase();

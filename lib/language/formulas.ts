@@ -509,10 +509,10 @@ class FormulaReader {
     const { segments, offsets } = readRun(reader.source, word, letter.length);
     if (segments.length === 0 || offsets.at(-1) !== word.end - word.start) return null;
     if (named?.kind !== "relation" && named?.kind !== "damaged") {
-      if (/^\p{Ll}/u.test(letter) || named !== null) return null;
+      if (/^\p{Ll}/u.test(letter) || named !== null || segments.length > 3) return null;
       if (reader.names.nearest(word.text, ["relation", "formula", "theory"]) !== null) return null;
       for (const segment of segments) this.#use(segment.text, segment);
-      this.#reportUnknownRelation({ from: word.from, to: word.from + 1 }, letter, segments.length);
+      this.#reportUnknownRelation(word, letter, segments.length, word.text);
       reader.next();
       return verum;
     }
@@ -525,7 +525,11 @@ class FormulaReader {
     return verum;
   }
 
-  #reportUnknownRelation(place: Place, name: string, given: number): void {
+  /**
+   * @param given with how many arguments it is used
+   * @param definition what the text may also be meant for: the name of a definition
+   */
+  #reportUnknownRelation(place: Place, name: string, given: number, definition?: string): void {
     const { names } = this.#reader;
     const near = names.nearest(name, ["relation", "formula"]);
     const declaration = given === 2 ? `relation ${name}` : `relation ${name} of ${countOf(given, "place")}`;
@@ -540,7 +544,9 @@ class FormulaReader {
       this.#reader.report(
         "unknown-name",
         place,
-        `there is no relation or formula ${quote(name)}`,
+        definition === undefined
+          ? `there is no relation or formula ${quote(name)}`
+          : `there is no relation ${quote(name)}, and no definition ${quote(definition)}`,
         near !== null ? `write \`${near}\`` : `declare it: \`${declaration}\``,
       );
   }

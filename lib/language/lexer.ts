@@ -56,12 +56,11 @@ const relationCommands = new Map(
 
 /** The combining long solidus overlay, which makes `≠` of `=`. */
 const COMBINING_STROKE = 0x338;
-/** Signs of one ASCII character with which no longer sign begins, by code: the lexer's short cut. */
+/** Signs of one UTF-16 unit with which no longer sign begins, by that unit: the lexer's short cut. */
 const SINGLE = new Map(
   [...signKinds]
-    .filter(([text]) => /^[ -~]$/.test(text) && !clusters.some((cluster) => cluster.startsWith(text)))
-    .filter(([text]) => text !== "-")
-    .map(([text, kind]) => [text.charCodeAt(0), kind] as const),
+    .filter(([text]) => text.length === 1 && !clusters.some((cluster) => cluster.startsWith(text)))
+    .map(([text, kind]) => [text.charCodeAt(0), { text, kind }] as const),
 );
 
 /** Whether the word is a spelling of a sign, such as `forall`. */
@@ -97,13 +96,14 @@ export function readTokens(source: string): Token[] {
   };
   while (at < source.length) {
     const code = source.charCodeAt(at);
-    if (code === 0x20) {
+    if (code === 0x20 || code === 0x0a) {
+      if (code === 0x0a) lineStart = true;
       at += 1;
       continue;
     }
     const single = SINGLE.get(code);
     if (single !== undefined && source.charCodeAt(at + 1) !== COMBINING_STROKE) {
-      add(single, source[at]!, at + 1);
+      add(single.kind, single.text, at + 1);
       continue;
     }
     const word = matchAt(WORD);
