@@ -19,6 +19,11 @@ export function readClaim(reader: Reader): Claim | null {
     const structure = readStructure(reader);
     return readTruth(reader, structure, { from: first.from, to: reader.last.to });
   }
+  if (["forall", "exists", "not", "true", "false"].includes(first.kind))
+    reader.failExpected(
+      "a theory or a structure",
+      "write `{} ⊨ φ` for a sentence that every structure makes true",
+    );
   const theory = readTheory(reader);
   const sign = reader.peek();
   if (sign.kind === "entails" || sign.kind === "does-not-entail") {
@@ -28,8 +33,10 @@ export function readClaim(reader: Reader): Claim | null {
     return { kind: sign.kind, premises: theory, conclusion };
   }
   if (reader.acceptWord("has") !== null) {
-    for (const word of ["no", "finite"]) reader.expectWord(word, "write `has no finite model`");
-    if (reader.acceptWord("models") === null) reader.expectWord("model", "write `has no finite model`");
+    const hint = "write `has no finite model`";
+    reader.expectWord("no", hint);
+    reader.expectWord("finite", `${hint}; for a theory without any model, \`T ⊨ ⊥\``);
+    if (reader.acceptWord("models") === null) reader.expectWord("model", hint);
     return theory === null ? null : { kind: "no-finite-model", theory };
   }
   if (reader.acceptWord("is") === null)
@@ -73,6 +80,7 @@ function hintForProperty(reader: Reader, word: Token): string | null {
   const known = ["consistent", "infinite-only", "independent", "weaker", "equivalent"];
   const next = reader.peekAfter(1);
   const near = nearestName(word.text, known) ?? nearestName(`${word.text}-${next.text}`, known);
+  if (word.text === "inconsistent") return "write `T ⊨ ⊥`";
   if (word.text === "infinite" && next.text === "only") return "write `is infinite-only`";
   if (near === null) return `claims are ${FORMS}`;
   return `write \`is ${near}${near === "weaker" ? " than" : near === "equivalent" ? " to" : ""}\``;

@@ -203,7 +203,9 @@ function afterTheory(
     return [...listed(names, ["theory"]), ...THEORY_WORDS];
   }
   const phrases = after.map((text): Match => ({ text, type: /\p{L}/u.test(text) ? "keyword" : "symbol" }));
-  return [...phrases, ...words("keyword", ["replacing"]), ...optionMatches(tokens, last)];
+  const hasOption = tokens.some(({ text }) => optionHelp.some(({ word }) => word === text));
+  const goOn = hasOption ? [] : [...phrases, ...words("keyword", ["replacing"])];
+  return [...goOn, ...optionMatches(tokens, last)];
 }
 
 function optionMatches(tokens: readonly Token[], last: Token): readonly Match[] {

@@ -30,6 +30,8 @@ export interface FormulaReading {
   readonly damaged: boolean;
   /** Where each free variable occurs first. */
   readonly free: ReadonlyMap<Variable, Place>;
+  /** The variables that some quantifier binds. */
+  readonly bound: ReadonlySet<Variable>;
   /** The source, on one line. */
   readonly text: string;
 }
@@ -48,18 +50,27 @@ export function readClosed(
   reader: Reader,
   what: string,
   parameters: readonly Variable[] = [],
+  alternative: string | null = null,
 ): { readonly formula: Formula; readonly text: string } | null {
-  const { formula, damaged, free, text } = readFormula(reader);
+  const { formula, damaged, free, bound, text } = readFormula(reader);
   const open = [...free.keys()].filter((variable) => !parameters.includes(variable));
   const first = open[0];
   if (first === undefined) return damaged ? null : { formula, text };
   const names = listWords([...open].sort().map(quote));
-  const closed = `∀${[...open].sort().join(" ")}. ${text}`;
+  const prefix = `∀${[...open].sort().join(" ")}.`;
+  const fits = [...text].length <= 100;
+  // `∀x Rxy → Ryx`: the quantifier is there and does not reach so far.
+  const isShort = open.some((variable) => bound.has(variable));
+  const closed = isShort
+    ? "a quantifier without a dot reaches no further than ¬: write a dot after its variables, or brackets"
+    : fits
+      ? `write \`${prefix} ${text}\``
+      : `put \`${prefix}\` before it`;
   reader.report(
     "free-variables",
     free.get(first)!,
     `${names} ${open.length === 1 ? "is" : "are"} free in ${what}`,
-    [...closed].length <= 120 ? `write \`${closed}\`` : `put \`∀${[...open].sort().join(" ")}.\` before it`,
+    alternative === null ? closed : `${closed}, or ${alternative}`,
   );
   return null;
 }
@@ -94,6 +105,7 @@ class FormulaReader {
       formula,
       damaged: damaged(),
       free: this.#skipped ? new Map() : this.#free,
+      bound: new Set(this.#bound.keys()),
       text: reader.excerpt(first, reader.last),
     };
   }
@@ -287,8 +299,7 @@ class FormulaReader {
       ? { segments: [word], offsets: [0, word.end - word.start] }
       : readRun(reader.source, word, 0);
     const wordLength = word.end - word.start;
-    if (segments.length > 1 && segments.length === offsets.length - 1 && offsets.at(-1) === wordLength)
-      if (inList && this.#isCallAhead()) return [];
+    if (inList && offsets.at(-1) === wordLength && this.#isCallAhead()) return [];
     let taken = 0;
     while (taken < segments.length && (taken === 0 || !this.#isNameAhead(word, offsets[taken]!))) taken += 1;
     // The last letter of the word may begin `x = …` or an infix atom.
@@ -358,14 +369,14 @@ class FormulaReader {
       case "theory": {
         reader.next();
         const axiom = readAxiomOf(reader, word, named.definition);
+        if (axiom === null && reader.at("open")) this.#arguments(word);
         return axiom?.formula ?? verum;
       }
       case "structure":
-        return reader.fail(
-          "wrong-kind",
-          word,
-          `${quote(word.text)} is a structure, where a formula is expected`,
-        );
+        reader.next();
+        reader.report("wrong-kind", word, `${quote(word.text)} is a structure, where a formula is expected`);
+        if (reader.at("open")) this.#arguments(word);
+        return verum;
       case "damaged":
         reader.next();
         if (reader.at("open")) this.#arguments(word);
@@ -621,6 +632,7 @@ class FormulaReader {
     const reader = this.#reader;
     reader.next();
     const sign = reader.peek();
+    if (sign.kind === "open" && sign.from === variable.to) return this.#variableCall(variable);
     if (!this.#isComparison(sign))
       return reader.failExpected(
         `\`=\`, \`≠\` or an infix relation after the variable ${quote(variable.text)}`,
@@ -638,6 +650,22 @@ class FormulaReader {
       `write \`${variable.text} ${sign.text} ${middle} ∧ ${middle} ${chained.text} …\``,
     );
     while (this.#isComparison(reader.peek())) this.#comparison(reader.last);
+    return verum;
+  }
+
+  /** `r(x, y)`, with a variable where the name of a relation is meant. */
+  #variableCall(variable: Token): Formula {
+    const { names } = this.#reader;
+    const near = names.nearest(variable.text, ["relation", "formula"]);
+    this.#reader.report(
+      "unknown-name",
+      variable,
+      `${quote(variable.text)} is a variable, and no relation or formula`,
+      near !== null
+        ? `write \`${near}\``
+        : "the name of a relation begins with a capital letter or has several letters",
+    );
+    this.#arguments(variable);
     return verum;
   }
 

@@ -92,36 +92,38 @@ function statementWord(reader: Reader, first: Token): StatementKind {
     );
   const words = statementHelp.map((one) => one.word);
   const second = reader.peekAfter(1);
-  const isPair = second.kind === "word" && !second.lineStart;
-  const pair = isPair ? nearestName(`${first.text}-${second.text}`, words) : null;
-  const near = nearestName(first.text, words) ?? pair ?? pairWord(first, second, words);
-  if (near === null) {
+  const single = nearestName(first.text, words);
+  const pair =
+    single === null && second.kind === "word" && !second.lineStart ? pairWord(first, second) : null;
+  const meant = single ?? pair;
+  const last = pair === null ? first : second;
+  if (meant === null) {
     const named = reader.names.find(first.text);
     if (named?.kind === "damaged") throw new Unreadable(true);
+    const near = reader.names.nearest(first.text, ["relation", "formula", "theory", "structure"]);
+    const subject = named !== null ? first.text : near;
     reader.fail(
       "unknown-statement",
       first,
       `${quote(first.text)} begins no statement; statements are ${statementList()}`,
-      named !== null ? `write \`describe ${first.text}\`` : null,
+      subject === null ? null : `write \`describe ${subject}\``,
     );
   }
-  const place =
-    near === pair || (near.includes("-") && isPair && second.text === near.split("-")[1])
-      ? { from: first.from, to: second.to }
-      : first;
   reader.report(
     "unknown-statement",
-    place,
-    `${quote(reader.excerpt(first, place === first ? first : second))} begins no statement`,
-    `write \`${near}\``,
+    { from: first.from, to: last.to },
+    `${quote(reader.excerpt(first, last))} begins no statement`,
+    `write \`${meant}\``,
   );
-  if (place !== first) reader.next();
-  return near as StatementKind;
+  if (pair !== null) reader.next();
+  return meant as StatementKind;
 }
 
-/** `check finite`: a statement word written as two words. */
-function pairWord(first: Token, second: Token, words: readonly string[]): string | null {
-  return second.lineStart ? null : (words.find((word) => word === `${first.text}-${second.text}`) ?? null);
+/** `check finite`: a statement word, rightly spelled or not, written as two words; null if it is none. */
+function pairWord(first: Token, second: Token): string | null {
+  const words = statementHelp.map((one) => one.word).filter((word) => word.includes("-"));
+  const pair = `${first.text}-${second.text}`;
+  return words.find((word) => word === pair) ?? nearestName(pair, words);
 }
 
 /** Reports what stands after a statement that could be complete. */

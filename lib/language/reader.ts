@@ -6,7 +6,7 @@ import type { Diagnostic, Place } from "./diagnostics.ts";
 import { helpOf, laterStatements } from "./help.ts";
 import { readTokens, type Token, type TokenKind } from "./lexer.ts";
 import type { Names } from "./names.ts";
-import { mistakenSigns, type SignKind, signOf } from "./tokens.ts";
+import { keptSymbols, mistakenSigns, type SignKind, signOf } from "./tokens.ts";
 
 /**
  * How many brackets, negations, quantifiers and conditionals may lie one inside another, in the text and in the
@@ -113,6 +113,11 @@ export class Reader {
   atWord(word: string): boolean {
     const token = this.peek();
     return token.kind === "word" && token.text === word && !token.group;
+  }
+
+  /** Reads on to the next comma, or to the end of the line or statement. */
+  skipToComma(): void {
+    while (!this.at("comma") && !this.at("semicolon") && !this.at("end")) this.next();
   }
 
   /** Reads a token of that kind if it comes next. */
@@ -311,9 +316,9 @@ export class Reader {
         hintFor(token),
       );
     if (token.kind === "close" && this.#open.at(-1) !== "open")
-      this.fail("unmatched-bracket", token, "no `(` is open that this `)` could close", suggestion);
+      this.fail("unmatched-bracket", token, "no `(` is open that this `)` could close", "leave it out");
     if (token.kind === "close-brace" && this.#braceCount === 0)
-      this.fail("unmatched-bracket", token, "no `{` is open that this `}` could close", suggestion);
+      this.fail("unmatched-bracket", token, "no `{` is open that this `}` could close", "leave it out");
     this.fail("unexpected", token, `expected ${expected}, found ${describeToken(token)}`, suggestion);
   }
 
@@ -432,8 +437,10 @@ export function describeToken(token: Token): string {
 
 /** What to do about a sign that is not known: write one of ours, or declare it. */
 export function hintFor(token: Token): string | null {
+  if (keptSymbols.has(token.text)) return "it is kept for relation terms, which this version does not have";
   const sign = mistakenSigns.get(token.text);
-  const declaration = token.kind === "relation-sign" ? `declare it: \`relation ${token.text} infix\`` : null;
+  const isDeclarable = token.kind === "relation-sign" && (sign === undefined || !/^[ -~]*$/.test(token.text));
+  const declaration = isDeclarable ? `declare it: \`relation ${token.text} infix\`` : null;
   if (sign === undefined) return declaration;
   return declaration === null ? `write ${sign}` : `write ${sign}, or ${declaration}`;
 }

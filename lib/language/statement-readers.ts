@@ -7,9 +7,10 @@ import { readClaim, readConclusion } from "./claims.ts";
 import { countOf, kindText, readClosed } from "./formulas.ts";
 import { isRelationSign, type Token } from "./lexer.ts";
 import { isKeptWord, isVariable, type NameKind } from "./names.ts";
+import { nearestName } from "./nearest.ts";
 import { readWhole } from "./numbers.ts";
 import { readOptions } from "./options.ts";
-import { isStatementWord, quote, type Reader } from "./reader.ts";
+import { quote, type Reader, Unreadable } from "./reader.ts";
 import type { Definition, NamedTheory, Statement, StatementKind } from "./statements.ts";
 import { isStructureAhead, readStructure } from "./structures.ts";
 import { expressionAhead } from "./subjects.ts";
@@ -59,7 +60,7 @@ function readRelation(reader: Reader, bindings: Binding[]): StatementBody | null
     const mistakes = reader.diagnostics.length;
     checkNewName(reader, name, "relation");
     if (reader.diagnostics.length === mistakes) bindings.push({ name: name.text, as: "relation" });
-    const symbol = readSymbol(reader, name);
+    const symbol = readDeclaration(reader, name);
     if (relations.some((relation) => relation.name === name.text))
       reader.report(
         "relation-twice",
@@ -71,6 +72,23 @@ function readRelation(reader: Reader, bindings: Binding[]): StatementBody | null
     else relations.push(symbol);
   } while (reader.accept("comma") !== null);
   return sound ? { kind: "relation", relations } : null;
+}
+
+/** Reads what stands after a name, up to the comma or the end; null after a mistake. */
+function readDeclaration(reader: Reader, name: Token): RelationSymbol | null {
+  try {
+    const symbol = readSymbol(reader, name);
+    if (reader.at("comma") || reader.at("semicolon") || reader.at("end")) return symbol;
+    const near = nearestName(reader.peek().text, ["infix", "of"]);
+    return reader.failExpected(
+      "`of`, `infix`, `,` or the end of the statement",
+      near === null ? null : `write \`${near}\``,
+    );
+  } catch (error) {
+    if (!(error instanceof Unreadable)) throw error;
+    reader.skipToComma();
+    return null;
+  }
 }
 
 /** Reads `of 3 places` and `infix` after a name. */
@@ -106,14 +124,19 @@ function failName(reader: Reader, what: string): never {
   const token = reader.peek();
   if (token.kind === "number" || token.kind === "end" || token.kind === "unknown")
     return reader.failExpected(`the name of a ${what}`);
-  if (keptSymbols.has(token.text) || reader.peek().kind !== "relation-sign")
+  if (token.kind === "relation-sign")
     return reader.fail(
-      "kept-word",
+      "not-a-name",
       token,
-      `${quote(token.text)} is a sign of the language and cannot be the name of a ${what}`,
+      `${quote(token.text)} is a symbol, and the name of a ${what} begins with a letter`,
       "take another name",
     );
-  return reader.failExpected(`the name of a ${what}`);
+  return reader.fail(
+    "kept-word",
+    token,
+    `${quote(token.text)} is a sign of the language and cannot be the name of a ${what}`,
+    "take another name",
+  );
 }
 
 /** Reports whatever keeps a word or symbol from becoming a name. */
@@ -236,7 +259,10 @@ function readDefinition(
       return structure === null ? null : { kind, name, structure: structure.structure };
     }
     case "formula": {
-      const body = readClosed(reader, `the definition of ${quote(name)}`, parameters ?? []);
+      if (reader.at("end") && parameters === null) reader.failExpected("a theory, a structure or a formula");
+      const header = (parameters ?? []).map((parameter) => `${parameter}, `).join("");
+      const alternative = `make it a parameter: \`define ${name}(${header}…) := …\``;
+      const body = readClosed(reader, `the definition of ${quote(name)}`, parameters ?? [], alternative);
       return body === null ? null : { kind, name, parameters: parameters ?? [], body: body.formula };
     }
     case "relation":
@@ -292,6 +318,7 @@ function readDescribe(reader: Reader): StatementBody | null {
       return structure === null ? null : { kind: "describe", subject: { kind: "structure", structure } };
     }
     case "formula": {
+      if (reader.at("end")) reader.failExpected("what is to be described: a name or an expression");
       const named = token.kind === "word" ? reader.names.find(token.text) : null;
       const { kind: after, from } = reader.peekAfter(1);
       const isBare = after === "end" || after === "semicolon" || reader.peekAfter(1).lineStart;
@@ -365,9 +392,4 @@ function readModels(reader: Reader): StatementBody | null {
   const size = readWhole(reader, "how many points the models have");
   const options = readOptions(reader);
   return theory === null || size === null ? null : { kind: "models", theory, size, options };
-}
-
-/** The word that a misspelled statement word means, by `readers`; see parser.ts. */
-export function isReadable(word: string): word is StatementKind {
-  return isStatementWord(word) && Object.hasOwn(statementReaders, word);
 }
