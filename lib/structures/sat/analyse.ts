@@ -95,50 +95,63 @@ function minimise(core: Core, markedBefore: number): number {
   return markedSize;
 }
 
-/** Marks of {@link Core.seen} beside 1, which is: in the learned clause, or implied by it. */
+/** Mark of {@link Core.seen} beside 1, which is: in the learned clause, or implied by it. */
 const NOT_IMPLIED = 2;
 
 /**
- * Whether a literal is implied by others of the learned clause. `mask` has a bit for every level in it, modulo 32: a
- * literal of another level cannot be implied. Returns the number of marked variables; its complement if it is not.
+ * Whether a literal is implied by others of the learned clause: whether every way back through the reasons ends in it.
+ * `mask` has a bit for every level in it, modulo 32: a literal of another level cannot be implied. All literals that
+ * are settled on the way are marked, implied or not, so that no part of the graph is looked at twice for one clause.
+ * Returns the number of marked variables; its complement if the literal is not implied.
  */
 function redundant(core: Core, literal: number, mask: number, markedBefore: number): number {
   const { seen, origins, marked, stack } = core;
   const { words } = core.arena;
   let markedSize = markedBefore;
-  let depth = 1;
+  // The way from the literal to where we are: at 2i a literal, at 2i + 1 how many of its reason's have been settled.
+  let top = 0;
   stack[0] = literal;
-  while (depth > 0) {
-    depth -= 1;
-    const reason = origins[stack[depth]! | 1]!;
-    let at = 0;
-    let stop = 1;
-    if (reason >= 0) {
-      at = reason + HEADER + 1;
-      stop = reason + HEADER + words[reason]!;
-    }
-    for (; at < stop; at += 1) {
-      const other = reason >= 0 ? words[at]! : literalOfReason(reason);
-      const variable = other >> 1;
-      const mark = seen[variable]!;
-      const level = origins[other & -2]!;
-      if (mark === 1 || level === 0) continue;
-      if (mark === NOT_IMPLIED || origins[other | 1] === NONE || (mask & (1 << (level & 31))) === 0) {
-        // What was marked on the way is not known to be implied.
-        let kept = markedBefore;
-        for (let index = markedBefore; index < markedSize; index += 1) seen[marked[index]!] = 0;
-        if (mark === 0) {
-          seen[variable] = NOT_IMPLIED;
-          marked[kept++] = variable;
-        }
-        return ~kept;
+  stack[1] = 0;
+  for (;;) {
+    const reason = origins[stack[top]! | 1]!;
+    const settled = stack[top + 1]!;
+    const count = reason >= 0 ? words[reason]! - 1 : 1;
+    if (settled === count) {
+      const variable = stack[top]! >> 1;
+      if (seen[variable] === 0) {
+        seen[variable] = 1;
+        marked[markedSize++] = variable;
       }
-      seen[variable] = 1;
-      marked[markedSize++] = variable;
-      stack[depth++] = other;
+      if (top === 0) return markedSize;
+      top -= 2;
+      continue;
     }
+    stack[top + 1] = settled + 1;
+    const other = reason >= 0 ? words[reason + HEADER + 1 + settled]! : literalOfReason(reason);
+    const variable = other >> 1;
+    if (seen[variable] === 1 || origins[other & -2] === 0) continue;
+    if (
+      seen[variable] === NOT_IMPLIED ||
+      origins[other | 1] === NONE ||
+      (mask & (1 << (origins[other & -2]! & 31))) === 0
+    ) {
+      if (seen[variable] === 0) {
+        seen[variable] = NOT_IMPLIED;
+        marked[markedSize++] = variable;
+      }
+      // Nothing on the way here is implied; what has been settled beside it stays.
+      for (let place = top; place > 0; place -= 2) {
+        const passed = stack[place]! >> 1;
+        if (seen[passed] !== 0) continue;
+        seen[passed] = NOT_IMPLIED;
+        marked[markedSize++] = passed;
+      }
+      return ~markedSize;
+    }
+    top += 2;
+    stack[top] = other;
+    stack[top + 1] = 0;
   }
-  return markedSize;
 }
 
 /** How many decision levels the literals span (the "literal block distance" of Audemard & Simon 2009). */

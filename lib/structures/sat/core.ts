@@ -156,7 +156,7 @@ export class Core {
     this.trail = grownInt32(this.trail, variables);
     this.clause = grownInt32(this.clause, variables);
     this.marked = grownInt32(this.marked, variables);
-    this.stack = grownInt32(this.stack, variables);
+    this.stack = grownInt32(this.stack, variables * 2);
     const activity = new Float64Array(variables);
     activity.set(this.activity);
     this.activity = activity;
