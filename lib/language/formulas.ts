@@ -44,13 +44,14 @@ export function readFormula(reader: Reader): FormulaReading {
 /**
  * Reads a formula whose free variables must be among the given ones, and reports others.
  * @param what the formula's part in the statement, for messages: "the axiom `mid`"
+ * @param alternative what else than a quantifier would help, given the variables that are free
  * @returns null when a mistake was reported
  */
 export function readClosed(
   reader: Reader,
   what: string,
   parameters: readonly Variable[] = [],
-  alternative: string | null = null,
+  alternative?: (free: readonly Variable[]) => string,
 ): { readonly formula: Formula; readonly text: string } | null {
   const { formula, damaged, free, bound, text } = readFormula(reader);
   const open = [...free.keys()].filter((variable) => !parameters.includes(variable));
@@ -70,7 +71,7 @@ export function readClosed(
     "free-variables",
     free.get(first)!,
     `${names} ${open.length === 1 ? "is" : "are"} free in ${what}`,
-    alternative === null ? closed : `${closed}, or ${alternative}`,
+    alternative === undefined ? closed : `${closed}, or ${alternative([...open].sort())}`,
   );
   return null;
 }

@@ -10,6 +10,9 @@ import { CellEnds, quote, Reader, Unreadable } from "./reader.ts";
 import { type Binding, type StatementBody, statementReaders } from "./statement-readers.ts";
 import type { ParsedCell, Scope, Statement, StatementKind } from "./statements.ts";
 
+/** How many statements a cell may have. */
+export const MAX_STATEMENTS = 5000;
+
 /**
  * Reads a cell. Names are resolved in the scope before the cell and in what earlier statements of the cell add to
  * it. All mistakes are reported, each once; with any, there are no statements.
@@ -34,6 +37,8 @@ export function readCell(text: string, scope: Scope): CellReading {
     while (!reader.isDone) {
       reader.beginStatement();
       if (reader.accept("semicolon") !== null) continue;
+      if (statements.length === MAX_STATEMENTS)
+        reader.endCell(`more than ${MAX_STATEMENTS} statements in one cell`);
       const statement = readStatement(reader);
       if (statement === null) continue;
       names.add(statement);

@@ -353,12 +353,15 @@ export class Reader {
   charge(parts: number, place: Place): void {
     this.#parts += parts;
     if (this.#parts <= MAX_PARTS) return;
-    this.report(
-      "cell-too-large",
-      place,
+    this.endCell(
       `with all definitions unfolded, the formulas of this cell have more than ${MAX_PARTS} parts`,
-      "divide the cell, or unfold fewer definitions",
+      place,
     );
+  }
+
+  /** Reports that the cell is too large, and ends it. */
+  endCell(message: string, place: Place = this.peek()): never {
+    this.report("cell-too-large", place, message, "divide the cell");
     throw new CellEnds();
   }
 

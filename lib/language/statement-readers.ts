@@ -260,8 +260,8 @@ function readDefinition(
     }
     case "formula": {
       if (reader.at("end") && parameters === null) reader.failExpected("a theory, a structure or a formula");
-      const header = (parameters ?? []).map((parameter) => `${parameter}, `).join("");
-      const alternative = `make it a parameter: \`define ${name}(${header}…) := …\``;
+      const alternative = (free: readonly Variable[]) =>
+        `add parameters: \`define ${name}(${[...(parameters ?? []), ...free].join(", ")}) := …\``;
       const body = readClosed(reader, `the definition of ${quote(name)}`, parameters ?? [], alternative);
       return body === null ? null : { kind, name, parameters: parameters ?? [], body: body.formula };
     }
