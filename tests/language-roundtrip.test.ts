@@ -1,5 +1,6 @@
 /** What the printer writes reads back as the same formula or theory, in each notation. */
 import fc from "fast-check";
+import temml from "temml";
 import { describe, expect, test } from "vitest";
 import { parseCell, parseFormula } from "../lib/language/parser.ts";
 import { type Notation, printAxiomSet, printFormula, printTheory } from "../lib/language/printer.ts";
@@ -116,7 +117,10 @@ describe.each(notations)("in %s notation", (notation) => {
     }));
     fc.assert(
       fc.property(theories, (theory) => {
-        for (const text of [printAxiomSet(theory, notation, scope), `{\n${printTheory(theory, notation, scope)}\n}`]) {
+        for (const text of [
+          printAxiomSet(theory, notation, scope),
+          `{\n${printTheory(theory, notation, scope)}\n}`,
+        ]) {
           const cell = parseCell(`define T := ${text}`, scope);
           expect(cell.diagnostics).toEqual([]);
           expect(cell.statements[0]).toMatchObject({ definition: { name: "T", theory } });
@@ -135,6 +139,21 @@ describe.each(notations)("in %s notation", (notation) => {
     for (const formula of readSentences([...new Set(sentences)]))
       expect(readBack(printFormula(formula, notation, scope))).toEqual(formula);
   });
+});
+
+test("a typesetter of LaTeX accepts what is printed in it", () => {
+  fc.assert(
+    fc.property(formulas, (formula) => {
+      const text = printFormula(formula, "latex", scope);
+      expect(temml.renderToString(text, { throwOnError: true })).toContain("</math>");
+    }),
+    { seed: SEED, numRuns: 300 },
+  );
+  const theory: Theory = {
+    axioms: [{ label: "left-total_1", formula: verum, named: true }],
+    fallback: null,
+  };
+  expect(temml.renderToString(printAxiomSet(theory, "latex"), { throwOnError: true })).toContain("</math>");
 });
 
 test("all sentences of the collected check values are read", () => {

@@ -2,7 +2,7 @@
 import type { Formula, Variable } from "../logic/formula.ts";
 import type { Diagnostic } from "./diagnostics.ts";
 import { readFormula } from "./formulas.ts";
-import { helpOf, laterStatements, listWords, statementHelp, statementList } from "./help.ts";
+import { helpOf, laterStatements, listWords, optionHelp, statementHelp, statementList } from "./help.ts";
 import type { Token } from "./lexer.ts";
 import { Names } from "./names.ts";
 import { nearestName } from "./nearest.ts";
@@ -107,11 +107,16 @@ function statementWord(reader: Reader, first: Token): StatementKind {
     if (named?.kind === "damaged") throw new Unreadable(true);
     const near = reader.names.nearest(first.text, ["relation", "formula", "theory", "structure"]);
     const subject = named !== null ? first.text : near;
+    const isOption = optionHelp.some((option) => option.word === first.text);
     reader.fail(
       "unknown-statement",
       first,
       `${quote(first.text)} begins no statement; statements are ${statementList()}`,
-      subject === null ? null : `write \`describe ${subject}\``,
+      isOption
+        ? "options stand on the same line as their statement"
+        : subject === null
+          ? null
+          : `write \`describe ${subject}\``,
     );
   }
   reader.report(
