@@ -333,6 +333,17 @@ export class Reader {
     return this.next();
   }
 
+  /** Reads the bracket that closes `open`; at the end of what is being read, reports `open` as not closed. */
+  close(open: Token, expected: string): Token {
+    if (this.at("close")) return this.next();
+    const found = this.peek();
+    if (!["end", "close-brace", "semicolon", "entails", "does-not-entail", "assign"].includes(found.kind))
+      return this.failExpected(expected);
+    const end =
+      found.kind !== "end" ? quote(found.text) : `the end of the ${found.text === "line" ? "line" : "cell"}`;
+    return this.fail("missing-bracket", open, `this \`(\` is not closed before ${end}`, "put in a `)`");
+  }
+
   /** Goes one level in, or reports that the text is nested too deeply. */
   enter(place: Place): void {
     this.level += 1;

@@ -4,7 +4,7 @@
  */
 import type { RelationSymbol, Variable } from "../logic/formula.ts";
 import { readClaim, readConclusion } from "./claims.ts";
-import { countOf, kindText, readClosed } from "./formulas.ts";
+import { readClosed } from "./formulas.ts";
 import { isRelationSign, type Token } from "./lexer.ts";
 import { isKeptWord, isVariable, type NameKind } from "./names.ts";
 import { nearestName } from "./nearest.ts";
@@ -16,6 +16,7 @@ import { isStructureAhead, readStructure } from "./structures.ts";
 import { expressionAhead } from "./subjects.ts";
 import { readTheory } from "./theories.ts";
 import { keptSymbols } from "./tokens.ts";
+import { countOf, kindText } from "./wording.ts";
 
 type WithoutBase<T> = T extends unknown ? Omit<T, "from" | "to" | "text"> : never;
 /** A statement without its source. */

@@ -1,11 +1,11 @@
 /** Structures written out: `points 3 where R is { (1,2), (2,3) } and S is { (1,1) }`. */
 import type { RelationSymbol } from "../logic/formula.ts";
 import type { RelationDefinition, StructureDefinition } from "../logic/structure-definition.ts";
-import { countOf, kindText } from "./formulas.ts";
 import type { Token } from "./lexer.ts";
 import { readWhole } from "./numbers.ts";
 import { quote, type Reader, Unreadable } from "./reader.ts";
 import type { NamedStructure } from "./statements.ts";
+import { countOf, kindText } from "./wording.ts";
 
 /** How many tuples a relation of a structure may be asked about: points to the power of places. */
 export const MAX_TABLE = 2 ** 24;
@@ -165,9 +165,7 @@ function readTuple(reader: Reader, brace: Token, size: number | null): readonly 
       else points.push(point);
       if (reader.accept("close") !== null) return sound ? points : null;
       if (reader.accept("comma") !== null) continue;
-      if (reader.at("end") || reader.at("close-brace"))
-        reader.fail("missing-bracket", open, "this `(` is not closed", "put in a `)`");
-      reader.failExpected("`,` or `)`");
+      reader.close(open, "`,` or `)`");
     }
   } catch (error) {
     if (!(error instanceof Unreadable) || !reader.skipGroup(mark)) throw error;

@@ -14,12 +14,13 @@ import {
   withoutAxiom,
 } from "../logic/theory.ts";
 import type { Place } from "./diagnostics.ts";
-import { countOf, kindText, readClosed } from "./formulas.ts";
+import { readClosed } from "./formulas.ts";
 import { readLabel, reportLabel } from "./labels.ts";
 import type { Token } from "./lexer.ts";
 import { measureTheory } from "./measure.ts";
 import { isStatementWord, MAX_NESTING, quote, type Reader, Unreadable } from "./reader.ts";
 import type { NamedTheory } from "./statements.ts";
+import { countOf, kindText } from "./wording.ts";
 
 /** How many axioms a theory may have. */
 export const MAX_AXIOMS = 1000;
@@ -171,10 +172,7 @@ function readInside(reader: Reader, open: Token, mark: Reader["mark"]): TheoryRe
     let reading: TheoryReading;
     try {
       reading = readExpression(reader);
-      if (reader.at("end") || reader.at("close-brace") || reader.at("semicolon"))
-        reader.fail("missing-bracket", open, "this `(` is not closed", "put in a `)`");
-      if (!reader.at("close")) reader.failExpected("`+`, `-`, `replacing` or `)`");
-      reader.next();
+      reader.close(open, "`+`, `-`, `replacing` or `)`");
     } catch (error) {
       if (!(error instanceof Unreadable) || error.beyondBrackets || !reader.skipGroup(mark)) throw error;
       reading = { text: "", theory: null, from: open.from, to: reader.last.to };
