@@ -1,6 +1,6 @@
 /** Cell text to tokens. Any text has tokens: what the language does not know becomes tokens of kind `unknown`. */
 import type { Place } from "./diagnostics.ts";
-import { clusters, relationSigns, type SignKind, signs } from "./tokens.ts";
+import { clusters, mistakenSigns, relationSigns, type SignKind, signs } from "./tokens.ts";
 
 /**
  * `word`: a name, label, variable, run of variables or keyword; `number`: begins with a digit; `relation-sign`: a
@@ -69,13 +69,14 @@ export function isSignWord(word: string): boolean {
 }
 
 /**
- * Whether a symbol can be declared as an infix relation: one sign, or a cluster such as `<=`, that the language
- * does not use itself.
+ * Whether a symbol can be declared as a relation: one sign, or a cluster such as `<=`, that the language does not
+ * use itself. Clusters that are taken for signs of the language elsewhere, such as `&&`, cannot.
  */
 export function isRelationSign(text: string): boolean {
   if (signKinds.has(text)) return false;
   RELATION_SIGN.lastIndex = 0;
-  return clusters.includes(text) || RELATION_SIGN.exec(text)?.[0] === text;
+  if (clusters.includes(text)) return !mistakenSigns.has(text);
+  return RELATION_SIGN.exec(text)?.[0] === text;
 }
 
 /** The tokens of a text, ending with one of kind `end`. Linear in its length; never throws. */

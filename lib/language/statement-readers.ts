@@ -15,7 +15,7 @@ import type { Definition, NamedTheory, Statement, StatementKind } from "./statem
 import { isStructureAhead, readStructure } from "./structures.ts";
 import { expressionAhead } from "./subjects.ts";
 import { readTheory } from "./theories.ts";
-import { keptSymbols } from "./tokens.ts";
+import { keptSymbols, mistakenSigns } from "./tokens.ts";
 import { countOf, kindText } from "./wording.ts";
 
 type WithoutBase<T> = T extends unknown ? Omit<T, "from" | "to" | "text"> : never;
@@ -163,7 +163,11 @@ function findNameProblem(
     const message = `${shown} is kept for relation terms and cannot be the name of a ${what}`;
     return { code: "kept-word", message, suggestion };
   }
-  if (isKeptWord(text) || (kind === "relation-sign" && !isRelationSign(text))) {
+  if (kind === "relation-sign" && !isRelationSign(text)) {
+    const message = `${shown} is too like ${mistakenSigns.get(text) ?? "a sign of the language"} to be the name of a ${what}`;
+    return { code: "kept-word", message, suggestion };
+  }
+  if (isKeptWord(text)) {
     const message = `${shown} is a word of the language and cannot be the name of a ${what}`;
     return { code: "kept-word", message, suggestion };
   }

@@ -323,7 +323,7 @@ export const mistakenSigns: ReadonlyMap<string, string> = new Map([
   ["×", "(1,2), the pairs themselves"],
 ]);
 
-/** Signs of several ASCII characters that are read as one, longest first. Those not in {@link signs} may be declared. */
+/** Signs of several ASCII characters that are read as one, longest first. */
 export const clusters: readonly string[] = [
   "<->",
   "<=>",
