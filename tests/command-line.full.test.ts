@@ -133,7 +133,7 @@ describe("eval", () => {
     });
     expect(status).toBe(1);
     expect(stdout).toMatch(/^holds: a model on 1 point/);
-    expect(stdout).toMatch(/interrupted/);
+    expect(stderr).toMatch(/^Interrupted: stopped at: check-finite/);
     expect(stderr).toMatch(/1 of 2 statements had been answered/);
   });
 });

@@ -23,7 +23,7 @@ import type { NamedTheory } from "./statements.ts";
 import { countOf, kindText } from "./wording.ts";
 
 /** How many axioms a theory may have. */
-export const MAX_AXIOMS = 1000;
+export const MAX_AXIOMS = 500;
 
 /** A theory expression that has been read: the theory is null after a mistake. */
 export interface TheoryReading extends Place {
