@@ -7,9 +7,10 @@ const LARGEST = 2 ** 53;
 /**
  * Reads a whole number that is at least 1.
  * @param what what the number says, for messages
+ * @param most the largest that is taken
  * @returns null after a mistake, with the number passed over
  */
-export function readWhole(reader: Reader, what: string): number | null {
+export function readWhole(reader: Reader, what: string, most = LARGEST): number | null {
   const first = reader.peek();
   const sign = first.kind === "minus" && reader.peekAfter(1).kind === "number" ? reader.next() : null;
   const token = reader.peek();
@@ -19,8 +20,9 @@ export function readWhole(reader: Reader, what: string): number | null {
   const text = `${sign === null ? "" : "-"}${token.text}`;
   if (/^0*[1-9][0-9]*$/.test(text)) {
     const number = Number(text);
-    if (number <= LARGEST) return number;
-    reader.report("size-too-large", place, `${quote(text)} is larger than 2^53`);
+    if (number <= most) return number;
+    const limit = most === LARGEST ? "2^53" : `${most}, the most that is taken here (${what})`;
+    reader.report("size-too-large", place, `${quote(text)} is larger than ${limit}`);
     return null;
   }
   reader.report(

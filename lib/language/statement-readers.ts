@@ -3,6 +3,7 @@
  * help.ts, its reader here.
  */
 import type { RelationSymbol, Variable } from "../logic/formula.ts";
+import { LARGEST_DOMAIN } from "../logic/structure-definition.ts";
 import { readClaim, readConclusion } from "./claims.ts";
 import { readClosed } from "./formulas.ts";
 import { isRelationSign, type Token } from "./lexer.ts";
@@ -394,7 +395,7 @@ function readModels(reader: Reader): StatementBody | null {
   const theory = readTheory(reader);
   reader.expectWord("of", "write `models T of size 4`");
   reader.expectWord("size", "write `models T of size 4`");
-  const size = readWhole(reader, "how many points the models have");
+  const size = readWhole(reader, "how many points the models have", LARGEST_DOMAIN);
   const options = readOptions(reader);
   return theory === null || size === null ? null : { kind: "models", theory, size, options };
 }

@@ -1,14 +1,16 @@
 /** Structures written out: `points 3 where R is { (1,2), (2,3) } and S is { (1,1) }`. */
 import type { RelationSymbol } from "../logic/formula.ts";
-import type { RelationDefinition, StructureDefinition } from "../logic/structure-definition.ts";
+import {
+  LARGEST_DOMAIN,
+  LARGEST_TABLES,
+  type RelationDefinition,
+  type StructureDefinition,
+} from "../logic/structure-definition.ts";
 import type { Token } from "./lexer.ts";
 import { readWhole } from "./numbers.ts";
 import { quote, type Reader, Unreadable } from "./reader.ts";
 import type { NamedStructure } from "./statements.ts";
 import { countOf, kindText } from "./wording.ts";
-
-/** How many tuples a relation of a structure may be asked about: points to the power of places. */
-export const MAX_TABLE = 2 ** 24;
 
 /** Whether a structure expression comes next. */
 export function isStructureAhead(reader: Reader): boolean {
@@ -27,7 +29,7 @@ export function readStructure(reader: Reader): NamedStructure | null {
     return named?.kind === "structure" ? { text: first.text, structure: named.definition.structure } : null;
   }
   const mistakes = reader.diagnostics.length;
-  const size = readWhole(reader, "how many points there are");
+  const size = readWhole(reader, "how many points there are", LARGEST_DOMAIN);
   const relations = reader.acceptWord("where") === null ? [] : readRelations(reader, size);
   if (reader.diagnostics.length > mistakes || size === null) return null;
   const structure: StructureDefinition = { carrier: { kind: "points", size }, relations };
@@ -92,11 +94,11 @@ function readRelationName(reader: Reader): RelationName {
 }
 
 function checkTable(reader: Reader, { token, relation }: RelationName, size: number | null): void {
-  if (relation === null || size === null || size ** relation.places <= MAX_TABLE) return;
+  if (relation === null || size === null || size ** relation.places <= LARGEST_TABLES) return;
   reader.report(
     "size-too-large",
     token,
-    `${quote(relation.name)} would have ${size}^${relation.places} tuples to decide on; the most is ${MAX_TABLE}`,
+    `${quote(relation.name)} would have ${size}^${relation.places} tuples to decide on; the most is ${LARGEST_TABLES}`,
     "take fewer points",
   );
 }

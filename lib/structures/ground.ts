@@ -2,7 +2,7 @@
 import type { Carrier } from "../carriers/carrier.ts";
 import type { Formula, RelationSymbol } from "../logic/formula.ts";
 import type { Meter } from "../logic/meter.ts";
-import { LARGEST_TABLES } from "../logic/structure-definition.ts";
+import { LARGEST_DOMAIN, LARGEST_TABLES } from "../logic/structure-definition.ts";
 import { type Circuit, FALSE, type Reference, TRUE } from "./circuit.ts";
 import { Memory, type Plan, planSentence, type QuantifierPlan } from "./plan.ts";
 
@@ -23,7 +23,7 @@ export function unknownTables(
   meter: Meter,
 ): UnknownTables {
   const entries = relations.reduce((sum, relation) => sum + carrier.kindCount(relation.places), 0);
-  if (entries > LARGEST_TABLES) meter.endForMemory();
+  if (entries > LARGEST_TABLES || (carrier.size ?? 0) > LARGEST_DOMAIN) meter.endForMemory();
   const tables = new Map<string, Int32Array>();
   for (const relation of relations) {
     const inputs = new Int32Array(carrier.kindCount(relation.places));
