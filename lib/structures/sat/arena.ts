@@ -21,6 +21,8 @@ export class ClauseArena {
   floats: Float32Array = new Float32Array(this.words.buffer);
   /** Words in use; the next clause is put here. */
   used = 0;
+  /** The array from before the last {@link Compaction}, kept to be used again. */
+  spare: Int32Array = new Int32Array(0);
 
   /** Adds a clause of `length` packed literals taken from the front of `literals`, and names it. */
   add(literals: Int32Array, length: number, levels: number): number {
@@ -47,15 +49,15 @@ export class ClauseArena {
 }
 
 /**
- * One garbage collection of an arena: live clauses move to a new array in their old order; the old array keeps for
- * each its new offset, until the compaction is forgotten.
+ * One garbage collection of an arena: live clauses move to another array in their old order; the old array keeps for
+ * each its new offset, until the next compaction.
  */
 export class Compaction {
   readonly #old: Int32Array;
 
   constructor(arena: ClauseArena) {
     const old = arena.words;
-    const fresh = new Int32Array(old.length);
+    const fresh = arena.spare.length === old.length ? arena.spare : new Int32Array(old.length);
     let to = 0;
     for (let from = 0; from < arena.used; ) {
       const length = old[from]!;
@@ -70,6 +72,7 @@ export class Compaction {
       to += size;
     }
     this.#old = old;
+    arena.spare = old;
     arena.words = fresh;
     arena.floats = new Float32Array(fresh.buffer);
     arena.used = to;

@@ -51,6 +51,8 @@ export class Core {
   learned: number[] = [];
   /** Which clauses are to be looked at when a literal becomes true. */
   readonly watches = new WatchLists();
+  /** How many literals were true at the top level when clauses that they make true were last looked for. */
+  settled = 0;
   /** False once the clauses are contradictory by themselves. */
   consistent = true;
 

@@ -31,9 +31,18 @@ class EnumerationRun {
    */
   #asserted: { readonly literal: number; readonly level: number }[] = [];
 
+  /** The variables that are not asked for. */
+  readonly #others: readonly number[];
+  /** How much oftener {@link #completeAtOnce} has succeeded than failed. */
+  #luck = 8;
+
   constructor(core: Core, over: readonly number[]) {
     this.#core = core;
     this.#over = over;
+    const others: number[] = [];
+    for (let variable = 1; variable <= core.variables; variable += 1)
+      if (core.first[variable] === 0 && core.values[variable * 2] === 0) others.push(variable);
+    this.#others = others;
   }
 
   run(onModel: (values: Uint8Array) => boolean, learned: () => boolean): Enumeration {
@@ -67,12 +76,39 @@ class EnumerationRun {
     const core = this.#core;
     let variable = core.pick(core.firstHeap);
     const isOver = variable !== 0;
-    if (!isOver) variable = core.pick(core.heap);
+    if (!isOver) {
+      if (this.#luck > 0) {
+        if (this.#completeAtOnce()) return false;
+        if (core.stopped) return true;
+      }
+      variable = core.pick(core.heap);
+    }
     if (variable === 0) return false;
     core.decisions += 1;
     core.deepen();
     if (isOver) this.#lastOver = core.level;
     core.assign(variable * 2 + core.saved[variable]!, NONE);
+    return true;
+  }
+
+  /**
+   * Tries to give all other variables the values they had last, on one level that is given up at the first conflict.
+   * Mostly they still fit, and this is several times faster than a level and a place in the heap for each.
+   */
+  #completeAtOnce(): boolean {
+    const core = this.#core;
+    const level = core.level;
+    core.deepen();
+    for (const variable of this.#others) {
+      if (core.values[variable * 2] !== 0) continue;
+      core.decisions += 1;
+      core.assign(variable * 2 + core.saved[variable]!, NONE);
+      if (propagate(core) === NONE && !core.stopped) continue;
+      if (!core.stopped) this.#luck -= 2;
+      core.cancel(level);
+      return false;
+    }
+    this.#luck += 1;
     return true;
   }
 

@@ -17,8 +17,12 @@ const LEVELS_KEPT = 2;
  */
 export function reduce(core: Core): void {
   const { words, floats } = core.arena;
-  discardTrue(core, core.given);
-  discardTrue(core, core.learned);
+  const settled = core.level === 0 ? core.trailSize : core.limits[1]!;
+  if (settled > core.settled) {
+    core.settled = settled;
+    discardTrue(core, core.given);
+    discardTrue(core, core.learned);
+  }
   const candidates = core.learned.filter(
     (clause) =>
       words[clause] !== DELETED && words[clause + LEVELS_WORD]! > LEVELS_KEPT && !isReason(core, clause),

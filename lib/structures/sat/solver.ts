@@ -11,9 +11,9 @@ import { Restarts } from "./restarts.ts";
 export const DEFAULT_MOST_LITERALS = 60_000_000;
 
 /** Learned clauses are first reduced after as many conflicts … */
-const FIRST_REDUCTION = 2000;
+const FIRST_REDUCTION = 1000;
 /** … and each time after so many more than the last time. */
-const REDUCTION_STEP = 300;
+const REDUCTION_STEP = 100;
 
 /** `ended`: the meter's `ended` says why, and nothing is known. */
 export type Outcome = "satisfiable" | "unsatisfiable" | "ended";
