@@ -90,6 +90,28 @@ export interface ModelsAnswer extends AnswerBase {
   readonly ended: EndReason | null;
 }
 
+/** How many models a theory has on one size. */
+export interface CountedSize {
+  readonly size: number;
+  /** Models on the points 1 to n, as many as there are. */
+  readonly labelled: bigint;
+  /** Classes of isomorphic models. */
+  readonly unlabelled: bigint;
+  /** One model of each class, where they were asked for; at most as many as are shown. */
+  readonly representatives: readonly Structure[];
+}
+
+/** Counts are computed, not certified: `evidence` covers the representatives alone. */
+export interface CountAnswer extends AnswerBase {
+  readonly question: "count";
+  readonly verdict: null;
+  /** The finished sizes, from 1 on. */
+  readonly sizes: readonly CountedSize[];
+  readonly ended: EndReason | null;
+  /** The size that was being counted when the work ended; null when it did not end early. */
+  readonly endedAt: number | null;
+}
+
 export interface AxiomAnswer {
   readonly label: string;
   readonly verdict: IndependenceVerdict;
@@ -152,6 +174,7 @@ export type Answer =
   | ClaimAnswer
   | FiniteAnswer
   | ModelsAnswer
+  | CountAnswer
   | IndependenceAnswer
   | CompareAnswer
   | DualAnswer;

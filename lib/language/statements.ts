@@ -82,9 +82,48 @@ export type Statement = StatementBase &
         readonly size: number;
         readonly options: Options;
       }
+    | {
+        readonly kind: "count";
+        readonly theory: NamedTheory;
+        /** Whether one model of each class of isomorphic ones is to be shown. */
+        readonly representatives: boolean;
+        /** `upTo` is never null here. */
+        readonly options: Options;
+      }
+    | {
+        readonly kind: "normalise";
+        /** May have free variables. */
+        readonly subject: NamedSentence;
+        readonly form: NormalFormName;
+        /** Whether each step is to be shown. */
+        readonly steps: boolean;
+      }
+    | {
+        readonly kind: "write";
+        readonly theory: NamedTheory;
+        /** The sentence asked about; null when the theory alone is written. */
+        readonly conclusion: NamedSentence | null;
+        readonly format: WrittenFormat;
+      }
   );
 
 export type StatementKind = Statement["kind"];
+
+/** The forms that `normalise` makes; see lib/logic/normal-forms. */
+export type NormalFormName =
+  | "negation"
+  | "prenex"
+  | "miniscoped"
+  | "skolem"
+  | "clause"
+  | "definitional-clause"
+  | "disjunctive";
+
+/** How `write` prints a theory or a question for other programs. */
+export type WrittenFormat =
+  | { readonly kind: "smt-lib" }
+  /** The clauses of the search on this many points. */
+  | { readonly kind: "dimacs"; readonly size: number };
 
 /** What `describe` can be asked about. */
 export type DescribeSubject =
