@@ -47,7 +47,12 @@ class EnumerationRun {
 
   run(onModel: (values: Uint8Array) => boolean, learned: () => boolean): Enumeration {
     const core = this.#core;
-    const values = new Uint8Array(this.#over.length);
+    const over = this.#over;
+    const values = new Uint8Array(over.length);
+    const places = new Int32Array(core.variables + 1).fill(-1);
+    over.forEach((variable, index) => {
+      places[variable] = index;
+    });
     for (;;) {
       const conflict = propagate(core);
       if (conflict !== NONE) {
@@ -58,12 +63,27 @@ class EnumerationRun {
         continue;
       }
       if (core.stopped) return "ended";
-      if (this.#decide()) continue;
+      const last = core.trailSize === core.variables - 1 ? this.#lastUnassigned() : 0;
+      if (last === 0 && this.#decide()) continue;
       for (let index = 0; index < values.length; index += 1)
-        values[index] = core.values[this.#over[index]! * 2]! > 0 ? 1 : 0;
+        values[index] = core.values[over[index]! * 2]! > 0 ? 1 : 0;
       if (!onModel(values)) return "stopped";
+      if (last !== 0) {
+        // After propagation no clause hangs on the last variable alone: both its values make all clauses true.
+        values[places[last]!] = 1;
+        core.visits += 1;
+        if (!onModel(values)) return "stopped";
+      }
       if (!this.#flip(this.#lastOver)) return "complete";
     }
+  }
+
+  /** The only unassigned variable, when it is one of those asked for; else 0. */
+  #lastUnassigned(): number {
+    const core = this.#core;
+    const variable = core.pick(core.firstHeap);
+    if (variable !== 0) core.firstHeap.insert(variable);
+    return variable;
   }
 
   /** Literals that clauses of one literal asserted. */
@@ -132,12 +152,17 @@ class EnumerationRun {
     const core = this.#core;
     const decision = core.trail[core.limits[level]!]!;
     const below = level - 1;
+    this.#bound = below;
+    this.#lastOver = below;
+    if (this.#asserted.length === 0) {
+      core.cancel(below);
+      core.assign(decision ^ 1, NONE);
+      return true;
+    }
     const kept = this.#asserted.filter((entry) => entry.level <= below);
     const reasons = kept.map(({ literal }) => core.origins[literal | 1]!);
     core.cancel(below);
     this.#asserted = kept;
-    this.#bound = below;
-    this.#lastOver = below;
     kept.forEach(({ literal }, index) => {
       if (core.values[literal] === 0) core.assign(literal, reasons[index]!);
     });
