@@ -5,7 +5,7 @@ import { Points } from "../lib/carriers/points.ts";
 import type { Structure } from "../lib/carriers/structure.ts";
 import { Meter, WorkEnded } from "../lib/logic/meter.ts";
 import { Canoniser } from "../lib/structures/canonical.ts";
-import { areIsomorphic, canonicalForm } from "../lib/structures/isomorphism.ts";
+import { areIsomorphic, automorphismCount, canonicalForm } from "../lib/structures/isomorphism.ts";
 import { Solver } from "../lib/structures/sat/solver.ts";
 
 const seed = Number(process.env.TWOPLACE_SEED ?? 20261201);
@@ -126,6 +126,51 @@ describe("canonical form", () => {
           .map((part) => part.join(""))
           .join("");
         expect(bits.slice(0, table.length)).toBe(table);
+      }),
+      options(300),
+    );
+  });
+
+  it("counts automorphisms as a trial of all renamings does", () => {
+    const counts = new Set<number>();
+    fc.assert(
+      fc.property(pairs, ({ size, places, first, order }) => {
+        const all = permutations(size).filter((to) => same(renamed(size, places, first, to), first)).length;
+        counts.add(all);
+        const own = structure(size, ["R", "S"], places, first);
+        expect(automorphismCount(own)).toBe(BigInt(all));
+        const other = structure(size, ["R", "S"], places, renamed(size, places, first, order));
+        expect(automorphismCount(other)).toBe(BigInt(all));
+      }),
+      options(1500),
+    );
+    for (const count of [1, 2, 6]) expect(counts).toContain(count);
+  });
+
+  it("counts automorphisms of sparse and regular relations as a trial of all renamings does", () => {
+    // Few tuples, or differences modulo n, so that there is much symmetry.
+    const symmetric = fc.integer({ min: 3, max: 6 }).chain((size) =>
+      fc
+        .oneof(
+          fc
+            .uniqueArray(fc.nat(size * size - 1), { maxLength: 3 })
+            .map((kinds) =>
+              Uint8Array.from({ length: size * size }, (_, kind) => Number(kinds.includes(kind))),
+            ),
+          fc
+            .uniqueArray(fc.nat(size - 1))
+            .map((steps) =>
+              Uint8Array.from({ length: size * size }, (_, kind) =>
+                Number(steps.includes(((((kind % size) - Math.floor(kind / size)) % size) + size) % size)),
+              ),
+            ),
+        )
+        .map((table) => ({ size, table })),
+    );
+    fc.assert(
+      fc.property(symmetric, ({ size, table }) => {
+        const all = permutations(size).filter((to) => same(renamed(size, [2], [table], to), [table])).length;
+        expect(automorphismCount(structure(size, ["R"], [2], [table]))).toBe(BigInt(all));
       }),
       options(300),
     );
@@ -264,6 +309,33 @@ describe("structures with much symmetry", () => {
     expect(forms[0]).not.toBe(forms[1]);
     expect(formWithin(16, 2, renamed(16, [2], [lattice], shuffle(16))[0]!).form).toBe(forms[0]);
     expect(formWithin(16, 2, renamed(16, [2], [shrikhande], shuffle(16))[0]!).form).toBe(forms[1]);
+  });
+
+  it.each([
+    // The orders are common knowledge in group theory.
+    ["twenty points and nothing else: 20!", 20, () => false, 2432902008176640000n],
+    ["a directed cycle: its rotations", 20, (i: number, j: number) => j === (i + 1) % 20, 20n],
+    ["ten arcs both ways: 2^10 · 10!", 20, (i: number, j: number) => j === (i ^ 1), 3715891200n],
+    ["a cube of dimension four: 2^4 · 4!", 16, (i: number, j: number) => [1, 2, 4, 8].includes(i ^ j), 384n],
+    [
+      "the tournament of the quadratic residues modulo 19: x ↦ ax + b, a a square",
+      19,
+      (i: number, j: number) => [1, 4, 5, 6, 7, 9, 11, 16, 17].includes((j - i + 19) % 19),
+      171n,
+    ],
+    [
+      "Petersen's graph, arcs between disjoint pairs of five: 5!",
+      10,
+      (i: number, j: number) => {
+        const of = points(5).flatMap((a) => points(a).map((b) => [a, b]));
+        return !of[i]!.some((a) => of[j]!.includes(a));
+      },
+      120n,
+    ],
+  ])("automorphisms of %s", (_, n, of, count) => {
+    const tables = [relation(n, of as (i: number, j: number) => boolean)];
+    expect(automorphismCount(structure(n, ["R"], [2], tables))).toBe(count);
+    expect(automorphismCount(structure(n, ["R"], [2], renamed(n, [2], tables, shuffle(n))))).toBe(count);
   });
 
   it("ends with the budget", () => {

@@ -74,6 +74,13 @@ export class Canoniser {
   #automorphisms: Int32Array[] = [];
   /** Work for {@link #orbitOf}: by point, its parent in a forest of orbits. */
   readonly #forest: Int32Array;
+  /** How often a best leaf has been put in place of another, in this call. */
+  #bestCount = 0;
+  /**
+   * For each depth on the path to the best leaf, how many points the automorphisms that leave the path above alone
+   * take its point to.
+   */
+  readonly #orbitSizes: Int32Array;
 
   /**
    * @param size how many points
@@ -95,6 +102,7 @@ export class Canoniser {
     this.#bestPath = new Int32Array(size + 1);
     this.#bestOrder = new Int32Array(size);
     this.#forest = new Int32Array(size);
+    this.#orbitSizes = new Int32Array(size + 1);
     const entries = places.reduce((sum, count) => sum + size ** count, 0);
     this.#table = new Uint8Array(Math.ceil(entries / 6));
     this.#best = new Uint8Array(this.#table.length);
@@ -110,6 +118,7 @@ export class Canoniser {
     this.#tables = tables;
     this.#meter = meter;
     this.#bestDepth = -1;
+    this.#bestCount = 0;
     if (this.#automorphisms.length > 0) this.#automorphisms = [];
     this.#readPairs();
     if (this.#hasTuples) this.#tuples = tables.flatMap((_, index) => this.#readTuples(index));
@@ -122,6 +131,17 @@ export class Canoniser {
   /** The order of points that the last call of {@link canonise} found: the point that comes first, and so on. */
   get order(): readonly number[] {
     return [...this.#bestOrder];
+  }
+
+  /**
+   * How many automorphisms the structure of the last call of {@link canonise} has: the product of the sizes of orbits
+   * along the path to the best leaf, each under the automorphisms that leave the points before it alone
+   * (orbit-stabiliser theorem).
+   */
+  get automorphismCount(): bigint {
+    let count = 1n;
+    for (let depth = 0; depth < this.#bestDepth; depth += 1) count *= BigInt(this.#orbitSizes[depth]!);
+    return count;
   }
 
   // Reading the structure
@@ -308,9 +328,20 @@ export class Canoniser {
 
     const members = order.slice(base + from, base + from + length);
     const alike = this.#areTwins(members);
+    // The best leaf is the first that was met of those with its table, so that members before its own are not in the
+    // orbit of that one; a later one that is has an automorphism by which it was left out, or leads to one.
+    const inOrbit = new Uint8Array(length);
+    let orbit = 0;
     for (let nth = 0; nth < length; nth += 1) {
       const point = members[nth]!;
-      if (nth > 0 && (alike || this.#hasOlderInOrbit(depth, members, nth))) continue;
+      if (nth > 0) {
+        const older = alike ? 0 : this.#olderInOrbit(depth, members, nth);
+        if (older >= 0) {
+          orbit += inOrbit[older]!;
+          inOrbit[nth] = inOrbit[older]!;
+          continue;
+        }
+      }
       const next = base + size;
       order.copyWithin(next, base, base + size);
       cell.copyWithin(next, base, base + size);
@@ -324,9 +355,20 @@ export class Canoniser {
       order[next + from] = point;
       this.#path[depth] = point;
       this.#traces[depth + 1] = this.#refine(depth + 1);
+      const bestBefore = this.#bestCount;
       const back = this.#search(depth + 1);
       if (back < depth) return back;
+      if (this.#bestCount > bestBefore) {
+        inOrbit.fill(0);
+        inOrbit[nth] = 1;
+        orbit = 1;
+      } else if (back === depth) {
+        inOrbit[nth] = 1;
+        orbit += 1;
+      }
     }
+    // Zero when the best leaf is elsewhere.
+    if (orbit > 0) this.#orbitSizes[depth] = orbit;
     return depth;
   }
 
@@ -349,6 +391,7 @@ export class Canoniser {
     this.#best = this.#table;
     this.#table = table;
     this.#bestDepth = depth;
+    this.#bestCount += 1;
     for (let at = 0; at <= depth; at += 1) {
       this.#bestTraces[at] = this.#traces[at]!;
       this.#bestPath[at] = this.#path[at]!;
@@ -368,9 +411,9 @@ export class Canoniser {
     return depth;
   }
 
-  /** Whether automorphisms that leave the path alone take an earlier member of a cell to the given one. */
-  #hasOlderInOrbit(depth: number, members: Int32Array, nth: number): boolean {
-    if (this.#automorphisms.length === 0) return false;
+  /** An earlier member of a cell that automorphisms which leave the path alone take to the given one; −1 for none. */
+  #olderInOrbit(depth: number, members: Int32Array, nth: number): number {
+    if (this.#automorphisms.length === 0) return -1;
     const forest = this.#forest;
     for (let point = 0; point < this.#size; point += 1) forest[point] = point;
     for (const automorphism of this.#automorphisms) {
@@ -384,8 +427,8 @@ export class Canoniser {
       }
     }
     const orbit = this.#orbitOf(members[nth]!);
-    for (let older = 0; older < nth; older += 1) if (this.#orbitOf(members[older]!) === orbit) return true;
-    return false;
+    for (let older = 0; older < nth; older += 1) if (this.#orbitOf(members[older]!) === orbit) return older;
+    return -1;
   }
 
   #orbitOf(point: number): number {

@@ -21,6 +21,23 @@ export function canonicalForm(structure: Structure, meter: Meter | null = null):
   return `${size};${shape.join()};${form}`;
 }
 
+/**
+ * How many renamings of its points take a structure to itself.
+ * @param meter pays for the work; when it ends, `WorkEnded` is thrown
+ */
+export function automorphismCount(structure: Structure, meter: Meter | null = null): bigint {
+  const tables = sortedTables(structure);
+  const canoniser = new Canoniser(
+    sizeOf(structure),
+    tables.map((table) => table.relation.places),
+  );
+  canoniser.canonise(
+    tables.map((table) => table.holds),
+    meter,
+  );
+  return canoniser.automorphismCount;
+}
+
 /** Whether a bijection between the points of two structures preserves all relations both ways. */
 export function areIsomorphic(left: Structure, right: Structure, meter: Meter | null = null): boolean {
   if (sizeOf(left) !== sizeOf(right)) return false;
