@@ -71,6 +71,12 @@ export function readClosed(
   return null;
 }
 
+/** Reads a formula that may have free variables; null when a mistake was reported. */
+export function readOpen(reader: Reader): { readonly formula: Formula; readonly text: string } | null {
+  const { formula, damaged, text } = readFormula(reader);
+  return damaged ? null : { formula, text };
+}
+
 class FormulaReader {
   readonly #reader: Reader;
   readonly #atoms: AtomReader;

@@ -1,7 +1,45 @@
 /**
  * What the statements and their parts mean, in one place for the parser's messages, completion and inspection.
  */
-import type { StatementKind } from "./statements.ts";
+import type { NormalFormName, StatementKind } from "./statements.ts";
+
+export interface NormalFormHelp {
+  readonly name: NormalFormName;
+  /** The words after `to`, before `form`. */
+  readonly phrase: readonly string[];
+  /** One sentence. */
+  readonly meaning: string;
+}
+
+export const normalFormHelp: readonly NormalFormHelp[] = [
+  { name: "negation", phrase: ["negation"], meaning: "Without → and ↔, and ¬ only before atoms." },
+  { name: "prenex", phrase: ["prenex"], meaning: "All quantifiers in front." },
+  { name: "miniscoped", phrase: ["miniscoped"], meaning: "Quantifiers as far inside as they go." },
+  {
+    name: "skolem",
+    phrase: ["Skolem"],
+    meaning: "Prenex, without ∃: Skolem functions stand for its witnesses. Equisatisfiable.",
+  },
+  { name: "clause", phrase: ["clause"], meaning: "A set of clauses, Skolemised. Equisatisfiable." },
+  {
+    name: "definitional-clause",
+    phrase: ["definitional", "clause"],
+    meaning:
+      "A set of clauses with new relations for subformulas, so that it does not grow. Equisatisfiable.",
+  },
+  {
+    name: "disjunctive",
+    phrase: ["disjunctive"],
+    meaning: "A disjunction of conjunctions behind the quantifiers.",
+  },
+];
+
+function listForms(): string {
+  return listWords(
+    normalFormHelp.map(({ phrase }) => phrase.join(" ")),
+    "or",
+  );
+}
 
 export interface StatementHelp {
   readonly word: StatementKind;
@@ -80,6 +118,24 @@ export const statementHelp: readonly StatementHelp[] = [
     meaning: "Shows the models on n points, up to isomorphism.",
     options: true,
   },
+  {
+    word: "count",
+    form: "count T up to n with representatives",
+    meaning: "Counts the models on 1 to n points, labelled and up to isomorphism.",
+    options: true,
+  },
+  {
+    word: "normalise",
+    form: "normalise φ to prenex form with steps",
+    meaning: `Brings a formula into a normal form: ${listForms()}.`,
+    options: false,
+  },
+  {
+    word: "write",
+    form: "write T as SMT-LIB, write T ⊨ φ as SMT-LIB, write T ⊨ φ as DIMACS of size n",
+    meaning: "Prints a theory or a question for other programs, in an open standard.",
+    options: false,
+  },
 ];
 
 const byWord = new Map<string, StatementHelp>(statementHelp.map((help) => [help.word, help]));
@@ -91,12 +147,10 @@ export function helpOf(word: string): StatementHelp | undefined {
 
 /** Statement words that are planned and not in this version, so that they are refused by name. */
 export const laterStatements: readonly string[] = [
-  "normalise",
   "weaken",
   "negate",
   "minimise",
   "completeness",
-  "count",
   "explore",
   "place",
   "ledger",

@@ -7,8 +7,14 @@ import type { Options } from "./statements.ts";
 
 const FORMS = optionHelp.map(({ form }) => `\`${form}\``).join(" and ");
 
-/** Reads the options that follow, in any order. */
-export function readOptions(reader: Reader): Options {
+/**
+ * Reads the options that follow, in any order.
+ * @param extra reads an option of the statement's own, which begins with the word given, when it is given
+ */
+export function readOptions(
+  reader: Reader,
+  extra?: { readonly word: string; readonly read: () => void },
+): Options {
   let upTo: number | null = null;
   let within: number | null = null;
   const seen = new Set<string>();
@@ -27,6 +33,9 @@ export function readOptions(reader: Reader): Options {
           "steps",
           isGrouped ? "write the number without commas" : "write `within 50000 steps`",
         );
+    } else if (extra !== undefined && reader.acceptWord(extra.word) !== null) {
+      reportRepeated(reader, word, seen);
+      extra.read();
     } else if (reader.atWord("to") && reader.peekAfter(1).text === "depth")
       reader.fail(
         "not-in-this-version",

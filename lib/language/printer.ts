@@ -8,7 +8,8 @@
  * | ascii    | `forall x y. R(x,y) -> R(y,x)`: quantifiers in lists, with a dot; names are as declared     |
  * | latex    | `\forall x\, \forall y\, (Rxy \to Ryx)`, `\mathit{Between}(x,y,z)`, `x_{1}'`, `x \prec y`   |
  */
-import { type Formula, type RelationSymbol, relationsOf, type Variable } from "../logic/formula.ts";
+import type { Term, TermFormula } from "../logic/clausal.ts";
+import { type Formula, type RelationSymbol, relationsOf } from "../logic/formula.ts";
 import type { Theory } from "../logic/theory.ts";
 import type { Scope } from "./statements.ts";
 import { relationSigns, type SignKind, signOf } from "./tokens.ts";
@@ -16,10 +17,10 @@ import { relationSigns, type SignKind, signOf } from "./tokens.ts";
 export type Notation = "unicode" | "ascii" | "latex";
 
 /**
- * Prints a formula.
+ * Prints a formula; with function symbols in it (`R(x, f(x))`) it cannot be read back.
  * @param scope where the text is to be read; given, atoms that would read as one of its names are not juxtaposed
  */
-export function printFormula(formula: Formula, notation: Notation, scope?: Scope): string {
+export function printFormula(formula: TermFormula, notation: Notation, scope?: Scope): string {
   return new Printer(notation, namesIn([formula], scope)).print(formula);
 }
 
@@ -50,10 +51,15 @@ function axiomLines(theory: Theory, notation: Notation, scope?: Scope): readonly
   );
 }
 
-function namesIn(formulas: readonly Formula[], scope: Scope | undefined): ReadonlySet<string> {
+/** Prints a term: a variable, or a function symbol with its arguments; a constant stands without brackets. */
+export function printTerm(term: Term, notation: Notation): string {
+  return new Printer(notation, new Set()).printTerm(term);
+}
+
+function namesIn(formulas: readonly TermFormula[], scope: Scope | undefined): ReadonlySet<string> {
   const names = new Set<string>(scope?.definitions.keys());
   for (const { name } of scope?.declared ?? []) names.add(name);
-  for (const formula of formulas) for (const { name } of relationsOf(formula)) names.add(name);
+  for (const formula of formulas) for (const { name } of relationsOf(formula as Formula)) names.add(name); // Terms do not matter to it.
   return names;
 }
 
@@ -69,8 +75,14 @@ class Printer {
     this.#names = names;
   }
 
-  print(formula: Formula): string {
+  print(formula: TermFormula): string {
     return this.#operand(formula, BINDING.iff, true);
+  }
+
+  printTerm(term: Term): string {
+    if (typeof term === "string") return this.#variable(term);
+    const name = this.#functionName(term.symbol.name);
+    return term.args.length === 0 ? name : `${name}(${this.#list(term.args)})`;
   }
 
   #sign(kind: SignKind): string {
@@ -85,7 +97,7 @@ class Printer {
    * @param isLast whether nothing of the formula around it follows before a bracket closes: then a quantifier with
    *   a dot needs no bracket
    */
-  #operand(formula: Formula, binding: number, isLast: boolean): string {
+  #operand(formula: TermFormula, binding: number, isLast: boolean): string {
     switch (formula.kind) {
       case "iff":
       case "implies": {
@@ -127,7 +139,7 @@ class Printer {
     return this.#notation === "latex" ? " " : "";
   }
 
-  #quantified(formula: Formula & { kind: "forall" | "exists" }, isLast: boolean): string {
+  #quantified(formula: TermFormula & { kind: "forall" | "exists" }, isLast: boolean): string {
     const { kind } = formula;
     const variable = this.#variable(formula.variable);
     if (this.#notation === "unicode") return `${this.#sign(kind)}${variable} ${this.#unary(formula.body)}`;
@@ -143,25 +155,38 @@ class Printer {
     return bracket(!isLast, text);
   }
 
-  #unary(body: Formula): string {
+  #unary(body: TermFormula): string {
     return this.#operand(body, BINDING.unary, false);
   }
 
-  #comparison(left: Variable, sign: string, right: Variable): string {
-    return `${this.#variable(left)} ${sign} ${this.#variable(right)}`;
+  #comparison(left: Term, sign: string, right: Term): string {
+    return `${this.printTerm(left)} ${sign} ${this.printTerm(right)}`;
   }
 
-  #atom(relation: RelationSymbol, args: readonly Variable[]): string {
+  #atom(relation: RelationSymbol, args: readonly Term[]): string {
     const { name, infix } = relation;
-    const variables = args.map((variable) => this.#variable(variable));
-    if (infix && args.length === 2) return `${variables[0]} ${this.#relationSign(name)} ${variables[1]}`;
-    const juxtaposed = this.#notation !== "ascii" && [...name].length === 1 && /^\p{L}/u.test(name);
-    if (juxtaposed && !this.#names.has(name + args.join(""))) return name + variables.join("");
-    const separator = this.#notation === "unicode" ? ", " : ",";
-    return `${this.#relationName(name)}(${variables.join(separator)})`;
+    if (args.length === 0) return this.#relationName(name);
+    const terms = args.map((term) => this.printTerm(term));
+    if (infix && args.length === 2) return `${terms[0]} ${this.#relationSign(name)} ${terms[1]}`;
+    const juxtaposed =
+      this.#notation !== "ascii" &&
+      [...name].length === 1 &&
+      /^\p{L}/u.test(name) &&
+      args.every((term) => typeof term === "string");
+    if (juxtaposed && !this.#names.has(name + args.join(""))) return name + terms.join("");
+    return `${this.#relationName(name)}(${this.#list(args)})`;
   }
 
-  #variable(variable: Variable): string {
+  #list(args: readonly Term[]): string {
+    return args.map((term) => this.printTerm(term)).join(this.#notation === "unicode" ? ", " : ",");
+  }
+
+  #functionName(name: string): string {
+    if (this.#notation !== "latex") return name;
+    return /^\p{L}[0-9]*'*$/u.test(name) ? this.#variable(name) : latexName(name);
+  }
+
+  #variable(variable: string): string {
     if (this.#notation !== "latex") return variable;
     return variable.replace(/[0-9]+/, (digits) => `_{${digits}}`);
   }

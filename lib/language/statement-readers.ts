@@ -5,14 +5,22 @@
 import type { RelationSymbol, Variable } from "../logic/formula.ts";
 import { LARGEST_DOMAIN } from "../logic/structure-definition.ts";
 import { readClaim, readConclusion } from "./claims.ts";
-import { readClosed } from "./formulas.ts";
+import { readClosed, readOpen } from "./formulas.ts";
+import { normalFormHelp } from "./help.ts";
 import { isRelationSign, type Token } from "./lexer.ts";
 import { isKeptWord, isVariable, type NameKind } from "./names.ts";
 import { nearestName } from "./nearest.ts";
 import { readWhole } from "./numbers.ts";
 import { readOptions } from "./options.ts";
 import { quote, type Reader, Unreadable } from "./reader.ts";
-import type { Definition, NamedTheory, Statement, StatementKind } from "./statements.ts";
+import type {
+  Definition,
+  NamedTheory,
+  NormalFormName,
+  Statement,
+  StatementKind,
+  WrittenFormat,
+} from "./statements.ts";
 import { isStructureAhead, readStructure } from "./structures.ts";
 import { expressionAhead } from "./subjects.ts";
 import { readTheory } from "./theories.ts";
@@ -47,6 +55,9 @@ export const statementReaders: Readonly<Record<StatementKind, StatementReader>> 
   compare: readCompare,
   independence: (reader) => readQuestion(reader, "independence"),
   models: readModels,
+  count: readCount,
+  normalise: readNormalise,
+  write: readWrite,
 };
 
 // Declarations
@@ -398,4 +409,83 @@ function readModels(reader: Reader): StatementBody | null {
   const size = readWhole(reader, "how many points the models have", LARGEST_DOMAIN);
   const options = readOptions(reader);
   return theory === null || size === null ? null : { kind: "models", theory, size, options };
+}
+
+function readCount(reader: Reader): StatementBody | null {
+  const theory = readTheory(reader);
+  let representatives = false;
+  const options = readOptions(reader, {
+    word: "with",
+    read: () => {
+      representatives = true;
+      reader.expectWord("representatives", "write `with representatives`");
+    },
+  });
+  if (options.upTo === null)
+    reader.failExpected(
+      "`up to n`: the largest number of points on which models are counted",
+      "write `count T up to 5`",
+    );
+  return theory === null ? null : { kind: "count", theory, representatives, options };
+}
+
+// Forms, for people and for other programs
+
+function readNormalise(reader: Reader): StatementBody | null {
+  const subject = readOpen(reader);
+  reader.expectWord("to", "write `normalise φ to prenex form`");
+  const form = readForm(reader);
+  reader.acceptWord("form");
+  const steps = reader.acceptWord("with") !== null;
+  if (steps) reader.expectWord("steps", "write `with steps`");
+  return subject === null ? null : { kind: "normalise", subject, form, steps };
+}
+
+function readForm(reader: Reader): NormalFormName {
+  const word = reader.peek();
+  const form = normalFormHelp.find(
+    ({ phrase }) => word.kind === "word" && phrase[0]!.toLowerCase() === word.text.toLowerCase(),
+  );
+  if (form === undefined) {
+    const phrases = normalFormHelp.map(({ phrase }) => phrase.join(" "));
+    const near = word.kind === "word" ? nearestName(word.text, phrases) : null;
+    return reader.failExpected(
+      "the name of a normal form",
+      near === null ? `forms are ${phrases.map(quote).join(", ")}` : `write \`${near}\``,
+    );
+  }
+  reader.next();
+  for (const rest of form.phrase.slice(1)) reader.expectWord(rest, `write \`${form.phrase.join(" ")}\``);
+  return form.name;
+}
+
+function readWrite(reader: Reader): StatementBody | null {
+  const theory = readTheory(reader);
+  const asks = reader.accept("entails") !== null;
+  const conclusion = asks ? readConclusion(reader) : null;
+  if (reader.at("does-not-entail"))
+    reader.failExpected("`⊨`", "what is written for `T ⊨ φ` settles `T ⊭ φ` too");
+  reader.expectWord("as", "write `write T as SMT-LIB`");
+  const format = readFormat(reader);
+  if (theory === null || format === null || (asks && conclusion === null)) return null;
+  return { kind: "write", theory, conclusion, format };
+}
+
+function readFormat(reader: Reader): WrittenFormat | null {
+  const word = reader.peek();
+  switch (word.kind === "word" ? word.text.toLowerCase() : "") {
+    case "smt-lib":
+      reader.next();
+      return { kind: "smt-lib" };
+    case "dimacs": {
+      reader.next();
+      const hint = "clauses are about a number of points: write `as DIMACS of size 5`";
+      reader.expectWord("of", hint);
+      reader.expectWord("size", hint);
+      const size = readWhole(reader, "how many points the clauses are about", LARGEST_DOMAIN);
+      return size === null ? null : { kind: "dimacs", size };
+    }
+    default:
+      return reader.failExpected("`SMT-LIB` or `DIMACS of size n`");
+  }
 }

@@ -369,6 +369,16 @@ export const keywords: readonly Keyword[] = [
   { word: "to", meaning: "`up to 8`: the largest number of points that is tried." },
   { word: "within", meaning: "`within 50000 steps`: the budget of the question." },
   { word: "steps", meaning: "`within 50000 steps`: the budget of the question." },
+  {
+    word: "with",
+    meaning: "`count T up to 5 with representatives`; `normalise φ to prenex form with steps`.",
+  },
+  {
+    word: "representatives",
+    meaning: "`with representatives`: one model of each class of isomorphic ones is shown.",
+  },
+  { word: "form", meaning: "`normalise φ to prenex form`." },
+  { word: "as", meaning: "`write T as SMT-LIB`." },
   { word: "iff", meaning: "Kept for structures on infinite domains." },
 ];
 

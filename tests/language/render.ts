@@ -46,6 +46,15 @@ function renderStatement(statement: Statement): string {
       return `compare ${statement.theories.map(theory).join(", ")}${options(statement.options)}`;
     case "models":
       return `models ${theory(statement.theory)} size ${statement.size}${options(statement.options)}`;
+    case "count":
+      return `count ${theory(statement.theory)}${statement.representatives ? " representatives" : ""}${options(statement.options)}`;
+    case "normalise":
+      return `normalise ${sentence(statement.subject)} to ${statement.form}${statement.steps ? " steps" : ""}`;
+    case "write": {
+      const asked = statement.conclusion === null ? "" : ` |= ${sentence(statement.conclusion)}`;
+      const { format } = statement;
+      return `write ${theory(statement.theory)}${asked} as ${format.kind}${format.kind === "dimacs" ? ` of size ${format.size}` : ""}`;
+    }
   }
 }
 
