@@ -4,13 +4,18 @@
  */
 import { type Structure, tuplesOf } from "../../lib/carriers/structure.ts";
 import type { PictureBlock } from "./blocks.ts";
-import { type Extent, layOutCircle, layOutLayers, type Place, prepareLayout, type Spline } from "./layout.ts";
-import { coveringPairs, isAcyclic, isSymmetric, type Matrix, matrixOf, orderKind } from "./order.ts";
-import { type Arc, type LegendEntry, renderPicture, STROKES } from "./svg.ts";
-import { counted, displayWidth, enumerate, shorten } from "./text.ts";
+import { prepareLayout } from "./layout.ts";
+import { isSymmetric, type Matrix, matrixOf } from "./order.ts";
+import { type Plan, type PointLabel, planCircle, styles } from "./styles.ts";
+import { type LegendEntry, renderPicture, STROKES } from "./svg.ts";
+import { counted, enumerate, shorten } from "./text.ts";
 
 /** Structures with more points are shown as tables only. */
-export const DRAWN_POINTS = 12;
+export const DRAWN_POINTS = 20;
+
+/** Up to this many points every relation is drawn; beyond, only those with few enough lines to be followed. */
+const ALWAYS_DRAWN_POINTS = 12;
+const FOLLOWED_LINES = 100;
 
 /** Tuples that the alternative text lists for a relation. */
 const TOLD_TUPLES = 60;
@@ -20,185 +25,130 @@ export async function prepareDrawing(): Promise<void> {
   await prepareLayout();
 }
 
-/** A two-place relation to be drawn. */
-interface DrawnRelation {
-  readonly name: string;
-  readonly matrix: Matrix;
-  readonly symmetric: boolean;
+/** A structure as far as it can be drawn. */
+interface Drawable {
+  readonly structure: Structure;
+  /** The two-place relations, in order. */
+  readonly names: readonly string[];
+  readonly matrices: readonly Matrix[];
+  readonly labels: readonly PointLabel[];
+  readonly isMarked: boolean;
 }
 
 /**
  * Draws the two-place relations of a structure on points, with its one-place relations written at the points.
  * Relations of more places are not drawn, and the caption says so.
- * @returns null when there are too many points or relations, or nothing to draw
+ * @returns null when there are too many points, lines or relations, or nothing to draw
  */
 export function drawStructure(structure: Structure): PictureBlock | null {
-  const size = structure.carrier.size;
-  if (size === null || size > DRAWN_POINTS) return null;
-  const tables = [...structure.tables.values()];
-  const relations = tables
-    .filter(({ relation }) => relation.places === 2)
-    .map(({ relation: { name } }): DrawnRelation => {
-      const matrix = matrixOf(size, tuplesOf(structure, name));
-      return { name, matrix, symmetric: isSymmetric(matrix) };
-    });
-  if (relations.length === 0 || relations.length > STROKES.length) return null;
-  const marks = marksOf(structure, size);
-  const lines = marks.map((names, index) =>
-    names.length === 0 ? [String(index + 1)] : [String(index + 1), shorten(names.join(", "), 14)],
-  );
-  const extents = lines.map(extentOf);
-  const { places, arcs, remarks } =
-    relations.length === 1 ? drawOne(relations[0]!, extents) : drawSeveral(relations, extents);
-  const omitted = tables.filter(({ relation }) => relation.places > 2).map(({ relation }) => relation.name);
-  if (omitted.length > 0) remarks.push(`${enumerate(omitted)} not drawn`);
-  const legend: LegendEntry[] =
-    relations.length === 1
-      ? []
-      : relations.map(({ name, symmetric }, stroke) => ({
-          name: shorten(name, 24),
-          stroke,
-          heads: !symmetric,
-        }));
-  return {
-    kind: "picture",
-    svg: renderPicture({
-      points: places.map((place, i) => ({ ...place, ...extents[i]!, lines: lines[i]! })),
-      arcs,
-      legend,
-    }),
-    alt: describePicture(structure, remarks),
-    caption: remarks.join("; "),
-  };
+  const drawable = drawableOf(structure);
+  if (drawable === null) return null;
+  const { plan, explain } = wayToDraw([drawable]);
+  return pictureOf(drawable, plan(drawable), legendOf(drawable), explain);
 }
 
-interface Plan {
-  readonly places: readonly Place[];
-  readonly arcs: readonly Arc[];
-  /** What the reader must know to read the picture. */
-  readonly remarks: string[];
-}
-
-function drawOne(relation: DrawnRelation, extents: readonly Extent[]): Plan {
-  const { name, matrix, symmetric } = relation;
-  const kind = orderKind(matrix);
-  const empty = matrix.every((row) => !row.includes(true));
-  if (empty) return { places: layOutCircle(extents, 1), arcs: [], remarks: [`${name} holds of no pair`] };
-  if (symmetric) {
-    const hasLoopsOnly = matrix.every((row, i) => row.every((holds, j) => i === j || !holds));
-    const remark = hasLoopsOnly
-      ? `a loop at x: ${name} holds of (x, x)`
-      : `${name} is symmetric: each line stands for both directions`;
-    const plan = drawSeveral([relation], extents);
-    return { ...plan, remarks: [remark] };
-  }
-  if (kind !== null) {
-    const pairs = coveringPairs(matrix);
-    const { places, curves } = layOutLayers(extents, pairs);
-    const arcs = curves.map((curve): Arc => ({ curve, stroke: 0, headAtEnd: false, headAtStart: false }));
-    const isReduced = pairs.length < pairsOf(matrix).filter(([i, j]) => i !== j).length;
-    const omitted = [
-      ...(kind === "partial-order" ? ["loops"] : []),
-      ...(isReduced ? ["transitive pairs"] : []),
-    ];
-    const remark = omitted.length === 0 ? "" : `; ${enumerate(omitted)} left out`;
-    return { places, arcs, remarks: [`${name} by upward lines${remark}`] };
-  }
-  if (isAcyclic(matrix)) {
-    const pairs = pairsOf(matrix).filter(([i, j]) => i !== j);
-    const { places, curves } = layOutLayers(extents, pairs);
-    const arcs: Arc[] = curves.map((curve) => ({ curve, stroke: 0, headAtEnd: true, headAtStart: false }));
-    matrix.forEach((row, i) => {
-      if (row[i]) arcs.push(loopArc(places[i]!, extents[i]!, 0, 0, true, 0));
-    });
-    return { places, arcs, remarks: [`an arrow from x to y: ${name} holds of (x, y)`] };
-  }
-  const plan = drawSeveral([relation], extents);
-  return { ...plan, remarks: [`an arrow from x to y: ${name} holds of (x, y)`] };
+/** Pictures of structures that are drawn in one way. */
+export interface Gallery {
+  /** In order, without captions. */
+  readonly pictures: readonly PictureBlock[];
+  /** What a reader of the pictures must know. */
+  readonly caption: string;
 }
 
 /**
- * All relations on one circle. No chord of a circle passes through a third point, and lines between the same two
- * points are bent apart, so that every one of them can be followed.
+ * Draws structures of one signature in one way, so that they can be compared: as orders if all are orders, and so on.
+ * @returns null when there are none, or one of them cannot be drawn
  */
-function drawSeveral(relations: readonly DrawnRelation[], extents: readonly Extent[]): Plan {
-  const places = layOutCircle(extents, relations.length);
-  const arcs: Arc[] = [];
-  const remarks = relations.length === 1 ? [] : ["an arrow from x to y: the relation holds of (x, y)"];
-  if (relations.length > 1 && relations.some(({ symmetric }) => symmetric))
-    remarks.push("a line without heads: of both directions");
-  for (let i = 0; i < extents.length; i += 1) {
-    for (let j = i + 1; j < extents.length; j += 1) {
-      const present = relations.flatMap((relation, stroke) =>
-        relation.matrix[i]![j] || relation.matrix[j]![i] ? [{ relation, stroke }] : [],
-      );
-      present.forEach(({ relation, stroke }, position) => {
-        const bend = (position - (present.length - 1) / 2) * 18;
-        arcs.push({
-          curve: chord(places[i]!, places[j]!, bend),
-          trim: [extents[i]!, extents[j]!],
-          stroke,
-          headAtEnd: !relation.symmetric && relation.matrix[i]![j]!,
-          headAtStart: !relation.symmetric && relation.matrix[j]![i]!,
-        });
-      });
-    }
-    let nested = 0;
-    relations.forEach(({ matrix, symmetric }, stroke) => {
-      if (!matrix[i]![i]) return;
-      const place = places[i]!;
-      const outward = extents.length === 1 ? -Math.PI / 2 : Math.atan2(place.y, place.x);
-      arcs.push(loopArc(place, extents[i]!, outward, stroke, !symmetric, nested));
-      nested += 1;
-    });
-  }
-  return { places, arcs, remarks };
-}
-
-function pairsOf(matrix: Matrix): readonly (readonly [number, number])[] {
-  return matrix.flatMap((row, i) =>
-    row.flatMap((holds, j): (readonly [number, number])[] => (holds ? [[i, j]] : [])),
-  );
-}
-
-/** A curve from one place to another, its middle moved to the side by `bend`. */
-function chord(from: Place, to: Place, bend: number): Spline {
-  const length = Math.hypot(to.x - from.x, to.y - from.y);
-  const side = { x: (-(to.y - from.y) / length) * bend, y: ((to.x - from.x) / length) * bend };
-  // A cubic's middle lies three quarters of the way to its two inner control points.
-  const at = (share: number): Place => ({
-    x: from.x + (to.x - from.x) * share + (side.x * 4) / 3,
-    y: from.y + (to.y - from.y) * share + (side.y * 4) / 3,
-  });
-  return [from, at(1 / 3), at(2 / 3), to];
-}
-
-/** A loop on the side of a point that faces `angle`; further loops at the same point lie around it. */
-function loopArc(
-  place: Place,
-  extent: Extent,
-  angle: number,
-  stroke: number,
-  head: boolean,
-  nested: number,
-): Arc {
-  const reach = 26 + 19 * nested;
-  const spread = 0.55 + 0.3 * nested;
-  const at = (turn: number, x: number, y: number): Place => ({
-    x: place.x + Math.cos(angle + turn) * x,
-    y: place.y + Math.sin(angle + turn) * y,
-  });
-  const [rx, ry] = [extent.width / 2, extent.height / 2];
+export function drawGallery(structures: readonly Structure[]): Gallery | null {
+  const drawables = structures.flatMap((structure) => drawableOf(structure) ?? []);
+  const [first] = drawables;
+  if (first === undefined || drawables.length < structures.length) return null;
+  if (drawables.some(({ names }) => names.join() !== first.names.join())) return null;
+  const { plan, explain } = wayToDraw(drawables);
+  const strokes =
+    first.names.length === 1
+      ? []
+      : [first.names.map((name, stroke) => `${name}: ${STROKES[stroke]!.name}`).join(", ")];
   return {
-    curve: [
-      at(-spread, rx, ry),
-      at(-spread, rx + reach, ry + reach),
-      at(spread, rx + reach, ry + reach),
-      at(spread, rx, ry),
-    ],
+    pictures: drawables.map((drawable) => ({
+      ...pictureOf(drawable, plan(drawable), [], explain),
+      caption: "",
+    })),
+    caption: [...strokes, explain].join("; "),
+  };
+}
+
+function drawableOf(structure: Structure): Drawable | null {
+  const size = structure.carrier.size;
+  if (size === null || size > DRAWN_POINTS) return null;
+  const names = [...structure.tables.values()]
+    .filter(({ relation }) => relation.places === 2)
+    .map(({ relation }) => relation.name);
+  if (names.length === 0 || names.length > STROKES.length) return null;
+  const matrices = names.map((name) => matrixOf(size, tuplesOf(structure, name)));
+  const marks = marksOf(structure, size);
+  const labels = marks.map(
+    (marked, index): PointLabel =>
+      marked.length === 0 ? [String(index + 1)] : [String(index + 1), shorten(marked.join(", "), 14)],
+  );
+  const drawable = { structure, names, matrices, labels, isMarked: marks.some(({ length }) => length > 0) };
+  if (size <= ALWAYS_DRAWN_POINTS) return drawable;
+  const { arcs } = wayToDraw([drawable]).plan(drawable);
+  return arcs.length <= FOLLOWED_LINES ? drawable : null;
+}
+
+/** The first way that suits all of them, and how it is explained. */
+function wayToDraw(drawables: readonly Drawable[]): {
+  readonly plan: (drawable: Drawable) => Plan;
+  readonly explain: string;
+} {
+  const { names, structure } = drawables[0]!;
+  const omitted = [...structure.tables.values()].flatMap(({ relation }) =>
+    relation.places > 2 ? [relation.name] : [],
+  );
+  const missing = omitted.length === 0 ? [] : [`${enumerate(omitted)} not drawn`];
+  if (names.length === 1) {
+    const style = styles.find(({ fits }) =>
+      drawables.every(({ matrices, isMarked }) => fits(matrices[0]!, isMarked)),
+    )!;
+    const remark = style.explain(
+      names[0]!,
+      drawables.map(({ matrices }) => matrices[0]!),
+    );
+    return {
+      plan: ({ matrices, labels }) => style.plan(matrices[0]!, labels),
+      explain: [remark, ...missing].join("; "),
+    };
+  }
+  const symmetric = names.map((_, index) => drawables.every(({ matrices }) => isSymmetric(matrices[index]!)));
+  const remarks = ["an arrow from x to y: the relation holds of (x, y)"];
+  if (symmetric.includes(true)) remarks.push("a line without heads: of both directions");
+  return {
+    plan: ({ matrices, labels }) => planCircle(matrices, labels, symmetric),
+    explain: [...remarks, ...missing].join("; "),
+  };
+}
+
+function legendOf({ names, matrices }: Drawable): readonly LegendEntry[] {
+  if (names.length === 1) return [];
+  return names.map((name, stroke) => ({
+    name: shorten(name, 24),
     stroke,
-    headAtEnd: head,
-    headAtStart: false,
+    heads: !isSymmetric(matrices[stroke]!),
+  }));
+}
+
+function pictureOf(
+  { structure }: Drawable,
+  plan: Plan,
+  legend: readonly LegendEntry[],
+  explain: string,
+): PictureBlock {
+  return {
+    kind: "picture",
+    svg: renderPicture({ ...plan, legend }),
+    alt: describePicture(structure, explain),
+    caption: explain,
   };
 }
 
@@ -211,12 +161,7 @@ function marksOf(structure: Structure, size: number): readonly (readonly string[
   return marks;
 }
 
-function extentOf(lines: readonly string[]): Extent {
-  if (lines.length === 1) return { width: 26, height: 26 };
-  return { width: Math.max(34, 14 + 7 * Math.max(...lines.map(displayWidth))), height: 36 };
-}
-
-function describePicture(structure: Structure, remarks: readonly string[]): string {
+function describePicture(structure: Structure, remark: string): string {
   const size = structure.carrier.size!;
   const sentences = [...structure.tables.values()].map(({ relation }) => {
     const tuples = tuplesOf(structure, relation.name);
@@ -225,9 +170,5 @@ function describePicture(structure: Structure, remarks: readonly string[]): stri
     const list = tuples.map((tuple) => (tuple.length === 1 ? String(tuple[0]) : `(${tuple.join(",")})`));
     return `${relation.name} holds of ${list.join(", ")}.`;
   });
-  return [
-    `Drawing of ${counted(size, "point")}.`,
-    ...sentences,
-    ...(remarks.length === 0 ? [] : [`Drawn: ${remarks.join("; ")}.`]),
-  ].join(" ");
+  return [`Drawing of ${counted(size, "point")}.`, ...sentences, `Drawn: ${remark}.`].join(" ");
 }

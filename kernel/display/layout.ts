@@ -1,4 +1,4 @@
-/** Where points and arcs go: layers from Graphviz for what has an up and a down, a circle for everything else. */
+/** Where points and arcs go: layers from Graphviz for what has an up and a down; a circle; frames around classes. */
 import { instance, type Viz } from "@viz-js/viz";
 
 export interface Place {
@@ -6,8 +6,16 @@ export interface Place {
   readonly y: number;
 }
 
-/** The size of a point's outline; a circle where the two are equal. */
+/** The size of a point's outline. */
 export interface Extent {
+  readonly width: number;
+  readonly height: number;
+  /** `round` is a circle where width and height are equal, else an ellipse; `box` has rounded corners. */
+  readonly outline: "round" | "box";
+}
+
+/** A frame around points, by its upper left corner. */
+export interface Frame extends Place {
   readonly width: number;
   readonly height: number;
 }
@@ -26,7 +34,7 @@ const POINTS_PER_INCH = 72;
 
 /**
  * Layers bottom to top, every arc going upwards.
- * @param arcs pairs counted from 0 that form no cycle
+ * @param arcs pairs counted from 0 that form no cycle but loops
  * @returns places of the points and the arcs' curves in the order given, y growing downwards
  * @throws Error when {@link prepareLayout} has not been awaited
  */
@@ -36,12 +44,12 @@ export function layOutLayers(
 ): { readonly places: readonly Place[]; readonly curves: readonly Spline[] } {
   if (graphviz === null) throw new Error("prepareDrawing has not been awaited");
   const nodes = extents.map(
-    ({ width, height }, index) =>
-      `n${index}[width=${(width / POINTS_PER_INCH).toFixed(3)},height=${(height / POINTS_PER_INCH).toFixed(3)}];`,
+    ({ width, height, outline }, index) =>
+      `n${index}[shape=${outline === "box" ? "box" : "ellipse"},width=${(width / POINTS_PER_INCH).toFixed(3)},height=${(height / POINTS_PER_INCH).toFixed(3)}];`,
   );
   const edges = arcs.map(([from, to]) => `n${from}->n${to};`);
   const drawn = graphviz.renderJSON(
-    `digraph{rankdir=BT;nodesep=0.35;ranksep=0.36;node[shape=ellipse,fixedsize=true,label=""];edge[dir=none];${nodes.join("")}${edges.join("")}}`,
+    `digraph{rankdir=BT;nodesep=0.35;ranksep=0.36;node[fixedsize=true,label=""];edge[dir=none];${nodes.join("")}${edges.join("")}}`,
     { engine: "dot" },
   ) as {
     bb: string;
@@ -86,4 +94,74 @@ export function layOutCircle(extents: readonly Extent[], relations: number): rea
     const angle = (2 * Math.PI * index) / count;
     return { x: radius * Math.sin(angle), y: -radius * Math.cos(angle) };
   });
+}
+
+/** Width at which things that stand side by side go on below. */
+const ROW_WIDTH = 420;
+const BETWEEN = 22;
+
+/**
+ * Boxes side by side, in rows; the middles of a row are at one height.
+ * @returns the upper left corner of each
+ */
+export function layOutRows(
+  boxes: readonly { readonly width: number; readonly height: number }[],
+): readonly Place[] {
+  const rows: number[][] = [];
+  let used = 0;
+  boxes.forEach(({ width }, index) => {
+    const row = rows.at(-1);
+    if (row === undefined || used + BETWEEN + width > ROW_WIDTH) {
+      rows.push([index]);
+      used = width;
+    } else {
+      row.push(index);
+      used += BETWEEN + width;
+    }
+  });
+  const places = new Array<Place>(boxes.length);
+  let top = 0;
+  for (const row of rows) {
+    const height = Math.max(...row.map((index) => boxes[index]!.height));
+    let left = 0;
+    for (const index of row) {
+      places[index] = { x: left, y: top + (height - boxes[index]!.height) / 2 };
+      left += boxes[index]!.width + BETWEEN;
+    }
+    top += height + BETWEEN;
+  }
+  return places;
+}
+
+/** Each class of points in a frame of its own, its points in short rows; no class is empty. */
+export function layOutGroups(
+  extents: readonly Extent[],
+  classes: readonly (readonly number[])[],
+): { readonly places: readonly Place[]; readonly frames: readonly Frame[] } {
+  const [padding, gap] = [9, 9];
+  const width = Math.max(...extents.map((extent) => extent.width));
+  const height = Math.max(...extents.map((extent) => extent.height));
+  const shapes = classes.map((points) => {
+    const columns = Math.ceil(Math.sqrt(points.length));
+    const rows = Math.ceil(points.length / columns);
+    return {
+      columns,
+      width: columns * (width + gap) - gap + 2 * padding,
+      height: rows * (height + gap) - gap + 2 * padding,
+    };
+  });
+  const corners = layOutRows(shapes);
+  const places = new Array<Place>(extents.length);
+  const frames = shapes.map((shape, index): Frame => {
+    const corner = corners[index]!;
+    classes[index]!.forEach((point, position) => {
+      const [row, column] = [Math.floor(position / shape.columns), position % shape.columns];
+      places[point] = {
+        x: corner.x + padding + width / 2 + column * (width + gap),
+        y: corner.y + padding + height / 2 + row * (height + gap),
+      };
+    });
+    return { ...corner, width: shape.width, height: shape.height };
+  });
+  return { places, frames };
 }

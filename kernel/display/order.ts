@@ -20,10 +20,7 @@ export type OrderKind = "strict-order" | "partial-order";
 export function orderKind(relation: Matrix): OrderKind | null {
   const loops = relation.filter((row, i) => row[i]).length;
   if (loops !== 0 && loops !== relation.length) return null;
-  const transitive = relation.every((row, i) =>
-    row.every((holds, j) => !holds || relation[j]!.every((next, k) => !next || relation[i]![k]!)),
-  );
-  if (!transitive) return null;
+  if (!isTransitive(relation)) return null;
   const antisymmetric = relation.every((row, i) =>
     row.every((holds, j) => i === j || !holds || !relation[j]![i]),
   );
@@ -61,4 +58,41 @@ export function isAcyclic(relation: Matrix): boolean {
     });
   }
   return removed === relation.length;
+}
+
+export function isReflexive(relation: Matrix): boolean {
+  return relation.every((row, i) => row[i]!);
+}
+
+export function isTransitive(relation: Matrix): boolean {
+  return relation.every((row, i) =>
+    row.every((holds, j) => !holds || relation[j]!.every((next, k) => !next || relation[i]![k]!)),
+  );
+}
+
+/** Whether every point is related to at most one, itself included. */
+export function isFunctional(relation: Matrix): boolean {
+  return relation.every((row) => row.filter(Boolean).length <= 1);
+}
+
+export function converseOf(relation: Matrix): Matrix {
+  return relation.map((_, i) => relation.map((row) => row[i]!));
+}
+
+/**
+ * The classes of points that a preorder puts on one level both ways, counted from 0, each in order and by least
+ * point, and the order between the classes, reflexive.
+ */
+export function classesOf(preorder: Matrix): {
+  readonly classes: readonly (readonly number[])[];
+  readonly order: Matrix;
+} {
+  const classes: number[][] = [];
+  preorder.forEach((row, i) => {
+    const known = classes.find(([first]) => row[first!] && preorder[first!]![i]);
+    if (known === undefined) classes.push([i]);
+    else known.push(i);
+  });
+  const order = classes.map(([i]) => classes.map(([j]) => preorder[i!]![j!]!));
+  return { classes, order };
 }

@@ -1,6 +1,6 @@
 /** The last step of a picture: points, arcs and a legend as an SVG document. */
 
-import type { Extent, Place, Spline } from "./layout.ts";
+import type { Extent, Frame, Place, Spline } from "./layout.ts";
 import { displayWidth } from "./text.ts";
 import { escapeHtml } from "./to-html.ts";
 
@@ -12,12 +12,16 @@ const MARGIN = 12;
 const HEAD_LENGTH = 8;
 const HEAD_WIDTH = 3.6;
 
-/** How the lines of the first, second, … relation are stroked; no two differ by colour alone. */
-export const STROKES: readonly { readonly dashes: string | null; readonly width: number }[] = [
-  { dashes: null, width: 1.4 },
-  { dashes: "6 3.5", width: 1.4 },
-  { dashes: "1.4 3.2", width: 2 },
-  { dashes: "9 3 1.5 3", width: 1.4 },
+/** How the lines of the first, second, … relation are stroked, and the word for it; no two differ by colour alone. */
+export const STROKES: readonly {
+  readonly name: string;
+  readonly dashes: string | null;
+  readonly width: number;
+}[] = [
+  { name: "solid", dashes: null, width: 1.4 },
+  { name: "dashed", dashes: "6 3.5", width: 1.4 },
+  { name: "dotted", dashes: "1.4 3.2", width: 2 },
+  { name: "dash-dotted", dashes: "9 3 1.5 3", width: 1.4 },
 ];
 
 export interface DrawnPoint extends Place, Extent {
@@ -45,14 +49,16 @@ export interface LegendEntry {
 export interface Picture {
   readonly points: readonly DrawnPoint[];
   readonly arcs: readonly Arc[];
+  /** Drawn below points and arcs. */
+  readonly frames: readonly Frame[];
   /** Empty when there is one relation only. */
   readonly legend: readonly LegendEntry[];
 }
 
 /** The document; the same picture gives the same bytes. */
-export function renderPicture({ points, arcs, legend }: Picture): string {
+export function renderPicture({ points, arcs, frames, legend }: Picture): string {
   const shapes = arcs.map(renderArc);
-  const box = boundsOf(points, arcs);
+  const box = boundsOf(points, arcs, frames);
   const legendWidth = Math.max(0, ...legend.map(({ name }) => 44 + 8 * displayWidth(name)));
   const legendHeight = legend.length === 0 ? 0 : 20 * legend.length + 8;
   const inner = Math.max(box.right - box.left, legendWidth);
@@ -73,16 +79,22 @@ export function renderPicture({ points, arcs, legend }: Picture): string {
     `<svg xmlns="http://www.w3.org/2000/svg" width="${num(width)}" height="${num(height)}" ` +
     `viewBox="0 0 ${num(width)} ${num(height)}" font-family="sans-serif" font-size="13" fill="${INK}">` +
     `<rect x="0.5" y="0.5" width="${num(width - 1)}" height="${num(height - 1)}" rx="5" fill="${CARD}" stroke="${FRAME}"/>` +
-    `<g transform="translate(${num(dx)} ${num(dy)})">${shapes.join("")}${points.map(renderPoint).join("")}</g>` +
+    `<g transform="translate(${num(dx)} ${num(dy)})">${frames.map(renderFrame).join("")}${shapes.join("")}${points.map(renderPoint).join("")}</g>` +
     `${samples.join("")}</svg>`
   );
 }
 
-function renderPoint({ x, y, width, height, lines }: DrawnPoint): string {
+function renderFrame({ x, y, width, height }: Frame): string {
+  return `<rect x="${num(x)}" y="${num(y)}" width="${num(width)}" height="${num(height)}" rx="9" fill="none" stroke="${INK}" stroke-width="1.4"/>`;
+}
+
+function renderPoint({ x, y, width, height, outline: shape, lines }: DrawnPoint): string {
   const outline =
-    width === height
-      ? `<circle cx="${num(x)}" cy="${num(y)}" r="${num(width / 2)}" fill="${POINT}" stroke="${INK}" stroke-width="1.2"/>`
-      : `<ellipse cx="${num(x)}" cy="${num(y)}" rx="${num(width / 2)}" ry="${num(height / 2)}" fill="${POINT}" stroke="${INK}" stroke-width="1.2"/>`;
+    shape === "box"
+      ? `<rect x="${num(x - width / 2)}" y="${num(y - height / 2)}" width="${num(width)}" height="${num(height)}" rx="7" fill="${POINT}" stroke="${INK}" stroke-width="1.2"/>`
+      : width === height
+        ? `<circle cx="${num(x)}" cy="${num(y)}" r="${num(width / 2)}" fill="${POINT}" stroke="${INK}" stroke-width="1.2"/>`
+        : `<ellipse cx="${num(x)}" cy="${num(y)}" rx="${num(width / 2)}" ry="${num(height / 2)}" fill="${POINT}" stroke="${INK}" stroke-width="1.2"/>`;
   const texts = lines.map((text, index) => {
     const offset = lines.length === 1 ? 4.5 : index === 0 ? -2.5 : 9.5;
     const size = index === 0 ? "" : ` font-size="10.5"`;
@@ -207,9 +219,13 @@ function part(curve: Spline, from: number, to: number): Spline {
 }
 
 /** A box around everything; a cubic lies within its control points. */
-function boundsOf(points: readonly DrawnPoint[], arcs: readonly Arc[]) {
+function boundsOf(points: readonly DrawnPoint[], arcs: readonly Arc[], frames: readonly Frame[]) {
   const xs = points.flatMap(({ x, width }) => [x - width / 2, x + width / 2]);
   const ys = points.flatMap(({ y, height }) => [y - height / 2, y + height / 2]);
+  for (const { x, y, width, height } of frames) {
+    xs.push(x, x + width);
+    ys.push(y, y + height);
+  }
   for (const { curve } of arcs)
     for (let start = 0; start + 3 < curve.length; start += 3)
       for (let step = 0; step <= 10; step += 1) {
