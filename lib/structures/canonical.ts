@@ -55,6 +55,8 @@ export class Canoniser {
   readonly #hash: Int32Array;
   /** By point: the hash of its cell in the current round. */
   readonly #cellHash: Int32Array;
+  /** By index in the order: the hash of a cell that begins there. */
+  readonly #placeHash: Int32Array;
 
   // The search
 
@@ -81,6 +83,8 @@ export class Canoniser {
    * take its point to.
    */
   readonly #orbitSizes: Int32Array;
+  /** Work for {@link #search}: for each depth, 1 for the members of the cell that are counted there. */
+  readonly #inOrbit: Uint8Array;
 
   /**
    * @param size how many points
@@ -96,6 +100,8 @@ export class Canoniser {
     this.#cell = new Int32Array(size * (size + 1));
     this.#hash = new Int32Array(size);
     this.#cellHash = new Int32Array(size);
+    this.#placeHash = Int32Array.from({ length: size }, (_, place) => mix(place + 1));
+    this.#inOrbit = new Uint8Array(size * (size + 1));
     this.#path = new Int32Array(size + 1);
     this.#traces = new Int32Array(size + 1);
     this.#bestTraces = new Int32Array(size + 1);
@@ -115,6 +121,11 @@ export class Canoniser {
    * @param meter pays for pairs and tuples looked at; throws `WorkEnded` when it ends
    */
   canonise(tables: readonly Uint8Array[], meter: Meter | null = null): string {
+    return printed(this.canoniseToBytes(tables, meter));
+  }
+
+  /** As {@link canonise}, but returns the characters as ASCII bytes, in an array that the next call may change. */
+  canoniseToBytes(tables: readonly Uint8Array[], meter: Meter | null = null): Uint8Array {
     this.#tables = tables;
     this.#meter = meter;
     this.#bestDepth = -1;
@@ -125,7 +136,7 @@ export class Canoniser {
     this.#startCells();
     this.#traces[0] = this.#refine(0);
     this.#search(0);
-    return printed(this.#best);
+    return this.#best;
   }
 
   /** The order of points that the last call of {@link canonise} found: the point that comes first, and so on. */
@@ -153,12 +164,21 @@ export class Canoniser {
       const table = this.#tables[this.#pairs[nth]!]!;
       const there = mix(nth * 2 + 1);
       const back = mix(nth * 2 + 2);
-      for (let i = 0; i < size; i += 1)
-        for (let j = 0; j < size; j += 1) {
-          const before = nth === 0 ? 0 : hashes[i * size + j]!;
-          hashes[i * size + j] =
-            before + (table[i * size + j] === 1 ? there : 0) + (table[j * size + i] === 1 ? back : 0);
+      if (nth === 0) hashes.fill(0);
+      for (let i = 0; i < size; i += 1) {
+        const row = i * size;
+        if (table[row + i] === 1) hashes[row + i] = hashes[row + i]! + there + back;
+        for (let j = 0, at = i; j < i; j += 1, at += size) {
+          if (table[row + j] === 1) {
+            hashes[row + j] = hashes[row + j]! + there;
+            hashes[at] = hashes[at]! + back;
+          }
+          if (table[at] === 1) {
+            hashes[at] = hashes[at]! + there;
+            hashes[row + j] = hashes[row + j]! + back;
+          }
         }
+      }
     }
   }
 
@@ -213,13 +233,14 @@ export class Canoniser {
     const cell = this.#cell;
     let trace = 0;
     for (;;) {
-      this.#hashPoints(base);
+      this.#beginRound(base);
       let split = false;
       let discrete = true;
       for (let from = 0; from < size; ) {
         let to = from + 1;
         while (to < size && cell[base + order[base + to]!] === from) to += 1;
         if (to > from + 1) {
+          this.#hashByPairs(base + from, base + to);
           if (this.#splitCell(base, from, to)) split = true;
           for (let at = from; at < to; at += 1) {
             const point = order[base + at]!;
@@ -233,28 +254,16 @@ export class Canoniser {
     }
   }
 
-  /** Hashes of all points by the cells of their neighbours. */
-  #hashPoints(base: number): void {
+  /** Takes the cells as they are as the ground for a round of hashes, and hashes points by tuples. */
+  #beginRound(base: number): void {
     const size = this.#size;
     const cell = this.#cell;
     const hash = this.#hash;
     const cellHash = this.#cellHash;
-    const pairHash = this.#pairHash;
+    const placeHash = this.#placeHash;
     let work = size * size;
-    for (let point = 0; point < size; point += 1) cellHash[point] = mix(cell[base + point]! + 1);
-    if (pairHash.length === 0) hash.fill(0);
-    else
-      for (let point = 0; point < size; point += 1) {
-        const row = point * size;
-        let sum = 0;
-        for (let other = 0; other < size; other += 1) {
-          const pair = pairHash[row + other]!;
-          if (pair === 0) continue;
-          const mixed = Math.imul(cellHash[other]! + pair, 0x9e3779b1 | 0);
-          sum = (sum + (mixed ^ (mixed >>> 15))) | 0;
-        }
-        hash[point] = sum;
-      }
+    for (let point = 0; point < size; point += 1) cellHash[point] = placeHash[cell[base + point]!]!;
+    if (this.#hasTuples || this.#pairHash.length === 0) hash.fill(0);
     if (this.#hasTuples)
       for (const { places, points, patterns } of this.#tuples) {
         work += points.length;
@@ -269,6 +278,29 @@ export class Canoniser {
         }
       }
     this.#meter?.charge(work);
+  }
+
+  /** Hashes the points of a stretch of the order by the cells of those with which they are in a two-place relation. */
+  #hashByPairs(from: number, to: number): void {
+    const size = this.#size;
+    const order = this.#order;
+    const hash = this.#hash;
+    const cellHash = this.#cellHash;
+    const pairHash = this.#pairHash;
+    if (pairHash.length === 0) return;
+    const byTuples = this.#hasTuples;
+    for (let at = from; at < to; at += 1) {
+      const point = order[at]!;
+      const row = point * size;
+      let sum = byTuples ? hash[point]! : 0;
+      for (let other = 0; other < size; other += 1) {
+        const pair = pairHash[row + other]!;
+        if (pair === 0) continue;
+        const mixed = Math.imul(cellHash[other]! + pair, 0x9e3779b1 | 0);
+        sum = (sum + (mixed ^ (mixed >>> 15))) | 0;
+      }
+      hash[point] = sum;
+    }
   }
 
   /** Sorts a cell by hash and splits it where hashes differ; whether they do. */
@@ -326,19 +358,20 @@ export class Canoniser {
     }
     if (from < 0) return this.#leaf(depth);
 
-    const members = order.slice(base + from, base + from + length);
-    const alike = this.#areTwins(members);
+    const members = base + from;
+    const alike = this.#areTwins(members, length);
     // The best leaf is the first that was met of those with its table, so that members before its own are not in the
     // orbit of that one; a later one that is has an automorphism by which it was left out, or leads to one.
-    const inOrbit = new Uint8Array(length);
+    const inOrbit = this.#inOrbit;
+    inOrbit.fill(0, base, base + length);
     let orbit = 0;
     for (let nth = 0; nth < length; nth += 1) {
-      const point = members[nth]!;
+      const point = order[members + nth]!;
       if (nth > 0) {
         const older = alike ? 0 : this.#olderInOrbit(depth, members, nth);
         if (older >= 0) {
-          orbit += inOrbit[older]!;
-          inOrbit[nth] = inOrbit[older]!;
+          orbit += inOrbit[base + older]!;
+          inOrbit[base + nth] = inOrbit[base + older]!;
           continue;
         }
       }
@@ -346,7 +379,7 @@ export class Canoniser {
       order.copyWithin(next, base, base + size);
       cell.copyWithin(next, base, base + size);
       for (let at = from + 1, source = from; at < from + length; source += 1) {
-        const other = members[source - from]!;
+        const other = order[base + source]!;
         if (other === point) continue;
         order[next + at] = other;
         cell[next + other] = from + 1;
@@ -359,11 +392,11 @@ export class Canoniser {
       const back = this.#search(depth + 1);
       if (back < depth) return back;
       if (this.#bestCount > bestBefore) {
-        inOrbit.fill(0);
-        inOrbit[nth] = 1;
+        inOrbit.fill(0, base, base + length);
+        inOrbit[base + nth] = 1;
         orbit = 1;
       } else if (back === depth) {
-        inOrbit[nth] = 1;
+        inOrbit[base + nth] = 1;
         orbit += 1;
       }
     }
@@ -411,8 +444,11 @@ export class Canoniser {
     return depth;
   }
 
-  /** An earlier member of a cell that automorphisms which leave the path alone take to the given one; −1 for none. */
-  #olderInOrbit(depth: number, members: Int32Array, nth: number): number {
+  /**
+   * Of the cell whose members begin there in the order, the number of an earlier one that automorphisms which leave
+   * the path alone take to the nth; −1 for none.
+   */
+  #olderInOrbit(depth: number, members: number, nth: number): number {
     if (this.#automorphisms.length === 0) return -1;
     const forest = this.#forest;
     for (let point = 0; point < this.#size; point += 1) forest[point] = point;
@@ -426,8 +462,9 @@ export class Canoniser {
         if (a !== b) forest[b] = a;
       }
     }
-    const orbit = this.#orbitOf(members[nth]!);
-    for (let older = 0; older < nth; older += 1) if (this.#orbitOf(members[older]!) === orbit) return older;
+    const orbit = this.#orbitOf(this.#order[members + nth]!);
+    for (let older = 0; older < nth; older += 1)
+      if (this.#orbitOf(this.#order[members + older]!) === orbit) return older;
     return -1;
   }
 
@@ -441,19 +478,23 @@ export class Canoniser {
     return root;
   }
 
-  /** Whether exchanging any two of these points of one cell is an automorphism; not looked at beyond two places. */
-  #areTwins(members: Int32Array): boolean {
+  /**
+   * Whether exchanging any two points of a cell, which stands there in the order, is an automorphism; not looked at
+   * beyond two places.
+   */
+  #areTwins(from: number, length: number): boolean {
     if (this.#hasTuples) return false;
     const size = this.#size;
-    const first = members[0]!;
+    const order = this.#order;
+    const first = order[from]!;
     for (let index = 0; index < this.#places.length; index += 1) {
       const table = this.#tables[index]!;
-      if (this.#places[index] === 1) {
-        for (const other of members) if (table[first] !== table[other]) return false;
-        continue;
-      }
-      for (let nth = 1; nth < members.length; nth += 1) {
-        const other = members[nth]!;
+      for (let nth = 1; nth < length; nth += 1) {
+        const other = order[from + nth]!;
+        if (this.#places[index] === 1) {
+          if (table[first] !== table[other]) return false;
+          continue;
+        }
         if (table[first * size + other] !== table[other * size + first]) return false;
         if (table[first * size + first] !== table[other * size + other]) return false;
         for (let point = 0; point < size; point += 1) {
