@@ -7,7 +7,6 @@ import type {
   CompareAnswer,
   DualAnswer,
   IndependenceAnswer,
-  ModelsAnswer,
 } from "../../lib/inquiry/answer.ts";
 import { DEFAULT_LARGEST_SIZE } from "../../lib/inquiry/work.ts";
 import type { Claim, NamedTheory, Statement } from "../../lib/language/statements.ts";
@@ -16,6 +15,8 @@ import { sentencesOf } from "../../lib/logic/theory.ts";
 import type { MimeBundle } from "../session/evaluator.ts";
 import { type Block, code, type Inline, leadingVerdict, line, note, verdict } from "./blocks.ts";
 import { renderBundle } from "./bundle.ts";
+import { countBlocks } from "./counts.ts";
+import { numberedStructures } from "./galleries.ts";
 import { sizeOf, structureBlocks } from "./structures.ts";
 import { budgetOf, claimOf, endText, pairReason, summarise } from "./summaries.ts";
 import { counted, onSizesTo } from "./text.ts";
@@ -65,6 +66,7 @@ function sentencesAsked(statement: Statement): readonly Formula[] {
     case "check-finite":
     case "independence":
     case "models":
+    case "count":
     case "dualise":
       return ofTheories(statement.theory);
     case "compare":
@@ -99,7 +101,9 @@ function detailsOf(statement: Statement, answer: Answer): readonly Block[] {
     case "check-finite":
       return answer.model === null ? [] : structureBlocks("model", answer.model);
     case "models":
-      return modelsBlocks(answer);
+      return numberedStructures("model", answer.models);
+    case "count":
+      return countBlocks(answer, budgetOf(statement));
     case "independence":
       return axiomsBlocks(answer, answer.axioms, statement);
     case "compare":
@@ -126,10 +130,6 @@ function foldRest(groups: readonly (readonly Block[])[]): readonly Block[] {
   if (rest.length > 0)
     blocks.push({ kind: "fold", title: `${counted(rest.length, "more structure")}`, blocks: rest.flat() });
   return blocks;
-}
-
-function modelsBlocks(answer: ModelsAnswer): readonly Block[] {
-  return foldRest(answer.models.map((model, index) => structureBlocks(`model ${index + 1}`, model)));
 }
 
 function axiomsBlocks(

@@ -2,12 +2,13 @@
  * What is shown, before it takes a form. An answer becomes a list of blocks once, and each form (plain text, HTML,
  * LaTeX) renders the same blocks, so that no form says more or less than another.
  */
-import type { Formula } from "../../lib/logic/formula.ts";
+import type { Term, TermFormula } from "../../lib/logic/clausal.ts";
 
 /** A piece of a line or of a table's cell. A bare string is prose. */
 export type Inline =
   | string
-  | { readonly kind: "formula"; readonly formula: Formula }
+  | { readonly kind: "formula"; readonly formula: TermFormula }
+  | { readonly kind: "term"; readonly term: Term }
   /** What the user wrote or named. */
   | { readonly kind: "code"; readonly text: string }
   /** A word of the closed lists of verdicts; one that leads a line is set off from what follows. */
@@ -20,8 +21,8 @@ export interface TableBlock {
   readonly head: readonly string[];
   /** Rows as long as the head; each cell a list of pieces. The first cell of a row is its head. */
   readonly rows: readonly (readonly (readonly Inline[])[])[];
-  /** `prose` wraps its last column; `matrix` sets every cell to the same width. */
-  readonly look: "prose" | "matrix";
+  /** `prose` wraps its last column; `matrix` sets every cell to the same width; `numbers` sets digits under digits. */
+  readonly look: "prose" | "matrix" | "numbers";
 }
 
 export interface PictureBlock {
@@ -31,6 +32,11 @@ export interface PictureBlock {
   /** Says what can be seen, for those who cannot see it. */
   readonly alt: string;
   readonly caption: string;
+}
+
+export interface GalleryBlock {
+  readonly kind: "gallery";
+  readonly pictures: readonly (PictureBlock & { readonly label: string })[];
 }
 
 export type Block =
@@ -44,6 +50,8 @@ export type Block =
   | PictureBlock
   /** Side by side where there is room. */
   | { readonly kind: "beside"; readonly blocks: readonly Block[] }
+  /** Pictures with their numbers, in rows. Only in HTML, as every picture. */
+  | GalleryBlock
   /** What belongs together, set off from what stands above. */
   | { readonly kind: "group"; readonly blocks: readonly Block[] }
   /** Closed at first in HTML; open in the other forms. */
@@ -69,6 +77,10 @@ export function leadingVerdict(word: string): Inline {
   return { kind: "verdict", word, leads: true };
 }
 
-export function formulaOf(formula: Formula): Inline {
+export function formulaOf(formula: TermFormula): Inline {
   return { kind: "formula", formula };
+}
+
+export function termOf(term: Term): Inline {
+  return { kind: "term", term };
 }

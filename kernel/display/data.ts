@@ -12,6 +12,7 @@ import {
   usesIdentity,
 } from "../../lib/logic/formula.ts";
 import { type Theory, theoryDepth, theorySignature } from "../../lib/logic/theory.ts";
+import { countData } from "./counts.ts";
 import { structureData } from "./structures.ts";
 import { claimOf } from "./summaries.ts";
 import { prefixOf } from "./theories.ts";
@@ -36,6 +37,8 @@ export function dataOf(statement: Statement, answer: Answer | null): Data {
         models: answer.models.map((model) => structureData(model).relations),
         complete: answer.complete,
       };
+    case "count":
+      return countData(answer);
     case "independence":
       return { axioms: Object.fromEntries(answer.axioms.map(({ label, verdict }) => [label, verdict])) };
     case "compare":

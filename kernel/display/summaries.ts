@@ -8,6 +8,8 @@ import type {
   AxiomAnswer,
   ClaimAnswer,
   CompareAnswer,
+  CountAnswer,
+  CountedSize,
   DualAnswer,
   FiniteAnswer,
   IndependenceAnswer,
@@ -34,6 +36,8 @@ export function summarise(statement: Statement, answer: Answer): string {
       return `${answer.verdict}: ${finiteReason(answer, budget)}`;
     case "models":
       return modelsSummary(answer, budget);
+    case "count":
+      return countSummary(answer, budget);
     case "independence":
       return independenceSummary(answer);
     case "compare":
@@ -148,6 +152,25 @@ function modelsSummary(answer: ModelsAnswer, budget: number): string {
   const checked = answer.evidence === null ? "" : models.length === 1 ? ", checked" : ", each checked";
   const found = `${counted(models.length, "model")} on ${points} up to isomorphism${checked}`;
   return complete ? `${found}; no others (complete search)` : `at least ${found}; ${end}`;
+}
+
+function countSummary(answer: CountAnswer, budget: number): string {
+  const { sizes, ended, endedAt } = answer;
+  const end = ended === null ? "" : `; ${endText(ended, budget, endedAt)}`;
+  const last = sizes.at(-1);
+  if (last === undefined) return `no size was counted${end}`;
+  const { size, labelled, unlabelled } = last;
+  const models =
+    labelled === 0n
+      ? `no model on ${counted(size, "point")}`
+      : `${counted(labelled, "labelled model")} on ${counted(size, "point")}, ${grouped(unlabelled)} up to isomorphism`;
+  return `${models}; ${finishedSizes(sizes)} counted${end} (computed, not certified)`;
+}
+
+/** `1 to 4 points`. */
+export function finishedSizes(sizes: readonly CountedSize[]): string {
+  const last = sizes.at(-1)!.size;
+  return last === 1 ? "1 point" : `1 to ${grouped(last)} points`;
 }
 
 function independenceSummary(answer: IndependenceAnswer): string {

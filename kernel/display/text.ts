@@ -44,6 +44,11 @@ export function padEnd(text: string, width: number): string {
   return text + " ".repeat(Math.max(0, width - displayWidth(text)));
 }
 
+/** The text with spaces before it, up to a width in columns. */
+export function padStart(text: string, width: number): string {
+  return " ".repeat(Math.max(0, width - displayWidth(text))) + text;
+}
+
 /**
  * Names as they can safely be shown: control characters and those that change the direction of what follows would
  * make a line read as something else, and become `�`.
@@ -84,13 +89,13 @@ export function wrap(text: string, width: number): readonly string[] {
 }
 
 /** A whole number with commas between thousands. */
-export function grouped(value: number): string {
+export function grouped(value: number | bigint): string {
   return String(value).replace(/\B(?=(\d{3})+$)/g, ",");
 }
 
 /** `1 point`, `3 points`. */
-export function counted(count: number, noun: string, nouns = `${noun}s`): string {
-  return `${grouped(count)} ${count === 1 ? noun : nouns}`;
+export function counted(count: number | bigint, noun: string, nouns = `${noun}s`): string {
+  return `${grouped(count)} ${count === 1 || count === 1n ? noun : nouns}`;
 }
 
 /** The sizes from 1 on: `on 1 point`, `on 1 to 8 points`. */

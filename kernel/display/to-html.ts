@@ -3,8 +3,8 @@
  * plain inline styles, and pictures as `<img>` with a data URI. It may stand on a light or a dark page, so text has
  * the page's own colour except where it brings its background with it; rules are of a middle grey that shows on both.
  */
-import { printFormula } from "../../lib/language/printer.ts";
-import type { Block, Inline, TableBlock } from "./blocks.ts";
+import { printFormula, printTerm } from "../../lib/language/printer.ts";
+import type { Block, Inline, PictureBlock, TableBlock } from "./blocks.ts";
 import { visible } from "./text.ts";
 
 const RULE = "#8a8a8a";
@@ -36,6 +36,8 @@ function pieceToHtml(piece: Inline): string {
   switch (piece.kind) {
     case "formula":
       return `<span>${escapeHtml(printFormula(piece.formula, "unicode"))}</span>`;
+    case "term":
+      return `<span>${escapeHtml(printTerm(piece.term, "unicode"))}</span>`;
     case "code":
       return `<code>${escapeHtml(piece.text)}</code>`;
     case "verdict": {
@@ -60,13 +62,16 @@ function blockToHtml(block: Block): string {
     case "table":
       return tableToHtml(block);
     case "picture": {
-      const data = Buffer.from(block.svg, "utf8").toString("base64");
       const caption = block.caption === "" ? "" : `<br><small>${escapeHtml(block.caption)}</small>`;
-      return (
-        `<div style="margin:4px 0"><img src="data:image/svg+xml;base64,${data}" alt="${escapeHtml(block.alt)}" ` +
-        `style="max-width:100%">${caption}</div>`
-      );
+      return `<div style="margin:4px 0">${pictureToHtml(block)}${caption}</div>`;
     }
+    case "gallery":
+      return `<div style="margin:6px 0">${block.pictures
+        .map(
+          (picture) =>
+            `<div style="${TILE}">${pictureToHtml(picture)}<br><small>${escapeHtml(picture.label)}</small></div>`,
+        )
+        .join("")}</div>`;
     case "beside":
       return `<div>${block.blocks
         .map((inner) => `<div style="${BESIDE}">${blockToHtml(inner)}</div>`)
@@ -81,12 +86,22 @@ function blockToHtml(block: Block): string {
   }
 }
 
+const ALIGN = { matrix: "center", numbers: "right", prose: "left" } as const;
+
 const BESIDE = "display:inline-block;vertical-align:top;margin:0 28px 4px 0;max-width:100%";
+
+const TILE =
+  "display:inline-block;vertical-align:bottom;margin:0 14px 10px 0;max-width:100%;text-align:center;line-height:1.4";
+
+function pictureToHtml({ svg, alt }: PictureBlock): string {
+  const data = Buffer.from(svg, "utf8").toString("base64");
+  return `<img src="data:image/svg+xml;base64,${data}" alt="${escapeHtml(alt)}" style="max-width:100%">`;
+}
 
 function tableToHtml(table: TableBlock): string {
   const matrix = table.look === "matrix";
-  const align = matrix ? "center" : "left";
-  const space = matrix ? "1px 7px" : "3px 14px 3px 4px";
+  const align = ALIGN[table.look];
+  const space = { matrix: "1px 7px", numbers: "3px 4px 3px 18px", prose: "3px 14px 3px 4px" }[table.look];
   const headCell = (title: string) =>
     `<th scope="col" style="text-align:${align};padding:${space};border-bottom:1px solid ${RULE}">${escapeHtml(title)}</th>`;
   const rows = table.rows.map((row) => {

@@ -2,7 +2,7 @@
  * Blocks as LaTeX for a draft: what amsmath, amssymb, booktabs and longtable can set. Pictures are left out; what
  * they show stands in the tables.
  */
-import { printFormula } from "../../lib/language/printer.ts";
+import { printFormula, printTerm } from "../../lib/language/printer.ts";
 import type { Block, Inline, TableBlock } from "./blocks.ts";
 import { visible } from "./text.ts";
 
@@ -89,6 +89,8 @@ function pieceToLatex(piece: Inline): string {
   switch (piece.kind) {
     case "formula":
       return `$${printFormula(piece.formula, "latex")}$`;
+    case "term":
+      return `$${printTerm(piece.term, "latex")}$`;
     case "code":
       return `\\texttt{${escapeLatex(piece.text)}}`;
     case "verdict":
@@ -110,6 +112,7 @@ function blockToLatex(block: Block): string {
     case "table":
       return tableToLatex(block);
     case "picture":
+    case "gallery":
       return "";
     case "group":
     case "beside":
@@ -122,9 +125,11 @@ function blockToLatex(block: Block): string {
 function tableToLatex(table: TableBlock): string {
   const last = table.head.length - 1;
   const columns =
-    table.look === "matrix"
-      ? `c@{\\quad}${"c".repeat(last)}`
-      : `${"l".repeat(last)}p{${last > 2 ? "0.4" : "0.65"}\\linewidth}`;
+    table.look === "numbers"
+      ? "r".repeat(last + 1)
+      : table.look === "matrix"
+        ? `c@{\\quad}${"c".repeat(last)}`
+        : `${"l".repeat(last)}p{${last > 2 ? "0.4" : "0.65"}\\linewidth}`;
   const row = (cells: readonly string[]) => `${cells.join(" & ")} \\\\`;
   const head = row(table.head.map(escapeLatex));
   const rows = table.rows.map((cells) => row(cells.map(inlineToLatex)));

@@ -1,7 +1,7 @@
 /** Blocks as plain text, complete by itself: what a terminal shows, and what remains when nothing richer is read. */
-import { printFormula } from "../../lib/language/printer.ts";
+import { printFormula, printTerm } from "../../lib/language/printer.ts";
 import type { Block, Inline, TableBlock } from "./blocks.ts";
-import { padEnd, visible, widestOf, wrap } from "./text.ts";
+import { padEnd, padStart, visible, widestOf, wrap } from "./text.ts";
 
 /** Columns that a line of prose or a formula may take before it is broken. */
 const WIDTH = 100;
@@ -19,6 +19,8 @@ function pieceToText(piece: Inline): string {
   switch (piece.kind) {
     case "formula":
       return printFormula(piece.formula, "unicode");
+    case "term":
+      return printTerm(piece.term, "unicode");
     case "code":
       return visible(piece.text);
     case "verdict":
@@ -37,6 +39,7 @@ function blockToText(block: Block): string {
     case "table":
       return tableToText(block);
     case "picture":
+    case "gallery":
       return "";
     case "beside":
       return blocksToText(block.blocks);
@@ -65,7 +68,10 @@ function tableToText(table: TableBlock): string {
   const gap = table.look === "matrix" ? " " : "  ";
   const set = (cells: readonly string[]) =>
     cells
-      .map((cell, column) => (column === last ? cell : padEnd(cell, widths[column]!)))
+      .map((cell, column) => {
+        if (table.look === "numbers") return padStart(cell, widths[column]!);
+        return column === last ? cell : padEnd(cell, widths[column]!);
+      })
       .join(gap)
       .trimEnd();
   const lines: string[] = [];

@@ -1,0 +1,65 @@
+/** Counts of models: a table of sizes, and one model of each class where they were asked for. */
+import type { CountAnswer, CountedSize } from "../../lib/inquiry/answer.ts";
+import { type Block, line, note } from "./blocks.ts";
+import { numberedStructures } from "./galleries.ts";
+import { endText, finishedSizes } from "./summaries.ts";
+import { counted, grouped } from "./text.ts";
+
+/** Representatives that stand open; sizes beyond are folded. */
+const OPEN_REPRESENTATIVES = 24;
+
+export function countBlocks(answer: CountAnswer, budget: number): readonly Block[] {
+  const { sizes, ended, endedAt } = answer;
+  const blocks: Block[] = [];
+  if (sizes.length > 0) {
+    blocks.push({
+      kind: "table",
+      caption: null,
+      head: ["points", "labelled", "up to isomorphism"],
+      rows: sizes.map(({ size, labelled, unlabelled }) => [
+        [grouped(size)],
+        [grouped(labelled)],
+        [grouped(unlabelled)],
+      ]),
+      look: "numbers",
+    });
+    const drawn = sizes.some(({ representatives }) => representatives.length > 0);
+    const checked =
+      drawn && answer.evidence !== null ? " Each structure below was checked to be a model." : "";
+    blocks.push(note(`Computed, not certified: a count carries no evidence of its own.${checked}`));
+  }
+  if (ended !== null) {
+    const finished = sizes.length === 0 ? "No size was finished" : `Finished: ${finishedSizes(sizes)}`;
+    blocks.push(note(`${finished}; ${endText(ended, budget, endedAt)}.`));
+  }
+  let shown = 0;
+  for (const counting of sizes) {
+    if (counting.representatives.length === 0) continue;
+    const group: Block = {
+      kind: "group",
+      blocks: [line(titleOf(counting)), ...numberedStructures("model", counting.representatives)],
+    };
+    shown += counting.representatives.length;
+    if (shown <= OPEN_REPRESENTATIVES || shown === counting.representatives.length) blocks.push(group);
+    else blocks.push({ kind: "fold", title: titleOf(counting), blocks: group.blocks.slice(1) });
+  }
+  return blocks;
+}
+
+function titleOf({ size, unlabelled, representatives }: CountedSize): string {
+  const classes = `${counted(size, "point")}: ${counted(unlabelled, "class", "classes")} of isomorphic models`;
+  const all = BigInt(representatives.length) === unlabelled;
+  if (all) return unlabelled === 1n ? `${classes}, its model` : `${classes}, one model of each`;
+  return `${classes}, models of ${grouped(representatives.length)} of them`;
+}
+
+/** Numbers by size; beyond 2^53 they are strings, since JSON's readers would round them. */
+export function countData({ sizes }: CountAnswer): Readonly<Record<string, unknown>> {
+  const by = (pick: (counting: CountedSize) => bigint) =>
+    Object.fromEntries(sizes.map((counting) => [String(counting.size), plainNumber(pick(counting))]));
+  return { labelled: by(({ labelled }) => labelled), unlabelled: by(({ unlabelled }) => unlabelled) };
+}
+
+function plainNumber(value: bigint): number | string {
+  return value <= 2n ** 53n ? Number(value) : String(value);
+}
