@@ -43,6 +43,8 @@ export class Canoniser {
   #tuples: readonly Tuples[] = [];
   /** By pair of points (i·size + j): a hash of which two-place relations hold of (i, j) and of (j, i); 0 for none. */
   readonly #pairHash: Int32Array;
+  /** Work for {@link #readPairs}: by whether a relation holds of (i, j), plus 2 if of (j, i), the hash of that. */
+  readonly #pairMarks = new Int32Array(4);
   #meter: Meter | null = null;
 
   // The partition into cells. Each depth of the tree has its own stretch of `size` entries in both arrays
@@ -139,9 +141,12 @@ export class Canoniser {
     return this.#best;
   }
 
-  /** The order of points that the last call of {@link canonise} found: the point that comes first, and so on. */
-  get order(): readonly number[] {
-    return [...this.#bestOrder];
+  /**
+   * The order of points that the last call of {@link canonise} found: the point that comes first, and so on. The
+   * next call may change it.
+   */
+  get order(): Int32Array {
+    return this.#bestOrder;
   }
 
   /**
@@ -157,27 +162,36 @@ export class Canoniser {
 
   // Reading the structure
 
+  /** Fills {@link #pairHash}, and {@link #hash} with what it says of each point alone. */
   #readPairs(): void {
     const size = this.#size;
-    const hashes = this.#pairHash;
+    const pairHash = this.#pairHash;
+    const hash = this.#hash;
+    const found = this.#pairMarks;
+    hash.fill(0);
     for (let nth = 0; nth < this.#pairs.length; nth += 1) {
       const table = this.#tables[this.#pairs[nth]!]!;
       const there = mix(nth * 2 + 1);
       const back = mix(nth * 2 + 2);
-      if (nth === 0) hashes.fill(0);
+      // Entries are random as far as a processor can tell: looking hashes up is cheaper than branches.
+      found[1] = there;
+      found[2] = back;
+      found[3] = there + back;
       for (let i = 0; i < size; i += 1) {
         const row = i * size;
-        if (table[row + i] === 1) hashes[row + i] = hashes[row + i]! + there + back;
+        let sum = found[table[row + i]! * 3]!;
+        pairHash[row + i] = (nth === 0 ? 0 : pairHash[row + i]!) + sum;
+        sum = mix(sum);
         for (let j = 0, at = i; j < i; j += 1, at += size) {
-          if (table[row + j] === 1) {
-            hashes[row + j] = hashes[row + j]! + there;
-            hashes[at] = hashes[at]! + back;
-          }
-          if (table[at] === 1) {
-            hashes[at] = hashes[at]! + there;
-            hashes[row + j] = hashes[row + j]! + back;
-          }
+          const entry = table[row + j]! + table[at]! * 2;
+          const own = found[entry]!;
+          const other = found[((entry & 1) << 1) | (entry >> 1)]!;
+          pairHash[row + j] = (nth === 0 ? 0 : pairHash[row + j]!) + own;
+          pairHash[at] = (nth === 0 ? 0 : pairHash[at]!) + other;
+          sum = (sum + Math.imul(own, own | 1)) | 0;
+          hash[j] = (hash[j]! + Math.imul(other, other | 1)) | 0;
         }
+        hash[i] = (hash[i]! + sum) | 0;
       }
     }
   }
@@ -201,17 +215,18 @@ export class Canoniser {
     return [{ places, points: Int32Array.from(points), patterns: Int32Array.from(patterns) }];
   }
 
-  /** Puts points in cells by what holds of each alone. */
+  /** Puts points in cells by what holds of each alone, and by how many pairs of each sort it is in. */
   #startCells(): void {
     const size = this.#size;
     const hash = this.#hash;
-    hash.fill(0);
     for (let index = 0; index < this.#places.length; index += 1) {
+      const places = this.#places[index]!;
+      if (places === 2) continue;
       const table = this.#tables[index]!;
       let step = 0;
-      for (let place = 0; place < this.#places[index]!; place += 1) step = step * size + 1;
+      for (let place = 0; place < places; place += 1) step = step * size + 1;
       for (let point = 0; point < size; point += 1)
-        if (table[point * step] === 1) hash[point] = hash[point]! + mix(index + 1);
+        if (table[point * step] === 1) hash[point] = (hash[point]! + mix(index + 1)) | 0;
     }
     for (let point = 0; point < size; point += 1) {
       this.#order[point] = point;
@@ -294,9 +309,7 @@ export class Canoniser {
       const row = point * size;
       let sum = byTuples ? hash[point]! : 0;
       for (let other = 0; other < size; other += 1) {
-        const pair = pairHash[row + other]!;
-        if (pair === 0) continue;
-        const mixed = Math.imul(cellHash[other]! + pair, 0x9e3779b1 | 0);
+        const mixed = Math.imul(cellHash[other]! + pairHash[row + other]!, 0x9e3779b1 | 0);
         sum = (sum + (mixed ^ (mixed >>> 15))) | 0;
       }
       hash[point] = sum;
@@ -521,11 +534,13 @@ export class Canoniser {
       const rows = size ** (places - 1);
       for (let row = 0; row < rows; row += 1) {
         let kind = 0;
-        for (let rest = row, weight = size, place = 1; place < places; place += 1) {
-          kind += order[base + (rest % size)]! * weight;
-          rest = Math.floor(rest / size);
-          weight *= size;
-        }
+        if (places === 2) kind = order[base + row]! * size;
+        else
+          for (let rest = row, weight = size, place = 1; place < places; place += 1) {
+            kind += order[base + (rest % size)]! * weight;
+            rest = Math.floor(rest / size);
+            weight *= size;
+          }
         for (let last = 0; last < size; last += 1) {
           bits = (bits << 1) | table[kind + order[base + last]!]!;
           count += 1;

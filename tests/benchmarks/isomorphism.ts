@@ -89,24 +89,20 @@ function canoniseFile(input: string, output: string): void {
           table[i * size + j] = (bits >> left) & 1;
           table[j * size + i] = (bits >> left) & 1;
         }
-    canoniser.canonise([table]);
+    canoniser.canoniseToBytes([table]);
     const { order } = canoniser;
     bits = 0;
     left = 6;
-    const put = (bit: number) => {
-      left -= 1;
-      bits |= bit << left;
-      if (left > 0) return;
-      written[out++] = bits + OFFSET;
-      bits = 0;
-      left = 6;
-    };
-    if (directed)
-      for (let i = 0; i < size; i += 1)
-        for (let j = 0; j < size; j += 1) put(table[order[i]! * size + order[j]!]!);
-    else
-      for (let j = 1; j < size; j += 1)
-        for (let i = 0; i < j; i += 1) put(table[order[i]! * size + order[j]!]!);
+    for (let column = directed ? 0 : 1; column < size; column += 1)
+      for (let row = 0; row < (directed ? size : column); row += 1) {
+        left -= 1;
+        // For graphs it does not matter which of the two comes first.
+        bits |= table[order[column]! * size + order[row]!]! << left;
+        if (left > 0) continue;
+        written[out++] = bits + OFFSET;
+        bits = 0;
+        left = 6;
+      }
     if (left < 6) written[out++] = bits + OFFSET;
     written[out++] = bytes[at++]!;
   }
