@@ -12,7 +12,7 @@
 import { v4 as uuid } from "uuid";
 import * as v from "valibot";
 import type { Evaluator } from "../session/evaluator.ts";
-import { runHandler } from "./handlers.ts";
+import { type Handling, runHandler } from "./handlers.ts";
 import { History } from "./history.ts";
 import {
   type Channel,
@@ -50,19 +50,6 @@ interface Pending {
   readonly sendReply: SendReply;
   /** Set when an earlier cell ended with an error and asked for it; looked at when the turn comes. */
   aborted: boolean;
-}
-
-/** What handlers may use of the core; see `handlers.ts`. */
-export interface Handling {
-  readonly evaluator: Evaluator;
-  readonly history: History;
-  /** Cells counted so far. */
-  executionCount: number;
-  publish<T extends PublicationType>(type: T, content: PublicationContent<T>): void;
-  /** Has execute requests that wait on shell answered with `aborted`. */
-  abortWaiting(): void;
-  shutDown(restart: boolean): void;
-  log(line: string): void;
 }
 
 /** After an error, requests already on their way get this long to arrive before the queue is aborted. */

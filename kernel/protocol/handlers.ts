@@ -1,8 +1,29 @@
 /** What the kernel does for each request: a table from message types to handlers. */
 import type { CellEvent, CellOutcome, Evaluator } from "../session/evaluator.ts";
-import type { Handling } from "./core.ts";
+import type { History } from "./history.ts";
 import { kernelInfo } from "./kernel-info.ts";
-import type { ExpressionReply, ReplyContent, ReplyType, RequestContent, RequestType } from "./messages.ts";
+import type {
+  ExpressionReply,
+  PublicationContent,
+  PublicationType,
+  ReplyContent,
+  ReplyType,
+  RequestContent,
+  RequestType,
+} from "./messages.ts";
+
+/** What handlers may use of the core. */
+export interface Handling {
+  readonly evaluator: Evaluator;
+  readonly history: History;
+  /** Cells counted so far. */
+  executionCount: number;
+  publish<T extends PublicationType>(type: T, content: PublicationContent<T>): void;
+  /** Has execute requests that wait on shell answered with `aborted`. */
+  abortWaiting(): void;
+  shutDown(restart: boolean): void;
+  log(line: string): void;
+}
 
 /** The type of the reply to a request; never for messages without one. */
 type ReplyTo<T extends RequestType> = T extends `${infer Verb}_request`

@@ -4,11 +4,13 @@ import type { Diagnostic } from "./diagnostics.ts";
 import { readFormula } from "./formulas.ts";
 import { helpOf, laterStatements, listWords, optionHelp, statementHelp, statementList } from "./help.ts";
 import type { Token } from "./lexer.ts";
+import { findMixedRelation } from "./mixing.ts";
 import { Names } from "./names.ts";
 import { nearestName } from "./nearest.ts";
 import { CellEnds, quote, Reader, Unreadable } from "./reader.ts";
 import { type Binding, type StatementBody, statementReaders } from "./statement-readers.ts";
 import type { ParsedCell, Scope, Statement, StatementKind } from "./statements.ts";
+import { countOf } from "./wording.ts";
 
 /** How many statements a cell may have. */
 export const MAX_STATEMENTS = 5000;
@@ -59,6 +61,7 @@ function readStatement(reader: Reader): Statement | null {
   try {
     body = readBody(reader, bindings);
     if (!reader.at("end") && !reader.at("semicolon")) failEnd(reader, first);
+    if (body !== null && reader.diagnostics.length === mistakes) reportMixed(reader, body, first);
   } catch (error) {
     if (!(error instanceof Unreadable)) throw error;
     reader.skipStatement();
@@ -69,6 +72,18 @@ function readStatement(reader: Reader): Statement | null {
   }
   const { last } = reader;
   return { ...body, text: reader.statementText(first, last), from: first.from, to: last.to } as Statement;
+}
+
+function reportMixed(reader: Reader, body: StatementBody, first: Token): void {
+  const mixed = findMixedRelation(body);
+  if (mixed === null) return;
+  const [one, other] = mixed.places;
+  reader.report(
+    "places-mixed",
+    { from: first.from, to: reader.last.to },
+    `${quote(mixed.name)} would occur with ${countOf(one, "place")} and with ${countOf(other, "place")} in one statement`,
+    "define the older definition again, or give the relation another name",
+  );
 }
 
 function readBody(reader: Reader, bindings: Binding[]): StatementBody | null {

@@ -59,11 +59,18 @@ export function theoryDepth(theory: Theory): number {
   return theory.axioms.reduce((most, axiom) => Math.max(most, depthOf(axiom.formula)), 0);
 }
 
-/** The signature of some sentences; `fallback` is taken when no relation occurs in them. */
+/**
+ * The signature of some sentences; `fallback` is taken when no relation occurs in them.
+ * @throws Error when a relation occurs with two numbers of places, which the parser refuses
+ */
 export function signatureOf(sentences: readonly Formula[], fallback: RelationSymbol | null): Signature {
   const found = new Map<string, RelationSymbol>();
-  for (const sentence of sentences)
-    for (const relation of relationsOf(sentence)) found.set(relation.name, relation);
+  for (const relation of sentences.flatMap(relationsOf)) {
+    const before = found.get(relation.name);
+    if (before !== undefined && before.places !== relation.places)
+      throw new Error(`${relation.name} occurs with ${before.places} and with ${relation.places} places`);
+    found.set(relation.name, relation);
+  }
   if (found.size === 0 && fallback !== null) found.set(fallback.name, fallback);
   const relations = [...found.values()].sort((a, b) => (a.name < b.name ? -1 : 1));
   return { relations, identity: sentences.some(usesIdentity) };

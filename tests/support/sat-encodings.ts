@@ -3,21 +3,55 @@
  * is measured on and compared with other solvers on: small and hard, satisfiable and not.
  */
 import { Points } from "../../lib/carriers/points.ts";
-import {
-  and,
-  atom,
-  equal,
-  exists,
-  type Formula,
-  forall,
-  iff,
-  implies,
-  not,
-  or,
-  type RelationSymbol,
-} from "../../lib/logic/formula.ts";
+import { and, type Formula, implies, not, or, type RelationSymbol } from "../../lib/logic/formula.ts";
 import { Meter } from "../../lib/logic/meter.ts";
 import { layOut } from "../../lib/structures/search.ts";
+import {
+  all,
+  asymmetric,
+  bothBeaten,
+  clique,
+  complemented,
+  cubeIdentity,
+  degree,
+  dense,
+  differ,
+  extension,
+  functional,
+  graph,
+  grid,
+  group,
+  idempotent,
+  interval,
+  lattice,
+  noAtomsFromBelow,
+  notOnto,
+  oneCommonNeighbour,
+  oneToOne,
+  partialOrder,
+  pentagon,
+  quasigroup,
+  R,
+  relationR,
+  relationS,
+  S,
+  selfOrthogonal,
+  semi,
+  serial,
+  sharesSuccessor,
+  shortIdentity,
+  some,
+  squareOfS,
+  steiner,
+  strictOrder,
+  T,
+  ternary,
+  threeBeaten,
+  tournament,
+  triangleFree,
+  twoCommonNeighbours,
+  uniqueBetween,
+} from "./sat-axioms.ts";
 
 export interface Encoding {
   readonly name: string;
@@ -55,216 +89,6 @@ export function encode(encoding: Encoding): EncodedClauses {
   layOut(task, sink, new Meter(1_000_000));
   return { name: `${encoding.name} on ${encoding.points}`, variableCount, clauses };
 }
-
-const binary = (name: string): RelationSymbol => ({ name, places: 2, infix: false });
-const relationR = binary("R");
-const relationS = binary("S");
-const ternary: RelationSymbol = { name: "T", places: 3, infix: false };
-
-const R = (x: string, y: string) => atom(relationR, x, y);
-const S = (x: string, y: string) => atom(relationS, x, y);
-const T = (x: string, y: string, z: string) => atom(ternary, x, y, z);
-const all = (variables: string, body: Formula) => forall([...variables], body);
-const some = (variables: string, body: Formula) => exists([...variables], body);
-const differ = (...variables: string[]) =>
-  and(...variables.flatMap((x, i) => variables.slice(i + 1).map((y) => not(equal(x, y)))));
-
-// Properties of R
-
-const irreflexive = all("x", not(R("x", "x")));
-const reflexive = all("x", R("x", "x"));
-const symmetric = all("xy", implies(R("x", "y"), R("y", "x")));
-const asymmetric = all("xy", implies(R("x", "y"), not(R("y", "x"))));
-const antisymmetric = all("xy", implies(and(R("x", "y"), R("y", "x")), equal("x", "y")));
-const transitive = all("xyz", implies(and(R("x", "y"), R("y", "z")), R("x", "z")));
-const total = all("xy", or(R("x", "y"), R("y", "x"), equal("x", "y")));
-const serial = all("x", some("y", R("x", "y")));
-const dense = all("xz", implies(R("x", "z"), some("y", and(R("x", "y"), R("y", "z")))));
-const triangleFree = all("xyz", not(and(R("x", "y"), R("y", "z"), R("x", "z"))));
-const partialOrder = [reflexive, antisymmetric, transitive];
-const strictOrder = [irreflexive, transitive];
-const graph = [irreflexive, symmetric];
-const tournament = [asymmetric, total];
-
-const least = (z: string, bound: (w: string) => Formula, down: (a: string, b: string) => Formula) =>
-  and(bound(z), all("w", implies(bound("w"), down(z, "w"))));
-const joins = all(
-  "xy",
-  some(
-    "z",
-    least("z", (w) => and(R("x", w), R("y", w)), R),
-  ),
-);
-const meets = all(
-  "xy",
-  some(
-    "z",
-    least(
-      "z",
-      (w) => and(R(w, "x"), R(w, "y")),
-      (a, b) => R(b, a),
-    ),
-  ),
-);
-const lattice = [...partialOrder, joins, meets];
-/** Five points as in the pentagon: o below all, i above all, a below b, c beside both. */
-const pentagon = some(
-  "abc",
-  and(
-    R("a", "b"),
-    differ("a", "b"),
-    all(
-      "w",
-      and(
-        iff(and(R("w", "a"), R("w", "c")), and(R("w", "b"), R("w", "c"))),
-        iff(and(R("a", "w"), R("c", "w")), and(R("b", "w"), R("c", "w"))),
-      ),
-    ),
-  ),
-);
-const complemented = all(
-  "x",
-  some(
-    "y",
-    all(
-      "z",
-      and(
-        implies(and(R("z", "x"), R("z", "y")), all("w", R("z", "w"))),
-        implies(and(R("x", "z"), R("y", "z")), all("w", R("w", "z"))),
-      ),
-    ),
-  ),
-);
-const noAtomsFromBelow = all(
-  "x",
-  implies(
-    some("y", and(R("y", "x"), differ("x", "y"))),
-    some("yz", and(R("y", "x"), R("z", "x"), differ("x", "y", "z"), not(R("y", "z")), not(R("z", "y")))),
-  ),
-);
-
-const commonNeighbour = (x: string, y: string, z: string) => and(R(x, z), R(y, z));
-const oneCommonNeighbour = (x: string, y: string) =>
-  some("z", and(commonNeighbour(x, y, "z"), all("w", implies(commonNeighbour(x, y, "w"), equal("w", "z")))));
-const twoCommonNeighbours = (x: string, y: string) =>
-  some(
-    "zv",
-    and(differ("z", "v"), all("w", iff(commonNeighbour(x, y, "w"), or(equal("w", "z"), equal("w", "v"))))),
-  );
-const degree = (count: number) => {
-  const names = ["a", "b", "c", "d", "e", "f"].slice(0, count);
-  return all(
-    "x",
-    exists(
-      names,
-      and(
-        ...(count > 1 ? [differ(...names)] : []),
-        all("w", iff(R("x", "w"), or(...names.map((name) => equal("w", name))))),
-      ),
-    ),
-  );
-};
-const clique = (variables: string, sign: (f: Formula) => Formula) =>
-  all(
-    variables,
-    implies(
-      differ(...variables),
-      not(and(...[...variables].flatMap((x, i) => [...variables.slice(i + 1)].map((y) => sign(R(x, y)))))),
-    ),
-  );
-const bothBeaten = all("xy", some("z", and(R("z", "x"), R("z", "y"), differ("z", "x"), differ("z", "y"))));
-/** For any two points, every way to be joined to them occurs. */
-const extension = all(
-  "xy",
-  implies(
-    differ("x", "y"),
-    and(
-      ...[0, 1, 2, 3].map((ways) =>
-        some(
-          "z",
-          and(
-            differ("z", "x"),
-            differ("z", "y"),
-            (ways & 1) === 0 ? R("z", "x") : not(R("z", "x")),
-            (ways & 2) === 0 ? R("z", "y") : not(R("z", "y")),
-          ),
-        ),
-      ),
-    ),
-  ),
-);
-
-// An operation as a three-place relation: T(x, y, z) is x·y = z
-
-const operation = [
-  all("xy", some("z", T("x", "y", "z"))),
-  all("xyzw", implies(and(T("x", "y", "z"), T("x", "y", "w")), equal("z", "w"))),
-];
-const quasigroup = [
-  ...operation,
-  all("xyzw", implies(and(T("x", "z", "y"), T("x", "w", "y")), equal("z", "w"))),
-  all("xyzw", implies(and(T("z", "x", "y"), T("w", "x", "y")), equal("z", "w"))),
-  all("xy", and(some("z", T("x", "z", "y")), some("z", T("z", "x", "y")))),
-];
-const idempotent = all("x", T("x", "x", "x"));
-/** ((y·x)·y)·y = x. */
-const shortIdentity = all("xyab", implies(and(T("y", "x", "a"), T("a", "y", "b")), T("b", "y", "x")));
-/** ((x·y)·y)·y = x. */
-const cubeIdentity = all("xyzw", implies(and(T("x", "y", "z"), T("z", "y", "w")), T("w", "y", "x")));
-/** (x·y)·(y·x) = x. */
-const selfOrthogonal = all("xyab", implies(and(T("x", "y", "a"), T("y", "x", "b")), T("a", "b", "x")));
-const steiner = [
-  ...operation,
-  idempotent,
-  all("xyz", implies(T("x", "y", "z"), and(T("y", "x", "z"), T("x", "z", "y")))),
-];
-
-// Semiorders and interval orders
-
-const interval = all("abcd", implies(and(R("a", "b"), R("c", "d")), or(R("a", "d"), R("c", "b"))));
-const semi = all("abcd", implies(and(R("a", "b"), R("b", "c")), or(R("a", "d"), R("d", "c"))));
-
-const isEquivalence = (P: (x: string, y: string) => Formula) => [
-  all("x", P("x", "x")),
-  all("xy", implies(P("x", "y"), P("y", "x"))),
-  all("xyz", implies(and(P("x", "y"), P("y", "z")), P("x", "z"))),
-];
-const grid = [
-  ...isEquivalence(R),
-  ...isEquivalence(S),
-  all("xy", some("z", and(R("x", "z"), S("z", "y")))),
-  all("xy", implies(and(R("x", "y"), S("x", "y")), equal("x", "y"))),
-  some("xy", not(R("x", "y"))),
-  some("xy", not(S("x", "y"))),
-];
-const oneToOne = all("xyz", implies(and(R("x", "z"), R("y", "z")), equal("x", "y")));
-const functional = all("xyz", implies(and(R("x", "y"), R("x", "z")), equal("y", "z")));
-const notOnto = some("y", all("x", not(R("x", "y"))));
-
-const threeBeaten = all(
-  "xyz",
-  some("w", and(R("w", "x"), R("w", "y"), R("w", "z"), differ("w", "x"), differ("w", "y"), differ("w", "z"))),
-);
-const uniqueBetween = all(
-  "xz",
-  implies(
-    R("x", "z"),
-    some(
-      "y",
-      and(R("x", "y"), R("y", "z"), all("w", implies(and(R("x", "w"), R("w", "z")), equal("w", "y")))),
-    ),
-  ),
-);
-const squareOfS = all("xy", iff(R("x", "y"), some("z", and(S("x", "z"), S("z", "y")))));
-const sharesSuccessor = all(
-  "xy",
-  iff(R("x", "y"), and(differ("x", "y"), some("z", and(S("x", "z"), S("y", "z"))))),
-);
-const group = [
-  ...operation,
-  some("e", all("x", and(T("e", "x", "x"), T("x", "e", "x"), some("y", T("y", "x", "e"))))),
-  all("xyzabc", implies(and(T("x", "y", "a"), T("y", "z", "b"), T("a", "z", "c")), T("x", "b", "c"))),
-];
 
 /** Sizes to ask for, and whether there is a structure of the size; null where only solvers say. */
 type Sizes = readonly (readonly [points: number, satisfiable: boolean | null])[];

@@ -18,9 +18,9 @@ export function solveNatively(file: string): NativeAnswer {
 }
 
 /** CPU time (user and system) in milliseconds of one run, the mean over so many, as the shell's `time` tells it. */
-export function timeNatively(file: string, runs: number): number {
-  const script = `TIMEFORMAT='%3U %3S'; time for run in $(seq ${runs}); do minisat -verb=0 "$0" >/dev/null; done`;
-  const out = execFileSync("bash", ["-c", `{ ${script}; } 2>&1 >/dev/null; true`, file], {
+export function timeNatively(file: string, runs: number, option = "-verb=0"): number {
+  const script = `TIMEFORMAT='%3U %3S'; time for run in $(seq ${runs}); do minisat -verb=0 "$1" "$0" >/dev/null; done`;
+  const out = execFileSync("bash", ["-c", `{ ${script}; } 2>&1 >/dev/null; true`, file, option], {
     encoding: "utf8",
   });
   const [user, system] = out.trim().split(/\s+/).slice(-2).map(Number);

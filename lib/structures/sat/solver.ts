@@ -7,8 +7,8 @@ import { propagate } from "./propagate.ts";
 import { reduce } from "./reduce.ts";
 import { Restarts } from "./restarts.ts";
 
-/** The bound on literals in clauses that is taken when none is given. */
-export const DEFAULT_MOST_LITERALS = 60_000_000;
+/** The bound on literals in clauses that is taken when none is given: about a gigabyte of clauses and watches. */
+export const DEFAULT_MOST_LITERALS = 30_000_000;
 
 /** Learned clauses are first reduced after as many conflicts … */
 const FIRST_REDUCTION = 1000;

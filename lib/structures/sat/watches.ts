@@ -60,8 +60,10 @@ export class WatchLists {
     const before = heads[head + ROOM_WORD]!;
     const room = before === 0 ? 4 : before * 2;
     if (this.#used + room > this.pool.length) this.#repack(room);
+    const { pool } = this;
     const from = heads[head]!;
-    this.pool.copyWithin(this.#used, from, from + heads[head + SIZE_WORD]!);
+    const size = heads[head + SIZE_WORD]!;
+    for (let word = 0; word < size; word += 1) pool[this.#used + word] = pool[from + word]!;
     heads[head] = this.#used;
     heads[head + ROOM_WORD] = room;
     this.#used += room;
@@ -70,15 +72,18 @@ export class WatchLists {
 
   /** Packs all lists, in the order of literals, into a pool that has `extra` words to spare. */
   #repack(extra: number): void {
-    const { heads } = this;
+    const { heads, pool } = this;
     const needed = this.#live + extra;
-    const fresh = new Int32Array(Math.max(this.pool.length, needed * 2));
+    const fresh = new Int32Array(Math.max(pool.length, needed * 3));
     let to = 0;
     for (let head = 0; head < heads.length; head += WATCHES) {
+      const room = heads[head + ROOM_WORD]!;
+      if (room === 0) continue;
       const from = heads[head]!;
-      fresh.set(this.pool.subarray(from, from + heads[head + SIZE_WORD]!), to);
+      const size = heads[head + SIZE_WORD]!;
+      for (let word = 0; word < size; word += 1) fresh[to + word] = pool[from + word]!;
       heads[head] = to;
-      to += heads[head + ROOM_WORD]!;
+      to += room;
     }
     this.pool = fresh;
     this.#used = to;
