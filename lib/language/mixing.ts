@@ -39,7 +39,15 @@ function formulasIn(statement: StatementBody): readonly Formula[] {
     case "dualise":
     case "independence":
     case "models":
+    case "count":
       return sentencesOf(statement.theory.theory);
+    case "normalise":
+      return [statement.subject.formula];
+    case "write":
+      return [
+        ...sentencesOf(statement.theory.theory),
+        ...(statement.conclusion === null ? [] : [statement.conclusion.formula]),
+      ];
   }
 }
 
