@@ -9,6 +9,7 @@ import {
   type Variable,
   verum,
 } from "../logic/formula.ts";
+import { readArguments } from "./arguments.ts";
 import type { Place } from "./diagnostics.ts";
 import { readAxiomOf } from "./labels.ts";
 import { readRun, type Token } from "./lexer.ts";
@@ -122,74 +123,9 @@ export class AtomReader {
     return substitute(body, new Map(parameters.map((parameter, index) => [parameter, args[index]!])));
   }
 
-  /**
-   * Reads `(x, y, …)`.
-   * @returns null when an argument is no variable, which has been reported
-   */
+  /** Reads `(x, y, …)`; null when an argument is no variable, which has been reported. */
   #arguments(name: Token): readonly Variable[] | null {
-    const reader = this.#reader;
-    const mark = reader.mark;
-    const open = reader.next();
-    const args: Variable[] = [];
-    let sound = true;
-    return reader.withLines(false, () => {
-      if (reader.accept("close") !== null) return args;
-      for (;;) {
-        const token = reader.peek();
-        if (token.kind === "word" && isVariable(token.text)) {
-          this.#use(token.text, token);
-          args.push(token.text);
-          reader.next();
-        } else {
-          sound = false;
-          this.#reportArgument(token, name, open);
-          if (reader.skipGroup(mark, "comma")) return null;
-          if (!reader.at("comma")) throw new Unreadable(false);
-        }
-        if (reader.accept("close") !== null) return sound ? args : null;
-        if (reader.accept("comma") !== null) continue;
-        const found = reader.peek();
-        if (found.kind === "word" && isVariable(found.text)) {
-          sound = false;
-          reader.report(
-            "unexpected",
-            found,
-            `expected \`,\` or \`)\`, found ${quote(found.text)}`,
-            "put a `,` between arguments",
-          );
-          continue;
-        }
-        try {
-          this.#reader.close(open, "`,` or `)`");
-        } catch (error) {
-          if (!(error instanceof Unreadable)) throw error;
-          sound = false;
-          if (reader.skipGroup(mark, "comma")) return null;
-          if (reader.accept("comma") === null) throw error;
-        }
-      }
-    });
-  }
-
-  #reportArgument(token: Token, name: Token, open: Token): void {
-    const reader = this.#reader;
-    try {
-      if (token.kind === "end" || token.kind === "close-brace" || token.kind === "semicolon")
-        this.#reader.close(open, "a variable");
-      const run = token.kind === "word" ? readRun(reader.source, token, 0).segments : [];
-      const isRun = run.length > 1 && run.at(-1)!.to === token.to;
-      if (isRun && !reader.names.has(token.text))
-        reader.failExpected(
-          `a variable as argument of ${quote(name.text)}`,
-          `write \`${run.map(({ text }) => text).join(", ")}\``,
-        );
-      reader.failExpected(
-        `a variable as argument of ${quote(name.text)}`,
-        token.kind === "word" ? "variables are single lower-case letters with digits or primes" : null,
-      );
-    } catch (error) {
-      if (!(error instanceof Unreadable)) throw error;
-    }
+    return readArguments(this.#reader, name.text, this.#use);
   }
 
   /** `Rxy`: a relation with a one-letter name and as many variables as it has places. */

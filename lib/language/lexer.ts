@@ -46,8 +46,9 @@ const signKinds = new Map<string, SignKind>();
 /** Spellings that are words: kind by text. */
 const wordKinds = new Map<string, SignKind>();
 for (const sign of signs) {
+  // `o` is a variable as well: only the reader of terms can tell.
   for (const spelling of [sign.symbol, ...sign.ascii])
-    (/^\p{L}/u.test(spelling) ? wordKinds : signKinds).set(spelling, sign.kind);
+    if (spelling !== "o") (/^\p{L}/u.test(spelling) ? wordKinds : signKinds).set(spelling, sign.kind);
   for (const command of sign.latex) signKinds.set(command, sign.kind);
 }
 const relationCommands = new Map(

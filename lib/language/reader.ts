@@ -66,6 +66,7 @@ export class Reader {
   #unknownSeen = -1;
   #lineEnd: Token | null = null;
   #parts = 0;
+  #closers: ReadonlyMap<number, number> | null = null;
 
   constructor(source: string, names: Names) {
     this.source = source;
@@ -87,6 +88,13 @@ export class Reader {
   /** The token after so many others, whatever line it is on. */
   peekAfter(count: number): Token {
     return this.#tokens[Math.min(this.#index + count, this.#tokens.length - 1)]!;
+  }
+
+  /** The token after the bracket that closes the next token, which opens one; null if none closes it. */
+  afterGroup(): Token | null {
+    this.#closers ??= matchBrackets(this.#tokens);
+    const close = this.#closers.get(this.#index);
+    return close === undefined ? null : this.#tokens[close + 1]!;
   }
 
   /** The last token that was read. */
@@ -409,6 +417,24 @@ export class Reader {
   }
 }
 
+/** For each bracket that opens, by the number of its token, the one that closes it. */
+function matchBrackets(tokens: readonly Token[]): ReadonlyMap<number, number> {
+  const closers = new Map<number, number>();
+  const open: number[] = [];
+  tokens.forEach(({ kind }, index) => {
+    if (kind === "open" || kind === "open-brace") open.push(index);
+    else if (kind === "close" && tokens[open.at(-1) ?? 0]!.kind === "open") closers.set(open.pop()!, index);
+    else if (kind === "close-brace") {
+      // Brackets that were left open inside the braces end with them.
+      const brace = open.findLastIndex((at) => tokens[at]!.kind === "open-brace");
+      if (brace < 0) return;
+      closers.set(open[brace]!, index);
+      open.length = brace;
+    }
+  });
+  return closers;
+}
+
 function withoutComments(text: string): string {
   if (!text.includes("#")) return text;
   return text
@@ -437,7 +463,7 @@ export function continuesLine(token: Token): boolean {
       return true;
     default: {
       const { role } = signOf(token.kind);
-      return role !== "bracket" && role !== "constant" && token.kind !== "semicolon";
+      return !["bracket", "constant", "postfix"].includes(role) && token.kind !== "semicolon";
     }
   }
 }
@@ -451,7 +477,7 @@ export function describeToken(token: Token): string {
 
 /** What to do about a sign that is not known: write one of ours, or declare it. */
 export function hintFor(token: Token): string | null {
-  if (keptSymbols.has(token.text)) return "it is kept for relation terms, which this version does not have";
+  if (keptSymbols.has(token.text)) return "the converse of a relation is written `R⁻¹` or `inv(R)`";
   const sign = mistakenSigns.get(token.text);
   const isDeclarable = token.kind === "relation-sign" && (sign === undefined || !/^[ -~]*$/.test(token.text));
   const declaration = isDeclarable ? `declare it: \`relation ${token.text} infix\`` : null;

@@ -28,7 +28,13 @@ export type SignKind =
   | "open-brace"
   | "close-brace"
   | "plus"
-  | "minus";
+  | "minus"
+  | "inverse"
+  | "complement"
+  | "composition"
+  | "intersection"
+  | "union"
+  | "included";
 
 export type SignRole =
   | "quantifier"
@@ -38,6 +44,8 @@ export type SignRole =
   | "entailment"
   | "operator"
   | "separator"
+  | "term"
+  | "postfix"
   | "bracket";
 
 export interface Sign {
@@ -235,6 +243,56 @@ export const signs: readonly Sign[] = [
     meaning:
       "A theory without the axiom of that label; spaces around the sign, since names may have hyphens.",
   },
+  {
+    kind: "inverse",
+    symbol: "⁻¹",
+    ascii: ["inv", "^-1"],
+    latex: ["^{-1}"],
+    role: "postfix",
+    meaning: "The converse of a relation: `R⁻¹`, or `inv(R)`, relates x to y where R relates y to x.",
+  },
+  {
+    kind: "complement",
+    symbol: "∁",
+    ascii: ["co"],
+    latex: ["\\complement"],
+    role: "term",
+    meaning:
+      "The complement of a relation: `∁R`, or `co(R)`, holds where R does not. Binds like ⁻¹, less tightly.",
+  },
+  {
+    kind: "composition",
+    symbol: "∘",
+    ascii: ["o"],
+    latex: ["\\circ"],
+    role: "term",
+    meaning: "Composition: `R ∘ S` relates x to y by way of some z, Rxz and Szy. Binds more tightly than ∩.",
+  },
+  {
+    kind: "intersection",
+    symbol: "∩",
+    ascii: ["cap"],
+    latex: ["\\cap"],
+    role: "term",
+    meaning: "The intersection of two relations: both hold. Binds more tightly than ∪.",
+  },
+  {
+    kind: "union",
+    symbol: "∪",
+    ascii: ["cup"],
+    latex: ["\\cup"],
+    role: "term",
+    meaning: "The union of two relations: one of them holds.",
+  },
+  {
+    kind: "included",
+    symbol: "⊆",
+    ascii: ["sub"],
+    latex: ["\\subseteq"],
+    role: "comparison",
+    meaning:
+      "Inclusion of relations: `R ⊆ S` says that S holds wherever R does; `R = S` that both hold alike.",
+  },
 ];
 
 const byKind = new Map(signs.map((sign) => [sign.kind, sign]));
@@ -290,8 +348,8 @@ export const relationSigns: readonly RelationSign[] = [
   { symbol: "⊣", latex: ["\\dashv"] },
 ];
 
-/** Symbols that later versions need for relation terms; they cannot be declared. */
-export const keptSymbols: ReadonlySet<string> = new Set(["∁", "∘", "∪", "∩", "⊆", "⁻"]);
+/** Symbols that would be mistaken for parts of a sign; they cannot be declared. */
+export const keptSymbols: ReadonlySet<string> = new Set(["⁻"]);
 
 /** What people write for a sign of ours, and the sign; for suggestions only. */
 export const mistakenSigns: ReadonlyMap<string, string> = new Map([
@@ -323,8 +381,11 @@ export const mistakenSigns: ReadonlyMap<string, string> = new Map([
   ["×", "(1,2), the pairs themselves"],
 ]);
 
-/** Signs of several ASCII characters that are read as one, longest first. */
+/** Signs of several characters that are read as one, longest first. */
 export const clusters: readonly string[] = [
+  "^{-1}",
+  "^-1",
+  "⁻¹",
   "<->",
   "<=>",
   "->",
@@ -354,7 +415,11 @@ export const keywords: readonly Keyword[] = [
   { word: "place", meaning: "`relation P of 1 place`: how many arguments the relation has." },
   { word: "places", meaning: "`relation Between of 3 places`: how many arguments the relation has." },
   { word: "size", meaning: "`models T of size 4`: how many points the models have." },
-  { word: "points", meaning: "`points 3 where R is { (1,2) }`: the structure whose points are 1, 2 and 3." },
+  {
+    word: "points",
+    meaning:
+      "`points 3 where R is { (1,2) }`: the structure whose points are 1, 2 and 3; `at-most 3 points`.",
+  },
   { word: "where", meaning: "`points 3 where R is { (1,2) }`: says which tuples the relations hold of." },
   { word: "is", meaning: "`claim T is consistent`; `where R is { (1,2) }`." },
   { word: "has", meaning: "`claim T has no finite model`." },
@@ -379,6 +444,13 @@ export const keywords: readonly Keyword[] = [
   },
   { word: "form", meaning: "`normalise φ to prenex form`." },
   { word: "as", meaning: "`write T as SMT-LIB`." },
+  {
+    word: "id",
+    meaning: "The identity relation, in relation terms: it relates every element to itself alone.",
+  },
+  { word: "full", meaning: "The relation, in relation terms, that relates every element to every element." },
+  { word: "none", meaning: "The relation, in relation terms, that relates no elements." },
+  { word: "point", meaning: "`exactly 1 point`: how many elements there are." },
   { word: "iff", meaning: "Kept for structures on infinite domains." },
 ];
 

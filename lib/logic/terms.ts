@@ -61,3 +61,28 @@ export function termFormula(term: RelationTerm, x: Variable, y: Variable): Formu
       return falsum;
   }
 }
+
+/** The term that relates elements joined by at least one and at most `count` steps of the given one. */
+export function withinSteps(step: RelationTerm, count: number): RelationTerm {
+  let term = step;
+  for (let steps = 2; steps <= count; steps += 1)
+    term = { kind: "union", left: step, right: { kind: "composition", left: step, right: term } };
+  return term;
+}
+
+/** The formulas in a term, a relation counting as none. */
+export function formulasIn(term: RelationTerm): readonly Formula[] {
+  switch (term.kind) {
+    case "formula":
+      return [term.body];
+    case "converse":
+    case "complement":
+      return formulasIn(term.of);
+    case "composition":
+    case "union":
+    case "intersection":
+      return [...formulasIn(term.left), ...formulasIn(term.right)];
+    default:
+      return [];
+  }
+}
