@@ -47,10 +47,10 @@ export interface DefinedRelation extends RelationSymbol {
     /** What the relation stands for. */
     readonly body: TermFormula;
     /**
-     * What the clauses say: `implies`, the relation implies the body (enough where it occurs positively);
-     * `implied`, the body implies the relation; `both`.
+     * What is said of the relation: that it implies the body, which is enough where it stands for a part that occurs
+     * positively (Plaisted & Greenbaum 1986), or `both`: that they are equivalent (Tseitin 1968).
      */
-    readonly direction: "implies" | "implied" | "both";
+    readonly direction: "implies" | "both";
   };
 }
 
@@ -100,8 +100,8 @@ export interface Clause {
 /** A conjunction of clauses. Variables of different clauses have nothing to do with each other. */
 export interface ClauseSet {
   readonly clauses: readonly Clause[];
-  /** The function symbols that occur: parameters, then Skolem functions in the order they came in. */
+  /** Parameters, then Skolem functions in the order they came in; one may have dropped out of the clauses again. */
   readonly functions: readonly FunctionSymbol[];
-  /** The relations that were added; none in the plain form. */
+  /** The relations that were added, in the order they came in; none in the plain form. */
   readonly definitions: readonly DefinedRelation[];
 }

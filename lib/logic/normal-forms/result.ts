@@ -34,6 +34,8 @@ export type NormalFormValue =
 export interface NormalFormStep {
   /** What was done, for people, as a short noun phrase: "implication removed". */
   readonly done: string;
+  /** How many times in a row; at least 1. */
+  readonly times: number;
   /** What holds between the value before and the value after. */
   readonly keeps: Preservation;
   readonly value: NormalFormValue;
@@ -48,16 +50,44 @@ export interface NormalForm<Value extends NormalFormValue = NormalFormValue> {
   readonly steps: readonly NormalFormStep[];
 }
 
-/** A form that was not made, since it would have more parts than allowed. */
+/** A form that was not made, since it would be too large. */
 export interface Refusal {
   readonly outcome: "refused";
-  readonly code: "form-too-large";
+  readonly code: "form-too-large" | "form-too-deep";
   /** For people, with the numbers. */
   readonly message: string;
-  /** How many parts (subformulas, or literals of clauses) were allowed. */
+  /** What was allowed: {@link Limits.parts} or {@link Limits.levels}. */
   readonly limit: number;
   /** A form of the same formula that stays small; null when there is none. */
   readonly suggestion: NormalFormName | null;
+}
+
+/** What a form may come to before it is refused. */
+export interface Limits {
+  /** Subformulas of a formula, repeated ones counted each time; literals of all clauses together. */
+  readonly parts: number;
+  /** Connectives and quantifiers one inside another. */
+  readonly levels: number;
+}
+
+/** Every recursive function in lib is safe with so many levels. */
+export const DEFAULT_LIMITS: Limits = { parts: 50_000, levels: 1000 };
+
+/** Thrown where a form is being made and gets too large; {@link normalise} makes a {@link Refusal} of it. */
+export class FormTooLarge extends Error {
+  readonly bound: keyof Limits;
+  readonly limit: number;
+
+  constructor(bound: keyof Limits, limit: number) {
+    super(`more than ${limit} ${bound}`);
+    this.bound = bound;
+    this.limit = limit;
+  }
+}
+
+/** What two steps keep together. */
+export function weaker(left: Preservation, right: Preservation): Preservation {
+  return left === "equivalent" ? right : left;
 }
 
 export type NormalFormResult<Value extends NormalFormValue = NormalFormValue> = NormalForm<Value> | Refusal;
