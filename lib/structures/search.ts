@@ -33,10 +33,18 @@ export interface Layout {
 
 /**
  * Lays a task out as clauses.
- * @param bothWays whether every auxiliary variable is to be a function of the table, which counting needs
+ * @param bothWays whether every auxiliary variable of the sentences is to be a function of the table
+ * @param upToIsomorphism whether symmetric copies are to be cut off; at least one of each class of isomorphic
+ *   structures stays
  * @throws WorkEnded when the meter's budget ends, the user interrupts or memory runs out
  */
-export function layOut(task: SearchTask, sink: ClauseSink, meter: Meter, bothWays = false): Layout {
+export function layOut(
+  task: SearchTask,
+  sink: ClauseSink,
+  meter: Meter,
+  bothWays = false,
+  upToIsomorphism = true,
+): Layout {
   const circuit = new Circuit(meter);
   const tables = unknownTables(task.carrier, task.relations, circuit, meter);
   const clausifier = new Clausifier(circuit, sink, meter, bothWays);
@@ -51,7 +59,8 @@ export function layOut(task: SearchTask, sink: ClauseSink, meter: Meter, bothWay
       return { variables, contradictory: true };
     }
   }
-  breakSymmetry(task.carrier, task.relations, (relation, kind) => variables[relation]![kind]!, sink, meter);
+  if (upToIsomorphism)
+    breakSymmetry(task.carrier, task.relations, (relation, kind) => variables[relation]![kind]!, sink, meter);
   return { variables, contradictory: false };
 }
 
