@@ -37,6 +37,8 @@ export interface PictureBlock {
 export interface GalleryBlock {
   readonly kind: "gallery";
   readonly pictures: readonly (PictureBlock & { readonly label: string })[];
+  /** What a reader of the pictures must know; empty where it stands below another row. */
+  readonly caption: string;
 }
 
 export type Block =

@@ -1,12 +1,9 @@
 /** Counts of models: a table of sizes, and one model of each class where they were asked for. */
 import type { CountAnswer, CountedSize } from "../../lib/inquiry/answer.ts";
-import { type Block, line, note } from "./blocks.ts";
-import { numberedStructures } from "./galleries.ts";
+import { type Block, note } from "./blocks.ts";
+import { structureRows } from "./galleries.ts";
 import { endText, finishedSizes } from "./summaries.ts";
 import { counted, grouped } from "./text.ts";
-
-/** Representatives that stand open; sizes beyond are folded. */
-const OPEN_REPRESENTATIVES = 24;
 
 export function countBlocks(answer: CountAnswer, budget: number): readonly Block[] {
   const { sizes, ended, endedAt } = answer;
@@ -32,17 +29,16 @@ export function countBlocks(answer: CountAnswer, budget: number): readonly Block
     const finished = sizes.length === 0 ? "No size was finished" : `Finished: ${finishedSizes(sizes)}`;
     blocks.push(note(`${finished}; ${endText(ended, budget, endedAt)}.`));
   }
-  let shown = 0;
-  for (const counting of sizes) {
-    if (counting.representatives.length === 0) continue;
-    const group: Block = {
-      kind: "group",
-      blocks: [line(titleOf(counting)), ...numberedStructures("model", counting.representatives)],
-    };
-    shown += counting.representatives.length;
-    if (shown <= OPEN_REPRESENTATIVES || shown === counting.representatives.length) blocks.push(group);
-    else blocks.push({ kind: "fold", title: titleOf(counting), blocks: group.blocks.slice(1) });
-  }
+  const rows = sizes.map((counting) => ({
+    title: titleOf(counting),
+    structures: counting.representatives,
+  }));
+  blocks.push(
+    ...structureRows(
+      "model",
+      rows.filter(({ structures }) => structures.length > 0),
+    ),
+  );
   return blocks;
 }
 

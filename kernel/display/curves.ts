@@ -14,17 +14,19 @@ export function chord(from: Place, to: Place, bend: number): Spline {
   return [from, at(1 / 3), at(2 / 3), to];
 }
 
-/** A loop on the side of a point that faces `angle`; further loops at the same point lie around it. */
+/**
+ * A loop on the side of a point that faces `angle`.
+ * @param spread half the angle between its two ends, seen from the middle of the point
+ */
 export function loopArc(
   place: Place,
   extent: Extent,
   angle: number,
   stroke: number,
   head: boolean,
-  nested: number,
+  spread = LOOP_SPREAD,
 ): Arc {
-  const reach = 26 + 19 * nested;
-  const spread = 0.55 + 0.3 * nested;
+  const reach = 26;
   const at = (turn: number, x: number, y: number): Place => ({
     x: place.x + Math.cos(angle + turn) * x,
     y: place.y + Math.sin(angle + turn) * y,
@@ -41,4 +43,32 @@ export function loopArc(
     headAtEnd: head,
     headAtStart: false,
   };
+}
+
+const LOOP_SPREAD = 0.55;
+
+/**
+ * Loops side by side on the side of a point that faces `angle`, one for each stroke.
+ * @param heads for each stroke, whether the loop has a head
+ */
+export function loopArcs(
+  place: Place,
+  extent: Extent,
+  angle: number,
+  strokes: readonly number[],
+  heads: (stroke: number) => boolean,
+): readonly Arc[] {
+  // Beyond this sector lines to neighbours on a circle begin.
+  const between = Math.min(1, 2.7 / strokes.length);
+  const spread = strokes.length === 1 ? LOOP_SPREAD : between * 0.36;
+  return strokes.map((stroke, index) =>
+    loopArc(
+      place,
+      extent,
+      angle + (index - (strokes.length - 1) / 2) * between,
+      stroke,
+      heads(stroke),
+      spread,
+    ),
+  );
 }

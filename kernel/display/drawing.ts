@@ -15,7 +15,7 @@ export const DRAWN_POINTS = 20;
 
 /** Up to this many points every relation is drawn; beyond, only those with few enough lines to be followed. */
 const ALWAYS_DRAWN_POINTS = 12;
-const FOLLOWED_LINES = 100;
+const FOLLOWED_LINES = 80;
 
 /** Tuples that the alternative text lists for a relation. */
 const TOLD_TUPLES = 60;

@@ -112,14 +112,21 @@ function layOutComponent(
     return places;
   };
   const isRoomy = (places: ReadonlyMap<number, Place>) => {
-    const all = [...places.values()];
-    return all.every((a, i) =>
-      all.every((b, j) => i >= j || Math.hypot(a.x - b.x, a.y - b.y) >= widest + 16),
-    );
+    const all = [...places];
+    return all.every(([point, a], i) => {
+      const arrivals = children(point).map((child) => {
+        const { x, y } = places.get(child)!;
+        return Math.atan2(y - a.y, x - a.x);
+      });
+      return (
+        all.every(([, b], j) => i >= j || Math.hypot(a.x - b.x, a.y - b.y) >= widest + 16) &&
+        areApart(arrivals)
+      );
+    });
   };
   let step = widest + 26;
   let places = attempt(step);
-  for (let round = 0; round < 40 && !isRoomy(places); round += 1) {
+  for (let round = 0; round < 12 && !isRoomy(places); round += 1) {
     step += 12;
     places = attempt(step);
   }
@@ -133,4 +140,11 @@ function layOutComponent(
   const right = Math.max(...boxes.map(([, , value]) => value));
   const bottom = Math.max(...boxes.map(([, , , value]) => value));
   return { places, left, top, width: right - left, height: bottom - top };
+}
+
+/** Whether lines that arrive from these directions have room for their heads. */
+function areApart(angles: readonly number[]): boolean {
+  return angles.every((a, i) =>
+    angles.every((b, j) => i >= j || Math.abs(Math.atan2(Math.sin(a - b), Math.cos(a - b))) >= 0.42),
+  );
 }

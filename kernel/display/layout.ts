@@ -35,12 +35,14 @@ const POINTS_PER_INCH = 72;
 /**
  * Layers bottom to top, every arc going upwards.
  * @param arcs pairs counted from 0 that form no cycle but loops
+ * @param ends lines with heads get more room
  * @returns places of the points and the arcs' curves in the order given, y growing downwards
  * @throws Error when {@link prepareLayout} has not been awaited
  */
 export function layOutLayers(
   extents: readonly Extent[],
   arcs: readonly (readonly [number, number])[],
+  ends: "bare" | "heads" = "bare",
 ): { readonly places: readonly Place[]; readonly curves: readonly Spline[] } {
   if (graphviz === null) throw new Error("prepareDrawing has not been awaited");
   const nodes = extents.map(
@@ -49,7 +51,7 @@ export function layOutLayers(
   );
   const edges = arcs.map(([from, to]) => `n${from}->n${to};`);
   const drawn = graphviz.renderJSON(
-    `digraph{rankdir=BT;nodesep=0.35;ranksep=0.36;node[fixedsize=true,label=""];edge[dir=none];${nodes.join("")}${edges.join("")}}`,
+    `digraph{rankdir=BT;${ends === "bare" ? "nodesep=0.35;ranksep=0.36;" : "nodesep=0.45;ranksep=0.5;"}node[fixedsize=true,label=""];edge[dir=none];${nodes.join("")}${edges.join("")}}`,
     { engine: "dot" },
   ) as {
     bb: string;
@@ -74,16 +76,20 @@ export function layOutLayers(
   return { places, curves: arcs.map(([from, to]) => curves.get(`${from},${to}`)!) };
 }
 
+/** Lines at one point that need no more room than its outline gives. */
+const EASY_LINES = 4;
+
 /**
  * Points clockwise on a circle, the first on top; one point stands in the middle.
  * @param relations how many of them may hold between the same two points
+ * @param lines how many lines end at one point at most
  */
-export function layOutCircle(extents: readonly Extent[], relations: number): readonly Place[] {
+export function layOutCircle(extents: readonly Extent[], relations: number, lines: number): readonly Place[] {
   const count = extents.length;
   if (count === 1) return [{ x: 0, y: 0 }];
   const widest = Math.max(...extents.map(({ width }) => width));
   // Lines that are bent apart need room between neighbours.
-  const gap = 26 + 24 * (relations - 1);
+  const gap = 26 + 24 * (relations - 1) + 7 * Math.max(0, lines - EASY_LINES);
   const radius = Math.max(44, (count * (widest + gap)) / (2 * Math.PI));
   if (count === 2)
     return [

@@ -96,3 +96,14 @@ export function classesOf(preorder: Matrix): {
   const order = classes.map(([i]) => classes.map(([j]) => preorder[i!]![j!]!));
   return { classes, order };
 }
+
+/**
+ * The differences y − x modulo the number of points on which the relation depends alone, in order; null when it
+ * depends on more.
+ */
+export function differencesOf(relation: Matrix): readonly number[] | null {
+  const size = relation.length;
+  const first = relation[0]!;
+  const depends = relation.every((row, x) => row.every((holds, y) => holds === first[(y - x + size) % size]));
+  return depends ? first.flatMap((holds, difference) => (holds ? [difference] : [])) : null;
+}

@@ -3,11 +3,14 @@ import { Points } from "../../lib/carriers/points.ts";
 import { type Structure, tuplesOf } from "../../lib/carriers/structure.ts";
 import { type Block, code, line, type TableBlock } from "./blocks.ts";
 import { drawStructure } from "./drawing.ts";
-import { matrixOf } from "./order.ts";
+import { differencesOf, matrixOf } from "./order.ts";
 import { counted } from "./text.ts";
 
 /** Structures with more points get lists of tuples instead of tables of 0 and 1. */
-const TABLE_POINTS = 16;
+const TABLE_POINTS = 20;
+
+/** From this many points on it is said when a relation depends on differences alone. */
+const ROTATION_POINTS = 5;
 
 /** Relations with more tuples are given by their number. */
 const LISTED_TUPLES = 400;
@@ -43,7 +46,7 @@ export function structureBlocks(role: string, structure: Structure): readonly Bl
   const isShort = source !== null && source.length <= SHORT_SOURCE;
   const first = isShort ? line(`${role}: `, code(source)) : line(`${role}: ${sizeOf(structure)}`);
   const views: Block[] = [];
-  const lists: Block[] = [];
+  const lists: Block[] = rotationLines(structure);
   for (const { relation, holds } of structure.tables.values()) {
     if (relation.places === 2 && pointsOf(structure).size <= TABLE_POINTS)
       views.push(matrixTable(structure, relation.name));
@@ -60,6 +63,19 @@ export function structureBlocks(role: string, structure: Structure): readonly Bl
   if (source !== null && !isShort)
     blocks.push({ kind: "fold", title: "as cell text", blocks: [{ kind: "source", text: source }] });
   return [{ kind: "group", blocks }];
+}
+
+/** Relations that look the same from every point of a round: on many points that says more than their pairs. */
+function rotationLines(structure: Structure): Block[] {
+  const { size } = pointsOf(structure);
+  if (size < ROTATION_POINTS) return [];
+  return [...structure.tables.values()].flatMap(({ relation }) => {
+    if (relation.places !== 2) return [];
+    const differences = differencesOf(matrixOf(size, tuplesOf(structure, relation.name)));
+    if (differences === null || differences.length === 0 || differences.length === size) return [];
+    const list = differences.length === 1 ? `is ${differences[0]}` : `is one of ${differences.join(", ")}`;
+    return [line(`${relation.name} holds of (x, y) exactly when y − x modulo ${size} ${list}`)];
+  });
 }
 
 /** Rows for the first place, columns for the second; 1 where the relation holds. */

@@ -1,5 +1,5 @@
 /** Ways to draw one two-place relation, each for relations of some kind, and the words that explain a picture. */
-import { chord, loopArc } from "./curves.ts";
+import { chord, loopArc, loopArcs } from "./curves.ts";
 import { type Extent, type Frame, layOutCircle, layOutGroups, layOutLayers, type Place } from "./layout.ts";
 import { layOutFunctional } from "./layout-functional.ts";
 import {
@@ -88,10 +88,11 @@ export const styles: readonly Style[] = [
   },
   {
     name: "upward",
-    fits: isAcyclic,
+    // More heads at one point lie on each other when all of them come from below.
+    fits: (relation) => isAcyclic(relation) && mostPredecessors(relation) <= 3,
     plan(relation, labels) {
       const extents = labels.map(extentOf);
-      const { places, curves } = layOutLayers(extents, pairsOf(relation));
+      const { places, curves } = layOutLayers(extents, pairsOf(relation), "heads");
       const arcs = curves.map((curve): Arc => ({ curve, stroke: 0, headAtEnd: true, headAtStart: false }));
       return { points: pointsAt(places, extents, labels), arcs, frames: [] };
     },
@@ -107,7 +108,7 @@ export const styles: readonly Style[] = [
       const places = layOutFunctional(extents, next);
       const arcs = linesBetween([relation], places, extents, [false]);
       places.forEach((place, i) => {
-        if (relation[i]![i]) arcs.push(loopArc(place, extents[i]!, Math.PI / 2, 0, true, 0));
+        if (relation[i]![i]) arcs.push(loopArc(place, extents[i]!, Math.PI / 2, 0, true));
       });
       return { points: pointsAt(places, extents, labels), arcs, frames: [] };
     },
@@ -132,16 +133,12 @@ export function planCircle(
   bare: readonly boolean[],
 ): Plan {
   const extents = labels.map(extentOf);
-  const places = layOutCircle(extents, relations.length);
+  const places = layOutCircle(extents, relations.length, Math.max(...relations.map(mostLines)));
   const arcs = linesBetween(relations, places, extents, bare);
   places.forEach((place, i) => {
-    let nested = 0;
-    relations.forEach((relation, stroke) => {
-      if (!relation[i]![i]) return;
-      const outward = places.length === 1 ? -Math.PI / 2 : Math.atan2(place.y, place.x);
-      arcs.push(loopArc(place, extents[i]!, outward, stroke, !bare[stroke], nested));
-      nested += 1;
-    });
+    const strokes = relations.flatMap((relation, stroke) => (relation[i]![i] ? [stroke] : []));
+    const outward = places.length === 1 ? -Math.PI / 2 : Math.atan2(place.y, place.x);
+    arcs.push(...loopArcs(place, extents[i]!, outward, strokes, (stroke) => !bare[stroke]));
   });
   return { points: pointsAt(places, extents, labels), arcs, frames: [] };
 }
@@ -199,6 +196,16 @@ function explainOrder(name: string, orders: readonly Matrix[], leavesOutLoops: b
 function explainArrows(name: string, relations: readonly Matrix[]): string {
   const arrow = `an arrow from x to y: ${name} holds of (x, y)`;
   return relations.some(hasPairBothWays) ? `${arrow}; heads at both ends: of (y, x) as well` : arrow;
+}
+
+function mostLines(relation: Matrix): number {
+  return Math.max(
+    ...relation.map((row, i) => row.filter((holds, j) => i !== j && (holds || relation[j]![i]!)).length),
+  );
+}
+
+function mostPredecessors(relation: Matrix): number {
+  return Math.max(...relation.map((_, j) => relation.filter((row, i) => i !== j && row[j]).length));
 }
 
 function hasPairBothWays(relation: Matrix): boolean {

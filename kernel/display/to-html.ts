@@ -65,13 +65,14 @@ function blockToHtml(block: Block): string {
       const caption = block.caption === "" ? "" : `<br><small>${escapeHtml(block.caption)}</small>`;
       return `<div style="margin:4px 0">${pictureToHtml(block)}${caption}</div>`;
     }
-    case "gallery":
-      return `<div style="margin:6px 0">${block.pictures
-        .map(
-          (picture) =>
-            `<div style="${TILE}">${pictureToHtml(picture)}<br><small>${escapeHtml(picture.label)}</small></div>`,
-        )
-        .join("")}</div>`;
+    case "gallery": {
+      const tiles = block.pictures.map(
+        (picture) =>
+          `<div style="${TILE}">${pictureToHtml(picture)}<br><small>${escapeHtml(picture.label)}</small></div>`,
+      );
+      const caption = block.caption === "" ? "" : `<div><small>${escapeHtml(block.caption)}</small></div>`;
+      return `<div style="margin:6px 0">${tiles.join("")}${caption}</div>`;
+    }
     case "beside":
       return `<div>${block.blocks
         .map((inner) => `<div style="${BESIDE}">${blockToHtml(inner)}</div>`)
