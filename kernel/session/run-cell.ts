@@ -12,11 +12,11 @@ import { type Spent, WorkEnded } from "../../lib/logic/meter.ts";
 import { showAnswer } from "../display/answers.ts";
 import { showProgress } from "../display/bundle.ts";
 import { dataOf } from "../display/data.ts";
-import { showDefinition, showDescription } from "../display/definitions.ts";
 import { showTrouble } from "../display/trouble.ts";
 import type { CellEvent, CellOutcome, MimeBundle, StatementResult } from "./evaluator.ts";
 import { storeResult } from "./metadata.ts";
-import { answerQuestion, isQuestion, type Question, wasInterrupted } from "./run-statement.ts";
+import { answerQuestion, isQuestion, type Question, type Watch, wasInterrupted } from "./run-statement.ts";
+import { type Telling, tell } from "./tell.ts";
 
 /** Time without a result after which progress is shown, and between two showings, in milliseconds. */
 const FIRST_PROGRESS_MS = 1000;
@@ -121,7 +121,14 @@ interface Shown {
 
 function runStatement(statement: Statement, memory: Memory, surroundings: Surroundings): Shown {
   const display = new Display(memory.nextDisplayId(), surroundings);
-  const shown = isQuestion(statement) ? ask(statement, display, surroundings) : tell(statement);
+  const watch: Watch = {
+    isInterrupted: (spent) => {
+      display.tick(spent);
+      return surroundings.isInterrupted();
+    },
+    report: (doing) => display.note(doing),
+  };
+  const shown = isQuestion(statement) ? ask(statement, watch) : show(statement, watch);
   memory.scope = scopeAfter(memory.scope, statement);
   const { result } = shown;
   if (statement.kind === "claim" || statement.kind === "conjecture")
@@ -136,15 +143,9 @@ function runStatement(statement: Statement, memory: Memory, surroundings: Surrou
   return shown;
 }
 
-/** Answers a question, showing progress while it works. */
-function ask(question: Question, display: Display, surroundings: Surroundings): Shown {
-  const answer = answerQuestion(question, {
-    isInterrupted: (spent) => {
-      display.tick(spent);
-      return surroundings.isInterrupted();
-    },
-    report: (doing) => display.note(doing),
-  });
+/** Answers a question. */
+function ask(question: Question, watch: Watch): Shown {
+  const answer = answerQuestion(question, watch);
   const { summary, data } = showAnswer(question, answer);
   const result = {
     statement: question.kind,
@@ -159,23 +160,22 @@ function ask(question: Question, display: Display, surroundings: Surroundings): 
   return { result, data, interrupted: wasInterrupted(answer) };
 }
 
-/** Shows what a statement defines, declares or describes. */
-function tell(statement: Exclude<Statement, Question>): Shown {
-  const { summary, data } =
-    statement.kind === "describe" ? showDescription(statement) : showDefinition(statement);
-  return { result: resultWithoutQuestion(statement, summary), data, interrupted: false };
-}
-
-function resultWithoutQuestion(statement: Exclude<Statement, Question>, summary: string): StatementResult {
+/** Shows what a statement that asks nothing brings about. */
+function show(statement: Telling, watch: Watch): Shown {
+  const { summary, data, result, interrupted } = tell(statement, watch);
   return {
-    statement: statement.kind,
-    text: statement.text,
-    verdict: null,
-    summary,
-    steps: 0,
-    data: dataOf(statement, null),
-    evidence: null,
-    diagnostics: [],
+    result: {
+      statement: statement.kind,
+      text: statement.text,
+      verdict: null,
+      summary,
+      steps: result.steps,
+      data: result.data,
+      evidence: result.evidence,
+      diagnostics: [],
+    },
+    data,
+    interrupted,
   };
 }
 

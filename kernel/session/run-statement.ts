@@ -14,6 +14,7 @@ import {
   askWeaker,
 } from "../../lib/inquiry/claims.ts";
 import { compareTheories } from "../../lib/inquiry/compare.ts";
+import { countModels } from "../../lib/inquiry/count.ts";
 import { askDuals } from "../../lib/inquiry/dualise.ts";
 import { askIndependence } from "../../lib/inquiry/independence.ts";
 import { findModels } from "../../lib/inquiry/models.ts";
@@ -57,6 +58,8 @@ export function answerQuestion(question: Question, watch: Watch): Answer {
       return askIndependence(question.theory.theory, work);
     case "models":
       return findModels(question.theory.theory, question.size, work);
+    case "count":
+      return countModels(question.theory.theory, question.representatives, work);
   }
 }
 
@@ -92,6 +95,7 @@ export function wasInterrupted(answer: Answer): boolean {
     case "check-finite":
       return answer.search.ended === "interrupted";
     case "models":
+    case "count":
       return answer.ended === "interrupted";
     case "independence":
       return answer.axioms.some((axiom) => axiom.search.ended === "interrupted");

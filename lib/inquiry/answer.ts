@@ -90,13 +90,13 @@ export interface ModelsAnswer extends AnswerBase {
   readonly ended: EndReason | null;
 }
 
-/** How many models a theory has on one size. */
+/** How many models a theory has on one size. A number that is there is exact; one that was not finished is null. */
 export interface CountedSize {
   readonly size: number;
   /** Models on the points 1 to n, as many as there are. */
-  readonly labelled: bigint;
+  readonly labelled: bigint | null;
   /** Classes of isomorphic models. */
-  readonly unlabelled: bigint;
+  readonly unlabelled: bigint | null;
   /** One model of each class, where they were asked for; at most as many as are shown. */
   readonly representatives: readonly Structure[];
 }
@@ -105,7 +105,7 @@ export interface CountedSize {
 export interface CountAnswer extends AnswerBase {
   readonly question: "count";
   readonly verdict: null;
-  /** The finished sizes, from 1 on. */
+  /** From 1 on; only the last one may have a number that was not finished. */
   readonly sizes: readonly CountedSize[];
   readonly ended: EndReason | null;
   /** The size that was being counted when the work ended; null when it did not end early. */

@@ -1,0 +1,140 @@
+/** Which named properties a theory has models with, and models without: what `describe` says besides the text. */
+
+import { Points } from "../carriers/points.ts";
+import type { Structure } from "../carriers/structure.ts";
+import type { Evidence } from "../evidence/format.ts";
+import { EvidenceWriter } from "../evidence/record.ts";
+import { type Formula, not, type RelationSymbol } from "../logic/formula.ts";
+import { type FiniteCheck, finiteCheckBound } from "../logic/fragments.ts";
+import { type Meter, WorkEnded } from "../logic/meter.ts";
+import { namedProperties, propertyOf } from "../logic/properties.ts";
+import { sentencesOf, type Theory } from "../logic/theory.ts";
+import { satisfies } from "../structures/evaluate.ts";
+import { enumerateStructures } from "../structures/search.ts";
+import { certify } from "./certify.ts";
+import { jointSignature, searchFinite } from "./finite-search.ts";
+import { meterFor, type Work } from "./work.ts";
+
+/** What a search for models of one kind came to. */
+export type ModelSearch =
+  /** A model was found, on so many points; there may be smaller ones. */
+  | { readonly kind: "found"; readonly size: number }
+  /**
+   * There is none on 1, …, this many points; 0 when not even one point was finished. Where a published bound says
+   * that larger ones need not be looked at, there is none at all, and `decided` has the bound.
+   */
+  | { readonly kind: "none"; readonly upTo: number; readonly decided: FiniteCheck | null };
+
+/** Models of a theory with a property, and models of it without. */
+export interface PropertyFinding {
+  /** The property as the cell language writes it of its relation: `transitive(R)`. */
+  readonly name: string;
+  readonly having: ModelSearch;
+  readonly lacking: ModelSearch;
+}
+
+export interface Findings {
+  /** In the order of the table of properties, relation by relation. */
+  readonly properties: readonly PropertyFinding[];
+  readonly steps: number;
+  /** Accepted by the checker; null when no model was found. */
+  readonly evidence: Evidence | null;
+  /** Whether the budget ended, or the user interrupted, before all properties were looked at. */
+  readonly endedEarly: boolean;
+  readonly interrupted: boolean;
+}
+
+/** Sizes on which some models are listed once and tried on every property. */
+const LISTED_SIZES = 3;
+/** Models that are listed of each of those sizes. */
+const LISTED_MODELS = 60;
+
+/**
+ * Looks for models with and without each named property of each two-place relation of the theory. Models that are
+ * known are tried before any search. Sizes go to `work.upTo`, or to the published bound where that is smaller.
+ */
+export function examineProperties(theory: Theory, work: Work): Findings {
+  const { relations } = jointSignature([theory]);
+  const meter = meterFor(work);
+  const examiner = new Examiner(theory, meter, work);
+  const properties: PropertyFinding[] = [];
+  let endedEarly = false;
+  try {
+    examiner.listModels();
+    for (const relation of relations.filter(({ places }) => places === 2))
+      for (const property of namedProperties) {
+        const sentence = propertyOf(property, relation);
+        const name = `${property.name}(${relation.name})`;
+        properties.push({ name, having: examiner.find(sentence), lacking: examiner.find(not(sentence)) });
+      }
+  } catch (problem) {
+    if (!(problem instanceof WorkEnded)) throw problem;
+    endedEarly = true;
+  }
+  const interrupted = meter.ended === "interrupted";
+  return { properties, steps: meter.steps, evidence: examiner.evidence(), endedEarly, interrupted };
+}
+
+class Examiner {
+  readonly #sentences: readonly Formula[];
+  readonly #relations: readonly RelationSymbol[];
+  readonly #theory: Theory;
+  readonly #meter: Meter;
+  readonly #work: Work;
+  /** Models of the theory, each with the sentences that it was found or tried to satisfy besides. */
+  readonly #models: { readonly structure: Structure; readonly shows: Formula[] }[] = [];
+
+  constructor(theory: Theory, meter: Meter, work: Work) {
+    this.#theory = theory;
+    this.#sentences = sentencesOf(theory);
+    this.#relations = jointSignature([theory]).relations;
+    this.#meter = meter;
+    this.#work = work;
+  }
+
+  /** Lists small models, for every property to be tried on. */
+  listModels(): void {
+    for (let size = 1; size <= LISTED_SIZES; size += 1) {
+      const task = { carrier: new Points(size), sentences: this.#sentences, relations: this.#relations };
+      let listed = 0;
+      enumerateStructures(task, this.#meter, (structure) => {
+        this.#models.push({ structure, shows: [] });
+        listed += 1;
+        return listed < LISTED_MODELS;
+      });
+    }
+  }
+
+  /** @throws WorkEnded */
+  find(sentence: Formula): ModelSearch {
+    for (const model of this.#models)
+      if (satisfies(model.structure, sentence, this.#meter)) {
+        model.shows.push(sentence);
+        return { kind: "found", size: model.structure.carrier.size! };
+      }
+    const sentences = [...this.#sentences, sentence];
+    const bound = finiteCheckBound(sentences);
+    const upTo = Math.min(this.#work.upTo, bound?.points ?? this.#work.upTo);
+    const signature = jointSignature([this.#theory], [sentence]);
+    const task = { sought: "a model", alternatives: [sentences], signature };
+    const { structure, search } = searchFinite(task, this.#meter, { ...this.#work, upTo });
+    if (structure !== null) {
+      this.#models.push({ structure, shows: [sentence] });
+      return { kind: "found", size: structure.carrier.size! };
+    }
+    if (this.#meter.ended !== null) throw new WorkEnded(this.#meter.ended);
+    const decided = bound !== null && search.noneUpTo >= bound.points ? bound : null;
+    return { kind: "none", upTo: search.noneUpTo, decided };
+  }
+
+  /** What the models show, each in one fact; checked. */
+  evidence(): Evidence | null {
+    const writer = new EvidenceWriter();
+    const axioms = writer.theory(this.#sentences);
+    const showing = this.#models.filter(({ shows }) => shows.length > 0);
+    for (const { structure, shows } of showing)
+      writer.addStructure(structure, [...this.#sentences, ...shows], null);
+    if (showing.length === 0) return null;
+    return certify(writer.finish({ ask: "models", axioms }, null), this.#work);
+  }
+}
