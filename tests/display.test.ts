@@ -1,12 +1,14 @@
 /** What is shown for answers and definitions, in all forms. */
 import fc from "fast-check";
+import { Marked } from "marked";
 import { beforeAll, describe, expect, it } from "vitest";
 import { showAnswer } from "../kernel/display/answers.ts";
-import { formulaOf, verdict } from "../kernel/display/blocks.ts";
+import { code } from "../kernel/display/blocks.ts";
 import { showInline, showProgress } from "../kernel/display/bundle.ts";
 import { dataOf } from "../kernel/display/data.ts";
 import { showDefinition, showDescription } from "../kernel/display/definitions.ts";
 import { prepareDrawing } from "../kernel/display/drawing.ts";
+import { inlineFormula, inlineNumber, inlineVerdict } from "../kernel/display/inline.ts";
 import { sourceOf, structureData } from "../kernel/display/structures.ts";
 import { buildStructure, type Structure } from "../lib/carriers/structure.ts";
 import { EVIDENCE_FORMAT, EVIDENCE_VERSION, type Evidence } from "../lib/evidence/format.ts";
@@ -279,6 +281,65 @@ const cases: readonly Case[] = [
     data: { size: 9, models: [], complete: false },
   },
   {
+    name: "count, to the end",
+    statement: stated("count", { theory: order, representatives: true }, { upTo: 2 }),
+    answer: {
+      question: "count",
+      verdict: null,
+      steps: 7,
+      evidence,
+      sizes: [
+        { size: 1, labelled: 1n, unlabelled: 1n, representatives: [structureOf(1, [R, []])] },
+        {
+          size: 2,
+          labelled: 3n,
+          unlabelled: 2n,
+          representatives: [structureOf(2, [R, []]), structureOf(2, [R, [[1, 2]]])],
+        },
+      ],
+      ended: null,
+      endedAt: null,
+    },
+    summary:
+      "3 labelled models on 2 points, 2 up to isomorphism; 1 to 2 points counted (computed, not certified)",
+    data: { labelled: { 1: 1, 2: 3 }, unlabelled: { 1: 1, 2: 2 } },
+  },
+  {
+    name: "count, the budget ended and a number is huge",
+    statement: stated("count", { theory: order, representatives: false }, { upTo: 9, within: 5000 }),
+    answer: {
+      question: "count",
+      verdict: null,
+      steps: 5000,
+      evidence: null,
+      // Not the numbers of any theory: only how they are shown matters here.
+      sizes: [
+        { size: 1, labelled: 2n, unlabelled: 2n, representatives: [] },
+        { size: 2, labelled: 2n ** 64n, unlabelled: null, representatives: [] },
+      ],
+      ended: "budget",
+      endedAt: 2,
+    },
+    summary:
+      "18,446,744,073,709,551,616 labelled models on 2 points; 1 point counted; the budget of 5,000 steps ended at 2 points (computed, not certified)",
+    data: { labelled: { 1: 2, 2: "18446744073709551616" }, unlabelled: { 1: 2 } },
+  },
+  {
+    name: "count, nothing finished",
+    statement: stated("count", { theory: order, representatives: false }, { upTo: 9, within: 1 }),
+    answer: {
+      question: "count",
+      verdict: null,
+      steps: 1,
+      evidence: null,
+      sizes: [],
+      ended: "interrupted",
+      endedAt: 1,
+    },
+    summary: "no size was counted; interrupted at 1 point",
+    data: { labelled: {}, unlabelled: {} },
+  },
+  {
     name: "independence",
     statement: stated("independence", { theory: order }),
     answer: { question: "independence", verdict: null, steps: 3, evidence, axioms },
@@ -429,14 +490,48 @@ describe("answers", () => {
     }
   });
 
-  it("folds all but the first models and lists none of a huge relation's tuples", () => {
-    const pairs = Array.from({ length: 900 }, (_, i) => [Math.floor(i / 30) + 1, (i % 30) + 1]);
-    const models = Array.from({ length: 9 }, () => loop);
-    const answer = { ...cases[11]!.answer, models: [...models, structureOf(30, [R, pairs])] } as Answer;
-    const { data } = showAnswer(cases[11]!.statement, answer);
+  it("shows models in rows of pictures with their numbers, the rest folded, and all of them as text", () => {
+    const models = Array.from(
+      { length: 30 },
+      (_, bits) =>
+      structureOf(3, [R, [[1, 2], [2, 3], [3, 1], [1, 1], [2, 2]].filter((__, bit) => (bits >> bit) & 1)]), // biome-ignore format: a table
+    );
+    const { data } = showAnswer(cases[11]!.statement, { ...cases[11]!.answer, models } as Answer);
     checkBundle(data);
-    expect(data["text/html"]).toContain("6 more structures</summary>");
-    expect(data["text/plain"]).toContain("R: 900 tuples, not listed");
+    const { elements, text } = readMarkup(data["text/html"]!);
+    expect(elements.filter(({ name }) => name === "img")).toHaveLength(30);
+    expect(text).toContain("6 more pictures");
+    expect(data["text/html"]!.match(/<small>an arrow from x to y/g)).toHaveLength(1);
+    for (const form of ["text/plain", "text/html", "text/latex"] as const) {
+      const listed = form === "text/html" ? text : data[form]!;
+      expect(listed.match(/points 3 where R is/g)).toHaveLength(30);
+    }
+    expect(data["text/plain"]).not.toContain("an arrow");
+  });
+
+  it("lists no tuples of a huge relation", () => {
+    const pairs = Array.from({ length: 900 }, (_, i) => [Math.floor(i / 30) + 1, (i % 30) + 1]);
+    const huge = structureOf(30, [R, pairs]);
+    const show = (models: Structure[]) =>
+      showAnswer(cases[11]!.statement, { ...cases[11]!.answer, models } as Answer).data;
+    expect(show([huge])["text/plain"]).toContain("R: 900 tuples, not listed");
+    const several = show([huge, huge, huge]);
+    checkBundle(several);
+    expect(several["text/plain"]).toContain("30 points; too many tuples to list");
+    expect(several["text/html"]).not.toContain("<img");
+  });
+
+  it("says when a relation depends on differences alone", () => {
+    const around = Array.from({ length: 7 }, (_, i) =>
+      [1, 2, 4].map((d) => [i + 1, ((i + d) % 7) + 1]),
+    ).flat();
+    const { data } = showAnswer(cases[0]!.statement, found("countermodel", structureOf(7, [R, around])));
+    expect(data["text/plain"]).toContain("R holds of (x, y) exactly when y − x modulo 7 is one of 1, 2, 4");
+    const other = showAnswer(
+      cases[0]!.statement,
+      found("countermodel", structureOf(7, [R, around.slice(1)])),
+    );
+    expect(other.data["text/plain"]).not.toContain("modulo");
   });
 });
 
@@ -609,10 +704,33 @@ describe("definitions and descriptions", () => {
       "Between: a relation of 3 places",
     ]);
   });
+});
 
-  it("puts values into sentences", () => {
-    const bundle = showInline(verdict("open"), ", ", formulaOf(serial));
-    checkBundle(bundle);
-    expect(bundle["text/latex"]).toMatch(/^\\textbf\{open\}, \$[^$]+\$$/);
+describe("values in sentences", () => {
+  it("are short in plain text, Markdown and LaTeX", () => {
+    expect(inlineVerdict("open")).toEqual({
+      "text/plain": "open",
+      "text/markdown": "open",
+      "text/latex": "open",
+    });
+    expect(inlineNumber(130023n)["text/markdown"]).toBe("130,023");
+    const formula = inlineFormula(serial);
+    expect(formula["text/plain"]).toBe("∀x ∃y Rxy");
+    expect(formula["text/markdown"]).toMatch(/^\$\\forall x\\, \\exists y\\, Rxy\$$/);
+    expect(formula["text/latex"]).toBe(formula["text/markdown"]);
+  });
+
+  // A reader of Markdown that is not ours gives the text back, and makes nothing else of it.
+  it("are text for Markdown, whatever is in them", () => {
+    fc.assert(
+      fc.property(fc.string({ unit: fc.constantFrom(..."a1 `*_[](){}<>#+!|$~&\\-") }), (text) => {
+        const markdown = showInline(text, code(text))["text/markdown"]!;
+        const html = new Marked().parseInline(`x${markdown}x`, { async: false });
+        const { elements, text: read } = readMarkup(html);
+        expect(elements.map(({ name }) => name)).toEqual(text.trim() === "" ? [] : ["code"]);
+        if (text.trim() !== "") expect(read.replace(/\s+/g, "")).toBe(`x${text}${text}x`.replace(/\s+/g, ""));
+      }),
+      { seed: 20260405 },
+    );
   });
 });

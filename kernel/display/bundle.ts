@@ -8,8 +8,9 @@ import type { MimeBundle } from "../session/evaluator.ts";
 import type { Block } from "./blocks.ts";
 import { type Inline, line } from "./blocks.ts";
 import { counted, grouped } from "./text.ts";
-import { blocksToHtml, inlineToHtml } from "./to-html.ts";
+import { blocksToHtml } from "./to-html.ts";
 import { blocksToLatex, inlineToLatex } from "./to-latex.ts";
+import { inlineToMarkdown } from "./to-markdown.ts";
 import { blocksToText, inlineToText } from "./to-text.ts";
 
 /** The same blocks give the same bytes. */
@@ -24,11 +25,11 @@ export function showProgress(progress: Progress): MimeBundle {
   return renderBundle([line(text)], "without-latex");
 }
 
-/** A value for the middle of a sentence, as `user_expressions` ask for it. */
+/** A value for the middle of a sentence, as `user_expressions` ask for it: short, and without a look of its own. */
 export function showInline(...parts: Inline[]): MimeBundle {
   return {
     "text/plain": inlineToText(parts),
-    "text/html": inlineToHtml(parts),
+    "text/markdown": inlineToMarkdown(parts),
     "text/latex": inlineToLatex(parts),
   };
 }

@@ -15,8 +15,8 @@ export function countBlocks(answer: CountAnswer, budget: number): readonly Block
       head: ["points", "labelled", "up to isomorphism"],
       rows: sizes.map(({ size, labelled, unlabelled }) => [
         [grouped(size)],
-        [grouped(labelled)],
-        [grouped(unlabelled)],
+        [numberText(labelled)],
+        [numberText(unlabelled)],
       ]),
       look: "numbers",
     });
@@ -26,8 +26,9 @@ export function countBlocks(answer: CountAnswer, budget: number): readonly Block
     blocks.push(note(`Computed, not certified: a count carries no evidence of its own.${checked}`));
   }
   if (ended !== null) {
-    const finished = sizes.length === 0 ? "No size was finished" : `Finished: ${finishedSizes(sizes)}`;
-    blocks.push(note(`${finished}; ${endText(ended, budget, endedAt)}.`));
+    const finished = finishedSizes(sizes);
+    const done = finished === "" ? "No size was finished" : `Finished: ${finished}`;
+    blocks.push(note(`${done}; ${endText(ended, budget, endedAt)}.`));
   }
   const rows = sizes.map((counting) => ({
     title: titleOf(counting),
@@ -43,16 +44,27 @@ export function countBlocks(answer: CountAnswer, budget: number): readonly Block
 }
 
 function titleOf({ size, unlabelled, representatives }: CountedSize): string {
+  if (unlabelled === null)
+    return `${counted(size, "point")}: ${counted(representatives.length, "model")}, no two isomorphic`;
   const classes = `${counted(size, "point")}: ${counted(unlabelled, "class", "classes")} of isomorphic models`;
   const all = BigInt(representatives.length) === unlabelled;
   if (all) return unlabelled === 1n ? `${classes}, its model` : `${classes}, one model of each`;
   return `${classes}, models of ${grouped(representatives.length)} of them`;
 }
 
-/** Numbers by size; beyond 2^53 they are strings, since JSON's readers would round them. */
+function numberText(count: bigint | null): string {
+  return count === null ? "not finished" : grouped(count);
+}
+
+/** Finished numbers by size; beyond 2^53 they are strings, since JSON's readers would round them. */
 export function countData({ sizes }: CountAnswer): Readonly<Record<string, unknown>> {
-  const by = (pick: (counting: CountedSize) => bigint) =>
-    Object.fromEntries(sizes.map((counting) => [String(counting.size), plainNumber(pick(counting))]));
+  const by = (pick: (counting: CountedSize) => bigint | null) =>
+    Object.fromEntries(
+      sizes.flatMap((counting) => {
+        const count = pick(counting);
+        return count === null ? [] : [[String(counting.size), plainNumber(count)]];
+      }),
+    );
   return { labelled: by(({ labelled }) => labelled), unlabelled: by(({ unlabelled }) => unlabelled) };
 }
 

@@ -2,6 +2,7 @@
 
 import { buildStructure } from "../../lib/carriers/structure.ts";
 import type { Answer, ClaimAnswer } from "../../lib/inquiry/answer.ts";
+import type { Findings } from "../../lib/inquiry/examine.ts";
 import { printFormula } from "../../lib/language/printer.ts";
 import type { Definition, DescribeSubject, Statement } from "../../lib/language/statements.ts";
 import {
@@ -13,6 +14,7 @@ import {
 } from "../../lib/logic/formula.ts";
 import { type Theory, theoryDepth, theorySignature } from "../../lib/logic/theory.ts";
 import { countData } from "./counts.ts";
+import { findingsData } from "./findings.ts";
 import { structureData } from "./structures.ts";
 import { claimOf } from "./summaries.ts";
 import { prefixOf } from "./theories.ts";
@@ -22,11 +24,12 @@ type Data = Readonly<Record<string, unknown>>;
 /**
  * Plain data that `JSON.stringify` keeps as it is; formulas are text in the ASCII spelling.
  * @param answer null for the statements that ask nothing
+ * @param findings what `describe` has found out about a theory; null for everything else
  */
-export function dataOf(statement: Statement, answer: Answer | null): Data {
+export function dataOf(statement: Statement, answer: Answer | null, findings: Findings | null = null): Data {
   switch (answer?.question) {
     case undefined:
-      return stated(statement);
+      return stated(statement, findings);
     case "claim":
       return claimData(statement, answer);
     case "check-finite":
@@ -90,14 +93,17 @@ function claimData(statement: Statement, answer: ClaimAnswer): Data {
   }
 }
 
-function stated(statement: Statement): Data {
+function stated(statement: Statement, findings: Findings | null): Data {
   switch (statement.kind) {
     case "relation":
       return { relations: statement.relations.map(relationData) };
     case "define":
       return definitionData(statement.definition);
     case "describe":
-      return subjectData(statement.subject);
+      return {
+        ...subjectData(statement.subject),
+        ...(findings === null ? {} : { properties: findingsData(findings) }),
+      };
     default:
       return {};
   }

@@ -1,11 +1,13 @@
 /** What is shown for statements that ask nothing: declarations, definitions and descriptions. */
 import { buildStructure } from "../../lib/carriers/structure.ts";
+import type { Findings } from "../../lib/inquiry/examine.ts";
 import type { Definition, DescribeSubject, Statement } from "../../lib/language/statements.ts";
 import { depthOf, type Formula, relationsOf, usesIdentity, variablesOf } from "../../lib/logic/formula.ts";
 import type { Theory } from "../../lib/logic/theory.ts";
 import type { Shown } from "./answers.ts";
 import { type Block, code, formulaOf, type Inline, line } from "./blocks.ts";
 import { renderBundle } from "./bundle.ts";
+import { findingBlocks } from "./findings.ts";
 import { structureBlocks } from "./structures.ts";
 import { counted, enumerate } from "./text.ts";
 import {
@@ -48,14 +50,23 @@ function definitionText(definition: Definition): string {
   }
 }
 
-/** `describe X`. {@link prepareDrawing} must have been awaited. */
-export function showDescription(statement: Statement & { readonly kind: "describe" }): Shown {
-  const { summary, blocks } = describeSubject(statement.subject);
+/**
+ * `describe X`. {@link prepareDrawing} must have been awaited.
+ * @param findings what has been found out about a theory besides; null for everything else
+ */
+export function showDescription(
+  statement: Statement & { readonly kind: "describe" },
+  findings: Findings | null = null,
+): Shown {
+  const { summary, blocks } = describeSubject(statement.subject, findings);
   return { summary, data: renderBundle(blocks, "with-latex") };
 }
 
 /** The line and the blocks of a description. */
-export function describeSubject(subject: DescribeSubject): {
+export function describeSubject(
+  subject: DescribeSubject,
+  findings: Findings | null = null,
+): {
   readonly summary: string;
   readonly blocks: readonly Block[];
 } {
@@ -65,7 +76,12 @@ export function describeSubject(subject: DescribeSubject): {
       const summary = `${text}: a theory of ${counted(theory.axioms.length, "axiom")}`;
       return {
         summary,
-        blocks: [line(code(text), summary.slice(text.length)), ...theoryBlocks(theory), theoryFacts(theory)],
+        blocks: [
+          line(code(text), summary.slice(text.length)),
+          ...theoryBlocks(theory),
+          theoryFacts(theory),
+          ...(findings === null ? [] : findingBlocks(findings)),
+        ],
       };
     }
     case "structure": {

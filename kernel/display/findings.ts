@@ -1,40 +1,16 @@
-/** What has been found out about a theory and the named properties, and how `describe` shows it. */
+/** What has been found out about a theory and the named properties, as `describe` shows it. */
+import type { Findings, ModelSearch, PropertyFinding } from "../../lib/inquiry/examine.ts";
+import type { FiniteCheck } from "../../lib/logic/fragments.ts";
 import { type Block, code, type Inline, note } from "./blocks.ts";
 import { counted, onSizesTo } from "./text.ts";
 
-/** A search for models of one kind, size by size from 1. */
-export type ModelSearch =
-  /** A model was found, on so many points; no smaller one where the sizes before it were finished. */
-  | { readonly kind: "found"; readonly size: number }
-  /** There is none on 1, …, this many points; 0 when not even one point was finished. */
-  | { readonly kind: "none"; readonly upTo: number };
-
-/** Models of a theory with a property, and models of it without. Neither search can show that it is implied. */
-export interface PropertyFinding {
-  /** The property as the cell language writes it: `transitive(R)`. */
-  readonly name: string;
-  readonly having: ModelSearch;
-  readonly lacking: ModelSearch;
-}
-
-/** What `describe` is given besides the theory. */
-export interface Findings {
-  /** In the order in which they are to be shown. */
-  readonly properties: readonly PropertyFinding[];
-  /** Whether the checker accepted every model that was found. */
-  readonly checked: boolean;
-  /** Whether the budget ended, or the user interrupted, before all properties were looked at. */
-  readonly endedEarly: boolean;
-}
-
-/** The word for a finding in `eval --json`. */
+/**
+ * The word for a finding in `eval --json`. `neither`: there are models with the property and models without;
+ * `no-countermodel`: none without it up to the size searched; `no-example`: none with it up to that size;
+ * `no-model`: none with it and none without; `unsearched`: a search did not finish even one point.
+ */
 export type PropertyStatus = "neither" | "no-countermodel" | "no-example" | "no-model" | "unsearched";
 
-/**
- * `neither`: there are models with the property and models without; `no-countermodel`: none without it up to the
- * size searched; `no-example`: none with it up to that size; `no-model`: none at all; `unsearched`: a search did not
- * finish even one point.
- */
 export function propertyStatus({ having, lacking }: PropertyFinding): PropertyStatus {
   if (having.kind === "found" && lacking.kind === "found") return "neither";
   if ((having.kind === "none" && having.upTo === 0) || (lacking.kind === "none" && lacking.upTo === 0))
@@ -48,31 +24,38 @@ export function findingsData({ properties }: Findings): readonly Readonly<Record
   return properties.map((finding) => ({
     property: finding.name,
     status: propertyStatus(finding),
-    modelWith: sizeData(finding.having),
-    modelWithout: sizeData(finding.lacking),
+    modelWith: searchData(finding.having),
+    modelWithout: searchData(finding.lacking),
   }));
 }
 
-function sizeData(search: ModelSearch): Readonly<Record<string, unknown>> {
+function searchData(search: ModelSearch): Readonly<Record<string, unknown>> {
   return search.kind === "found"
-    ? { size: search.size, noneUpTo: null }
-    : { size: null, noneUpTo: search.upTo };
+    ? { size: search.size, noneUpTo: null, decided: false }
+    : { size: null, noneUpTo: search.upTo, decided: search.decided !== null };
 }
 
 /** One line for each kind of finding, and all of them in a table that is closed at first. */
 export function findingBlocks(findings: Findings): readonly Block[] {
-  const { properties, checked, endedEarly } = findings;
-  if (properties.length === 0) return [];
+  const { properties, evidence, endedEarly, interrupted } = findings;
+  const early = endedEarly
+    ? [
+        note(
+          `${interrupted ? "Interrupted" : "The budget ended"} before all named properties had been looked at.`,
+        ),
+      ]
+    : [];
+  if (properties.length === 0) return early;
   const rows = [...groupsOf(properties)].map(([title, names]) => [[title], listed(names)]);
+  const checked = evidence === null ? "" : " (checked)";
   const blocks: Block[] = [
     { kind: "table", caption: "Named properties", head: ["found", "properties"], rows, look: "prose" },
   ];
-  if (properties.some((finding) => propertyStatus(finding) !== "neither"))
-    blocks.push(
-      note("That no model of some sizes has or lacks a property does not derive it, nor exclude it."),
-    );
-  if (endedEarly) blocks.push(note("The budget ended before all properties had been looked at."));
-  blocks.push({
+  if (properties.some((finding) => isUndecided(finding)))
+    blocks.push(note("That models of some sizes all have a property, or all lack it, derives nothing."));
+  for (const { points, reason, source } of checksIn(properties))
+    blocks.push(note(`Decided by a finite check up to ${counted(points, "point")}: ${reason} (${source}).`));
+  blocks.push(...early, {
     kind: "fold",
     title: `Sizes of the models, for ${counted(properties.length, "property", "properties")}`,
     blocks: [
@@ -92,33 +75,60 @@ export function findingBlocks(findings: Findings): readonly Block[] {
   return blocks;
 }
 
+function isUndecided(finding: PropertyFinding): boolean {
+  const status = propertyStatus(finding);
+  if (status === "no-countermodel") return decidedBy(finding.lacking) === null;
+  if (status === "no-example") return decidedBy(finding.having) === null;
+  return status === "no-model";
+}
+
+function decidedBy(search: ModelSearch): FiniteCheck | null {
+  return search.kind === "none" ? search.decided : null;
+}
+
+/** The bounds that were used, each once. */
+function checksIn(properties: readonly PropertyFinding[]): readonly FiniteCheck[] {
+  const checks = new Map<string, FiniteCheck>();
+  for (const { having, lacking } of properties)
+    for (const check of [decidedBy(having), decidedBy(lacking)])
+      if (check !== null) checks.set(`${check.points};${check.reason}`, check);
+  return [...checks.values()].sort((a, b) => a.points - b.points);
+}
+
 /** Names by what is known of them; sizes belong to the title, so that no line says more than was searched. */
 function groupsOf(properties: readonly PropertyFinding[]): ReadonlyMap<string, readonly string[]> {
   const groups = new Map<string, string[]>();
   const order: PropertyStatus[] = ["no-countermodel", "no-example", "no-model", "neither", "unsearched"];
-  for (const status of order)
-    for (const finding of properties) {
-      if (propertyStatus(finding) !== status) continue;
-      const title = titleOf(finding, status);
-      groups.set(title, [...(groups.get(title) ?? []), finding.name]);
-    }
+  for (const status of order) {
+    const found = properties.filter((finding) => propertyStatus(finding) === status);
+    // What a finite check decided stands before what was searched on some sizes only.
+    const titles = found.map((finding) => ({ name: finding.name, title: titleOf(finding, status) }));
+    for (const isFirst of [true, false])
+      for (const { name, title } of titles)
+        if (title.endsWith(DECIDED) === isFirst) groups.set(title, [...(groups.get(title) ?? []), name]);
+  }
   return groups;
 }
 
+const DECIDED = "by a finite check";
+
 function titleOf({ having, lacking }: PropertyFinding, status: PropertyStatus): string {
-  const sizes = (search: ModelSearch) => (search.kind === "none" ? onSizesTo(search.upTo) : "");
+  const where = (search: ModelSearch) => {
+    if (search.kind === "found") return "";
+    return search.decided === null ? ` ${onSizesTo(search.upTo)}` : `, ${DECIDED}`;
+  };
   switch (status) {
     case "no-countermodel":
-      return `no model without it ${sizes(lacking)}`;
+      return `no model without it${where(lacking)}`;
     case "no-example":
-      return `no model with it ${sizes(having)}`;
+      return `no model with it${where(having)}`;
     case "no-model": {
       const least =
         having.kind === "none" && lacking.kind === "none" ? Math.min(having.upTo, lacking.upTo) : 0;
-      return `no model at all ${onSizesTo(least)}`;
+      return `no model, with it or without, ${onSizesTo(least)}`;
     }
     case "neither":
-      return "neither implied nor excluded";
+      return "models with it and models without it";
     case "unsearched":
       return "not searched";
   }
@@ -128,7 +138,8 @@ function listed(names: readonly string[]): readonly Inline[] {
   return names.flatMap((name, index): Inline[] => (index === 0 ? [code(name)] : [", ", code(name)]));
 }
 
-function searchText(search: ModelSearch, checked: boolean): string {
-  if (search.kind === "found") return `on ${counted(search.size, "point")}${checked ? " (checked)" : ""}`;
-  return search.upTo === 0 ? "not searched" : `none ${onSizesTo(search.upTo)}`;
+function searchText(search: ModelSearch, checked: string): string {
+  if (search.kind === "found") return `on ${counted(search.size, "point")}${checked}`;
+  if (search.upTo === 0) return "not searched";
+  return search.decided === null ? `none ${onSizesTo(search.upTo)}` : `none, ${DECIDED}`;
 }

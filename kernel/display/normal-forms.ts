@@ -13,6 +13,7 @@ import type {
   TermFormula,
 } from "../../lib/logic/clausal.ts";
 import { type Variable, verum } from "../../lib/logic/formula.ts";
+import { NORMAL_FORM_NAMES } from "../../lib/logic/normal-forms/normalise.ts";
 import type {
   NormalFormName,
   NormalFormResult,
@@ -28,16 +29,6 @@ type Normalise = Statement & { readonly kind: "normalise" };
 
 /** Columns of a formula in the one line for the ledger; all of it stands below. */
 const SUMMARY_WIDTH = 90;
-
-const FORM_NAMES: Readonly<Record<NormalFormName, string>> = {
-  negation: "negation normal form",
-  prenex: "prenex form",
-  miniscoped: "miniscoped form",
-  skolem: "Skolem form",
-  clause: "clause form",
-  "definitional-clause": "definitional clause form",
-  disjunctive: "disjunctive normal form",
-};
 
 /** How `normalise` is told which form is wanted. */
 const FORM_WORDS: Readonly<Record<NormalFormName, string>> = {
@@ -63,7 +54,7 @@ export function showNormalForm(statement: Normalise, result: NormalFormResult): 
   }
   const { value, steps, keeps } = result;
   const blocks: Block[] = [
-    line(`${FORM_NAMES[statement.form]}, ${keeps}${sizeText(value)}`),
+    line(`${NORMAL_FORM_NAMES[statement.form]}, ${keeps}${sizeText(value)}`),
     asked,
     ...valueBlocks(value),
     note(keeps === "equivalent" ? EQUIVALENT : EQUISATISFIABLE),
@@ -77,9 +68,9 @@ const EQUISATISFIABLE =
   "Equisatisfiable: a structure is a model of the formula exactly when the added symbols can be interpreted in it so that the form holds.";
 
 function summariseForm({ form }: Normalise, result: NormalFormResult): string {
-  if (result.outcome === "refused") return `no ${FORM_NAMES[form]}: ${result.message}`;
+  if (result.outcome === "refused") return `no ${NORMAL_FORM_NAMES[form]}: ${result.message}`;
   const { keeps, value } = result;
-  const head = `${FORM_NAMES[form]}, ${keeps}`;
+  const head = `${NORMAL_FORM_NAMES[form]}, ${keeps}`;
   if (value.kind === "clauses") return head + sizeText(value);
   return `${head}: ${shorten(printFormula(value.formula, "unicode"), SUMMARY_WIDTH)}`;
 }
@@ -169,14 +160,19 @@ function stepsBlock(start: TermFormula, steps: readonly NormalFormStep[]): Block
     head: ["step", "what was done", "result"],
     rows: [
       [["0"], ["as given"], [formulaOf(start)]],
-      ...steps.map(({ done, keeps, value }, index): readonly (readonly Inline[])[] => [
+      ...steps.map((step, index): readonly (readonly Inline[])[] => [
         [String(index + 1)],
-        [keeps === "equivalent" ? done : `${done} (equisatisfiable)`],
-        valueParts(value),
+        [stepText(step)],
+        valueParts(step.value),
       ]),
     ],
     look: "prose",
   };
+}
+
+function stepText({ done, times, keeps }: NormalFormStep): string {
+  const often = times === 1 ? "" : `, ${counted(times, "time")}`;
+  return `${done}${often}${keeps === "equivalent" ? "" : " (equisatisfiable)"}`;
 }
 
 /** The value in one cell of a table. */
@@ -234,6 +230,7 @@ export function normalFormData(
       ? {
           steps: steps.map((step) => ({
             done: step.done,
+            times: step.times,
             keeps: step.keeps,
             formula: ascii(sentenceOf(step.value)),
           })),

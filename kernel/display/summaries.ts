@@ -159,17 +159,25 @@ function countSummary(answer: CountAnswer, budget: number): string {
   const end = ended === null ? "" : `; ${endText(ended, budget, endedAt)}`;
   const last = sizes.at(-1);
   if (last === undefined) return `no size was counted${end}`;
-  const { size, labelled, unlabelled } = last;
-  const models =
-    labelled === 0n
-      ? `no model on ${counted(size, "point")}`
-      : `${counted(labelled, "labelled model")} on ${counted(size, "point")}, ${grouped(unlabelled)} up to isomorphism`;
-  return `${models}; ${finishedSizes(sizes)} counted${end} (computed, not certified)`;
+  const { labelled, unlabelled } = last;
+  const on = ` on ${counted(last.size, "point")}`;
+  const parts = [
+    ...(labelled === null ? [] : [`${counted(labelled, "labelled model")}${on}`]),
+    ...(unlabelled === null
+      ? []
+      : [`${grouped(unlabelled)} up to isomorphism${labelled === null ? on : ""}`]),
+  ];
+  const models = labelled === 0n || unlabelled === 0n ? `no model${on}` : parts.join(", ");
+  const finished = finishedSizes(sizes);
+  const range = finished === "" ? "" : `; ${finished} counted`;
+  return `${models}${range}${end} (computed, not certified)`;
 }
 
-/** `1 to 4 points`. */
+/** The sizes of which both numbers are finished: `1 to 4 points`; empty when there are none. */
 export function finishedSizes(sizes: readonly CountedSize[]): string {
-  const last = sizes.at(-1)!.size;
+  const finished = sizes.filter(({ labelled, unlabelled }) => labelled !== null && unlabelled !== null);
+  const last = finished.at(-1)?.size;
+  if (last === undefined) return "";
   return last === 1 ? "1 point" : `1 to ${grouped(last)} points`;
 }
 

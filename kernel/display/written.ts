@@ -1,5 +1,6 @@
 /** Theories and questions as text for other programs. */
 import type { Statement } from "../../lib/language/statements.ts";
+import type { EndReason } from "../../lib/logic/meter.ts";
 import type { Shown } from "./answers.ts";
 import { type Block, code, line } from "./blocks.ts";
 import { renderBundle } from "./bundle.ts";
@@ -29,8 +30,30 @@ export function showWritten(statement: Write, text: string): Shown {
   };
 }
 
-function summariseWritten({ theory, conclusion, format }: Write, text: string): string {
-  const subject = conclusion === null ? theory.text : `${theory.text} ⊨ ${conclusion.text}`;
+/** A text that was not finished. */
+export function showUnwritten(statement: Write, ended: EndReason): Shown {
+  const subject = subjectOf(statement);
+  const reason =
+    ended === "memory"
+      ? "it would be too large"
+      : ended === "budget"
+        ? "it would take too much work"
+        : "interrupted";
+  const form = statement.format.kind === "dimacs" ? "DIMACS" : "SMT-LIB";
+  const summary = `${subject} is not written as ${form}: ${reason}`;
+  return {
+    summary,
+    data: renderBundle([line(summary), line(code(statement.text.replace(/\s+/g, " ")))], "without-latex"),
+  };
+}
+
+function subjectOf({ theory, conclusion }: Write): string {
+  return conclusion === null ? theory.text : `${theory.text} ⊨ ${conclusion.text}`;
+}
+
+function summariseWritten(statement: Write, text: string): string {
+  const { format } = statement;
+  const subject = subjectOf(statement);
   if (format.kind === "smt-lib") {
     const commands = text.match(/^\((?:assert|declare)/gm)?.length ?? 0;
     const asserts = text.match(/^\(assert/gm)?.length ?? 0;
@@ -42,7 +65,7 @@ function summariseWritten({ theory, conclusion, format }: Write, text: string): 
   return `${subject} as DIMACS, on ${size}: ${counted(Number(header[1]), "variable")}, ${counted(Number(header[2]), "clause")}`;
 }
 
-/** For `eval --json`. */
-export function writtenData({ format }: Write, text: string): Readonly<Record<string, unknown>> {
+/** For `eval --json`. @param text null when it was not finished */
+export function writtenData({ format }: Write, text: string | null): Readonly<Record<string, unknown>> {
   return { format: format.kind, size: format.kind === "dimacs" ? format.size : null, text };
 }
