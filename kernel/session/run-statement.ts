@@ -18,7 +18,7 @@ import { countModels } from "../../lib/inquiry/count.ts";
 import { askDuals } from "../../lib/inquiry/dualise.ts";
 import { askIndependence } from "../../lib/inquiry/independence.ts";
 import { findModels } from "../../lib/inquiry/models.ts";
-import { DEFAULT_LARGEST_SIZE, type Work } from "../../lib/inquiry/work.ts";
+import { DEFAULT_LARGEST_SIZE, DEFAULT_LARGEST_SYMMETRIC_SIZE, type Work } from "../../lib/inquiry/work.ts";
 import type { Claim, Options, Statement } from "../../lib/language/statements.ts";
 import { DEFAULT_BUDGET } from "../../lib/logic/meter.ts";
 
@@ -38,6 +38,7 @@ export function answerQuestion(question: Question, watch: Watch): Answer {
     ...watch,
     budget: question.options.within ?? DEFAULT_BUDGET,
     upTo: question.options.upTo ?? DEFAULT_LARGEST_SIZE,
+    symmetricUpTo: question.options.upTo ?? DEFAULT_LARGEST_SYMMETRIC_SIZE,
   };
   switch (question.kind) {
     case "derive":

@@ -42,7 +42,7 @@ export function tell(statement: Telling, watch: Watch): Told {
       return plain(showNormalForm(statement, result), normalFormData(statement, result));
     }
     case "write":
-      return write(statement, { ...watch, budget: WRITE_BUDGET, upTo: 1 });
+      return write(statement, { ...watch, budget: WRITE_BUDGET, upTo: 1, symmetricUpTo: 0 });
   }
 }
 
@@ -53,7 +53,7 @@ function plain(shown: Shown, data: StatementResult["data"]): Told {
 function describe(statement: Telling & { kind: "describe" }, watch: Watch): Told {
   const { subject } = statement;
   if (subject.kind !== "theory") return plain(showDescription(statement, null), dataOf(statement, null));
-  const work: Work = { ...watch, budget: DESCRIBE_BUDGET, upTo: DESCRIBE_UP_TO };
+  const work: Work = { ...watch, budget: DESCRIBE_BUDGET, upTo: DESCRIBE_UP_TO, symmetricUpTo: 0 };
   const findings: Findings = examineProperties(subject.theory.theory, work);
   const shown = showDescription(statement, findings);
   const data = dataOf(statement, null, findings);

@@ -25,18 +25,29 @@ export type IndependenceVerdict = "independent" | "redundant" | "open";
 export type DualVerdict = "equivalent" | "different" | "open";
 export type Verdict = ClaimVerdict | FiniteVerdict | CompareVerdict | IndependenceVerdict | DualVerdict;
 
-/** How a search went. The sizes it has finished are certain; where it ended, nothing is said beyond them. */
+/**
+ * How a search went. The sizes it has finished are certain. Beyond them it may have found a structure by looking for
+ * symmetric ones; where it has not, nothing is said of those sizes.
+ */
 export interface Search {
   /** What was looked for, for people: "a countermodel", "a model". */
   readonly sought: string;
   /** There is none on 1, 2, …, this many points; 0 when not even one point was finished. */
   readonly noneUpTo: number;
-  /** The size at which one was found; null when none was. */
+  /**
+   * The size at which one was found; null when none was. It is the smallest exactly if it is `noneUpTo + 1`; else the
+   * sizes between are not settled.
+   */
   readonly foundAt: number | null;
-  /** Why the search ended before the last size; null when it found one or finished all sizes asked for. */
+  /** Why the complete search ended before its last size; null when one was found or all sizes were finished. */
   readonly ended: EndReason | null;
-  /** The size that was being searched when the work ended; null when it did not end early. */
+  /** The size that was being searched when the complete search ended; null when it did not end early. */
   readonly endedAt: number | null;
+  /**
+   * Beyond `noneUpTo`, symmetric structures were looked for on up to this many points and none was met, which shows
+   * nothing; null when they were not, or one was found.
+   */
+  readonly symmetricUpTo: number | null;
 }
 
 interface AnswerBase {

@@ -32,7 +32,7 @@ export function checkFinite(theory: Theory, work: Work): FiniteAnswer {
     ...result,
     verdict: "finite",
     evidence: certify(writer.finish({ ask: "check-finite", axioms }, "finite"), work),
-    leastSize: search.foundAt,
+    leastSize: search.foundAt === search.noneUpTo + 1 ? search.foundAt : null,
     modelSize: search.foundAt,
   };
 }

@@ -61,7 +61,13 @@ export function askTruth(
     sentence: writer.sentence(sentence),
   };
   const meter = meterFor(work);
-  const search = { sought: "the truth value", noneUpTo: 0, foundAt: null, endedAt: null };
+  const search = {
+    sought: "the truth value",
+    noneUpTo: 0,
+    foundAt: null,
+    endedAt: null,
+    symmetricUpTo: null,
+  };
   try {
     work.report("the truth value");
     const verdict = satisfies(structure, sentence, meter) === (ask === "true-in") ? "holds" : "fails";
