@@ -39,7 +39,7 @@ export function toClauses(
     const named = isDefinitional
       ? nameParts(formula, names, taken, limits, recorder)
       : { formula: toSimpleMiniscopedForm(formula, limits, recorder), definitions: [] };
-    const skolem = toSkolemForm(named.formula, names, recorder, taken);
+    const skolem = toSkolemForm(named.formula, names, limits, recorder, taken);
     const matrix = matrixOf(skolem.formula);
     const distributed = distribute("and", matrix, limits);
     if (!isDistributed("and", matrix, distributed))

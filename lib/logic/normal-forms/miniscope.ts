@@ -103,7 +103,7 @@ class Miniscoping {
       if (choice === null) break;
       const group = parts.filter((part) => freeVariables(part).includes(choice));
       waiting = waiting.filter((variable) => variable !== choice);
-      const [before, after] = around(parts, group);
+      const [before, after] = around(parts, new Set(group));
       const whole: Plug = (part) =>
         plug(quantifyAll(kind, waiting, join(body.kind, [...before, part, ...after])));
       const scope = join(body.kind, group);
@@ -123,11 +123,10 @@ class Miniscoping {
 /** The parts outside a group: those before its first member, and the others. */
 function around(
   parts: readonly Formula[],
-  group: readonly Formula[],
+  group: ReadonlySet<Formula>,
 ): [readonly Formula[], readonly Formula[]] {
-  const first = parts.indexOf(group[0]!);
-  const outside = (part: Formula) => !group.includes(part);
-  return [parts.slice(0, first), parts.slice(first).filter(outside)];
+  const first = parts.findIndex((part) => group.has(part));
+  return [parts.slice(0, first), parts.slice(first).filter((part) => !group.has(part))];
 }
 
 /**
@@ -135,16 +134,22 @@ function around(
  * free variables together, the last of several; null when all occur everywhere.
  */
 function cheapest(variables: readonly Variable[], parts: readonly Formula[]): Variable | null {
+  const groups = new Map(variables.map((variable) => [variable, { parts: 0, scope: new Set<Variable>() }]));
+  for (const part of parts) {
+    const free = freeVariables(part);
+    for (const variable of free) {
+      const group = groups.get(variable);
+      if (group === undefined) continue;
+      group.parts += 1;
+      for (const other of free) group.scope.add(other);
+    }
+  }
   let best: Variable | null = null;
   let least = Number.POSITIVE_INFINITY;
-  for (const variable of variables) {
-    const group = parts.filter((part) => freeVariables(part).includes(variable));
-    if (group.length === parts.length) continue;
-    const width = new Set(group.flatMap(freeVariables)).size;
-    if (width <= least) {
-      best = variable;
-      least = width;
-    }
+  for (const [variable, { parts: count, scope }] of groups) {
+    if (count === parts.length || scope.size > least) continue;
+    best = variable;
+    least = scope.size;
   }
   return best;
 }

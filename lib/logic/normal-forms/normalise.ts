@@ -84,7 +84,7 @@ function make(
       return { kind: "formula", formula: toDisjunctiveForm(formula, limits, recorder) };
     case "skolem": {
       const miniscoped = toSimpleMiniscopedForm(formula, limits, recorder);
-      return { kind: "skolem", ...toSkolemForm(miniscoped, new SymbolNames([formula]), recorder) };
+      return { kind: "skolem", ...toSkolemForm(miniscoped, new SymbolNames([formula]), limits, recorder) };
     }
     case "clause":
     case "definitional-clause": {

@@ -12,7 +12,7 @@ import {
   variablesOf,
 } from "../formula.ts";
 import { toMiniscopedForm } from "./miniscope.ts";
-import type { Limits } from "./result.ts";
+import { FormTooLarge, type Limits } from "./result.ts";
 import { StepRecorder } from "./steps.ts";
 
 export type QuantifierKind = "forall" | "exists";
@@ -30,20 +30,22 @@ export interface Prefix {
  * outside, each as large as it can be, beginning with ∃ or with ∀, whichever gives the fewer alternations (Egly,
  * Seidl, Tompits, Woltran & Zolda 2003); parts of a conjunction share universal variables, parts of a disjunction
  * existential ones. Quantifiers are first moved inwards where that saves an alternation.
+ * @throws FormTooLarge
  */
 export function toPrenexForm(formula: Formula, limits: Limits, recorder: StepRecorder): Formula {
   const miniscoped = toMiniscopedForm(formula, limits, new StepRecorder(false));
   const [asGiven, inwards] = [bestPrefix(formula), bestPrefix(miniscoped)];
   const isBetter = alternationsOf(inwards) < alternationsOf(asGiven);
   const start = isBetter ? toMiniscopedForm(formula, limits, recorder) : formula;
+  const best = isBetter ? inwards : asGiven;
+  if (total(best) > limits.levels) throw new FormTooLarge("levels", limits.levels);
   let matrix = renameApart(start, recorder);
   const prefix: { kind: QuantifierKind; variables: readonly Variable[] }[] = [];
   const around = (part: Formula) =>
     prefix.reduceRight((inner, { kind, variables }) => quantifyAll(kind, variables, inner), part);
-  const { first, counts } = isBetter ? inwards : asGiven;
-  let kind = first;
+  let kind = best.first;
   // A block that only goes on with quantifiers that stand in front is no step.
-  for (const _ of counts) {
+  for (const _ of best.counts) {
     const before = matrix;
     const taken = takeOff(kind, matrix);
     matrix = taken.rest as Formula;
@@ -121,7 +123,7 @@ export interface TakenOff {
 
 /**
  * Takes off all quantifiers of one kind that stand in the scope of none of the other. The variables of the formula
- * must be renamed apart. Where a junction lets its parts share variables, those of the longest part are kept.
+ * must be renamed apart. Where a junction lets its parts share variables, those of the first part that has so many are kept.
  */
 export function takeOff(kind: QuantifierKind, formula: TermFormula): TakenOff {
   if (formula.kind === kind) {
@@ -139,19 +141,13 @@ export function takeOff(kind: QuantifierKind, formula: TermFormula): TakenOff {
         taken.map(({ rest }) => rest),
       ),
     };
-  const longest = taken.reduce<readonly Variable[]>(
-    (most, { variables }) => (variables.length > most.length ? variables : most),
-    [],
-  );
-  const rest = taken.map((part) =>
-    part.variables === longest
-      ? part.rest
-      : substituteTerms(
-          part.rest,
-          new Map(part.variables.map((variable, index) => [variable, longest[index]!])),
-        ),
-  );
-  return { variables: longest, rest: join(formula.kind, rest) };
+  const shared: Variable[] = [];
+  const rest = taken.map((part) => {
+    shared.push(...part.variables.slice(shared.length));
+    const replacement = new Map(part.variables.map((variable, index) => [variable, shared[index]!]));
+    return substituteTerms(part.rest, replacement);
+  });
+  return { variables: shared, rest: join(formula.kind, rest) };
 }
 
 /**

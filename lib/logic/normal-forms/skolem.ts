@@ -9,6 +9,7 @@ import {
 } from "../clausal-formulas.ts";
 import { type Formula, freeVariables, type Variable } from "../formula.ts";
 import { renameApart, takeOff } from "./prenex.ts";
+import { FormTooLarge, type Limits } from "./result.ts";
 import type { StepRecorder } from "./steps.ts";
 import type { SymbolNames } from "./symbols.ts";
 
@@ -24,10 +25,12 @@ export interface Skolemised {
  * moved out. The more miniscoped the formula, the fewer arguments. Every model of the result is one of the formula,
  * and a model of the formula becomes one of the result by a choice of functions.
  * @param taken variables that no quantifier of the result is to have
+ * @throws FormTooLarge
  */
 export function toSkolemForm(
   formula: Formula,
   names: SymbolNames,
+  limits: Limits,
   recorder: StepRecorder,
   taken: ReadonlySet<Variable> = new Set(),
 ): Skolemised {
@@ -67,6 +70,7 @@ export function toSkolemForm(
     functions,
   }));
   const { variables, rest } = takeOff("forall", universal);
+  if (variables.length > limits.levels) throw new FormTooLarge("levels", limits.levels);
   const result = quantifyAll("forall", variables, rest);
   if (!isPrefixed(universal)) {
     recorder.note("quantifiers moved out", "equivalent", () => ({
