@@ -15,13 +15,17 @@ import { readAxiomOf } from "./labels.ts";
 import { readRun, type Token } from "./lexer.ts";
 import { measureFormula } from "./measure.ts";
 import { isKeptWord, isVariable, type Named } from "./names.ts";
+import { isPropertyAhead, nearestProperty, readPropertySentence } from "./property-atoms.ts";
 import { hintFor, quote, type Reader, Unreadable } from "./reader.ts";
 import type { Definition } from "./statements.ts";
+import { readTermFormula } from "./terms.ts";
 import { callForm, countOf, kindText } from "./wording.ts";
 
 export class AtomReader {
   readonly #reader: Reader;
   readonly #use: (variable: Variable, place: Place) => void;
+  /** The properties that were said of no relation; the formulas have a stand-in for it. */
+  readonly bare: Token[] = [];
 
   /** @param use told of every variable that occurs in an atom */
   constructor(reader: Reader, use: (variable: Variable, place: Place) => void) {
@@ -29,10 +33,16 @@ export class AtomReader {
     this.#use = use;
   }
 
+  /** Reads a formula that begins with a relation term. */
+  readTerm(): Formula {
+    return readTermFormula(this.#reader, this.#use);
+  }
+
   /** Reads an atom, or the sentence or application that a name stands for, beginning with a word. */
   readWord(word: Token): Formula {
     const { names } = this.#reader;
     const named = names.find(word.text);
+    if (isPropertyAhead(this.#reader, word)) return readPropertySentence(this.#reader, this.bare);
     if (named !== null) return this.#name(word, named);
     if (isKeptWord(word.text)) return this.#reader.failExpected("a formula");
     if (isVariable(word.text)) return this.#infix(word);
@@ -182,6 +192,9 @@ export class AtomReader {
   #unknown(word: Token): Formula {
     const reader = this.#reader;
     if (reader.peekAfter(1).kind === "open" && reader.peekAfter(1).from === word.to) {
+      const property = nearestProperty(word.text);
+      if (property !== null && reader.names.nearest(word.text, ["relation", "formula"]) === null)
+        return this.#misspelledProperty(word, property);
       this.#reportUnknownRelation(word, word.text, this.#argumentsAhead());
       reader.next();
       this.#arguments(word);
@@ -189,7 +202,8 @@ export class AtomReader {
     }
     const letter = String.fromCodePoint(word.text.codePointAt(0)!);
     const isRun = readRun(reader.source, word, 0).offsets.at(-1) === word.end - word.start;
-    const near = reader.names.nearest(word.text, ["relation", "formula", "theory"]);
+    const near =
+      reader.names.nearest(word.text, ["relation", "formula", "theory"]) ?? nearestProperty(word.text);
     const suggestion =
       near !== null
         ? `write \`${near}\``
@@ -206,6 +220,21 @@ export class AtomReader {
       suggestion,
     );
     if (reader.accept("dot") !== null && reader.at("word")) reader.next();
+    return verum;
+  }
+
+  #misspelledProperty(word: Token, property: string): Formula {
+    const reader = this.#reader;
+    reader.next();
+    reader.report(
+      "unknown-name",
+      word,
+      `there is no relation, formula or property ${quote(word.text)}`,
+      `write \`${property}\``,
+    );
+    const mark = reader.mark;
+    reader.next();
+    if (!reader.skipGroup(mark)) throw new Unreadable(false);
     return verum;
   }
 

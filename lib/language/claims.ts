@@ -1,13 +1,17 @@
 /** What `claim`, `conjecture` and `derive` say: an entailment, or a property of a theory. */
-import { relationsOf } from "../logic/formula.ts";
+import { type RelationSymbol, relationsOf } from "../logic/formula.ts";
+import { findProperty } from "../logic/properties.ts";
+import { theorySignature } from "../logic/theory.ts";
 import type { Place } from "./diagnostics.ts";
 import { readClosed } from "./formulas.ts";
 import { claimForms } from "./help.ts";
+import { findInexpressible } from "./inexpressible.ts";
 import type { Token } from "./lexer.ts";
 import { nearestName } from "./nearest.ts";
-import { quote, type Reader } from "./reader.ts";
+import { quote, type Reader, Unreadable } from "./reader.ts";
 import type { Claim, NamedSentence, NamedStructure, NamedTheory } from "./statements.ts";
 import { isStructureAhead, readStructure } from "./structures.ts";
+import { reportInexpressible } from "./terms.ts";
 import { readTheory } from "./theories.ts";
 
 const FORMS = claimForms.map(({ form }) => `\`${form}\``).join(", ");
@@ -28,7 +32,7 @@ export function readClaim(reader: Reader): Claim | null {
   const sign = reader.peek();
   if (sign.kind === "entails" || sign.kind === "does-not-entail") {
     reader.next();
-    const conclusion = readConclusion(reader);
+    const conclusion = readConclusion(reader, relationsAbout(theory));
     if (theory === null || conclusion === null) return null;
     return { kind: sign.kind, premises: theory, conclusion };
   }
@@ -68,11 +72,18 @@ function readProperty(reader: Reader, theory: NamedTheory | null): Claim | null 
         "`is complete to depth d` is not a claim of this version",
         `claims are ${FORMS}`,
       );
-    default:
+    default: {
+      const refused = findInexpressible(word.text);
+      const isOnly = reader.peekAfter(1).text === "only";
+      if (refused !== undefined && word.kind === "word" && !isOnly) {
+        reportInexpressible(reader, word, refused);
+        throw new Unreadable(false);
+      }
       return reader.failExpected(
         "`consistent`, `infinite-only`, `independent`, `weaker than` or `equivalent to`",
         hintForProperty(reader, word),
       );
+    }
   }
 }
 
@@ -81,6 +92,7 @@ function hintForProperty(reader: Reader, word: Token): string | null {
   const next = reader.peekAfter(1);
   const near = nearestName(word.text, known) ?? nearestName(`${word.text}-${next.text}`, known);
   if (word.text === "inconsistent") return "write `T ⊨ ⊥`";
+  if (findProperty(word.text) !== undefined) return `write \`T ⊨ ${word.text}\``;
   if (word.text === "infinite" && next.text === "only") return "write `is infinite-only`";
   if (near === null) return `claims are ${FORMS}`;
   return `write \`is ${near}${near === "weaker" ? " than" : near === "equivalent" ? " to" : ""}\``;
@@ -96,7 +108,10 @@ function readTruth(reader: Reader, structure: NamedStructure | null, subject: Pl
     );
   reader.next();
   const first = reader.peek();
-  const sentence = readConclusion(reader);
+  const sentence = readConclusion(
+    reader,
+    structure?.structure.relations.map(({ relation }) => relation) ?? null,
+  );
   if (structure === null || sentence === null) return null;
   const place = { from: first.from, to: reader.last.to };
   for (const relation of relationsOf(sentence.formula)) {
@@ -116,8 +131,19 @@ function readTruth(reader: Reader, structure: NamedStructure | null, subject: Pl
   return { kind: sign.kind === "entails" ? "true-in" : "false-in", structure, sentence };
 }
 
-/** Reads the sentence after `⊨`. */
-export function readConclusion(reader: Reader): NamedSentence | null {
+/**
+ * Reads the sentence after `⊨`.
+ * @param about the relations of what stands before it; null when a mistake hides them
+ */
+export function readConclusion(
+  reader: Reader,
+  about: readonly RelationSymbol[] | null,
+): NamedSentence | null {
   reader.crossLine();
-  return readClosed(reader, "the conclusion");
+  return readClosed(reader, "the conclusion", { about });
+}
+
+/** The relations that a theory is about; null for one that could not be read. */
+export function relationsAbout(theory: NamedTheory | null): readonly RelationSymbol[] | null {
+  return theory === null ? null : theorySignature(theory.theory).relations;
 }

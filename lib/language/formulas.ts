@@ -7,6 +7,7 @@ import {
   not,
   or,
   quantify,
+  type RelationSymbol,
   type Variable,
   verum,
 } from "../logic/formula.ts";
@@ -17,6 +18,8 @@ import type { Token } from "./lexer.ts";
 import { measureFormula } from "./measure.ts";
 import { readVariables } from "./quantifiers.ts";
 import { MAX_NESTING, quote, type Reader, Unreadable } from "./reader.ts";
+import { declaredIn, findSoleRelation, putRelation } from "./sole-relation.ts";
+import { hintBetweenFormulas, isTermAhead } from "./terms.ts";
 import { signOf } from "./tokens.ts";
 
 export interface FormulaReading {
@@ -27,6 +30,8 @@ export interface FormulaReading {
   readonly free: ReadonlyMap<Variable, Place>;
   /** The variables that some quantifier binds. */
   readonly bound: ReadonlySet<Variable>;
+  /** The properties that were said of no relation: the formula has a stand-in for it, to be replaced. */
+  readonly bare: readonly Token[];
   /** The source, on one line. */
   readonly text: string;
 }
@@ -36,22 +41,46 @@ export function readFormula(reader: Reader): FormulaReading {
   return new FormulaReader(reader).read();
 }
 
+/** A formula and its source on one line. */
+export interface ReadFormula {
+  readonly formula: Formula;
+  readonly text: string;
+}
+
+/** A formula in which properties may still be said of no relation. */
+export interface UnsettledFormula extends ReadFormula {
+  readonly bare: readonly Token[];
+}
+
+export interface ClosedOptions {
+  /** The variables that may be free. */
+  readonly parameters?: readonly Variable[];
+  /** What else than a quantifier would help, given the variables that are free. */
+  readonly alternative?: (free: readonly Variable[]) => string;
+  /** The relations of what the formula belongs to, for bare properties; null when a mistake hides them. */
+  readonly about?: readonly RelationSymbol[] | null;
+}
+
 /**
  * Reads a formula whose free variables must be among the given ones, and reports others.
  * @param what the formula's part in the statement, for messages: "the axiom `mid`"
- * @param alternative what else than a quantifier would help, given the variables that are free
  * @returns null when a mistake was reported
  */
-export function readClosed(
+export function readClosed(reader: Reader, what: string, options: ClosedOptions = {}): ReadFormula | null {
+  const reading = readUnsettled(reader, what, options);
+  return reading === null ? null : settleFormula(reader, reading, options.about);
+}
+
+/** As {@link readClosed}, with bare properties left for the caller to settle. */
+export function readUnsettled(
   reader: Reader,
   what: string,
-  parameters: readonly Variable[] = [],
-  alternative?: (free: readonly Variable[]) => string,
-): { readonly formula: Formula; readonly text: string } | null {
-  const { formula, damaged, free, bound, text } = readFormula(reader);
+  { parameters = [], alternative }: ClosedOptions = {},
+): UnsettledFormula | null {
+  const { formula, damaged, free, bound, bare, text } = readFormula(reader);
   const open = [...free.keys()].filter((variable) => !parameters.includes(variable));
   const first = open[0];
-  if (first === undefined) return damaged ? null : { formula, text };
+  if (first === undefined) return damaged ? null : { formula, text, bare };
   const names = listWords([...open].sort().map(quote));
   const prefix = `∀${[...open].sort().join(" ")}.`;
   const fits = [...text].length <= 100;
@@ -72,9 +101,25 @@ export function readClosed(
 }
 
 /** Reads a formula that may have free variables; null when a mistake was reported. */
-export function readOpen(reader: Reader): { readonly formula: Formula; readonly text: string } | null {
-  const { formula, damaged, text } = readFormula(reader);
-  return damaged ? null : { formula, text };
+export function readOpen(reader: Reader): ReadFormula | null {
+  const { formula, damaged, text, bare } = readFormula(reader);
+  return damaged ? null : settleFormula(reader, { formula, text, bare }, []);
+}
+
+/**
+ * Says bare properties of the sole relation.
+ * @param about the relations of what the formula belongs to, beside its own; null when a mistake hides them
+ * @returns null when that is not told, which has been reported
+ */
+export function settleFormula(
+  reader: Reader,
+  { formula, text, bare }: UnsettledFormula,
+  about: readonly RelationSymbol[] | null = [],
+): ReadFormula | null {
+  if (bare.length === 0) return { formula, text };
+  if (about === null) return null;
+  const relation = findSoleRelation(reader, bare, [...about, ...declaredIn(formula)]);
+  return relation === null ? null : { formula: putRelation(formula, relation), text };
 }
 
 class FormulaReader {
@@ -113,6 +158,7 @@ class FormulaReader {
       damaged: damaged(),
       free: this.#skipped ? new Map() : this.#free,
       bound: new Set(this.#bound.keys()),
+      bare: this.#atoms.bare,
       text: reader.excerpt(first, reader.last),
     };
   }
@@ -160,19 +206,27 @@ class FormulaReader {
   }
 
   #conjunction(): Formula {
-    const first = this.#unary();
+    const first = this.#operand();
     if (!this.#reader.at("and")) return first;
     const parts = [first];
     while (this.#reader.accept("and") !== null) {
       this.#reader.crossLine();
-      parts.push(this.#unary());
+      parts.push(this.#operand());
     }
     return joined(and, parts);
+  }
+
+  #operand(): Formula {
+    const formula = this.#unary();
+    const hint = hintBetweenFormulas(this.#reader.peek());
+    if (hint !== null) this.#reader.failExpected("an operator between formulas", hint);
+    return formula;
   }
 
   #unary(): Formula {
     const reader = this.#reader;
     const token = reader.peek();
+    if (isTermAhead(reader)) return this.#atoms.readTerm();
     switch (token.kind) {
       case "not": {
         reader.next();

@@ -3,8 +3,7 @@
  * and with what is usually said in its stead. All of it is by compactness (Gödel 1930; Ebbinghaus, Flum and Thomas
  * 1994, chapter VI) or by the theorems of Löwenheim and Skolem.
  */
-import { type Formula, forall, not, or } from "../logic/formula.ts";
-import { equal } from "../logic/formula.ts";
+import { equal, type Formula, forall, not, or } from "../logic/formula.ts";
 import { type RelationTerm, termFormula, withinSteps } from "../logic/terms.ts";
 
 export interface Inexpressible {
@@ -18,11 +17,10 @@ export interface Inexpressible {
 }
 
 const LONGER_PATHS =
-  "a sentence true of all finite paths would by compactness be true of elements that no finite path joins";
+  "by compactness, a sentence that is true of paths of every length is also true where no path joins two elements";
 const LONGER_CHAINS =
-  "descending chains may have any finite length, and so by compactness infinite length, in what a sentence allows";
-const SIZES =
-  "what has models of every finite size has by compactness an infinite one, which no sentence can rule out";
+  "by compactness, a sentence that allows descending chains of every finite length also allows infinite ones";
+const SIZES = "by compactness, a sentence with finite models of every size also has infinite ones";
 const SKOLEM =
   "by the theorems of Löwenheim and Skolem a sentence with an infinite model has models of every infinite size";
 
@@ -36,13 +34,17 @@ const FOUNDED = {
   instead: "on finite domains it says as much as `acyclic`: write `acyclic up to 5`",
   approximate: null,
 };
-const COUNTED = { reason: SKOLEM, instead: "ask `check-finite T` whether T has finite models", approximate: null };
+const COUNTED = {
+  reason: SKOLEM,
+  instead: "ask `check-finite T` whether T has finite models",
+  approximate: null,
+};
 
 export const inexpressibles: readonly Inexpressible[] = [
   {
     word: "acyclic",
     reason:
-      "cycles may be longer than any number that a sentence can count to: by compactness, what is true whenever there is no cycle is true with some long cycle",
+      "by compactness, a sentence that is true whenever there is no cycle is also true of some long cycle",
     instead: "write `acyclic up to 5`: no cycle of at most 5 steps",
     approximate: (term, steps) => forall("x", not(termFormula(withinSteps(term, steps), "x", "x"))),
   },
@@ -89,7 +91,8 @@ export const inexpressibles: readonly Inexpressible[] = [
   { word: "uncountable", ...COUNTED },
   {
     word: "dedekind-complete",
-    reason: "it is about all sets of elements, and by the theorems of Löwenheim and Skolem a sentence true of the real line is true of a countable order",
+    reason:
+      "it is about all sets of elements, and by the theorems of Löwenheim and Skolem a sentence true of the real line is true of a countable order",
     instead: "say it of the sets that a formula defines, one axiom for each formula",
     approximate: null,
   },
@@ -109,7 +112,10 @@ export function findInexpressible(word: string): Inexpressible | undefined {
 
 /** Names with more than one meaning in the trade, and what each is called here. */
 export const ambiguousProperties: ReadonlyMap<string, string> = new Map([
-  ["total", "`right-serial` (every element is related to some) or `connex` (of two elements, one is related to the other)"],
+  [
+    "total",
+    "`right-serial` (every element is related to some) or `connex` (of two elements, one is related to the other)",
+  ],
   ["complete", "`connex`, or `semi-connex` where an element need not be related to itself"],
   ["weak-order", "`strict-weak-order` or `total-preorder`"],
   ["directed", "`up-directed` (any two elements) or `confluent` (any two that one element is related to)"],
@@ -119,7 +125,6 @@ export const ambiguousProperties: ReadonlyMap<string, string> = new Map([
   ["intransitive", "`antitransitive`, or `¬transitive`"],
   ["nontransitive", "`¬transitive`"],
   ["cyclic", "`circular`, or `¬(acyclic up to n)`"],
-  ["regular", "`difunctional`"],
   ["convergent", "`confluent` or `up-directed`"],
   ["linear", "`linear-order`, `strict-linear-order`, `connex` or `semi-connex`"],
 ]);

@@ -64,6 +64,12 @@ const SINGLE = new Map(
     .map(([text, kind]) => [text.charCodeAt(0), { text, kind }] as const),
 );
 
+/** How many UTF-16 units at the beginning of a text are one word; 0 when it begins with none. */
+export function wordLength(text: string): number {
+  WORD.lastIndex = 0;
+  return WORD.exec(text)?.[0].length ?? 0;
+}
+
 /** Whether the word is a spelling of a sign, such as `forall`. */
 export function isSignWord(word: string): boolean {
   return wordKinds.has(word);

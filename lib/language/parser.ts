@@ -1,7 +1,7 @@
 /** Cell text in, statements or mistakes out. */
 import type { Formula, Variable } from "../logic/formula.ts";
 import type { Diagnostic } from "./diagnostics.ts";
-import { readFormula } from "./formulas.ts";
+import { readFormula, settleFormula } from "./formulas.ts";
 import { helpOf, laterStatements, listWords, optionHelp, statementHelp, statementList } from "./help.ts";
 import type { Token } from "./lexer.ts";
 import { findMixedRelation } from "./mixing.ts";
@@ -186,7 +186,7 @@ export function parseFormula(text: string, scope: Scope, options: FormulaOptions
   try {
     const reading = readFormula(reader);
     if (!reader.at("end")) reader.failExpected("an operator or the end of the formula");
-    formula = reading.formula;
+    formula = settleFormula(reader, reading)?.formula ?? null;
     const free: readonly Variable[] = [...reading.free.keys()].sort();
     if (free.length > 0 && options.freeVariables !== true)
       reader.report(

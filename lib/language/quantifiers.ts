@@ -1,6 +1,7 @@
 /** The lists of variables after quantifiers: `∀x,y,z`, `∀x y z`, `∀xyz`, and where they stop. */
 import { readRun, restOfWord, type Segment, type Token } from "./lexer.ts";
 import { isKeptWord, isVariable } from "./names.ts";
+import { isPropertyAhead } from "./property-atoms.ts";
 import { quote, type Reader } from "./reader.ts";
 
 /** The variables after a quantifier, each once; a repeated one is reported. */
@@ -38,7 +39,7 @@ function readRunAhead(reader: Reader, inList: boolean): readonly Segment[] {
   const word = reader.peek();
   if (word.kind !== "word") return [];
   if (word.group && !isVariable(word.text)) return [];
-  if (reader.names.has(word.text) || isKeptWord(word.text)) return [];
+  if (reader.names.has(word.text) || isKeptWord(word.text) || isPropertyAhead(reader, word)) return [];
   const { segments, offsets } = word.group
     ? { segments: [word], offsets: [0, word.end - word.start] }
     : readRun(reader.source, word, 0);

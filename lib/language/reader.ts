@@ -90,11 +90,11 @@ export class Reader {
     return this.#tokens[Math.min(this.#index + count, this.#tokens.length - 1)]!;
   }
 
-  /** The token after the bracket that closes the next token, which opens one; null if none closes it. */
-  afterGroup(): Token | null {
+  /** The bracket that closes the next token, which opens one, and the token after it; null if none closes it. */
+  groupAhead(): { readonly close: Token; readonly after: Token } | null {
     this.#closers ??= matchBrackets(this.#tokens);
-    const close = this.#closers.get(this.#index);
-    return close === undefined ? null : this.#tokens[close + 1]!;
+    const at = this.#closers.get(this.#index);
+    return at === undefined ? null : { close: this.#tokens[at]!, after: this.#tokens[at + 1]! };
   }
 
   /** The last token that was read. */

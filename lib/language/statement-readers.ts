@@ -4,7 +4,7 @@
  */
 import type { RelationSymbol, Variable } from "../logic/formula.ts";
 import { LARGEST_DOMAIN } from "../logic/structure-definition.ts";
-import { readClaim, readConclusion } from "./claims.ts";
+import { readClaim, readConclusion, relationsAbout } from "./claims.ts";
 import { readClosed, readOpen } from "./formulas.ts";
 import { normalFormHelp } from "./help.ts";
 import { isRelationSign, type Token } from "./lexer.ts";
@@ -279,7 +279,10 @@ function readDefinition(
       if (reader.at("end") && parameters === null) reader.failExpected("a theory, a structure or a formula");
       const alternative = (free: readonly Variable[]) =>
         `add parameters: \`define ${name}(${[...(parameters ?? []), ...free].join(", ")}) := …\``;
-      const body = readClosed(reader, `the definition of ${quote(name)}`, parameters ?? [], alternative);
+      const body = readClosed(reader, `the definition of ${quote(name)}`, {
+        parameters: parameters ?? [],
+        alternative,
+      });
       return body === null ? null : { kind, name, parameters: parameters ?? [], body: body.formula };
     }
     case "relation":
@@ -363,7 +366,7 @@ function readDerive(reader: Reader): StatementBody | null {
   if (reader.at("does-not-entail"))
     reader.failExpected("`⊨`", "write `claim T ⊭ φ`, or `derive T ⊨ φ`: it gives the countermodel");
   reader.expect("entails");
-  const conclusion = readConclusion(reader);
+  const conclusion = readConclusion(reader, relationsAbout(premises));
   const options = readOptions(reader);
   return premises === null || conclusion === null ? null : { kind: "derive", premises, conclusion, options };
 }
@@ -462,7 +465,7 @@ function readForm(reader: Reader): NormalFormName {
 function readWrite(reader: Reader): StatementBody | null {
   const theory = readTheory(reader);
   const asks = reader.accept("entails") !== null;
-  const conclusion = asks ? readConclusion(reader) : null;
+  const conclusion = asks ? readConclusion(reader, relationsAbout(theory)) : null;
   if (reader.at("does-not-entail"))
     reader.failExpected("`⊨`", "what is written for `T ⊨ φ` settles `T ⊭ φ` too");
   reader.expectWord("as", "write `write T as SMT-LIB`");

@@ -1,6 +1,7 @@
 /** Which kind of expression comes next, where several may. */
 import type { Token } from "./lexer.ts";
 import { isKeptWord, isVariable } from "./names.ts";
+import { isPropertyWord } from "./property-atoms.ts";
 import type { Reader } from "./reader.ts";
 
 /** `relation`: the bare name of one; `unknown`: a bare name that is unknown, or damaged and of no known kind. */
@@ -16,6 +17,8 @@ export function expressionAhead(reader: Reader): ExpressionKind {
   const after = reader.peekAfter(at + 1);
   if (token.kind === "open-brace") return "theory";
   if (token.kind === "relation-sign") return at === 0 && ends(after) ? "relation" : "formula";
+  if (token.kind === "word" && isPropertyWord(token.text) && reader.names.find(token.text) === null)
+    return "formula";
   if (token.kind !== "word" || token.group) return token.group ? kindOfName(reader, token, at) : "formula";
   if (token.text === "points") return "structure";
   if ((token.text === "converse" || token.text === "complement") && after.kind === "open") return "theory";

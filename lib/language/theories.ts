@@ -1,5 +1,5 @@
 /** Theory expressions: literals, and what is made of theories with `+`, `-`, `replacing` and the dualities. */
-import type { Formula } from "../logic/formula.ts";
+import type { Formula, RelationSymbol } from "../logic/formula.ts";
 import {
   type Axiom,
   checkedTheory,
@@ -11,14 +11,16 @@ import {
   type Theory,
   type TheoryProblem,
   type TheoryResult,
+  theorySignature,
   withoutAxiom,
 } from "../logic/theory.ts";
 import type { Place } from "./diagnostics.ts";
-import { readClosed } from "./formulas.ts";
+import { readClosed, readUnsettled, type UnsettledFormula } from "./formulas.ts";
 import { readLabel, reportLabel } from "./labels.ts";
 import type { Token } from "./lexer.ts";
 import { measureTheory } from "./measure.ts";
 import { isStatementWord, MAX_NESTING, quote, type Reader, Unreadable } from "./reader.ts";
+import { declaredIn, findSoleRelation, putRelation } from "./sole-relation.ts";
 import type { NamedTheory } from "./statements.ts";
 import { countOf, kindText } from "./wording.ts";
 
@@ -38,11 +40,11 @@ export function readTheory(reader: Reader): NamedTheory | null {
 }
 
 function readExpression(reader: Reader): TheoryReading {
-  let left = readPrimary(reader);
+  let left = readPrimary(reader, []);
   for (;;) {
     if (reader.accept("plus") !== null) {
       reader.crossLine();
-      left = join(reader, left, readPrimary(reader));
+      left = join(reader, left, readPrimary(reader, relationsIn(left)));
     } else if (reader.accept("minus") !== null) {
       reader.crossLine();
       const label = readLabel(reader, "`-`");
@@ -59,7 +61,7 @@ function readReplacement(reader: Reader, theory: TheoryReading): TheoryReading {
   const label = readLabel(reader, "`replacing`");
   reader.expectWord("by", `write \`replacing ${label.text} by φ\``);
   reader.crossLine();
-  const axiom = readClosed(reader, `the axiom ${quote(label.text)}`);
+  const axiom = readClosed(reader, `the axiom ${quote(label.text)}`, { about: relationsIn(theory) });
   const changed = change(
     reader,
     theory,
@@ -70,8 +72,14 @@ function readReplacement(reader: Reader, theory: TheoryReading): TheoryReading {
   return axiom === null ? { ...changed, theory: null } : changed;
 }
 
-function readPrimary(reader: Reader): TheoryReading {
-  let reading = readOperand(reader);
+/** The relations that occur in a theory; null when a mistake hides them. */
+function relationsIn({ theory }: TheoryReading): readonly RelationSymbol[] | null {
+  return theory === null ? null : theorySignature(theory).relations;
+}
+
+/** @param about the relations of the theory that this one is joined to, for bare properties */
+function readPrimary(reader: Reader, about: readonly RelationSymbol[] | null): TheoryReading {
+  let reading = readOperand(reader, about);
   while (reader.at("dot")) {
     reader.next();
     const label = readLabel(reader, "`.`");
@@ -82,9 +90,9 @@ function readPrimary(reader: Reader): TheoryReading {
   return reading;
 }
 
-function readOperand(reader: Reader): TheoryReading {
+function readOperand(reader: Reader, about: readonly RelationSymbol[] | null): TheoryReading {
   const token = reader.peek();
-  if (token.kind === "open-brace") return readLiteral(reader);
+  if (token.kind === "open-brace") return readLiteral(reader, about);
   if (token.kind === "open") return readBracketed(reader);
   if (token.kind === "word") {
     const isCall = reader.peekAfter(1).kind === "open";
@@ -186,11 +194,11 @@ function readInside(reader: Reader, open: Token, mark: Reader["mark"]): TheoryRe
 
 interface AxiomReading {
   readonly label: Token | null;
-  readonly formula: Formula | null;
-  readonly text: string;
+  /** Null after a mistake. Bare properties have the stand-in. */
+  readonly axiom: UnsettledFormula | null;
 }
 
-function readLiteral(reader: Reader): TheoryReading {
+function readLiteral(reader: Reader, about: readonly RelationSymbol[] | null): TheoryReading {
   const mistakes = reader.diagnostics.length;
   const open = reader.next();
   const { level, inTheory } = reader;
@@ -206,11 +214,31 @@ function readLiteral(reader: Reader): TheoryReading {
   const text =
     axioms.length === 0
       ? "{}"
-      : `{ ${axioms.map(({ label, text: axiom }) => (label === null ? axiom : `${label.text}: ${axiom}`)).join("; ")} }`;
+      : `{ ${axioms.map(({ label, axiom }) => (label === null ? "" : `${label.text}: `) + (axiom?.text ?? "")).join("; ")} }`;
   const repeated = reportRepeatedLabels(reader, axioms);
   if (repeated || reader.diagnostics.length > mistakes) return { text, theory: null, ...place };
-  const theory = { axioms: labelled(axioms), fallback: reader.names.sole };
+  const formulas = settleAxioms(
+    reader,
+    axioms.map(({ axiom }) => axiom!),
+    about,
+  );
+  if (formulas === null) return { text, theory: null, ...place };
+  const theory = { axioms: labelled(axioms, formulas), fallback: reader.names.sole };
   return { text, theory: settle(reader, place, checkedTheory(theory)), ...place };
+}
+
+/** Says bare properties of the sole relation of the theory; null when that is not told. */
+function settleAxioms(
+  reader: Reader,
+  axioms: readonly UnsettledFormula[],
+  about: readonly RelationSymbol[] | null,
+): readonly Formula[] | null {
+  const bare = axioms.flatMap((axiom) => axiom.bare);
+  const formulas = axioms.map(({ formula }) => formula);
+  if (bare.length === 0) return formulas;
+  if (about === null) return null;
+  const relation = findSoleRelation(reader, bare, [...about, ...formulas.flatMap(declaredIn)]);
+  return relation === null ? null : formulas.map((formula) => putRelation(formula, relation));
 }
 
 function readAxioms(reader: Reader, open: Token, level: number): readonly AxiomReading[] {
@@ -264,7 +292,7 @@ function readAxiom(reader: Reader, mark: Reader["mark"], level: number, before: 
       reader.crossLine();
     }
     refuseTheoryAsAxiom(reader);
-    const axiom = readClosed(
+    const axiom = readUnsettled(
       reader,
       label === null ? `axiom ${before + 1} of the theory` : `the axiom ${quote(label.text)}`,
     );
@@ -273,12 +301,12 @@ function readAxiom(reader: Reader, mark: Reader["mark"], level: number, before: 
         "an operator, `;` or `}`",
         reader.at("comma") ? "axioms stand apart by `;` or on lines of their own" : null,
       );
-    return { label, formula: axiom?.formula ?? null, text: axiom?.text ?? "" };
+    return { label, axiom };
   } catch (error) {
     if (!(error instanceof Unreadable)) throw error;
     reader.level = level;
     reader.skipAxiom(mark);
-    return { label, formula: null, text: "" };
+    return { label, axiom: null };
   }
 }
 
@@ -315,14 +343,15 @@ function reportRepeatedLabels(reader: Reader, axioms: readonly AxiomReading[]): 
 }
 
 /** Gives labels to the axioms that have none: a1, a2, …, passing over those that the user gave. */
-function labelled(readings: readonly AxiomReading[]): readonly Axiom[] {
+function labelled(readings: readonly AxiomReading[], formulas: readonly Formula[]): readonly Axiom[] {
   const taken = new Set(readings.map(({ label }) => label?.text));
   let number = 0;
-  return readings.map(({ label, formula }) => {
-    if (label !== null) return { label: label.text, formula: formula!, named: true };
+  return readings.map(({ label }, index) => {
+    const formula = formulas[index]!;
+    if (label !== null) return { label: label.text, formula, named: true };
     do number += 1;
     while (taken.has(`a${number}`));
-    return { label: `a${number}`, formula: formula!, named: false };
+    return { label: `a${number}`, formula, named: false };
   });
 }
 

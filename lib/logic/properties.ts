@@ -2,7 +2,15 @@
  * Named properties of two-place relations: looked up by name, applied to whatever relates two elements. The tables
  * are in `property-axioms.ts` (properties by a sentence of their own) and `property-classes.ts` (conjunctions).
  */
-import { and, type Formula, type RelationSymbol, type Variable } from "./formula.ts";
+import {
+  and,
+  atom,
+  type Formula,
+  type RelationSymbol,
+  type Variable,
+  variablesOf,
+  visit,
+} from "./formula.ts";
 import { propertyAxioms } from "./property-axioms.ts";
 import { propertyClasses } from "./property-classes.ts";
 import { type RelationTerm, termFormula } from "./terms.ts";
@@ -53,12 +61,25 @@ export function findProperty(name: string): NamedProperty | undefined {
 /** All names and synonyms, sorted. */
 export const propertyNames: readonly string[] = [...byName.keys()].sort();
 
-/** The sentence that says a property of what a term relates. */
-export function propertyFormula(property: NamedProperty, term: RelationTerm): Formula {
-  return property.formulaOf((x, y) => termFormula(term, x, y));
-}
-
 /** The sentence that says a property of a relation of two places. */
 export function propertyOf(property: NamedProperty, relation: RelationSymbol): Formula {
-  return propertyFormula(property, { kind: "relation", relation });
+  return property.formulaOf((x, y) => atom(relation, x, y));
+}
+
+const some: RelationSymbol = { name: "R", places: 2, infix: false };
+
+/** The sentence that says a property of what a term relates. */
+export function propertyFormula(property: NamedProperty, term: RelationTerm): Formula {
+  if (term.kind === "relation") return propertyOf(property, term.relation);
+  const own = new Set(variablesOf(propertyOf(property, some)));
+  return property.formulaOf((x, y) => termFormula(term, x, y, own));
+}
+
+/** How often at most the sentence of a property speaks of its relation. */
+export function propertyUses(property: NamedProperty): number {
+  let uses = 0;
+  visit(propertyOf(property, some), (part) => {
+    if (part.kind === "atom") uses += 1;
+  });
+  return uses;
 }

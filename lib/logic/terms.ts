@@ -27,8 +27,22 @@ export type RelationTerm =
     }
   | { readonly kind: "id" | "full" | "none" };
 
-/** The formula that says that a term relates x to y. Bound variables are taken from neither. */
-export function termFormula(term: RelationTerm, x: Variable, y: Variable): Formula {
+const NOTHING: ReadonlySet<Variable> = new Set();
+/** Variables for what is between two elements, in the order of preference. */
+const BETWEEN: readonly Variable[] = ["z", "w", "u", "v", "t", "s", "r", "q", "p"];
+
+/**
+ * The formula that says that a term relates x to y. Its bound variables are neither of them; those inside one another
+ * are used again as soon as they may be, so that a composition of any length needs three.
+ * @param avoid what compositions should not bind either, so that the formula reads well inside another
+ */
+export function termFormula(
+  term: RelationTerm,
+  x: Variable,
+  y: Variable,
+  avoid: ReadonlySet<Variable> = NOTHING,
+): Formula {
+  const formulaOf = (part: RelationTerm, from: Variable, to: Variable) => termFormula(part, from, to, avoid);
   switch (term.kind) {
     case "relation":
       return atom(term.relation, x, y);
@@ -41,18 +55,18 @@ export function termFormula(term: RelationTerm, x: Variable, y: Variable): Formu
         ]),
       );
     case "converse":
-      return termFormula(term.of, y, x);
+      return formulaOf(term.of, y, x);
     case "complement":
-      return not(termFormula(term.of, x, y));
+      return not(formulaOf(term.of, x, y));
     case "composition": {
-      const taken = new Set<Variable>([x, y]);
-      const middle = ["z", "w", "u", "v"].find((name) => !taken.has(name)) ?? freshVariable("z", taken);
-      return exists(middle, and(termFormula(term.left, x, middle), termFormula(term.right, middle, y)));
+      const taken = new Set<Variable>([x, y, ...avoid]);
+      const middle = BETWEEN.find((name) => !taken.has(name)) ?? freshVariable("z", taken);
+      return exists(middle, and(formulaOf(term.left, x, middle), formulaOf(term.right, middle, y)));
     }
     case "union":
-      return or(termFormula(term.left, x, y), termFormula(term.right, x, y));
+      return or(formulaOf(term.left, x, y), formulaOf(term.right, x, y));
     case "intersection":
-      return and(termFormula(term.left, x, y), termFormula(term.right, x, y));
+      return and(formulaOf(term.left, x, y), formulaOf(term.right, x, y));
     case "id":
       return equal(x, y);
     case "full":
