@@ -94,6 +94,9 @@ function valueBlocks(value: NormalFormValue): readonly Block[] {
     case "clauses":
       return [
         clausesBlock(value.clauses),
+        ...(value.clauses.clauses.length === 0
+          ? []
+          : [note("Each clause is said of all values of its variables.")]),
         ...functionsBlocks(value.clauses.functions),
         ...definitionsBlocks(value.clauses.definitions),
       ];

@@ -4,7 +4,8 @@
  */
 import { printFormula, printTerm } from "../../lib/language/printer.ts";
 import type { Block, Inline, TableBlock } from "./blocks.ts";
-import { visible } from "./text.ts";
+import { displayWidth, visible } from "./text.ts";
+import { inlineToText } from "./to-text.ts";
 
 /** Rows above which a table may break across pages. */
 const LONG_TABLE = 24;
@@ -123,13 +124,7 @@ function blockToLatex(block: Block): string {
 }
 
 function tableToLatex(table: TableBlock): string {
-  const last = table.head.length - 1;
-  const columns =
-    table.look === "numbers"
-      ? "r".repeat(last + 1)
-      : table.look === "matrix"
-        ? `c@{\\quad}${"c".repeat(last)}`
-        : `${"l".repeat(last)}p{${last > 2 ? "0.4" : "0.65"}\\linewidth}`;
+  const columns = columnsOf(table);
   const row = (cells: readonly string[]) => `${cells.join(" & ")} \\\\`;
   const head = row(table.head.map(escapeLatex));
   const rows = table.rows.map((cells) => row(cells.map(inlineToLatex)));
@@ -147,4 +142,20 @@ function tableToLatex(table: TableBlock): string {
     ...rows,
     "\\bottomrule\n\\end{tabular}\n\\end{center}",
   ].join("\n");
+}
+
+/** Columns of a cell of prose, as plain text, beyond which it is broken into lines. */
+const CELL_WIDTH = 38;
+
+/** The column letters; long prose gets paragraphs. */
+function columnsOf({ look, head, rows }: TableBlock): string {
+  const last = head.length - 1;
+  if (look === "numbers") return "r".repeat(last + 1);
+  if (look === "matrix") return `c@{\\quad}${"c".repeat(last)}`;
+  const isLong = head.map(
+    (_, column) => column < last && rows.some((row) => displayWidth(inlineToText(row[column]!)) > CELL_WIDTH),
+  );
+  const before = isLong.map((long) => (long && last > 0 ? "p{0.3\\linewidth}" : "l"));
+  const rest = last > 2 || isLong.includes(true) ? "0.4" : "0.65";
+  return `${before.slice(0, last).join("")}p{${rest}\\linewidth}`;
 }

@@ -57,15 +57,24 @@ function lineToText(parts: readonly Inline[]): string {
   return isCopied ? text : wrap(text, WIDTH).join("\n");
 }
 
-/** Columns set under each other, a rule under the head; a long last column goes on below itself. */
+/** Columns that a cell of prose before the last one may take. */
+const CELL_WIDTH = 38;
+
+/** Columns set under each other, a rule under the head; long cells of prose go on below themselves. */
 function tableToText(table: TableBlock): string {
+  const isProse = table.look === "prose";
   const head = table.head.map(visible);
-  const rows = table.rows.map((row) => row.map(inlineToText));
   const last = head.length - 1;
-  const widths = head.map((title, column) => widestOf([title, ...rows.map((row) => row[column] ?? "")]));
-  const before = widths.slice(0, last).reduce((sum, width) => sum + width + 2, 0);
-  const lastWidth = Math.max(24, WIDTH - before);
+  const rows = table.rows.map((row) =>
+    row.map((cell, column): readonly string[] => {
+      const text = inlineToText(cell);
+      return isProse && column < last ? wrap(text, CELL_WIDTH) : [text];
+    }),
+  );
+  const widths = head.map((title, column) => widestOf([title, ...rows.flatMap((row) => row[column] ?? [])]));
   const gap = table.look === "matrix" ? " " : "  ";
+  const before = widths.slice(0, last).reduce((sum, width) => sum + width + gap.length, 0);
+  const lastWidth = Math.max(24, WIDTH - before);
   const set = (cells: readonly string[]) =>
     cells
       .map((cell, column) => {
@@ -76,10 +85,13 @@ function tableToText(table: TableBlock): string {
       .trimEnd();
   const lines: string[] = [];
   for (const row of rows) {
-    const pieces = table.look === "prose" ? wrap(row[last]!, lastWidth) : [row[last]!];
-    lines.push(set([...row.slice(0, last), pieces[0]!]));
-    const indent = " ".repeat(widths.slice(0, last).reduce((sum, width) => sum + width + gap.length, 0) + 2);
-    for (const more of pieces.slice(1)) lines.push(indent + more);
+    const cells = row.map((cell, column) =>
+      isProse && column === last
+        ? wrap(cell[0]!, lastWidth).map((text, at) => (at === 0 ? text : `  ${text}`))
+        : cell,
+    );
+    const height = Math.max(...cells.map((cell) => cell.length));
+    for (let at = 0; at < height; at += 1) lines.push(set(cells.map((cell) => cell[at] ?? "")));
   }
   const headLine = set(head);
   lines.unshift(headLine, "─".repeat(widestOf([headLine, ...lines])));
