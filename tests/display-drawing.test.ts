@@ -5,7 +5,9 @@ import { drawStructure, prepareDrawing } from "../kernel/display/drawing.ts";
 import {
   coveringPairs,
   isAcyclic,
+  isReflexive,
   isSymmetric,
+  isTransitive,
   type Matrix,
   matrixOf,
   orderKind,
@@ -127,16 +129,20 @@ describe("pictures", () => {
         const pairs = numbered(size, bits);
         const matrix = matrixOf(size, pairs);
         const { picture, points, paths, heads } = draw(structureOf(size, { R: pairs }));
+        for (const [i, j] of pairs) expect(picture.alt).toContain(`(${i},${j})`);
+        // Preorders merge points and are tested with the other ways to draw.
+        if (isReflexive(matrix) && isTransitive(matrix) && orderKind(matrix) === null) continue;
         expect(points).toBe(size);
         const lines = pairs.filter(([i, j]) => i! < j! || !matrix[j! - 1]![i! - 1] || i === j).length;
-        if (isSymmetric(matrix)) expect([paths, heads]).toEqual([lines, 0]);
+        if (isReflexive(matrix) && isTransitive(matrix) && isSymmetric(matrix))
+          expect([paths, heads]).toEqual([0, 0]);
+        else if (isSymmetric(matrix)) expect([paths, heads]).toEqual([lines, 0]);
         else if (orderKind(matrix) !== null) {
           expect([paths, heads]).toEqual([coveringPairs(matrix).length, 0]);
           expect(picture.caption).toContain("R by upward lines");
           const isReduced = coveringPairs(matrix).length < pairs.filter(([i, j]) => i !== j).length;
           expect(picture.caption.includes("transitive pairs left out")).toBe(isReduced);
         } else expect([paths, heads]).toEqual([lines, pairs.length]);
-        for (const [i, j] of pairs) expect(picture.alt).toContain(`(${i},${j})`);
       }
   });
 
@@ -201,7 +207,7 @@ describe("pictures", () => {
   });
 
   it("are not made of what has no pairs to draw, too many points or too many relations", () => {
-    expect(drawStructure(structureOf(13, { R: [[1, 2]] }))).toBeNull();
+    expect(drawStructure(structureOf(21, { R: [[1, 2]] }))).toBeNull();
     expect(drawStructure(structureOf(3, { P: [[1]] }))).toBeNull();
     const names = ["A", "B", "C", "D", "E"].map((name) => [name, [[1, 2]]]);
     expect(drawStructure(structureOf(3, Object.fromEntries(names)))).toBeNull();

@@ -34,7 +34,7 @@ const POINTS_PER_INCH = 72;
 
 /**
  * Layers bottom to top, every arc going upwards.
- * @param arcs pairs counted from 0 that form no cycle but loops
+ * @param arcs pairs counted from 0 that form no cycle
  * @param ends lines with heads get more room
  * @returns places of the points and the arcs' curves in the order given, y growing downwards
  * @throws Error when {@link prepareLayout} has not been awaited

@@ -88,8 +88,8 @@ export const styles: readonly Style[] = [
   },
   {
     name: "upward",
-    // More heads at one point lie on each other when all of them come from below.
-    fits: (relation) => isAcyclic(relation) && mostPredecessors(relation) <= 3,
+    // Loops would meet lines that pass by, and more heads that all come from below would lie on each other.
+    fits: (relation) => !hasLoops(relation) && isAcyclic(relation) && mostPredecessors(relation) <= 3,
     plan(relation, labels) {
       const extents = labels.map(extentOf);
       const { places, curves } = layOutLayers(extents, pairsOf(relation), "heads");
