@@ -37,19 +37,26 @@ export function toPrenexForm(formula: Formula, limits: Limits, recorder: StepRec
   const [asGiven, inwards] = [bestPrefix(formula), bestPrefix(miniscoped)];
   const isBetter = alternationsOf(inwards) < alternationsOf(asGiven);
   const start = isBetter ? toMiniscopedForm(formula, limits, recorder) : formula;
-  const best = isBetter ? inwards : asGiven;
-  if (total(best) > limits.levels) throw new FormTooLarge("levels", limits.levels);
-  let matrix = renameApart(start, recorder);
+  return pullOut(start, isBetter ? inwards : asGiven, limits, recorder);
+}
+
+/**
+ * Pulls quantifiers out in the order that {@link prefixFrom} gives for the formula.
+ * @throws FormTooLarge
+ */
+export function pullOut(formula: Formula, order: Prefix, limits: Limits, recorder: StepRecorder): Formula {
+  if (total(order) > limits.levels) throw new FormTooLarge("levels", limits.levels);
+  let matrix = renameApart(formula, recorder);
   const prefix: { kind: QuantifierKind; variables: readonly Variable[] }[] = [];
   const around = (part: Formula) =>
     prefix.reduceRight((inner, { kind, variables }) => quantifyAll(kind, variables, inner), part);
-  let kind = best.first;
-  // A block that only goes on with quantifiers that stand in front is no step.
-  for (const _ of best.counts) {
+  let kind = order.first;
+  for (const _ of order.counts) {
     const before = matrix;
     const taken = takeOff(kind, matrix);
     matrix = taken.rest as Formula;
     prefix.push({ kind, variables: taken.variables });
+    // Quantifiers that stand in front already are not moved.
     if (!isInFront(kind, before, taken.variables.length))
       recorder.noteFormula("quantifiers moved out", () => around(matrix));
     kind = otherKind(kind);
