@@ -30,7 +30,7 @@ const STEPS_BEFORE = 50;
 /** … which together are at most one part of so many of what there is. */
 const SHARE_BEFORE = 50;
 /** Steps for each group of symmetries and alternative beyond the sizes that are searched completely. */
-const STEPS_BEYOND = 500;
+const STEPS_BEYOND = 200;
 /** What is kept of the budget for these sizes: one part of so many. */
 const SHARE_BEYOND = 8;
 
