@@ -86,7 +86,15 @@ const conclusion = { text: "serial", formula: serial };
 const entails: Claim = { kind: "entails", premises: order, conclusion };
 
 function searched(rest: Partial<Search> = {}): Search {
-  return { sought: "a countermodel", noneUpTo: 8, foundAt: null, ended: null, endedAt: null, ...rest };
+  return {
+    sought: "a countermodel",
+    noneUpTo: 8,
+    foundAt: null,
+    ended: null,
+    endedAt: null,
+    symmetricUpTo: null,
+    ...rest,
+  };
 }
 
 function claimAnswer(rest: Partial<ClaimAnswer>): ClaimAnswer {
@@ -145,6 +153,21 @@ const cases: readonly Case[] = [
     answer: claimAnswer({ searches: [searched({ noneUpTo: 6, ended: "budget", endedAt: 7 })] }),
     summary: "open: no countermodel on 1 to 6 points; the budget of 5,000 steps ended at 7 points",
     data: { claim: "entails", countermodelSize: null, noCountermodelUpTo: 6 },
+  },
+  {
+    name: "conjecture, symmetric structures looked at",
+    statement: stated("conjecture", { claim: entails }),
+    answer: claimAnswer({ searches: [searched({ symmetricUpTo: 13 })] }),
+    summary:
+      "open: no countermodel on 1 to 8 points; none met among symmetric ones up to 13; 12,345 of 200,000 steps",
+    data: { claim: "entails", countermodelSize: null, noCountermodelUpTo: 8 },
+  },
+  {
+    name: "derive, refuted beyond the sizes that were searched in full",
+    statement: stated("derive", { premises: order, conclusion }),
+    answer: found("countermodel", chain, { searches: [searched({ noneUpTo: 1, foundAt: 3 })] }),
+    summary: "fails: a countermodel on 3 points (checked); none on 1 point (complete search)",
+    data: { claim: "entails", countermodelSize: 3, noCountermodelUpTo: 1 },
   },
   {
     name: "conjecture, interrupted at once",
@@ -447,6 +470,10 @@ const cases: readonly Case[] = [
   },
 ];
 
+function caseNamed(name: string): Case {
+  return cases.find((one) => one.name === name)!;
+}
+
 describe("answers", () => {
   it.each(cases)("$name", ({ statement, answer, summary, data }) => {
     const shown = showAnswer(statement, answer);
@@ -462,24 +489,32 @@ describe("answers", () => {
   });
 
   it("gives a structure in plain text as a table of 0 and 1 and as text of a cell", () => {
-    const { data } = showAnswer(cases[0]!.statement, cases[0]!.answer);
+    const { data } = showAnswer(caseNamed("derive, refuted").statement, caseNamed("derive, refuted").answer);
     const plain = data["text/plain"]!;
     expect(plain).toContain("points 3 where R is { (1,2), (1,3), (2,3) }");
     expect(plain).toContain("R 1 2 3\n───────\n1 0 1 1\n2 0 0 1\n3 0 0 0");
   });
 
   it("gives relations of one and three places as lists", () => {
-    const plain = showAnswer(cases[8]!.statement, cases[8]!.answer).data["text/plain"]!;
+    const plain = showAnswer(
+      caseNamed("check-finite, smallest model").statement,
+      caseNamed("check-finite, smallest model").answer,
+    ).data["text/plain"]!;
     expect(plain).toContain("Between is { (1,2,3), (3,2,1) }");
     expect(plain.replace(/\s+/g, " ")).toContain("Deep is { (2), (4) }");
   });
 
   it("says when a question is asked without identity, and only then", () => {
-    const without = showAnswer(cases[1]!.statement, cases[1]!.answer).data;
+    const without = showAnswer(
+      caseNamed("conjecture, all sizes searched").statement,
+      caseNamed("conjecture, all sizes searched").answer,
+    ).data;
     expect(without["text/plain"]).toContain("without identity");
     expect(without["text/html"]).toContain("without identity");
     const withIdentity = stated("conjecture", { claim: { ...entails, premises: chains } });
-    expect(showAnswer(withIdentity, cases[1]!.answer).data["text/plain"]).not.toContain("without identity");
+    expect(
+      showAnswer(withIdentity, caseNamed("conjecture, all sizes searched").answer).data["text/plain"],
+    ).not.toContain("without identity");
   });
 
   it("says `checked` only where there is evidence", () => {
@@ -496,7 +531,10 @@ describe("answers", () => {
       (_, bits) =>
       structureOf(3, [R, [[1, 2], [2, 3], [3, 1], [1, 1], [2, 2]].filter((__, bit) => (bits >> bit) & 1)]), // biome-ignore format: a table
     );
-    const { data } = showAnswer(cases[11]!.statement, { ...cases[11]!.answer, models } as Answer);
+    const { data } = showAnswer(caseNamed("models, all").statement, {
+      ...caseNamed("models, all").answer,
+      models,
+    } as Answer);
     checkBundle(data);
     const { elements, text } = readMarkup(data["text/html"]!);
     expect(elements.filter(({ name }) => name === "img")).toHaveLength(30);
@@ -513,7 +551,8 @@ describe("answers", () => {
     const pairs = Array.from({ length: 900 }, (_, i) => [Math.floor(i / 30) + 1, (i % 30) + 1]);
     const huge = structureOf(30, [R, pairs]);
     const show = (models: Structure[]) =>
-      showAnswer(cases[11]!.statement, { ...cases[11]!.answer, models } as Answer).data;
+      showAnswer(caseNamed("models, all").statement, { ...caseNamed("models, all").answer, models } as Answer)
+        .data;
     expect(show([huge])["text/plain"]).toContain("R: 900 tuples, not listed");
     const several = show([huge, huge, huge]);
     checkBundle(several);
@@ -525,10 +564,13 @@ describe("answers", () => {
     const around = Array.from({ length: 7 }, (_, i) =>
       [1, 2, 4].map((d) => [i + 1, ((i + d) % 7) + 1]),
     ).flat();
-    const { data } = showAnswer(cases[0]!.statement, found("countermodel", structureOf(7, [R, around])));
+    const { data } = showAnswer(
+      caseNamed("derive, refuted").statement,
+      found("countermodel", structureOf(7, [R, around])),
+    );
     expect(data["text/plain"]).toContain("R holds of (x, y) exactly when y − x modulo 7 is one of 1, 2, 4");
     const other = showAnswer(
-      cases[0]!.statement,
+      caseNamed("derive, refuted").statement,
       found("countermodel", structureOf(7, [R, around.slice(1)])),
     );
     expect(other.data["text/plain"]).not.toContain("modulo");

@@ -76,17 +76,23 @@ function claimReason(statement: Statement, answer: ClaimAnswer, budget: number):
   return `${found}${checked}${fewerText(answer.searches)}`;
 }
 
-/** That the structure found is a smallest one, where the search went through all smaller sizes. */
+/** That the structure found is a smallest one, where the search went through all smaller sizes; else how far it went. */
 function fewerText(searches: readonly Search[]): string {
   const [search] = searches;
   if (searches.length !== 1 || search === undefined || search.foundAt === null || search.foundAt === 1)
     return "";
-  return search.noneUpTo === search.foundAt - 1 ? "; none on fewer (complete search)" : "";
+  if (search.noneUpTo === search.foundAt - 1) return "; none on fewer (complete search)";
+  return search.noneUpTo > 0 ? `; none ${onSizesTo(search.noneUpTo)} (complete search)` : "";
 }
 
 /** What a search without a find has shown: `no countermodel on 1 to 8 points; 12,345 of 200,000 steps`. */
 export function searchText(search: Search, budget: number, steps: number): string {
-  const none = search.noneUpTo > 0 ? `no ${bare(search.sought)} ${onSizesTo(search.noneUpTo)}` : "";
+  const symmetric =
+    search.symmetricUpTo === null
+      ? ""
+      : `; none met among symmetric ones up to ${grouped(search.symmetricUpTo)}`;
+  const none =
+    search.noneUpTo > 0 ? `no ${bare(search.sought)} ${onSizesTo(search.noneUpTo)}${symmetric}` : "";
   if (search.ended === null)
     return none === "" ? `no size was searched for ${search.sought}` : `${none}; ${stepsText(steps, budget)}`;
   const end = endText(search.ended, budget, search.endedAt);
