@@ -3,10 +3,10 @@ import type { Place } from "./diagnostics.ts";
 import { clusters, mistakenSigns, relationSigns, type SignKind, signs } from "./tokens.ts";
 
 /**
- * `word`: a name, label, variable, run of variables or keyword; `number`: begins with a digit; `relation-sign`: a
+ * `raw`: what stands between the braces of `smt-lib { … }`, its tokens being those of another language. `word`: a name, label, variable, run of variables or keyword; `number`: begins with a digit; `relation-sign`: a
  * symbol that may be declared as a relation; `end`: the end of the text, once, last.
  */
-export type TokenKind = SignKind | "word" | "number" | "relation-sign" | "unknown" | "end";
+export type TokenKind = SignKind | "raw" | "word" | "number" | "relation-sign" | "unknown" | "end";
 
 export interface Token extends Place {
   readonly kind: TokenKind;
@@ -111,7 +111,12 @@ export function readTokens(source: string): Token[] {
     }
     const single = SINGLE.get(code);
     if (single !== undefined && source.charCodeAt(at + 1) !== COMBINING_STROKE) {
+      const isForeign = single.kind === "open-brace" && isSmtLib(tokens.at(-1));
       add(single.kind, single.text, at + 1);
+      if (isForeign) {
+        const end = endOfSmtLib(source, at);
+        add("raw", source.slice(at, end), end);
+      }
       continue;
     }
     const word = matchAt(WORD);
@@ -186,6 +191,22 @@ export function readTokens(source: string): Token[] {
     if (relation !== undefined) add("relation-sign", relation, at + command.length);
     else add(signKinds.get(command) ?? "unknown", command, at + command.length);
   }
+}
+
+/** Whether a token is the word `smt-lib`. */
+export function isSmtLib(token: Token | undefined): boolean {
+  return token?.kind === "word" && token.text.toLowerCase() === "smt-lib";
+}
+
+/** What in SMT-LIB text may have braces inside: comments, quoted symbols and strings, closed or not. */
+const SMT_LIB_OPAQUE = /[^;|"{}]+|;[^\n\r]*|\|[^|]*(?:\||$)|"(?:[^"]|"")*(?:"|$)|\{/y;
+
+/** Where the brace stands that closes SMT-LIB text; the end of the source if none does. */
+function endOfSmtLib(source: string, from: number): number {
+  SMT_LIB_OPAQUE.lastIndex = from;
+  let end = from;
+  while (SMT_LIB_OPAQUE.test(source)) end = SMT_LIB_OPAQUE.lastIndex;
+  return end;
 }
 
 /** The name that a word stands for; see {@link Token.text}. */

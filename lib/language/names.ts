@@ -3,7 +3,7 @@ import type { RelationSymbol } from "../logic/formula.ts";
 import { laterStatements, statementHelp } from "./help.ts";
 import { isSignWord } from "./lexer.ts";
 import { nearestName } from "./nearest.ts";
-import { type Definition, relationsIn, type Scope, type Statement, scopeAfter } from "./statements.ts";
+import { type Definition, declare, relationsIn, type Scope, type Statement } from "./statements.ts";
 import { keywords } from "./tokens.ts";
 
 export type NameKind = "relation" | "formula" | "theory" | "structure";
@@ -78,16 +78,20 @@ export class Names {
 
   /** Takes in what a statement adds. */
   add(statement: Statement): void {
-    if (statement.kind === "relation") {
-      this.#declared = scopeAfter(this.#declared, statement);
-      for (const { name } of statement.relations) this.#damaged.delete(name);
-      this.#listRelations();
-    } else if (statement.kind === "define") {
+    if (statement.kind === "relation") this.#declare(statement.relations);
+    else if (statement.kind === "define") {
+      if (statement.declares !== undefined) this.#declare(statement.declares);
       const { name } = statement.definition;
       this.#definitions.set(name, statement.definition);
       this.#damaged.delete(name);
       this.longest = Math.max(this.longest, name.length);
     }
+  }
+
+  #declare(relations: readonly RelationSymbol[]): void {
+    this.#declared = declare(this.#declared, relations);
+    for (const { name } of relations) this.#damaged.delete(name);
+    this.#listRelations();
   }
 
   /** Binds a name by a statement that has a mistake: later uses of it are not mistakes on top of that. */

@@ -55,6 +55,7 @@ export class Reader {
   /** Whether a label at the beginning of a line, `mid: …`, begins an axiom. */
   inTheory = false;
   readonly #tokens: Token[];
+  readonly #rawTokens: readonly Token[];
   #index = 0;
   /** The token at which the statement or axiom begins: no end is seen before it. */
   #fresh = 0;
@@ -72,6 +73,7 @@ export class Reader {
     this.source = source;
     this.names = names;
     this.#tokens = readTokens(source);
+    this.#rawTokens = this.#tokens.filter(({ kind }) => kind === "raw");
   }
 
   // Walking
@@ -408,12 +410,20 @@ export class Reader {
 
   /** The source between two tokens, without comments and with single spaces. */
   excerpt(first: Token, last: Token): string {
-    return withoutComments(this.source.slice(first.start, last.end)).replace(/\s+/gu, " ").trim();
+    return this.statementText(first, last).replace(/\s+/gu, " ").trim();
   }
 
   /** The source between two tokens, without comments; its lines as they are. */
   statementText(first: Token, last: Token): string {
-    return withoutComments(this.source.slice(first.start, last.end));
+    let text = "";
+    let at = first.start;
+    // In SMT-LIB text the sign # begins no comment.
+    for (const { start, end } of this.#rawTokens) {
+      if (start < first.start || end > last.end) continue;
+      text += withoutComments(this.source.slice(at, start)) + this.source.slice(start, end);
+      at = end;
+    }
+    return text + withoutComments(this.source.slice(at, last.end));
   }
 }
 
@@ -455,6 +465,7 @@ export function continuesLine(token: Token): boolean {
   switch (token.kind) {
     case "word":
     case "number":
+    case "raw":
     case "end":
     case "unknown":
       return false;
@@ -471,6 +482,7 @@ export function continuesLine(token: Token): boolean {
 /** A token as messages name what was found. */
 export function describeToken(token: Token): string {
   if (token.kind === "end") return token.text === "line" ? "the end of the line" : "the end of the cell";
+  if (token.kind === "raw") return "text in SMT-LIB";
   if (token.kind === "number") return `the number ${quote(token.text)}`;
   return quote(token.text);
 }

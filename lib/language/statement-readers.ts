@@ -7,12 +7,14 @@ import { LARGEST_DOMAIN } from "../logic/structure-definition.ts";
 import { readClaim, readConclusion, relationsAbout } from "./claims.ts";
 import { readClosed, readOpen } from "./formulas.ts";
 import { normalFormHelp } from "./help.ts";
-import { isRelationSign, type Token } from "./lexer.ts";
-import { isKeptWord, isVariable, type NameKind } from "./names.ts";
+import { isSmtLib, type Token } from "./lexer.ts";
+import { isVariable, type NameKind } from "./names.ts";
 import { nearestName } from "./nearest.ts";
+import { checkNewName, failName } from "./new-names.ts";
 import { readWhole } from "./numbers.ts";
 import { readOptions } from "./options.ts";
 import { quote, type Reader, Unreadable } from "./reader.ts";
+import { readSmtLib, type SmtLibReading } from "./smt-lib-reader.ts";
 import type {
   Definition,
   NamedTheory,
@@ -24,8 +26,7 @@ import type {
 import { isStructureAhead, readStructure } from "./structures.ts";
 import { expressionAhead } from "./subjects.ts";
 import { readTheory } from "./theories.ts";
-import { keptSymbols, mistakenSigns } from "./tokens.ts";
-import { countOf, kindText } from "./wording.ts";
+import { countOf } from "./wording.ts";
 
 type WithoutBase<T> = T extends unknown ? Omit<T, "from" | "to" | "text"> : never;
 /** A statement without its source. */
@@ -133,67 +134,6 @@ function readSymbol(reader: Reader, name: Token): RelationSymbol | null {
   return { name: name.text, places, infix };
 }
 
-function failName(reader: Reader, what: string): never {
-  const token = reader.peek();
-  if (token.kind === "number" || token.kind === "end" || token.kind === "unknown")
-    return reader.failExpected(`the name of a ${what}`);
-  if (token.kind === "relation-sign")
-    return reader.fail(
-      "not-a-name",
-      token,
-      `${quote(token.text)} is a symbol, and the name of a ${what} begins with a letter`,
-      "take another name",
-    );
-  return reader.fail(
-    "kept-word",
-    token,
-    `${quote(token.text)} is a sign of the language and cannot be the name of a ${what}`,
-    "take another name",
-  );
-}
-
-/** Reports whatever keeps a word or symbol from becoming a name. */
-function checkNewName(reader: Reader, name: Token, what: "relation" | "definition"): void {
-  const problem = findNameProblem(reader, name, what);
-  if (problem !== null) reader.report(problem.code, name, problem.message, problem.suggestion);
-}
-
-function findNameProblem(
-  reader: Reader,
-  { text, kind }: Token,
-  what: "relation" | "definition",
-): { readonly code: string; readonly message: string; readonly suggestion: string } | null {
-  const shown = quote(text);
-  const suggestion = "take another name";
-  if (isVariable(text))
-    return {
-      code: "variable-as-name",
-      message: `${shown} is a variable and cannot be the name of a ${what}`,
-      suggestion: `begin with a capital letter, \`${text[0]!.toUpperCase()}${text.slice(1)}\`, or use a longer word`,
-    };
-  if (keptSymbols.has(text)) {
-    const message = `${shown} is kept for relation terms and cannot be the name of a ${what}`;
-    return { code: "kept-word", message, suggestion };
-  }
-  if (kind === "relation-sign" && !isRelationSign(text)) {
-    const message = `${shown} is too like ${mistakenSigns.get(text) ?? "a sign of the language"} to be the name of a ${what}`;
-    return { code: "kept-word", message, suggestion };
-  }
-  if (isKeptWord(text)) {
-    const message = `${shown} is a word of the language and cannot be the name of a ${what}`;
-    return { code: "kept-word", message, suggestion };
-  }
-  const named = reader.names.find(text);
-  if (named === null || named.kind === "damaged") return null;
-  const isRelation = named.kind === "relation";
-  if (isRelation === (what === "relation")) return null;
-  const message =
-    isRelation && !reader.names.isDeclared
-      ? `${shown} is the relation that is there while none is declared`
-      : `${shown} is already ${kindText(named.kind)}`;
-  return { code: "name-taken", message, suggestion };
-}
-
 function readDefine(reader: Reader, bindings: Binding[]): StatementBody | null {
   const name = reader.peek();
   if (name.kind !== "word") failName(reader, "definition");
@@ -212,6 +152,13 @@ function readDefine(reader: Reader, bindings: Binding[]): StatementBody | null {
   reader.crossLine();
   const kind = parameters !== null ? "formula" : expressionAhead(reader);
   if (isFree && kind !== "unknown") bind(kind);
+  if (kind === "theory" && isSmtLib(reader.peek())) {
+    const { theory, declares } = readSmtLibTheory(reader);
+    for (const relation of declares) bindings.push({ name: relation.name, as: "relation" });
+    if (theory === null || reader.diagnostics.length > mistakes) return null;
+    const definition = { kind, name: name.text, theory };
+    return declares.length === 0 ? { kind: "define", definition } : { kind: "define", definition, declares };
+  }
   const definition = readDefinition(reader, name.text, parameters, kind);
   return definition === null || reader.diagnostics.length > mistakes ? null : { kind: "define", definition };
 }
@@ -258,6 +205,19 @@ function readParameters(reader: Reader, name: Token): readonly Variable[] {
     reader.expect("close");
   });
   return parameters;
+}
+
+/** Reads `smt-lib { … }`. */
+function readSmtLibTheory(reader: Reader): SmtLibReading {
+  reader.next();
+  const open = reader.next();
+  const raw = reader.withLines(false, () => reader.next());
+  const reading = readSmtLib(reader, raw);
+  reader.withLines(false, () => {
+    if (reader.accept("close-brace") === null)
+      reader.fail("missing-bracket", open, "this `{` is not closed", "put in a `}` after the last command");
+  });
+  return reading;
 }
 
 function readDefinition(

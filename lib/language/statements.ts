@@ -62,7 +62,12 @@ interface StatementBase extends Place {
 export type Statement = StatementBase &
   (
     | { readonly kind: "relation"; readonly relations: readonly RelationSymbol[] }
-    | { readonly kind: "define"; readonly definition: Definition }
+    | {
+        readonly kind: "define";
+        readonly definition: Definition;
+        /** The relations that SMT-LIB text declares on top of those in scope; absent for other definitions. */
+        readonly declares?: readonly RelationSymbol[];
+      }
     | { readonly kind: "describe"; readonly subject: DescribeSubject }
     | {
         readonly kind: "derive";
@@ -152,17 +157,21 @@ export function relationsIn(scope: Scope): readonly RelationSymbol[] {
 
 /** The scope after a statement has run; only `relation` and `define` change it. */
 export function scopeAfter(scope: Scope, statement: Statement): Scope {
-  if (statement.kind === "relation") {
-    const names = new Set(statement.relations.map((relation) => relation.name));
-    const kept = scope.declared.filter((relation) => !names.has(relation.name));
-    return { ...scope, declared: [...kept, ...statement.relations] };
-  }
+  if (statement.kind === "relation") return declare(scope, statement.relations);
   if (statement.kind === "define") {
     const definitions = new Map(scope.definitions);
     definitions.set(statement.definition.name, statement.definition);
-    return { ...scope, definitions };
+    return { ...declare(scope, statement.declares ?? []), definitions };
   }
   return scope;
+}
+
+/** The scope with more relations declared; of one name the latest. */
+export function declare(scope: Scope, relations: readonly RelationSymbol[]): Scope {
+  if (relations.length === 0) return scope;
+  const names = new Set(relations.map((relation) => relation.name));
+  const kept = scope.declared.filter((relation) => !names.has(relation.name));
+  return { ...scope, declared: [...kept, ...relations] };
 }
 
 /** What reading a cell came to: either mistakes, and then nothing may run, or statements. */

@@ -1,5 +1,5 @@
 /** Which kind of expression comes next, where several may. */
-import type { Token } from "./lexer.ts";
+import { isSmtLib, type Token } from "./lexer.ts";
 import { isKeptWord, isVariable } from "./names.ts";
 import { isPropertyWord } from "./property-atoms.ts";
 import type { Reader } from "./reader.ts";
@@ -17,6 +17,7 @@ export function expressionAhead(reader: Reader): ExpressionKind {
   const after = reader.peekAfter(at + 1);
   if (token.kind === "open-brace") return "theory";
   if (token.kind === "relation-sign") return at === 0 && ends(after) ? "relation" : "formula";
+  if (at === 0 && isSmtLib(token) && after.kind === "open-brace") return "theory";
   if (token.kind === "word" && isPropertyWord(token.text) && reader.names.find(token.text) === null)
     return "formula";
   if (token.kind !== "word" || token.group) return token.group ? kindOfName(reader, token, at) : "formula";

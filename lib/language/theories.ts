@@ -17,7 +17,7 @@ import {
 import type { Place } from "./diagnostics.ts";
 import { readClosed, readUnsettled, type UnsettledFormula } from "./formulas.ts";
 import { readLabel, reportLabel } from "./labels.ts";
-import type { Token } from "./lexer.ts";
+import { isSmtLib, type Token } from "./lexer.ts";
 import { measureTheory } from "./measure.ts";
 import { isStatementWord, MAX_NESTING, quote, type Reader, Unreadable } from "./reader.ts";
 import { declaredIn, findSoleRelation, putRelation } from "./sole-relation.ts";
@@ -94,6 +94,13 @@ function readOperand(reader: Reader, about: readonly RelationSymbol[] | null): T
   const token = reader.peek();
   if (token.kind === "open-brace") return readLiteral(reader, about);
   if (token.kind === "open") return readBracketed(reader);
+  if (isSmtLib(token) && reader.peekAfter(1).kind === "open-brace")
+    return reader.fail(
+      "unexpected",
+      token,
+      "`smt-lib { … }` stands only after `define Name :=`, and by itself",
+      "define it there, and use the name here",
+    );
   if (token.kind === "word") {
     const isCall = reader.peekAfter(1).kind === "open";
     if (isCall && token.text === "converse") return readDual(reader, converseTheory);

@@ -445,6 +445,11 @@ export const keywords: readonly Keyword[] = [
   { word: "form", meaning: "`normalise φ to prenex form`." },
   { word: "as", meaning: "`write T as SMT-LIB`." },
   {
+    word: "smt-lib",
+    meaning:
+      "`define T := smt-lib { (declare-sort U 0) … }`: sentences of SMT-LIB 2.6 over one sort with relations alone.",
+  },
+  {
     word: "id",
     meaning: "The identity relation, in relation terms: it relates every element to itself alone.",
   },

@@ -1,0 +1,459 @@
+/** Terms of SMT-LIB of sort Bool as formulas, with definitions unfolded and variables given names of cells. */
+import {
+  and,
+  atom,
+  equal,
+  type Formula,
+  freeVariables,
+  iff,
+  implies,
+  not,
+  or,
+  quantify,
+  type RelationSymbol,
+  substitute,
+  type Variable,
+} from "../logic/formula.ts";
+import type { Place } from "./diagnostics.ts";
+import { nearestName } from "./nearest.ts";
+import { MAX_NESTING, quote, type Reader, Unreadable } from "./reader.ts";
+import type { SExpression } from "./s-expressions.ts";
+import { variableOfSymbol } from "./smt-lib-symbols.ts";
+import { countOf } from "./wording.ts";
+
+/** A formula as it is built, measured on the way, since `let` can make it grow with every use. */
+interface Made {
+  readonly kind: "formula";
+  readonly formula: Formula;
+  readonly parts: number;
+  readonly nesting: number;
+}
+type Value = Made | { readonly kind: "element"; readonly variable: Variable };
+
+/** What the symbols bound around a place stand for, innermost first. */
+type Environment = { readonly symbol: string; readonly value: Value; readonly outer: Environment } | null;
+
+interface Macro {
+  readonly parameters: readonly Variable[];
+  readonly body: Made;
+}
+
+type List = SExpression & { readonly kind: "list" };
+type Symbol = SExpression & { readonly kind: "symbol" };
+
+export class SmtLibTerms {
+  readonly #reader: Reader;
+  readonly #placeOf: (expression: SExpression) => Place;
+  readonly #relations = new Map<string, RelationSymbol>();
+  readonly #macros = new Map<string, Macro>();
+  /** The sort of the elements; null until it is declared. */
+  sort: string | null = null;
+  /** Sorts that have been reported where they were declared. */
+  readonly refused = new Set<string>();
+
+  constructor(reader: Reader, placeOf: (expression: SExpression) => Place) {
+    this.#reader = reader;
+    this.#placeOf = placeOf;
+  }
+
+  #fail(code: string, at: SExpression, message: string, suggestion: string | null = null): never {
+    return this.#reader.fail(code, this.#placeOf(at), message, suggestion);
+  }
+
+  /** Takes in a relation; reports a symbol that is taken, and says whether it was free. */
+  declare(symbol: Symbol, relation: RelationSymbol): boolean {
+    if (!this.#checkFree(symbol)) return false;
+    this.#relations.set(symbol.text, relation);
+    return true;
+  }
+
+  #checkFree(symbol: Symbol): boolean {
+    if (!this.#relations.has(symbol.text) && !this.#macros.has(symbol.text)) return true;
+    this.#reader.report(
+      "relation-twice",
+      this.#placeOf(symbol),
+      `${quote(symbol.text)} is declared twice`,
+      "leave one out",
+    );
+    return false;
+  }
+
+  /** Reports what is not the sort of the elements. */
+  checkSort(sort: SExpression): void {
+    if (sort.kind === "symbol" && sort.text === this.sort) return;
+    if (sort.kind === "symbol" && this.refused.has(sort.text)) throw new Unreadable(false);
+    const known = this.sort === null ? "no sort is declared" : `the sort is ${quote(this.sort)}`;
+    if (sort.kind === "symbol" && sort.text === "Bool")
+      this.#fail(
+        "smt-lib-refused",
+        sort,
+        "arguments and variables are elements, and `Bool` is the sort of sentences",
+      );
+    this.#fail(
+      "smt-lib-refused",
+      sort,
+      `${sort.kind === "list" ? "a compound sort" : quote(sort.text)} cannot be read here: ${known}`,
+      this.sort === null ? "write `(declare-sort U 0)` before it" : null,
+    );
+  }
+
+  /** Reads `(define-fun D ((x U) (y U)) Bool φ)`. */
+  define(command: List): void {
+    const [, name, parameters, range, body] = command.items;
+    if (command.items.length !== 5 || name?.kind !== "symbol" || parameters?.kind !== "list")
+      this.#fail("unexpected", command, "expected `(define-fun D ((x U) (y U)) Bool φ)`");
+    if (range?.kind !== "symbol" || range.text !== "Bool")
+      this.#fail(
+        "smt-lib-refused",
+        name,
+        `${quote(name.text)} is a function, and formulas here have relations alone`,
+        "define a formula: its sort is `Bool`",
+      );
+    const { environment, variables } = this.#bind(parameters, null);
+    const made = this.#formula(body!, environment);
+    if (this.#checkFree(name)) this.#macros.set(name.text, { parameters: variables, body: made });
+  }
+
+  /** Reads a closed term of sort Bool. */
+  sentence(term: SExpression): Formula {
+    const { formula, parts } = this.#formula(term, null);
+    this.#reader.charge(parts, this.#placeOf(term));
+    return formula;
+  }
+
+  #made(formula: Formula, at: SExpression, parts: readonly Made[]): Made {
+    let size = 1;
+    let nesting = 0;
+    for (const part of parts) {
+      size += part.parts;
+      nesting = Math.max(nesting, part.nesting);
+    }
+    if (nesting + 1 > MAX_NESTING) this.#reader.failNested(this.#placeOf(at));
+    return { kind: "formula", formula, parts: size, nesting: nesting + 1 };
+  }
+
+  #formula(term: SExpression, environment: Environment): Made {
+    const value = this.#value(term, environment);
+    if (value.kind === "formula") return value;
+    return this.#fail(
+      "unexpected",
+      term,
+      `expected a formula, found the element ${quote(term.kind === "list" ? "(…)" : term.text)}`,
+    );
+  }
+
+  #element(term: SExpression, environment: Environment): Variable {
+    if (term.kind === "list" && term.items[0]?.kind === "symbol") {
+      const head = term.items[0].text;
+      if (!this.#relations.has(head) && !this.#macros.has(head) && !FORMERS.has(head))
+        this.#fail(
+          "smt-lib-refused",
+          term,
+          `${quote(head)} is used as a function, and formulas here have relations alone`,
+        );
+    }
+    const value = this.#value(term, environment);
+    if (value.kind === "element") return value.variable;
+    return this.#fail("unexpected", term, "expected an element, found a formula");
+  }
+
+  #value(term: SExpression, environment: Environment): Value {
+    switch (term.kind) {
+      case "symbol":
+        return this.#symbol(term, environment);
+      case "constant":
+        return this.#fail(
+          "smt-lib-refused",
+          term,
+          `${quote(term.text)} is a constant of another theory: there are elements and relations alone`,
+        );
+      case "keyword":
+        return this.#fail("unexpected", term, `expected a term, found ${quote(term.text)}`);
+      case "list": {
+        const [head, ...rest] = term.items;
+        this.#reader.enter(this.#placeOf(term));
+        const value =
+          head?.kind === "symbol"
+            ? this.#compound(term, head, rest, environment)
+            : this.#fail(
+                "unexpected",
+                head ?? term,
+                "expected a connective, a quantifier or a relation at the beginning of a term",
+              );
+        this.#reader.level -= 1;
+        return value;
+      }
+    }
+  }
+
+  #symbol(symbol: Symbol, environment: Environment): Value {
+    const { text } = symbol;
+    const bound = find(environment, text);
+    if (bound !== undefined) {
+      if (bound.kind === "formula") this.#reader.charge(bound.parts, this.#placeOf(symbol));
+      return bound;
+    }
+    if (text === "true" || text === "false") return this.#made({ kind: text }, symbol, []);
+    return this.#apply(symbol, symbol, [], environment);
+  }
+
+  #compound(term: List, head: Symbol, rest: readonly SExpression[], environment: Environment): Value {
+    if (find(environment, head.text) !== undefined)
+      this.#fail("unexpected", head, `${quote(head.text)} is a variable, and has no arguments`);
+    const operator = head.quoted && RESERVED_FORMERS.has(head.text) ? "" : head.text;
+    switch (operator) {
+      case "forall":
+      case "exists":
+        return this.#quantified(term, operator, rest, environment);
+      case "let":
+        return this.#let(term, rest, environment);
+      case "!":
+        if (rest[0] === undefined) return this.#fail("unexpected", term, "expected a term after `!`");
+        return this.#value(rest[0], environment);
+      case "=":
+      case "distinct":
+        return this.#compared(term, operator, rest, environment);
+      case "ite":
+        return this.#ite(term, rest, environment);
+      case "not":
+      case "and":
+      case "or":
+      case "=>":
+      case "xor": {
+        const least = operator === "not" || operator === "and" || operator === "or" ? 1 : 2;
+        const most = operator === "not" ? 1 : Number.POSITIVE_INFINITY;
+        if (rest.length < least || rest.length > most)
+          this.#fail(
+            "unexpected",
+            term,
+            `${quote(operator)} has ${countOf(rest.length, "argument")}, and needs ${least === most ? "1" : `${least} or more`}`,
+          );
+        return this.#connected(
+          term,
+          operator,
+          rest.map((part) => this.#formula(part, environment)),
+        );
+      }
+      case "match":
+      case "_":
+      case "as":
+        return this.#fail("smt-lib-refused", term, `${quote(operator)} cannot be read here`);
+      default:
+        return this.#apply(term, head, rest, environment);
+    }
+  }
+
+  #connected(term: List, operator: string, parts: readonly Made[]): Made {
+    const formulas = parts.map(({ formula }) => formula);
+    const [first] = formulas;
+    switch (operator) {
+      case "not":
+        return this.#made(not(first!), term, parts);
+      case "and":
+        return this.#made(and(...formulas), term, parts);
+      case "or":
+        return this.#made(or(...formulas), term, parts);
+      default: {
+        // `=>` groups to the right, `xor` to the left.
+        let made = operator === "=>" ? parts.at(-1)! : parts[0]!;
+        const others = operator === "=>" ? parts.slice(0, -1).reverse() : parts.slice(1);
+        for (const other of others)
+          made =
+            operator === "=>"
+              ? this.#made(implies(other.formula, made.formula), term, [other, made])
+              : this.#made(not(iff(made.formula, other.formula)), term, [
+                  this.#made(iff(made.formula, other.formula), term, [made, other]),
+                ]);
+        return made;
+      }
+    }
+  }
+
+  /** `=` says of neighbours that they are equal, `distinct` of any two that they are not. */
+  #compared(
+    term: List,
+    operator: "=" | "distinct",
+    rest: readonly SExpression[],
+    environment: Environment,
+  ): Made {
+    if (rest.length < 2)
+      this.#fail(
+        "unexpected",
+        term,
+        `${quote(operator)} has ${countOf(rest.length, "argument")}, and needs 2 or more`,
+      );
+    const first = this.#value(rest[0]!, environment);
+    const values = [
+      first,
+      ...rest
+        .slice(1)
+        .map(
+          (part): Value =>
+            first.kind === "formula"
+              ? this.#formula(part, environment)
+              : { kind: "element", variable: this.#element(part, environment) },
+        ),
+    ];
+    const pairs: Made[] = [];
+    for (let left = 0; left < values.length; left += 1)
+      for (let right = left + 1; right < values.length; right += 1) {
+        if (operator === "=" && right > left + 1) break;
+        const [one, other] = [values[left]!, values[right]!];
+        const parts = [one, other].filter((value) => value.kind === "formula");
+        this.#reader.charge(2 + parts.reduce((sum, part) => sum + part.parts, 0), this.#placeOf(term));
+        const formula =
+          one.kind === "formula" && other.kind === "formula"
+            ? iff(one.formula, other.formula)
+            : equal((one as { variable: Variable }).variable, (other as { variable: Variable }).variable);
+        const same = this.#made(formula, term, parts);
+        pairs.push(operator === "=" ? same : this.#made(not(formula), term, [same]));
+      }
+    if (pairs.length === 1) return pairs[0]!;
+    return this.#made(and(...pairs.map(({ formula }) => formula)), term, pairs);
+  }
+
+  /** `(ite φ ψ χ)` as `(φ → ψ) ∧ (¬φ → χ)`. */
+  #ite(term: List, rest: readonly SExpression[], environment: Environment): Made {
+    if (rest.length !== 3)
+      this.#fail("unexpected", term, `\`ite\` has ${countOf(rest.length, "argument")}, and needs 3`);
+    if (this.#value(rest[1]!, environment).kind === "element")
+      this.#fail(
+        "smt-lib-refused",
+        term,
+        "an element chosen by `ite` cannot be read here",
+        "choose between sentences",
+      );
+    const [condition, then, otherwise] = rest.map((part) => this.#formula(part, environment));
+    this.#reader.charge(condition!.parts, this.#placeOf(term));
+    const negated = this.#made(not(condition!.formula), term, [condition!]);
+    const sides = [
+      this.#made(implies(condition!.formula, then!.formula), term, [condition!, then!]),
+      this.#made(implies(negated.formula, otherwise!.formula), term, [negated, otherwise!]),
+    ];
+    return this.#made(and(...sides.map(({ formula }) => formula)), term, sides);
+  }
+
+  #quantified(
+    term: List,
+    kind: "forall" | "exists",
+    rest: readonly SExpression[],
+    environment: Environment,
+  ): Made {
+    const [list, body] = rest;
+    if (rest.length !== 2 || list?.kind !== "list" || list.items.length === 0)
+      this.#fail("unexpected", term, `expected \`(${kind} ((x ${this.sort ?? "U"})) φ)\``);
+    const bound = this.#bind(list, environment);
+    for (const item of list.items) this.#reader.enter(this.#placeOf(item));
+    let made = this.#formula(body!, bound.environment);
+    this.#reader.level -= list.items.length;
+    for (const variable of [...bound.variables].reverse())
+      made = this.#made(quantify(kind, variable, made.formula), term, [made]);
+    return made;
+  }
+
+  /** Binds the variables of `((x U) (y U))`, each under a name that nothing around it is called by. */
+  #bind(
+    list: List,
+    environment: Environment,
+  ): { readonly environment: Environment; readonly variables: readonly Variable[] } {
+    const variables: Variable[] = [];
+    const symbols = new Set<string>();
+    for (const item of list.items) {
+      const [symbol, sort] = item.kind === "list" ? item.items : [];
+      if (item.kind !== "list" || item.items.length !== 2 || symbol?.kind !== "symbol")
+        this.#fail("unexpected", item, `expected \`(x ${this.sort ?? "U"})\`, a variable with its sort`);
+      this.checkSort(sort!);
+      if (symbols.has(symbol.text))
+        this.#fail("variable-twice", symbol, `${quote(symbol.text)} occurs twice in one list`);
+      symbols.add(symbol.text);
+    }
+    // What the list itself hides may be called the same.
+    const taken = new Set<Variable>();
+    const hidden = new Set(symbols);
+    for (let outer = environment; outer !== null; outer = outer.outer) {
+      if (hidden.has(outer.symbol)) continue;
+      hidden.add(outer.symbol);
+      if (outer.value.kind === "element") taken.add(outer.value.variable);
+      else for (const variable of freeVariables(outer.value.formula)) taken.add(variable);
+    }
+    let inner = environment;
+    for (const symbol of symbols) {
+      const variable = variableOfSymbol(
+        symbol,
+        (name) => taken.has(name) || (name !== symbol && symbols.has(name)),
+      );
+      taken.add(variable);
+      variables.push(variable);
+      inner = { symbol, value: { kind: "element", variable }, outer: inner };
+    }
+    return { environment: inner, variables };
+  }
+
+  /** `(let ((a t) (b u)) φ)`: all terms are read outside, then bound at once. */
+  #let(term: List, rest: readonly SExpression[], environment: Environment): Value {
+    const [list, body] = rest;
+    if (rest.length !== 2 || list?.kind !== "list" || list.items.length === 0)
+      this.#fail("unexpected", term, "expected `(let ((a t)) φ)`");
+    let inner = environment;
+    const symbols = new Set<string>();
+    for (const item of list.items) {
+      const [symbol, bound] = item.kind === "list" ? item.items : [];
+      if (item.kind !== "list" || item.items.length !== 2 || symbol?.kind !== "symbol")
+        this.#fail("unexpected", item, "expected `(a t)`, a variable with what it stands for");
+      if (symbols.has(symbol.text))
+        this.#fail("variable-twice", symbol, `${quote(symbol.text)} occurs twice in one list`);
+      symbols.add(symbol.text);
+      inner = { symbol: symbol.text, value: this.#value(bound!, environment), outer: inner };
+    }
+    return this.#value(body!, inner);
+  }
+
+  #apply(term: SExpression, head: Symbol, rest: readonly SExpression[], environment: Environment): Made {
+    const relation = this.#relations.get(head.text);
+    const macro = this.#macros.get(head.text);
+    if (relation === undefined && macro === undefined) return this.#failUnknown(head, rest.length > 0);
+    const args = rest.map((part) => this.#element(part, environment));
+    const places = relation?.places ?? macro!.parameters.length;
+    if (args.length !== places)
+      this.#fail(
+        "places-differ",
+        term,
+        `${quote(head.text)} has ${countOf(places, "place")}, and ${countOf(args.length, "argument")} ${args.length === 1 ? "is" : "are"} given`,
+      );
+    if (relation !== undefined) return this.#made(atom(relation, ...args), term, []);
+    const { parameters, body } = macro!;
+    this.#reader.charge(body.parts, this.#placeOf(term));
+    const formula = substitute(
+      body.formula,
+      new Map(parameters.map((parameter, index) => [parameter, args[index]!])),
+    );
+    return { ...body, formula };
+  }
+
+  #failUnknown(head: Symbol, called: boolean): never {
+    const near = nearestName(head.text, [...this.#relations.keys(), ...this.#macros.keys()]);
+    return this.#fail(
+      "unknown-name",
+      head,
+      `there is no ${called ? "relation" : "variable"} ${quote(head.text)}`,
+      near !== null
+        ? `write \`${near}\``
+        : called
+          ? "declare it: `(declare-fun R (U U) Bool)`; relations alone can be read, no arithmetic and no functions"
+          : "bind it by a quantifier",
+    );
+  }
+}
+
+/** Reserved words that may begin a term. */
+const RESERVED_FORMERS: ReadonlySet<string> = new Set("forall exists let ! match _ as".split(" "));
+/** What may begin a term without being a relation. */
+const FORMERS: ReadonlySet<string> = new Set([
+  ...RESERVED_FORMERS,
+  ..."= distinct ite not and or => xor".split(" "),
+]);
+
+function find(environment: Environment, symbol: string): Value | undefined {
+  for (let at = environment; at !== null; at = at.outer) if (at.symbol === symbol) return at.value;
+  return undefined;
+}
