@@ -232,7 +232,9 @@ function conjunctsOf(forms: readonly Forms[]): readonly Formula[] {
 
 /** @throws FormTooLarge */
 function membershipsOf(forms: readonly Forms[]): readonly Membership[] {
-  const hasIdentity = forms.some(({ miniscoped }) => usesIdentity(miniscoped));
+  const hasIdentity = forms.some(
+    ({ written, miniscoped }) => usesIdentity(written) || usesIdentity(miniscoped),
+  );
   const conjuncts = conjunctsOf(forms);
   const found: Membership[] = [];
   const add = (fragment: FragmentName, points: number | null = null) =>

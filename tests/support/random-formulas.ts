@@ -57,10 +57,10 @@ export function sentences(relations: readonly RelationSymbol[], depth: number): 
     );
   };
   return fc
-    .tuple(formula(depth, 2), fc.infiniteStream(fc.boolean()))
+    .tuple(formula(depth, 2), fc.tuple(fc.boolean(), fc.boolean(), fc.boolean()))
     .map(([body, choices]) =>
       freeVariables(body).reduceRight(
-        (inner, v) => (choices.next().value === true ? forall(v, inner) : exists(v, inner)),
+        (inner, v, index) => (choices[index] === true ? forall(v, inner) : exists(v, inner)),
         body,
       ),
     );
