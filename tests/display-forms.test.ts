@@ -13,6 +13,7 @@ import {
   iff,
   implies,
   not,
+  or,
   type RelationSymbol,
 } from "../lib/logic/formula.ts";
 
@@ -27,16 +28,21 @@ describe("signs of LaTeX", () => {
 
 describe("prefix of a prenex form", () => {
   const some = exists("y", atom(R, "x", "y"));
-  // By the rules for pulling quantifiers outwards (common practice).
+  // By the rules for pulling quantifiers outwards; parts of a conjunction share universal variables (common practice).
   it.each<[string, Formula, string]>([
     ["in front already", serial, "∀∃"],
     ["to the right of a conditional", forall("x", implies(atom(R, "x", "x"), some)), "∀∃"],
     ["to the left of a conditional", forall("x", implies(some, atom(R, "x", "x"))), "∀∀"],
     ["under a negation", not(forall("x", some)), "∃∀"],
-    ["side by side, put together", and(forall("x", some), forall("z", not(atom(R, "z", "z")))), "∀∀∃"],
-    ["on both sides of a biconditional", forall("x", iff(some, atom(R, "x", "x"))), "∀∃∀"],
+    ["side by side, put together", and(forall("x", some), forall("z", not(atom(R, "z", "z")))), "∀∃"],
+    ["on both sides of a biconditional", forall("x", iff(some, atom(R, "x", "x"))), "∀∀∃"],
     ["none", equal("x", "y"), "none"],
-    ["many", forall(["x", "y", "z", "u", "v"], atom(R, "x", "v")), "∀⁵"],
+    [
+      "many",
+      forall(["x", "y", "z", "u", "v"], or(atom(R, "x", "y"), atom(R, "z", "u"), atom(R, "v", "x"))),
+      "∀⁵",
+    ],
+    ["vacuous", forall(["x", "y"], atom(R, "x", "x")), "∀"],
   ])("%s", (_, formula, prefix) => {
     expect(prefixOf(formula)).toBe(prefix);
   });

@@ -216,14 +216,14 @@ describe("named properties of a theory", () => {
     checkBundle(data);
     const plain = data["text/plain"]!;
     for (const line of [
-      /^no model without it, by a finite check +irreflexive\(R\)$/m,
-      /^no model without it on 1 to 4 points +transitive\(R\)$/m,
-      /^no model with it on 1 to 4 points +reflexive\(R\)$/m,
-      /^no model, with it or without, on 1 to +trichotomous\(R\)\n3 points$/m,
-      /^models with it and models without it +symmetric\(R\)$/m,
-      /^not searched +dense\(R\)$/m,
-      /^symmetric\(R\) +on 1 point \(checked\) +on 2 points \(checked\)$/m,
-      /Decided by a finite check up to 3 points: Bernays–Schönfinkel–Ramsey class \(Ramsey 1930\)/,
+      /^Named properties of R$/m,
+      /^no model without it, by a finite check +irreflexive$/m,
+      /^no model without it on 1 to 4 points +transitive$/m,
+      /^no model with it on 1 to 4 points +reflexive$/m,
+      /^no model, with it or without, on 1 to +trichotomous\n3 points$/m,
+      /^not searched +dense$/m,
+      /^1 property that a model has and another lacks \(checked\), with the points of each\nsymmetric \(1; 2\)$/m,
+      /Finite checks went up to 3 points and decide by a published bound: Bernays/,
       /The budget ended before all/,
     ])
       expect(plain).toMatch(line);
@@ -233,6 +233,15 @@ describe("named properties of a theory", () => {
   it("are not said to be checked without evidence", () => {
     const { data } = showDescription(statement, { ...findings, evidence: null });
     expect(data["text/plain"]).not.toContain("checked");
+  });
+
+  it("are said of their relations where there are several", () => {
+    const two = findings.properties.map((finding, index) =>
+      index === 0 ? { ...finding, name: "irreflexive(≺)" } : finding,
+    );
+    const plain = showDescription(statement, { ...findings, properties: two }).data["text/plain"]!;
+    expect(plain).toMatch(/ irreflexive\(≺\)$/m);
+    expect(plain).toMatch(/ transitive\(R\)$/m);
   });
 
   it("are data with the sizes", () => {

@@ -8,16 +8,18 @@ import type { Definition, DescribeSubject, Statement } from "../../lib/language/
 import {
   depthOf,
   type Formula,
+  freeVariables,
   type RelationSymbol,
   relationsOf,
   usesIdentity,
 } from "../../lib/logic/formula.ts";
-import { type Theory, theoryDepth, theorySignature } from "../../lib/logic/theory.ts";
+import { describeSyntax } from "../../lib/logic/fragments.ts";
+import { sentencesOf, type Theory, theoryDepth, theorySignature } from "../../lib/logic/theory.ts";
 import { countData } from "./counts.ts";
 import { findingsData } from "./findings.ts";
 import { structureData } from "./structures.ts";
 import { claimOf } from "./summaries.ts";
-import { prefixOf } from "./theories.ts";
+import { prefixOf, syntaxData } from "./theories.ts";
 
 type Data = Readonly<Record<string, unknown>>;
 
@@ -140,6 +142,7 @@ function subjectData(subject: DescribeSubject): Data {
         relations: relations.map(relationData),
         identity,
         depth: theoryDepth(theory),
+        ...(theory.axioms.length === 0 ? {} : syntaxData(describeSyntax(sentencesOf(theory)))),
       };
     }
     case "structure":
@@ -164,6 +167,7 @@ function formulaData(formula: Formula): Data {
     identity: usesIdentity(formula),
     depth: depthOf(formula),
     prefix: prefixOf(formula),
+    ...(freeVariables(formula).length > 0 ? {} : syntaxData(describeSyntax([formula]))),
   };
 }
 

@@ -3,6 +3,7 @@ import { buildStructure } from "../../lib/carriers/structure.ts";
 import type { Findings } from "../../lib/inquiry/examine.ts";
 import type { Definition, DescribeSubject, Statement } from "../../lib/language/statements.ts";
 import { depthOf, type Formula, relationsOf, usesIdentity, variablesOf } from "../../lib/logic/formula.ts";
+import { describeSyntax } from "../../lib/logic/fragments.ts";
 import type { Theory } from "../../lib/logic/theory.ts";
 import type { Shown } from "./answers.ts";
 import { type Block, code, formulaOf, type Inline, line } from "./blocks.ts";
@@ -13,9 +14,11 @@ import { counted, enumerate } from "./text.ts";
 import {
   FOLDED_AXIOMS,
   factTable,
+  fragmentBlocks,
   identityText,
   prefixOf,
   relationText,
+  syntaxFacts,
   theoryFacts,
   theoryTable,
 } from "./theories.ts";
@@ -79,7 +82,7 @@ export function describeSubject(
         blocks: [
           line(code(text), summary.slice(text.length)),
           ...theoryBlocks(theory),
-          theoryFacts(theory),
+          ...theoryFacts(theory),
           ...(findings === null ? [] : findingBlocks(findings)),
         ],
       };
@@ -103,14 +106,14 @@ export function describeSubject(
       const kind = definitionText(subject.definition);
       return {
         summary: `${name}: ${kind}`,
-        blocks: [line(code(head), ` := `, formulaOf(body)), formulaFacts(body, parameters.length === 0)],
+        blocks: [line(code(head), ` := `, formulaOf(body)), ...formulaFacts(body, parameters.length === 0)],
       };
     }
     case "sentence": {
       const { formula } = subject.sentence;
       return {
         summary: `a sentence of depth ${depthOf(formula)}`,
-        blocks: [line(formulaOf(formula)), formulaFacts(formula, true)],
+        blocks: [line(formulaOf(formula)), ...formulaFacts(formula, true)],
       };
     }
     case "relation": {
@@ -136,7 +139,7 @@ function theoryBlocks(theory: Theory): readonly Block[] {
   ];
 }
 
-function formulaFacts(formula: Formula, isClosed: boolean): Block {
+function formulaFacts(formula: Formula, isClosed: boolean): readonly Block[] {
   const variables = variablesOf(formula);
   const facts: [string, Inline][] = [
     ["signature", relationsOf(formula).map(relationText).join(", ") || "no relations"],
@@ -150,7 +153,8 @@ function formulaFacts(formula: Formula, isClosed: boolean): Block {
     ],
     ["depth", String(depthOf(formula))],
     ["variables", variables.length === 0 ? "0" : `${variables.length}: ${variables.join(", ")}`],
-    ["prefix", prefixOf(formula)],
   ];
-  return factTable(facts);
+  if (!isClosed) return [factTable([...facts, ["prefix", prefixOf(formula)]])];
+  const report = describeSyntax([formula]);
+  return [factTable([...facts, ...syntaxFacts(report, false)]), ...fragmentBlocks(report)];
 }

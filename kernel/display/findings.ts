@@ -1,7 +1,7 @@
 /** What has been found out about a theory and the named properties, as `describe` shows it. */
 import type { Findings, ModelSearch, PropertyFinding } from "../../lib/inquiry/examine.ts";
 import type { FiniteCheck } from "../../lib/logic/fragments.ts";
-import { type Block, code, type Inline, note } from "./blocks.ts";
+import { type Block, type Inline, line, note } from "./blocks.ts";
 import { counted, onSizesTo } from "./text.ts";
 
 /**
@@ -35,7 +35,7 @@ function searchData(search: ModelSearch): Readonly<Record<string, unknown>> {
     : { size: null, noneUpTo: search.upTo, decided: search.decided !== null };
 }
 
-/** One line for each kind of finding, and all of them in a table that is closed at first. */
+/** A row for each kind of finding; properties that some models have and others lack are closed at first. */
 export function findingBlocks(findings: Findings): readonly Block[] {
   const { properties, evidence, endedEarly, interrupted } = findings;
   const early = endedEarly
@@ -46,33 +46,50 @@ export function findingBlocks(findings: Findings): readonly Block[] {
       ]
     : [];
   if (properties.length === 0) return early;
-  const rows = [...groupsOf(properties)].map(([title, names]) => [[title], listed(names)]);
-  const checked = evidence === null ? "" : " (checked)";
-  const blocks: Block[] = [
-    { kind: "table", caption: "Named properties", head: ["found", "properties"], rows, look: "prose" },
-  ];
-  if (properties.some((finding) => isUndecided(finding)))
+  const subject = soleSubject(properties);
+  const nameOf = ({ name }: PropertyFinding) =>
+    subject === null ? name : name.slice(0, -subject.length - 2);
+  const settled = properties.filter((finding) => propertyStatus(finding) === "neither");
+  const groups = [...groupsOf(properties.filter((finding) => propertyStatus(finding) !== "neither"))];
+  const blocks: Block[] = [];
+  if (groups.length > 0)
+    blocks.push({
+      kind: "table",
+      caption: `Named properties${subject === null ? "" : ` of ${subject}`}`,
+      head: ["found", "properties"],
+      rows: groups.map(([title, found]) => [[title], listed(found.map(nameOf))]),
+      look: "prose",
+    });
+  if (properties.some(isUndecided))
     blocks.push(note("That models of some sizes all have a property, or all lack it, derives nothing."));
-  for (const { points, reason, source } of checksIn(properties))
-    blocks.push(note(`Decided by a finite check up to ${counted(points, "point")}: ${reason} (${source}).`));
-  blocks.push(...early, {
-    kind: "fold",
-    title: `Sizes of the models, for ${counted(properties.length, "property", "properties")}`,
-    blocks: [
-      {
-        kind: "table",
-        caption: null,
-        head: ["property", "a model with it", "a model without it"],
-        rows: properties.map(({ name, having, lacking }) => [
-          [code(name)],
-          [searchText(having, checked)],
-          [searchText(lacking, checked)],
-        ]),
-        look: "prose",
-      },
-    ],
-  });
+  blocks.push(...checkNotes(properties), ...early);
+  if (settled.length > 0)
+    blocks.push({
+      kind: "fold",
+      title: `${counted(settled.length, "property", "properties")} that a model has and another lacks${
+        evidence === null ? "" : " (checked)"
+      }, with the points of each`,
+      blocks: [line(...sized(settled, nameOf))],
+    });
   return blocks;
+}
+
+/** The relation that all properties are said of; null when there are several. */
+function soleSubject(properties: readonly PropertyFinding[]): string | null {
+  const subjects = new Set(properties.map(({ name }) => /\((.*)\)$/.exec(name)?.[1] ?? ""));
+  const [first] = subjects;
+  return subjects.size === 1 && first !== undefined && first !== "" ? first : null;
+}
+
+function sized(
+  properties: readonly PropertyFinding[],
+  nameOf: (finding: PropertyFinding) => string,
+): readonly Inline[] {
+  return properties.flatMap((finding, index): Inline[] => {
+    const { having, lacking } = finding;
+    const sizes = [having, lacking].flatMap((search) => (search.kind === "found" ? [search.size] : []));
+    return [index === 0 ? "" : ", ", nameOf(finding), ` (${sizes.join("; ")})`];
+  });
 }
 
 function isUndecided(finding: PropertyFinding): boolean {
@@ -86,26 +103,34 @@ function decidedBy(search: ModelSearch): FiniteCheck | null {
   return search.kind === "none" ? search.decided : null;
 }
 
-/** The bounds that were used, each once. */
-function checksIn(properties: readonly PropertyFinding[]): readonly FiniteCheck[] {
-  const checks = new Map<string, FiniteCheck>();
+/** The bounds that were used, each reason once. */
+function checkNotes(properties: readonly PropertyFinding[]): readonly Block[] {
+  const reasons = new Map<string, FiniteCheck>();
   for (const { having, lacking } of properties)
-    for (const check of [decidedBy(having), decidedBy(lacking)])
-      if (check !== null) checks.set(`${check.points};${check.reason}`, check);
-  return [...checks.values()].sort((a, b) => a.points - b.points);
+    for (const check of [decidedBy(having), decidedBy(lacking)]) {
+      if (check === null) continue;
+      const known = reasons.get(check.reason);
+      if (known === undefined || known.points < check.points) reasons.set(check.reason, check);
+    }
+  return [...reasons.values()].map(({ points, reason, source }) =>
+    note(
+      `Finite checks went up to ${counted(points, "point")} and decide by a published bound: ${reason} (${source}).`,
+    ),
+  );
 }
 
 /** Names by what is known of them; sizes belong to the title, so that no line says more than was searched. */
-function groupsOf(properties: readonly PropertyFinding[]): ReadonlyMap<string, readonly string[]> {
-  const groups = new Map<string, string[]>();
-  const order: PropertyStatus[] = ["no-countermodel", "no-example", "no-model", "neither", "unsearched"];
+function groupsOf(properties: readonly PropertyFinding[]): ReadonlyMap<string, readonly PropertyFinding[]> {
+  const groups = new Map<string, PropertyFinding[]>();
+  const order: PropertyStatus[] = ["no-countermodel", "no-example", "no-model", "unsearched"];
   for (const status of order) {
     const found = properties.filter((finding) => propertyStatus(finding) === status);
     // What a finite check decided stands before what was searched on some sizes only.
-    const titles = found.map((finding) => ({ name: finding.name, title: titleOf(finding, status) }));
     for (const isFirst of [true, false])
-      for (const { name, title } of titles)
-        if (title.endsWith(DECIDED) === isFirst) groups.set(title, [...(groups.get(title) ?? []), name]);
+      for (const finding of found) {
+        const title = titleOf(finding, status);
+        if (title.endsWith(DECIDED) === isFirst) groups.set(title, [...(groups.get(title) ?? []), finding]);
+      }
   }
   return groups;
 }
@@ -128,18 +153,12 @@ function titleOf({ having, lacking }: PropertyFinding, status: PropertyStatus): 
       return `no model, with it or without, ${onSizesTo(least)}`;
     }
     case "neither":
-      return "models with it and models without it";
+      return "models with it and without it";
     case "unsearched":
       return "not searched";
   }
 }
 
 function listed(names: readonly string[]): readonly Inline[] {
-  return names.flatMap((name, index): Inline[] => (index === 0 ? [code(name)] : [", ", code(name)]));
-}
-
-function searchText(search: ModelSearch, checked: string): string {
-  if (search.kind === "found") return `on ${counted(search.size, "point")}${checked}`;
-  if (search.upTo === 0) return "not searched";
-  return search.decided === null ? `none ${onSizesTo(search.upTo)}` : `none, ${DECIDED}`;
+  return [names.join(", ")];
 }

@@ -1,6 +1,15 @@
 /** Theories as tables, and what can be read off their formulas. */
-import { type Formula, partsOf, type RelationSymbol, variablesOf } from "../../lib/logic/formula.ts";
-import { type Theory, theoryDepth, theorySignature } from "../../lib/logic/theory.ts";
+import type { TermFormula } from "../../lib/logic/clausal.ts";
+import { type Formula, type RelationSymbol, variablesOf } from "../../lib/logic/formula.ts";
+import {
+  describeSyntax,
+  type Membership,
+  type PrefixBlock,
+  type SyntaxReport,
+} from "../../lib/logic/fragments.ts";
+import { normalise } from "../../lib/logic/normal-forms/normalise.ts";
+import type { NormalForm } from "../../lib/logic/normal-forms/result.ts";
+import { sentencesOf, type Theory, theoryDepth, theorySignature } from "../../lib/logic/theory.ts";
 import { type Block, formulaOf, type Inline, line, type TableBlock } from "./blocks.ts";
 import { counted, enumerate } from "./text.ts";
 
@@ -24,8 +33,8 @@ export function theoryTable(caption: string | null, theory: Theory, extra: "pref
   return table;
 }
 
-/** What `describe` says below the table. */
-export function theoryFacts(theory: Theory): Block {
+/** What `describe` says below the table: measures, and the decidable fragments that the axioms fall into. */
+export function theoryFacts(theory: Theory): readonly Block[] {
   const signature = theorySignature(theory);
   const variables = new Set(theory.axioms.flatMap((axiom) => variablesOf(axiom.formula)));
   const facts: [string, string][] = [
@@ -35,7 +44,75 @@ export function theoryFacts(theory: Theory): Block {
     ["depth", String(theoryDepth(theory))],
     ["variables", variables.size === 0 ? "0" : `${variables.size}: ${[...variables].sort().join(", ")}`],
   ];
-  return factTable(facts);
+  if (theory.axioms.length === 0) return [factTable(facts)];
+  const report = describeSyntax(sentencesOf(theory));
+  return [factTable([...facts, ...syntaxFacts(report, theory.axioms.length > 1)]), ...fragmentBlocks(report)];
+}
+
+/** Bounds on the size of models beyond this are published, and out of reach of a search. */
+const REACHED_POINTS = 6;
+
+/** Measures that take a normal form. */
+export function syntaxFacts(report: SyntaxReport, isJoint: boolean): readonly [string, string][] {
+  const { prefix, alternations, variables, leastVariables, finiteCheck } = report;
+  const facts: [string, string][] = [];
+  if (prefix !== null) facts.push([isJoint ? "prefix of all together" : "prefix", prefixText(prefix)]);
+  if (alternations !== null) facts.push(["alternations", String(alternations)]);
+  if (leastVariables < variables)
+    facts.push(["variables that suffice", `${leastVariables}, when quantifiers are moved inwards`]);
+  if (finiteCheck !== null && finiteCheck.points <= REACHED_POINTS)
+    facts.push([
+      "finite check",
+      `consistency is decided by models on up to ${counted(finiteCheck.points, "point")}: ${finiteCheck.reason} (${finiteCheck.source})`,
+    ]);
+  return facts;
+}
+
+/** The decidable fragments, with what is published about each. */
+export function fragmentBlocks({ fragments }: SyntaxReport): readonly Block[] {
+  if (fragments.length === 0) return [];
+  return [
+    {
+      kind: "table",
+      caption: "Decidable fragments",
+      head: ["fragment", "sentences", "what is published, and where"],
+      rows: fragments.map((membership) => [
+        [membership.name],
+        [membership.form],
+        [`${publishedText(membership)} (${membership.source})`],
+      ]),
+      look: "prose",
+    },
+  ];
+}
+
+function publishedText({ decidable, finiteModelProperty, bound, points }: Membership): string {
+  const parts = [
+    decidable === "yes" ? "decidable" : "finite satisfiability decidable",
+    finiteModelProperty ? "finite model property" : "no finite model property",
+  ];
+  if (bound !== null) parts.push(bound);
+  if (points !== null) parts.push(`here at most ${counted(points, "point")}`);
+  return parts.join("; ");
+}
+
+/** For `eval --json`. */
+export function syntaxData(report: SyntaxReport): Readonly<Record<string, unknown>> {
+  const { alternations, leastVariables, prefix, fragments, finiteCheck } = report;
+  return {
+    alternations,
+    leastVariables,
+    prefixClass: prefix === null ? null : prefixText(prefix),
+    fragments: fragments.map(({ fragment, decidable, finiteModelProperty, bound, points, source }) => ({
+      fragment,
+      decidable,
+      finiteModelProperty,
+      bound,
+      points,
+      source,
+    })),
+    finiteCheck: finiteCheck === null ? null : finiteCheck.points,
+  };
 }
 
 /** Two columns: what, and its value. */
@@ -60,21 +137,37 @@ export function relationText(relation: RelationSymbol): string {
   return `${relation.name} (${counted(relation.places, "place")}${relation.infix ? ", infix" : ""})`;
 }
 
-/** A run of quantifiers of one kind. */
-interface Run {
-  readonly kind: "forall" | "exists";
-  readonly count: number;
-}
+const knownPrefixes = new WeakMap<Formula, string>();
 
 /**
- * The quantifiers of a prenex form of a sentence, outermost first: `∀∀∃`, or `none` for a sentence without
- * quantifiers. Quantifiers are pulled outwards with their sign; where the order is free, like ones are put together.
- * Of several prenex forms this is one with few changes of quantifier, not always the fewest.
+ * The quantifiers of a prenex form of a formula, outermost first: `∀∀∃`, or `none` for one without quantifiers. Of
+ * its prenex forms this is one with the fewest changes of quantifier; free variables stay free.
  */
 export function prefixOf(formula: Formula): string {
-  const runs = prenexRuns(formula, true);
-  if (runs.length === 0) return "none";
-  return runs
+  const known = knownPrefixes.get(formula);
+  if (known !== undefined) return known;
+  const result = normalise(formula, "prenex");
+  const text = result.outcome === "refused" ? "too large to tell" : prefixText(blocksOf(result));
+  knownPrefixes.set(formula, text);
+  return text;
+}
+
+/** The quantifiers in front of a prenex form. */
+function blocksOf({ value }: NormalForm): readonly PrefixBlock[] {
+  const blocks: { kind: PrefixBlock["kind"]; count: number }[] = [];
+  let part: TermFormula | null = value.kind === "clauses" ? null : value.formula;
+  while (part !== null && (part.kind === "forall" || part.kind === "exists")) {
+    const last = blocks.at(-1);
+    if (last?.kind === part.kind) last.count += 1;
+    else blocks.push({ kind: part.kind, count: 1 });
+    part = part.body;
+  }
+  return blocks;
+}
+
+export function prefixText(blocks: readonly PrefixBlock[]): string {
+  if (blocks.length === 0) return "none";
+  return blocks
     .map(({ kind, count }) => {
       const sign = kind === "forall" ? "∀" : "∃";
       return count <= 4 ? sign.repeat(count) : `${sign}${superscript(count)}`;
@@ -84,59 +177,6 @@ export function prefixOf(formula: Formula): string {
 
 function superscript(count: number): string {
   return [...String(count)].map((digit) => "⁰¹²³⁴⁵⁶⁷⁸⁹"[Number(digit)]!).join("");
-}
-
-function prenexRuns(formula: Formula, positive: boolean): readonly Run[] {
-  switch (formula.kind) {
-    case "forall":
-    case "exists": {
-      const kind = (formula.kind === "forall") === positive ? "forall" : "exists";
-      return joined({ kind, count: 1 }, prenexRuns(formula.body, positive));
-    }
-    case "not":
-      return prenexRuns(formula.body, !positive);
-    case "implies":
-      return merged([prenexRuns(formula.left, !positive), prenexRuns(formula.right, positive)]);
-    case "iff":
-      // (φ → ψ) ∧ (ψ → φ): each side stands once with each sign.
-      return merged(
-        [formula.left, formula.right].flatMap((side) => [prenexRuns(side, true), prenexRuns(side, false)]),
-      );
-    default:
-      return merged(partsOf(formula).map((part) => prenexRuns(part, positive)));
-  }
-}
-
-function joined(run: Run, rest: readonly Run[]): readonly Run[] {
-  const [next, ...others] = rest;
-  if (next === undefined || next.kind !== run.kind) return [run, ...rest];
-  return [{ kind: run.kind, count: run.count + next.count }, ...others];
-}
-
-/** The prefixes of parts that stand side by side, interleaved with as few changes as either first kind gives. */
-function merged(prefixes: readonly (readonly Run[])[]): readonly Run[] {
-  const busy = prefixes.filter((prefix) => prefix.length > 0);
-  if (busy.length <= 1) return busy[0] ?? [];
-  const [withExists, withForall] = [mergedFrom("exists", busy), mergedFrom("forall", busy)];
-  return withForall.length < withExists.length ? withForall : withExists;
-}
-
-function mergedFrom(first: Run["kind"], prefixes: readonly (readonly Run[])[]): readonly Run[] {
-  const places = prefixes.map(() => 0);
-  const runs: Run[] = [];
-  let kind = first;
-  while (places.some((place, index) => place < prefixes[index]!.length)) {
-    let count = 0;
-    prefixes.forEach((prefix, index) => {
-      const run = prefix[places[index]!];
-      if (run?.kind !== kind) return;
-      count += run.count;
-      places[index]! += 1;
-    });
-    if (count > 0) runs.push({ kind, count });
-    kind = kind === "forall" ? "exists" : "forall";
-  }
-  return runs;
 }
 
 /** Axiom labels in a sentence: `irr and trans`. */
