@@ -1,8 +1,9 @@
 /** What can be written at the cursor. */
-import { claimForms, optionHelp, statementHelp } from "./help.ts";
+import { claimForms, normalFormHelp, optionHelp, statementHelp } from "./help.ts";
 import { readTokens, type Token } from "./lexer.ts";
 import type { NameKind, Names } from "./names.ts";
 import { readCell } from "./parser.ts";
+import { sentenceWords } from "./property-atoms.ts";
 import { continuesLine, isStatementWord } from "./reader.ts";
 import type { Scope } from "./statements.ts";
 import { latexSpellings } from "./tokens.ts";
@@ -111,10 +112,21 @@ function matchesAfter(tokens: readonly Token[], names: Names): readonly Match[] 
   if (labels !== null) return words("label", labels);
   if (statement === "relation") return afterRelation(tokens, last);
   const bracket = innermostBracket(tokens);
-  const isStructure = tokens.some((token) => token.text === "points");
+  const isStructure = tokens.some(
+    (token, at) => token.text === "points" && tokens[at - 1]?.kind !== "number",
+  );
+  if (tokens.some(({ kind }) => kind === "raw")) return [];
   if (bracket === "open-brace") return isStructure ? [] : formulaMatches(names);
-  if (tokens.some((token) => token.kind === "entails" || token.kind === "does-not-entail"))
-    return [...(endsOperand(last) ? optionMatches(tokens, last) : []), ...formulaMatches(names)];
+  if (statement === "normalise") return afterNormalise(tokens, last, names);
+  if (statement === "write" && tokens.some(({ text }) => text === "as"))
+    return words("keyword", last.text === "as" ? ["SMT-LIB", "DIMACS of size"] : []);
+  if (tokens.some((token) => token.kind === "entails" || token.kind === "does-not-entail")) {
+    if (!endsOperand(last)) return formulaMatches(names);
+    return [
+      ...(statement === "write" ? words("keyword", ["as"]) : optionMatches(tokens, last)),
+      ...formulaMatches(names),
+    ];
+  }
   switch (statement) {
     case "define":
       return tokens.some((token) => token.kind === "assign") ? afterAssign(last, names, isStructure) : [];
@@ -125,9 +137,38 @@ function matchesAfter(tokens: readonly Token[], names: Names): readonly Match[] 
     case "claim":
     case "conjecture":
       return afterClaim(tokens, last, names);
+    case "count":
+      return last.text === "with"
+        ? words("keyword", ["representatives"])
+        : [
+            ...afterTheory(tokens, last, names, []),
+            ...(endsOperand(last) && tokens.length > 1 && !tokens.some(({ text }) => text === "with")
+              ? words("keyword", ["with representatives"])
+              : []),
+          ];
+    case "write":
+      return afterTheory(tokens, last, names, ["⊨", "as"]).filter(
+        ({ text }) => !optionHelp.some(({ form }) => form.startsWith(text)),
+      );
     default:
       return afterTheory(tokens, last, names, statement === "models" ? ["of size"] : []);
   }
+}
+
+function afterNormalise(tokens: readonly Token[], last: Token, names: Names): readonly Match[] {
+  const to = tokens.findLastIndex((token) => token.text === "to" && token.kind === "word");
+  if (to < 0 || innermostBracket(tokens) !== null)
+    return [
+      ...(endsOperand(last) && tokens.length > 1 ? words("keyword", ["to"]) : []),
+      ...formulaMatches(names),
+    ];
+  if (last.text === "to")
+    return words(
+      "keyword",
+      normalFormHelp.map(({ phrase }) => phrase.join(" ")),
+    );
+  if (last.text === "with") return words("keyword", ["steps"]);
+  return words("keyword", last.text === "form" ? ["with steps"] : ["form", "with steps"]);
 }
 
 function listed(names: Names, kinds: readonly NameKind[]): readonly Match[] {
@@ -135,7 +176,12 @@ function listed(names: Names, kinds: readonly NameKind[]): readonly Match[] {
 }
 
 function formulaMatches(names: Names): readonly Match[] {
-  return [...listed(names, ["relation", "formula", "theory"]), ...FORMULA_WORDS];
+  return [
+    ...listed(names, ["relation", "formula", "theory"]),
+    ...FORMULA_WORDS,
+    ...words("keyword", sentenceWords),
+    ...words("keyword", ["id", "full", "none", "inv", "co"]),
+  ];
 }
 
 /** The labels that can follow `T.`, `T -`, `T replacing`; null elsewhere. */
@@ -173,8 +219,9 @@ function afterAssign(last: Token, names: Names, isStructure: boolean): readonly 
   return [
     ...listed(names, ["theory", "structure", "formula", "relation"]),
     ...THEORY_WORDS,
-    ...words("keyword", ["points"]),
+    ...words("keyword", ["points", "smt-lib"]),
     ...FORMULA_WORDS,
+    ...words("keyword", sentenceWords),
   ];
 }
 

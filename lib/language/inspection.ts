@@ -1,13 +1,15 @@
 /** What stands at the cursor, as data; showing it is the kernel's part. */
 import type { Formula, RelationSymbol } from "../logic/formula.ts";
+import { findProperty, type NamedProperty, propertyOf } from "../logic/properties.ts";
 import type { Theory } from "../logic/theory.ts";
 import type { Place } from "./diagnostics.ts";
-import { claimForms, helpOf, optionHelp } from "./help.ts";
+import { claimForms, helpOf, listWords, normalFormHelp, optionHelp } from "./help.ts";
+import { findInexpressible, type Inexpressible } from "./inexpressible.ts";
 import { readTokens, type Token } from "./lexer.ts";
 import { isVariable } from "./names.ts";
 import { readCell } from "./parser.ts";
 import { printFormula } from "./printer.ts";
-import type { Definition, Scope } from "./statements.ts";
+import { type Definition, defaultRelation, type Scope } from "./statements.ts";
 import { keywords, relationSigns, signs } from "./tokens.ts";
 
 interface InspectionBase extends Place {
@@ -24,6 +26,8 @@ export type Inspection = InspectionBase &
     /** For an axiom, `Dense.mid`, the definition is that of its sentence. */
     | { readonly kind: "definition"; readonly definition: Definition }
     | { readonly kind: "relation"; readonly relation: RelationSymbol }
+    /** The meaning says its formula, of the first relation with two places, its other names and its source. */
+    | { readonly kind: "property"; readonly property: NamedProperty; readonly formula: Formula }
   );
 
 /**
@@ -45,6 +49,12 @@ export function inspectAt(text: string, cursor: number, scope: Scope): Inspectio
   const named = names.find(token.text);
   if (named?.kind === "relation") return inspectRelation(named.relation, place);
   if (named !== null && named.kind !== "damaged") return inspectDefinition(named.definition, place);
+  if (named === null && token.kind === "word") {
+    const property = findProperty(token.text);
+    if (property !== undefined) return inspectProperty(property, names.relations, place);
+    const refused = findInexpressible(token.text);
+    if (refused !== undefined) return { kind: "keyword", ...inexpressibleText(refused), ...place };
+  }
   const help = helpOf(token.text);
   if (help !== undefined && (token.lineStart || at === 0))
     return { kind: "statement", name: help.word, signature: help.form, meaning: help.meaning, ...place };
@@ -56,11 +66,44 @@ export function inspectAt(text: string, cursor: number, scope: Scope): Inspectio
   return inspectSign(token);
 }
 
+function inspectProperty(
+  property: NamedProperty,
+  relations: readonly RelationSymbol[],
+  place: Place,
+): Inspection {
+  const { name, synonyms, source } = property;
+  const relation = relations.find(({ places }) => places === 2) ?? defaultRelation;
+  const formula = propertyOf(property, relation);
+  const also = synonyms.length === 0 ? "" : ` Also called ${listWords(synonyms.map((one) => `\`${one}\``))}.`;
+  const parts = property.parts.length === 0 ? "" : ` It is ${property.parts.join(" ∧ ")}.`;
+  const meaning = `${property.meaning}${parts} ${printed(formula)}.${also} Source: ${source}.`;
+  return {
+    kind: "property",
+    name,
+    signature: `${name}(${relation.name})`,
+    meaning,
+    property,
+    formula,
+    ...place,
+  };
+}
+
+function inexpressibleText({ word, reason, instead, approximate }: Inexpressible) {
+  return {
+    name: word,
+    signature: approximate === null ? word : `${word}(R) up to n`,
+    meaning: `First-order logic cannot say it: ${reason}. Instead: ${instead}.`,
+  };
+}
+
 function inspectWord(word: string): { readonly signature: string; readonly meaning: string } | null {
   const option = optionHelp.find((one) => one.word === word);
   if (option !== undefined) return { signature: option.form, meaning: option.meaning };
   const keyword = keywords.find((one) => one.word === word);
   if (keyword !== undefined) return { signature: word, meaning: keyword.meaning };
+  const form = normalFormHelp.find(({ phrase }) => phrase.includes(word));
+  if (form !== undefined)
+    return { signature: `normalise φ to ${form.phrase.join(" ")} form`, meaning: form.meaning };
   const claim = claimForms.find(({ phrase }) => phrase.includes(word));
   return claim === undefined ? null : { signature: claim.form, meaning: claim.meaning };
 }

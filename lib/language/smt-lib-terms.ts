@@ -316,19 +316,21 @@ export class SmtLibTerms {
   #ite(term: List, rest: readonly SExpression[], environment: Environment): Made {
     if (rest.length !== 3)
       this.#fail("unexpected", term, `\`ite\` has ${countOf(rest.length, "argument")}, and needs 3`);
-    if (this.#value(rest[1]!, environment).kind === "element")
-      this.#fail(
+    const condition = this.#formula(rest[0]!, environment);
+    const then = this.#value(rest[1]!, environment);
+    if (then.kind === "element")
+      return this.#fail(
         "smt-lib-refused",
         term,
         "an element chosen by `ite` cannot be read here",
         "choose between sentences",
       );
-    const [condition, then, otherwise] = rest.map((part) => this.#formula(part, environment));
-    this.#reader.charge(condition!.parts, this.#placeOf(term));
-    const negated = this.#made(not(condition!.formula), term, [condition!]);
+    const otherwise = this.#formula(rest[2]!, environment);
+    this.#reader.charge(condition.parts, this.#placeOf(term));
+    const negated = this.#made(not(condition.formula), term, [condition]);
     const sides = [
-      this.#made(implies(condition!.formula, then!.formula), term, [condition!, then!]),
-      this.#made(implies(negated.formula, otherwise!.formula), term, [negated, otherwise!]),
+      this.#made(implies(condition.formula, then.formula), term, [condition, then]),
+      this.#made(implies(negated.formula, otherwise.formula), term, [negated, otherwise]),
     ];
     return this.#made(and(...sides.map(({ formula }) => formula)), term, sides);
   }
