@@ -222,7 +222,7 @@ describe("named properties of a theory", () => {
       /^no model with it on 1 to 4 points +reflexive$/m,
       /^no model, with it or without, on 1 to +trichotomous\n3 points$/m,
       /^not searched +dense$/m,
-      /^1 property that a model has and another lacks \(checked\), with the points of each\nsymmetric \(1; 2\)$/m,
+      /^1 property that a model has and another lacks \(checked\), with the points of each\nsymmetric \(1;\s2\)$/m,
       /Finite checks went up to 3 points and decide by a published bound: Bernays/,
       /The budget ended before all/,
     ])

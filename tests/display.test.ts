@@ -1,6 +1,7 @@
 /** What is shown for answers and definitions, in all forms. */
 import fc from "fast-check";
 import { Marked } from "marked";
+import temml from "temml";
 import { beforeAll, describe, expect, it } from "vitest";
 import { showAnswer } from "../kernel/display/answers.ts";
 import { code } from "../kernel/display/blocks.ts";
@@ -8,7 +9,14 @@ import { showInline, showProgress } from "../kernel/display/bundle.ts";
 import { dataOf } from "../kernel/display/data.ts";
 import { showDefinition, showDescription } from "../kernel/display/definitions.ts";
 import { prepareDrawing } from "../kernel/display/drawing.ts";
-import { inlineFormula, inlineNumber, inlineVerdict } from "../kernel/display/inline.ts";
+import {
+  inlineFormula,
+  inlineNumber,
+  inlineStructure,
+  inlineText,
+  inlineTheory,
+  inlineVerdict,
+} from "../kernel/display/inline.ts";
 import { sourceOf, structureData } from "../kernel/display/structures.ts";
 import { buildStructure, type Structure } from "../lib/carriers/structure.ts";
 import { EVIDENCE_FORMAT, EVIDENCE_VERSION, type Evidence } from "../lib/evidence/format.ts";
@@ -761,6 +769,22 @@ describe("values in sentences", () => {
     expect(formula["text/plain"]).toBe("∀x ∃y Rxy");
     expect(formula["text/markdown"]).toMatch(/^\$\\forall x\\, \\exists y\\, Rxy\$$/);
     expect(formula["text/latex"]).toBe(formula["text/markdown"]);
+  });
+
+  it("give theories as mathematics, and structures and what was typed as cell text", () => {
+    const { "text/plain": plain, "text/markdown": markdown } = inlineTheory(order.theory);
+    expect(plain).toBe("{ irr: ∀x ¬Rxx; trans: ∀x ∀y ∀z (Rxy ∧ Ryz → Rxz) }");
+    expect(markdown).toMatch(/^\$\\\{ \\textit\{irr\}/);
+    temml.renderToString(markdown!.slice(1, -1), { throwOnError: true });
+    expect(inlineText("claim  Order\n is consistent")["text/markdown"]).toBe("`claim Order is consistent`");
+    const pair = { carrier: { kind: "points", size: 2 }, relations: [{ relation: R, tuples: [[1, 2]] }] } as const; // biome-ignore format: a table
+    expect(inlineStructure(pair)["text/plain"]).toBe("points 2 where R is { (1,2) }");
+    const all = Array.from({ length: 900 }, (_, i) => [Math.floor(i / 30) + 1, (i % 30) + 1]);
+    const huge = {
+      carrier: { kind: "points", size: 30 },
+      relations: [{ relation: R, tuples: all }],
+    } as const;
+    expect(inlineStructure(huge)["text/plain"]).toBe("a structure on 30 points");
   });
 
   // A reader of Markdown that is not ours gives the text back, and makes nothing else of it.

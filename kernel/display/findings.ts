@@ -88,7 +88,7 @@ function sized(
   return properties.flatMap((finding, index): Inline[] => {
     const { having, lacking } = finding;
     const sizes = [having, lacking].flatMap((search) => (search.kind === "found" ? [search.size] : []));
-    return [index === 0 ? "" : ", ", nameOf(finding), ` (${sizes.join("; ")})`];
+    return [index === 0 ? "" : ", ", nameOf(finding), ` (${sizes.join(";\u00a0")})`];
   });
 }
 

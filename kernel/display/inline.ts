@@ -1,13 +1,14 @@
-/** Short values for the middle of sentences: a verdict, a count, a formula, a theory. */
+/** Short values for the middle of sentences: a verdict, a count, a formula, and what a name stands for. */
 import { buildStructure } from "../../lib/carriers/structure.ts";
+import { printAxiomSet } from "../../lib/language/printer.ts";
 import type { Formula } from "../../lib/logic/formula.ts";
 import type { StructureDefinition } from "../../lib/logic/structure-definition.ts";
 import type { Theory } from "../../lib/logic/theory.ts";
 import type { MimeBundle } from "../session/evaluator.ts";
-import { code, formulaOf, type Inline } from "./blocks.ts";
+import { code, formulaOf } from "./blocks.ts";
 import { showInline } from "./bundle.ts";
-import { sourceOf } from "./structures.ts";
-import { counted, grouped } from "./text.ts";
+import { sizeOf, sourceOf } from "./structures.ts";
+import { grouped } from "./text.ts";
 
 /** The word alone. */
 export function inlineVerdict(word: string): MimeBundle {
@@ -24,27 +25,24 @@ export function inlineFormula(formula: Formula): MimeBundle {
   return showInline(formulaOf(formula));
 }
 
-/** Cell text, as the user wrote it. */
+/** What the user wrote, on one line, in a fixed-width font. */
 export function inlineText(text: string): MimeBundle {
   return showInline(code(text.replace(/\s+/g, " ")));
 }
 
-/** The axioms with their labels, one after another. */
-export function inlineTheory({ axioms }: Theory): MimeBundle {
-  if (axioms.length === 0) return showInline("no axioms");
-  const parts = axioms.flatMap(({ label, formula }, index): Inline[] => [
-    index === 0 ? "" : "; ",
-    code(label),
-    ": ",
-    formulaOf(formula),
-  ]);
-  return showInline(...parts);
+/** The axioms between braces, with their labels. */
+export function inlineTheory(theory: Theory): MimeBundle {
+  const mathematics = `$${printAxiomSet(theory, "latex")}$`;
+  return {
+    "text/plain": printAxiomSet(theory, "unicode"),
+    "text/markdown": mathematics,
+    "text/latex": mathematics,
+  };
 }
 
-/** A structure as cell text, or by its size where that would be long. */
+/** The structure as cell text; one with very many tuples by its size. */
 export function inlineStructure(definition: StructureDefinition): MimeBundle {
-  const source = sourceOf(buildStructure(definition));
-  return source === null
-    ? showInline(`a structure on ${counted(definition.carrier.size, "point")}`)
-    : showInline(code(source));
+  const structure = buildStructure(definition);
+  const source = sourceOf(structure);
+  return showInline(source === null ? `a structure on ${sizeOf(structure)}` : code(source));
 }
