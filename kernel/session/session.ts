@@ -1,9 +1,7 @@
 /** A session: the definitions and claims of one notebook, and everything that can be asked about them. */
 import { randomUUID } from "node:crypto";
 import { completeAt, inspectAt, isComplete } from "../../lib/language/completion.ts";
-import { parseCell } from "../../lib/language/parser.ts";
 import { emptyScope } from "../../lib/language/statements.ts";
-import { showDescription } from "../display/definitions.ts";
 import { prepareDrawing } from "../display/drawing.ts";
 import { showInspection } from "../display/inspection.ts";
 import type {
@@ -15,6 +13,7 @@ import type {
   ExpressionOutcome,
   MimeBundle,
 } from "./evaluator.ts";
+import { evaluateProse } from "./prose.ts";
 import { type Memory, runCell } from "./run-cell.ts";
 
 export interface SessionOptions {
@@ -40,30 +39,8 @@ export class Session implements Evaluator {
     return runCell(code, this.#memory, { isInterrupted: this.#isInterrupted, show, clock: this.#clock });
   }
 
-  /** An expression is the name of a definition, a theory expression, or `verdict of claim 3`. */
   async evaluateExpression(expression: string): Promise<ExpressionOutcome> {
-    const number = /^\s*verdict of claim (\d+)\s*$/.exec(expression)?.[1];
-    if (number !== undefined) return this.#verdictOf(Number(number));
-    await prepareDrawing();
-    const { statements, diagnostics } = parseCell(`describe ${expression.trim()}`, this.#memory.scope);
-    const [statement] = statements;
-    if (statement?.kind === "describe" && statements.length === 1)
-      return { status: "ok", data: showDescription(statement).data, metadata: {} };
-    const evalue = diagnostics[0]?.message ?? "not an expression: the name of a definition is wanted";
-    return { status: "error", ename: "Mistakes", evalue, traceback: [`Mistakes: ${evalue}`] };
-  }
-
-  #verdictOf(number: number): ExpressionOutcome {
-    const entry = this.#memory.ledger[number - 1];
-    if (entry !== undefined)
-      return {
-        status: "ok",
-        data: { "text/plain": entry.verdict, "text/markdown": entry.verdict },
-        metadata: {},
-      };
-    const count = this.#memory.ledger.length;
-    const evalue = `there is no claim ${number}; so far there ${count === 1 ? "is 1" : `are ${count}`}`;
-    return { status: "error", ename: "Mistakes", evalue, traceback: [`Mistakes: ${evalue}`] };
+    return evaluateProse(expression, this.#memory, this.#isInterrupted);
   }
 
   async complete(code: string, cursor: number): Promise<Completion> {

@@ -8,8 +8,12 @@ import { jointSignature } from "./finite-search.ts";
 import { SHOWN_MODELS } from "./models.ts";
 import { meterFor, type Work } from "./work.ts";
 
-/** Counts size by size; the counts of finished sizes are exact, and where the budget ends nothing more is said. */
-export function countModels(theory: Theory, representatives: boolean, work: Work): CountAnswer {
+/**
+ * Counts size by size; the counts of finished sizes are exact, and where the budget ends nothing more is said.
+ * @param representatives whether one model of each class is to be kept
+ * @param from the first size
+ */
+export function countModels(theory: Theory, representatives: boolean, work: Work, from = 1): CountAnswer {
   const writer = new EvidenceWriter();
   const sentences = sentencesOf(theory);
   const axioms = writer.theory(sentences);
@@ -18,7 +22,7 @@ export function countModels(theory: Theory, representatives: boolean, work: Work
   const sizes: CountedSize[] = [];
   let ended: CountAnswer["ended"] = null;
   let endedAt: number | null = null;
-  for (let size = 1; size <= work.upTo && ended === null; size += 1) {
+  for (let size = from; size <= work.upTo && ended === null; size += 1) {
     work.report(`counting on ${size} ${size === 1 ? "point" : "points"}`);
     const task = { size, sentences, relations };
     const counted = countStructures(task, meter, { representatives: representatives ? SHOWN_MODELS : 0 });
