@@ -97,7 +97,6 @@ export class Clausifier {
     const variable = this.variableOf(gate);
     const children = [...this.#circuit.childrenOf(gate)];
     if ((missing & 1) !== 0) for (const child of children) this.#clause([-variable], child);
-    if ((missing & 2) !== 0)
-      this.#sink.addClause([variable, ...children.map((child) => this.#literal(-child))]);
+    if ((missing & 2) !== 0) this.#add([variable, ...children.map((child) => this.#literal(-child))]);
   }
 }

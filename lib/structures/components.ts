@@ -46,13 +46,20 @@ export function countAssignments(list: ClauseList, over: readonly number[], mete
   const parts = partition(list.variableCount, clauses, meter);
   const isOver = new Uint8Array(list.variableCount + 1);
   for (const variable of over) isOver[variable] = 1;
-  let count = 1n;
+  let free = 0;
   const members = new Map<number, number[]>();
   const occurs = new Uint8Array(list.variableCount + 1);
-  for (const clause of clauses) for (const literal of clause) occurs[Math.abs(literal)] = 1;
+  const byPart = new Map<number, (readonly number[])[]>();
+  for (const clause of metered(clauses, meter)) {
+    for (const literal of clause) occurs[Math.abs(literal)] = 1;
+    const part = parts[Math.abs(clause[0]!)]!;
+    const known = byPart.get(part);
+    if (known === undefined) byPart.set(part, [clause]);
+    else known.push(clause);
+  }
   for (let variable = 1; variable <= list.variableCount; variable += 1) {
     if (occurs[variable] === 0) {
-      if (isOver[variable] === 1 && values[variable] === 0) count *= 2n;
+      if (isOver[variable] === 1 && values[variable] === 0) free += 1;
       continue;
     }
     const part = parts[variable]!;
@@ -60,13 +67,7 @@ export function countAssignments(list: ClauseList, over: readonly number[], mete
     if (known === undefined) members.set(part, [variable]);
     else known.push(variable);
   }
-  const byPart = new Map<number, (readonly number[])[]>();
-  for (const clause of clauses) {
-    const part = parts[Math.abs(clause[0]!)]!;
-    const known = byPart.get(part);
-    if (known === undefined) byPart.set(part, [clause]);
-    else known.push(clause);
-  }
+  let count = 1n << BigInt(free);
   for (const [part, variables] of members) {
     const own = countPart(variables, byPart.get(part)!, isOver, meter);
     if (own === null) return null;
@@ -85,7 +86,7 @@ function countPart(
 ): number | null {
   const solver = new Solver();
   const renamed = new Map(variables.map((variable) => [variable, solver.newVariable()]));
-  for (const clause of clauses)
+  for (const clause of metered(clauses, meter))
     solver.addClause(clause.map((literal) => Math.sign(literal) * renamed.get(Math.abs(literal))!));
   const over = variables
     .filter((variable) => isOver[variable] === 1)
@@ -112,9 +113,8 @@ function propagateUnits(list: ClauseList, meter: Meter): Simplified | null {
   let clauses: readonly (readonly number[])[] = list.clauses;
   for (let settled = true; settled; ) {
     settled = false;
-    meter.charge(clauses.length);
     const rest: (readonly number[])[] = [];
-    for (const clause of clauses) {
+    for (const clause of metered(clauses, meter)) {
       if (clause.some((literal) => truthOf(literal) > 0)) continue;
       const open = clause.some((literal) => truthOf(literal) < 0)
         ? clause.filter((literal) => truthOf(literal) === 0)
@@ -141,17 +141,22 @@ function partition(variableCount: number, clauses: readonly (readonly number[])[
     }
     return root;
   };
-  let unmetered = 0;
-  for (const clause of clauses) {
+  for (const clause of metered(clauses, meter)) {
     const first = rootOf(Math.abs(clause[0]!));
     for (const literal of clause) parents[rootOf(Math.abs(literal))] = first;
-    unmetered += 1;
-    if (unmetered >= METERED_AT_ONCE) {
-      meter.charge(unmetered);
-      unmetered = 0;
-    }
   }
-  meter.charge(unmetered);
   for (let variable = 1; variable <= variableCount; variable += 1) parents[variable] = rootOf(variable);
   return parents;
+}
+
+/** The clauses, while the meter is told of them. */
+function* metered(
+  clauses: readonly (readonly number[])[],
+  meter: Meter,
+): Generator<readonly number[], void, undefined> {
+  for (let from = 0; from < clauses.length; from += METERED_AT_ONCE) {
+    const to = Math.min(clauses.length, from + METERED_AT_ONCE);
+    meter.charge(to - from);
+    for (let at = from; at < to; at += 1) yield clauses[at]!;
+  }
 }
