@@ -39,8 +39,8 @@ async function runDemo(name: string): Promise<readonly Ran[]> {
 }
 
 describe("demo notebooks", () => {
-  it("are three", () => {
-    expect(files).toHaveLength(3);
+  it("are four", () => {
+    expect(files).toHaveLength(4);
   });
 
   it.each(files)("%s is of nbformat 4.5, for this kernel, without outputs", (name) => {
@@ -95,6 +95,20 @@ describe("demo notebooks", () => {
     const { data } = results.find((result) => result.text === text)!;
     expect(data).toMatchObject({ complete: true });
     expect(data.models).toHaveLength(count);
+  });
+
+  // Semiorders: OEIS A006531, and A000108 up to isomorphism. Strict weak orders: A000670, and powers of 2.
+  it.each([
+    ["count Threshold up to 5", [1, 3, 19, 183, 2371], [1, 2, 5, 14, 42]],
+    ["count Shelves up to 5", [1, 3, 13, 75, 541], [1, 2, 4, 8, 16]],
+  ])("4-customers.ipynb: %s comes to the published numbers", async (text, labelled, unlabelled) => {
+    const results = (await runDemo("4-customers.ipynb")).flatMap((ran) => ran.results);
+    const bySize = (counts: readonly number[]) =>
+      Object.fromEntries(counts.map((count, index) => [String(index + 1), count]));
+    expect(results.find((result) => result.text === text)!.data).toEqual({
+      labelled: bySize(labelled),
+      unlabelled: bySize(unlabelled),
+    });
   });
 });
 
