@@ -136,6 +136,20 @@ describe("ways to draw", () => {
     expect(draw(2, []).caption).toBe("R holds of no pair");
   });
 
+  it("put the greater point higher, also where the sign says that it comes first", () => {
+    const heights = (name: string) => {
+      const { svg, caption } = drawStructure(structureOf(3, { [name]: [[1, 2], [2, 3], [1, 3]] }))!; // biome-ignore format: a table
+      const circles = readMarkup(svg, []).elements.filter((element) => element.name === "circle");
+      return { caption, ys: circles.map(({ attributes }) => Number(attributes.get("cy"))) };
+    };
+    const less = heights("≺");
+    expect(less.caption).toContain("≺ by upward lines");
+    expect(less.ys[0]).toBeGreaterThan(less.ys[2]!);
+    const greater = heights("≻");
+    expect(greater.caption).toContain("≻ by downward lines");
+    expect(greater.ys[0]).toBeLessThan(greater.ys[2]!);
+  });
+
   it("show maps of up to 12 points without overlaps", () => {
     const maps = fc
       .integer({ min: 1, max: 12 })

@@ -116,7 +116,7 @@ function wayToDraw(drawables: readonly Drawable[]): {
       drawables.map(({ matrices }) => matrices[0]!),
     );
     return {
-      plan: ({ matrices, labels }) => style.plan(matrices[0]!, labels),
+      plan: ({ matrices, labels }) => style.plan(matrices[0]!, labels, names[0]!),
       explain: [remark, ...missing].join("; "),
     };
   }

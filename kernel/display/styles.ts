@@ -38,10 +38,13 @@ export interface Style {
     | "arrows";
   /** Whether the relation can be drawn so; `isMarked` says that something is written at its points. */
   readonly fits: (relation: Matrix, isMarked: boolean) => boolean;
-  readonly plan: (relation: Matrix, labels: readonly PointLabel[]) => Plan;
+  readonly plan: (relation: Matrix, labels: readonly PointLabel[], name: string) => Plan;
   /** What a reader of pictures of these relations must know. */
   readonly explain: (name: string, relations: readonly Matrix[]) => string;
 }
+
+/** Signs that are read "greater than": of such an order the greater point stands higher, so that lines lead down. */
+const DESCENDING: ReadonlySet<string> = new Set(">≥≻⪰≽≫⊐⊒⊃⊇⊳⊵");
 
 /** The style that says most comes first; the last fits everything. */
 export const styles: readonly Style[] = [
@@ -170,18 +173,20 @@ function linesBetween(
   return arcs;
 }
 
-function planOrder(order: Matrix, labels: readonly PointLabel[]): Plan {
+function planOrder(order: Matrix, labels: readonly PointLabel[], name: string): Plan {
   const extents = labels.map(extentOf);
-  const { places, curves } = layOutLayers(extents, coveringPairs(order));
+  const upward = DESCENDING.has(name) ? converseOf(order) : order;
+  const { places, curves } = layOutLayers(extents, coveringPairs(upward));
   const arcs = curves.map((curve): Arc => ({ curve, stroke: 0, headAtEnd: false, headAtStart: false }));
   return { points: pointsAt(places, extents, labels), arcs, frames: [] };
 }
 
-function planClasses(preorder: Matrix, labels: readonly PointLabel[]): Plan {
+function planClasses(preorder: Matrix, labels: readonly PointLabel[], name: string): Plan {
   const { classes, order } = classesOf(preorder);
   return planOrder(
     order,
     classes.map((points): PointLabel => [points.map((point) => labels[point]![0]).join(", ")]),
+    name,
   );
 }
 
@@ -190,7 +195,8 @@ function explainOrder(name: string, orders: readonly Matrix[], leavesOutLoops: b
     (order) => coveringPairs(order).length < pairsOf(order).filter(([i, j]) => i !== j).length,
   );
   const omitted = [...(leavesOutLoops ? ["loops"] : []), ...(isReduced ? ["transitive pairs"] : [])];
-  return `${name} by upward lines${omitted.length === 0 ? "" : `; ${enumerate(omitted)} left out`}`;
+  const direction = DESCENDING.has(name) ? "downward" : "upward";
+  return `${name} by ${direction} lines${omitted.length === 0 ? "" : `; ${enumerate(omitted)} left out`}`;
 }
 
 function explainArrows(name: string, relations: readonly Matrix[]): string {

@@ -6,6 +6,7 @@
 import { printFormula, printTerm } from "../../lib/language/printer.ts";
 import type { Block, Inline, PictureBlock, TableBlock } from "./blocks.ts";
 import { visible } from "./text.ts";
+import { inlineToText, longColumns } from "./to-text.ts";
 
 const RULE = "#8a8a8a";
 
@@ -103,8 +104,14 @@ function tableToHtml(table: TableBlock): string {
   const matrix = table.look === "matrix";
   const align = ALIGN[table.look];
   const space = { matrix: "1px 7px", numbers: "3px 4px 3px 18px", prose: "3px 14px 3px 4px" }[table.look];
-  const headCell = (title: string) =>
-    `<th scope="col" style="text-align:${align};padding:${space};border-bottom:1px solid ${RULE}">${escapeHtml(title)}</th>`;
+  const isLong = longColumns(table);
+  // Beside a long last column, browsers would break titles of several words after each of them.
+  const isPhrase =
+    table.look === "prose" && table.rows.some(([title]) => inlineToText(title ?? []).length > 20);
+  const headCell = (title: string, column: number) =>
+    `<th scope="col" style="text-align:${align};padding:${space};border-bottom:1px solid ${RULE}${
+      isLong[column] ? ";width:16em" : column === 0 && isPhrase ? ";min-width:10em" : ""
+    }">${escapeHtml(title)}</th>`;
   const rows = table.rows.map((row) => {
     const cells = row.map((cell, column) => {
       const inner = inlineToHtml(cell);

@@ -4,8 +4,8 @@
  */
 import { printFormula, printTerm } from "../../lib/language/printer.ts";
 import type { Block, Inline, TableBlock } from "./blocks.ts";
-import { displayWidth, visible } from "./text.ts";
-import { inlineToText } from "./to-text.ts";
+import { visible } from "./text.ts";
+import { longColumns } from "./to-text.ts";
 
 /** Rows above which a table may break across pages. */
 const LONG_TABLE = 24;
@@ -144,17 +144,13 @@ function tableToLatex(table: TableBlock): string {
   ].join("\n");
 }
 
-/** Columns of a cell of prose, as plain text, beyond which it is broken into lines. */
-const CELL_WIDTH = 38;
-
 /** The column letters; long prose gets paragraphs. */
-function columnsOf({ look, head, rows }: TableBlock): string {
+function columnsOf(table: TableBlock): string {
+  const { look, head } = table;
   const last = head.length - 1;
   if (look === "numbers") return "r".repeat(last + 1);
   if (look === "matrix") return `c@{\\quad}${"c".repeat(last)}`;
-  const isLong = head.map(
-    (_, column) => column < last && rows.some((row) => displayWidth(inlineToText(row[column]!)) > CELL_WIDTH),
-  );
+  const isLong = longColumns(table);
   const before = isLong.map((long) => (long && last > 0 ? "p{0.3\\linewidth}" : "l"));
   const rest = last > 2 || isLong.includes(true) ? "0.4" : "0.65";
   return `${before.slice(0, last).join("")}p{${rest}\\linewidth}`;

@@ -1,7 +1,7 @@
 /** Blocks as plain text, complete by itself: what a terminal shows, and what remains when nothing richer is read. */
 import { printFormula, printTerm } from "../../lib/language/printer.ts";
 import type { Block, Inline, TableBlock } from "./blocks.ts";
-import { padEnd, padStart, visible, widestOf, wrap } from "./text.ts";
+import { displayWidth, padEnd, padStart, visible, widestOf, wrap } from "./text.ts";
 
 /** Columns that a line of prose or a formula may take before it is broken. */
 const WIDTH = 100;
@@ -59,6 +59,16 @@ function lineToText(parts: readonly Inline[]): string {
 
 /** Columns that a cell of prose before the last one may take. */
 const CELL_WIDTH = 38;
+
+/** For each column of a table of prose, whether it stands before the last one and has cells of several lines. */
+export function longColumns({ look, head, rows }: TableBlock): readonly boolean[] {
+  return head.map(
+    (_, column) =>
+      look === "prose" &&
+      column < head.length - 1 &&
+      rows.some((row) => displayWidth(inlineToText(row[column] ?? [])) > CELL_WIDTH),
+  );
+}
 
 /** Columns set under each other, a rule under the head; long cells of prose go on below themselves. */
 function tableToText(table: TableBlock): string {
