@@ -9,6 +9,9 @@ import { ground, unknownTables } from "./ground.ts";
 import { Solver } from "./sat/solver.ts";
 import { breakSymmetry } from "./symmetry.ts";
 
+/** Table entries laid out before an interrupt is looked for. */
+const POLLED_AT_ONCE = 4096;
+
 export interface SearchTask {
   readonly carrier: Carrier;
   /** Closed; all are to hold. */
@@ -49,7 +52,10 @@ export function layOut(
   const tables = unknownTables(task.carrier, task.relations, circuit, meter);
   const clausifier = new Clausifier(circuit, sink, meter, bothWays);
   const variables = task.relations.map((relation) =>
-    tables.get(relation.name)!.map((input) => clausifier.variableOf(input)),
+    tables.get(relation.name)!.map((input, kind) => {
+      if (kind % POLLED_AT_ONCE === 0) meter.charge(0);
+      return clausifier.variableOf(input);
+    }),
   );
   for (const sentence of task.sentences) {
     const reference = ground(task.carrier, sentence, tables, circuit, meter);

@@ -7,12 +7,8 @@ import type { ClauseSink } from "./circuit.ts";
 /** Table positions compared over all symmetries of one search, at most; the rest is cut off. */
 const POSITIONS_BOUND = 60_000;
 
-/** A table entry of an unknown structure: its relation's number of places, its kind, and its variable. */
-interface Entry {
-  readonly relation: number;
-  readonly places: number;
-  readonly kind: number;
-}
+/** Entries looked at before an interrupt is looked for. */
+const POLLED_AT_ONCE = 4096;
 
 /**
  * Adds clauses that keep, of every set of isomorphic structures on the carrier, at least the one whose table is
@@ -31,33 +27,38 @@ export function breakSymmetry(
 ): void {
   const symmetries = carrier.symmetries();
   if (symmetries.length === 0) return;
-  const entries: Entry[] = [];
   // Relations with few places first: their entries say most about which elements can be exchanged.
   const order = relations
     .map((_, index) => index)
     .sort((a, b) => relations[a]!.places - relations[b]!.places);
-  for (const relation of order) {
-    const { places } = relations[relation]!;
-    for (let kind = 0; kind < carrier.kindCount(places); kind += 1) entries.push({ relation, places, kind });
-  }
   const each = Math.max(1, Math.floor(POSITIONS_BOUND / symmetries.length));
+  let unpolled = 0;
   for (const symmetry of symmetries) {
     let equalSoFar: number | null = null;
     let compared = 0;
-    for (const { relation, places, kind } of entries) {
-      const image = symmetry.image(places, kind);
-      // Where the image comes earlier, an exchange has already made the two entries equal.
-      if (image <= kind) continue;
-      const own = variableOf(relation, kind);
-      const other = variableOf(relation, image);
-      const soFar: readonly number[] = equalSoFar === null ? [] : [-equalSoFar];
-      sink.addClause([...soFar, -own, other]);
-      compared += 1;
-      if (compared >= each) break;
-      const stillEqual = sink.newVariable();
-      sink.addClause([...soFar, -own, stillEqual]);
-      sink.addClause([...soFar, other, stillEqual]);
-      equalSoFar = stillEqual;
+    comparing: for (const relation of order) {
+      const { places } = relations[relation]!;
+      const kinds = carrier.kindCount(places);
+      for (let kind = 0; kind < kinds; kind += 1) {
+        unpolled += 1;
+        if (unpolled === POLLED_AT_ONCE) {
+          meter.charge(0);
+          unpolled = 0;
+        }
+        const image = symmetry.image(places, kind);
+        // Where the image comes earlier, an exchange has already made the two entries equal.
+        if (image <= kind) continue;
+        const own = variableOf(relation, kind);
+        const other = variableOf(relation, image);
+        const soFar: readonly number[] = equalSoFar === null ? [] : [-equalSoFar];
+        sink.addClause([...soFar, -own, other]);
+        compared += 1;
+        if (compared >= each) break comparing;
+        const stillEqual = sink.newVariable();
+        sink.addClause([...soFar, -own, stillEqual]);
+        sink.addClause([...soFar, other, stillEqual]);
+        equalSoFar = stillEqual;
+      }
     }
     meter.charge(compared);
   }
