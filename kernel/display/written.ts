@@ -9,7 +9,7 @@ import { counted, visible } from "./text.ts";
 type Write = Statement & { readonly kind: "write" };
 
 /** Longer texts are folded on the page. */
-const OPEN_LINES = 60;
+const OPEN_LINES = 24;
 
 /**
  * `write T as F`. Plain text is the text itself, so that it can be piped on.
