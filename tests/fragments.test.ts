@@ -388,6 +388,16 @@ describe("bounds", () => {
     },
   );
 
+  it("monadic sentences with one relation: a model within 2·3 points when there is one on 8", () => {
+    fc.assert(
+      fc.property(sentences([P], 3), sentences([P], 3), (one, other) => {
+        expect(finiteCheckBound([one, other])!.points).toBeLessThanOrEqual(6);
+        expectBound([one, other], [P], 8);
+      }),
+      options(150),
+    );
+  });
+
   it("∃*∀* and monadic sentences together", () => {
     let mixed = 0;
     fc.assert(
