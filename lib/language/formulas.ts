@@ -14,6 +14,7 @@ import {
 import { AtomReader } from "./atoms.ts";
 import type { Place } from "./diagnostics.ts";
 import { listWords } from "./help.ts";
+import { joined } from "./join.ts";
 import type { Token } from "./lexer.ts";
 import { measureFormula } from "./measure.ts";
 import { readVariables } from "./quantifiers.ts";
@@ -306,13 +307,4 @@ class FormulaReader {
       body,
     );
   }
-}
-
-/** Joins in portions: a call with more than about 100,000 arguments would overflow the stack. */
-function joined(join: (...parts: Formula[]) => Formula, parts: readonly Formula[]): Formula {
-  const portion = 10_000;
-  if (parts.length <= portion) return join(...parts);
-  const portions: Formula[] = [];
-  for (let at = 0; at < parts.length; at += portion) portions.push(join(...parts.slice(at, at + portion)));
-  return join(...portions);
 }

@@ -119,9 +119,18 @@ class ScriptReader {
     return "theory" in result ? result.theory : null;
   }
 
+  /** Counts code points only when it is asked for them, which is when there is a mistake. */
   #placeOf({ start, end }: { readonly start: number; readonly end: number }): Place {
-    const before = (units: number) => this.#raw.from + [...this.#raw.text.slice(0, units)].length;
-    return { from: before(start), to: before(end) };
+    const { from, text } = this.#raw;
+    const before = (units: number) => from + [...text.slice(0, units)].length;
+    return {
+      get from() {
+        return before(start);
+      },
+      get to() {
+        return before(end);
+      },
+    };
   }
 
   #command(expression: SExpression): void {

@@ -4,7 +4,6 @@ import {
   atom,
   equal,
   type Formula,
-  freeVariables,
   iff,
   implies,
   not,
@@ -15,23 +14,12 @@ import {
   type Variable,
 } from "../logic/formula.ts";
 import type { Place } from "./diagnostics.ts";
+import { joined } from "./join.ts";
 import { nearestName } from "./nearest.ts";
 import { MAX_NESTING, quote, type Reader, Unreadable } from "./reader.ts";
 import type { SExpression } from "./s-expressions.ts";
-import { variableOfSymbol } from "./smt-lib-symbols.ts";
+import { Bindings, type Made, type Value } from "./smt-lib-bindings.ts";
 import { countOf } from "./wording.ts";
-
-/** A formula as it is built, measured on the way, since `let` can make it grow with every use. */
-interface Made {
-  readonly kind: "formula";
-  readonly formula: Formula;
-  readonly parts: number;
-  readonly nesting: number;
-}
-type Value = Made | { readonly kind: "element"; readonly variable: Variable };
-
-/** What the symbols bound around a place stand for, innermost first. */
-type Environment = { readonly symbol: string; readonly value: Value; readonly outer: Environment } | null;
 
 interface Macro {
   readonly parameters: readonly Variable[];
@@ -46,6 +34,7 @@ export class SmtLibTerms {
   readonly #placeOf: (expression: SExpression) => Place;
   readonly #relations = new Map<string, RelationSymbol>();
   readonly #macros = new Map<string, Macro>();
+  #bindings = new Bindings();
   /** The sort of the elements; null until it is declared. */
   sort: string | null = null;
   /** Sorts that have been reported where they were declared. */
@@ -109,14 +98,17 @@ export class SmtLibTerms {
         `${quote(name.text)} is a function, and formulas here have relations alone`,
         "define a formula: its sort is `Bool`",
       );
-    const { environment, variables } = this.#bind(parameters, null);
-    const made = this.#formula(body!, environment);
+    this.#bindings = new Bindings();
+    const { variables, symbols } = this.#bind(parameters);
+    const made = this.#formula(body!);
+    this.#bindings.release(symbols);
     if (this.#checkFree(name)) this.#macros.set(name.text, { parameters: variables, body: made });
   }
 
   /** Reads a closed term of sort Bool. */
   sentence(term: SExpression): Formula {
-    const { formula, parts } = this.#formula(term, null);
+    this.#bindings = new Bindings();
+    const { formula, parts } = this.#formula(term);
     this.#reader.charge(parts, this.#placeOf(term));
     return formula;
   }
@@ -132,8 +124,8 @@ export class SmtLibTerms {
     return { kind: "formula", formula, parts: size, nesting: nesting + 1 };
   }
 
-  #formula(term: SExpression, environment: Environment): Made {
-    const value = this.#value(term, environment);
+  #formula(term: SExpression): Made {
+    const value = this.#value(term);
     if (value.kind === "formula") return value;
     return this.#fail(
       "unexpected",
@@ -142,7 +134,7 @@ export class SmtLibTerms {
     );
   }
 
-  #element(term: SExpression, environment: Environment): Variable {
+  #element(term: SExpression): Variable {
     if (term.kind === "list" && term.items[0]?.kind === "symbol") {
       const head = term.items[0].text;
       if (!this.#relations.has(head) && !this.#macros.has(head) && !FORMERS.has(head))
@@ -152,15 +144,15 @@ export class SmtLibTerms {
           `${quote(head)} is used as a function, and formulas here have relations alone`,
         );
     }
-    const value = this.#value(term, environment);
+    const value = this.#value(term);
     if (value.kind === "element") return value.variable;
     return this.#fail("unexpected", term, "expected an element, found a formula");
   }
 
-  #value(term: SExpression, environment: Environment): Value {
+  #value(term: SExpression): Value {
     switch (term.kind) {
       case "symbol":
-        return this.#symbol(term, environment);
+        return this.#symbol(term);
       case "constant":
         return this.#fail(
           "smt-lib-refused",
@@ -174,7 +166,7 @@ export class SmtLibTerms {
         this.#reader.enter(this.#placeOf(term));
         const value =
           head?.kind === "symbol"
-            ? this.#compound(term, head, rest, environment)
+            ? this.#compound(term, head, rest)
             : this.#fail(
                 "unexpected",
                 head ?? term,
@@ -186,35 +178,35 @@ export class SmtLibTerms {
     }
   }
 
-  #symbol(symbol: Symbol, environment: Environment): Value {
+  #symbol(symbol: Symbol): Value {
     const { text } = symbol;
-    const bound = find(environment, text);
+    const bound = this.#bindings.find(text);
     if (bound !== undefined) {
       if (bound.kind === "formula") this.#reader.charge(bound.parts, this.#placeOf(symbol));
       return bound;
     }
     if (text === "true" || text === "false") return this.#made({ kind: text }, symbol, []);
-    return this.#apply(symbol, symbol, [], environment);
+    return this.#apply(symbol, symbol, []);
   }
 
-  #compound(term: List, head: Symbol, rest: readonly SExpression[], environment: Environment): Value {
-    if (find(environment, head.text) !== undefined)
+  #compound(term: List, head: Symbol, rest: readonly SExpression[]): Value {
+    if (this.#bindings.find(head.text) !== undefined)
       this.#fail("unexpected", head, `${quote(head.text)} is a variable, and has no arguments`);
     const operator = head.quoted && RESERVED_FORMERS.has(head.text) ? "" : head.text;
     switch (operator) {
       case "forall":
       case "exists":
-        return this.#quantified(term, operator, rest, environment);
+        return this.#quantified(term, operator, rest);
       case "let":
-        return this.#let(term, rest, environment);
+        return this.#let(term, rest);
       case "!":
         if (rest[0] === undefined) return this.#fail("unexpected", term, "expected a term after `!`");
-        return this.#value(rest[0], environment);
+        return this.#value(rest[0]);
       case "=":
       case "distinct":
-        return this.#compared(term, operator, rest, environment);
+        return this.#compared(term, operator, rest);
       case "ite":
-        return this.#ite(term, rest, environment);
+        return this.#ite(term, rest);
       case "not":
       case "and":
       case "or":
@@ -231,7 +223,7 @@ export class SmtLibTerms {
         return this.#connected(
           term,
           operator,
-          rest.map((part) => this.#formula(part, environment)),
+          rest.map((part) => this.#formula(part)),
         );
       }
       case "match":
@@ -239,7 +231,7 @@ export class SmtLibTerms {
       case "as":
         return this.#fail("smt-lib-refused", term, `${quote(operator)} cannot be read here`);
       default:
-        return this.#apply(term, head, rest, environment);
+        return this.#apply(term, head, rest);
     }
   }
 
@@ -250,9 +242,9 @@ export class SmtLibTerms {
       case "not":
         return this.#made(not(first!), term, parts);
       case "and":
-        return this.#made(and(...formulas), term, parts);
+        return this.#made(joined(and, formulas), term, parts);
       case "or":
-        return this.#made(or(...formulas), term, parts);
+        return this.#made(joined(or, formulas), term, parts);
       default: {
         // `=>` groups to the right, `xor` to the left.
         let made = operator === "=>" ? parts.at(-1)! : parts[0]!;
@@ -270,19 +262,14 @@ export class SmtLibTerms {
   }
 
   /** `=` says of neighbours that they are equal, `distinct` of any two that they are not. */
-  #compared(
-    term: List,
-    operator: "=" | "distinct",
-    rest: readonly SExpression[],
-    environment: Environment,
-  ): Made {
+  #compared(term: List, operator: "=" | "distinct", rest: readonly SExpression[]): Made {
     if (rest.length < 2)
       this.#fail(
         "unexpected",
         term,
         `${quote(operator)} has ${countOf(rest.length, "argument")}, and needs 2 or more`,
       );
-    const first = this.#value(rest[0]!, environment);
+    const first = this.#value(rest[0]!);
     const values = [
       first,
       ...rest
@@ -290,8 +277,8 @@ export class SmtLibTerms {
         .map(
           (part): Value =>
             first.kind === "formula"
-              ? this.#formula(part, environment)
-              : { kind: "element", variable: this.#element(part, environment) },
+              ? this.#formula(part)
+              : { kind: "element", variable: this.#element(part) },
         ),
     ];
     const pairs: Made[] = [];
@@ -309,15 +296,22 @@ export class SmtLibTerms {
         pairs.push(operator === "=" ? same : this.#made(not(formula), term, [same]));
       }
     if (pairs.length === 1) return pairs[0]!;
-    return this.#made(and(...pairs.map(({ formula }) => formula)), term, pairs);
+    return this.#made(
+      joined(
+        and,
+        pairs.map(({ formula }) => formula),
+      ),
+      term,
+      pairs,
+    );
   }
 
   /** `(ite φ ψ χ)` as `(φ → ψ) ∧ (¬φ → χ)`. */
-  #ite(term: List, rest: readonly SExpression[], environment: Environment): Made {
+  #ite(term: List, rest: readonly SExpression[]): Made {
     if (rest.length !== 3)
       this.#fail("unexpected", term, `\`ite\` has ${countOf(rest.length, "argument")}, and needs 3`);
-    const condition = this.#formula(rest[0]!, environment);
-    const then = this.#value(rest[1]!, environment);
+    const condition = this.#formula(rest[0]!);
+    const then = this.#value(rest[1]!);
     if (then.kind === "element")
       return this.#fail(
         "smt-lib-refused",
@@ -325,7 +319,7 @@ export class SmtLibTerms {
         "an element chosen by `ite` cannot be read here",
         "choose between sentences",
       );
-    const otherwise = this.#formula(rest[2]!, environment);
+    const otherwise = this.#formula(rest[2]!);
     this.#reader.charge(condition.parts, this.#placeOf(term));
     const negated = this.#made(not(condition.formula), term, [condition]);
     const sides = [
@@ -335,86 +329,60 @@ export class SmtLibTerms {
     return this.#made(and(...sides.map(({ formula }) => formula)), term, sides);
   }
 
-  #quantified(
-    term: List,
-    kind: "forall" | "exists",
-    rest: readonly SExpression[],
-    environment: Environment,
-  ): Made {
+  #quantified(term: List, kind: "forall" | "exists", rest: readonly SExpression[]): Made {
     const [list, body] = rest;
     if (rest.length !== 2 || list?.kind !== "list" || list.items.length === 0)
       this.#fail("unexpected", term, `expected \`(${kind} ((x ${this.sort ?? "U"})) φ)\``);
-    const bound = this.#bind(list, environment);
+    const bound = this.#bind(list);
     for (const item of list.items) this.#reader.enter(this.#placeOf(item));
-    let made = this.#formula(body!, bound.environment);
+    let made = this.#formula(body!);
     this.#reader.level -= list.items.length;
+    this.#bindings.release(bound.symbols);
     for (const variable of [...bound.variables].reverse())
       made = this.#made(quantify(kind, variable, made.formula), term, [made]);
     return made;
   }
 
-  /** Binds the variables of `((x U) (y U))`, each under a name that nothing around it is called by. */
-  #bind(
-    list: List,
-    environment: Environment,
-  ): { readonly environment: Environment; readonly variables: readonly Variable[] } {
-    const variables: Variable[] = [];
+  /** Binds the variables of `((x U) (y U))`; the caller releases the symbols. */
+  #bind(list: List): { readonly variables: readonly Variable[]; readonly symbols: readonly string[] } {
+    if (list.items.length > MAX_NESTING) this.#reader.failNested(this.#placeOf(list));
+    const symbols = this.#distinctSymbols(list, `(x ${this.sort ?? "U"})`, (sort) => this.checkSort(sort));
+    return { variables: this.#bindings.bindElements(symbols), symbols };
+  }
+
+  /** The symbols of a list of pairs, each once; `check` is given what stands beside each. */
+  #distinctSymbols(list: List, form: string, check: (beside: SExpression) => void): readonly string[] {
     const symbols = new Set<string>();
     for (const item of list.items) {
-      const [symbol, sort] = item.kind === "list" ? item.items : [];
+      const [symbol, beside] = item.kind === "list" ? item.items : [];
       if (item.kind !== "list" || item.items.length !== 2 || symbol?.kind !== "symbol")
-        this.#fail("unexpected", item, `expected \`(x ${this.sort ?? "U"})\`, a variable with its sort`);
-      this.checkSort(sort!);
+        this.#fail("unexpected", item, `expected \`${form}\``);
+      check(beside!);
       if (symbols.has(symbol.text))
         this.#fail("variable-twice", symbol, `${quote(symbol.text)} occurs twice in one list`);
       symbols.add(symbol.text);
     }
-    // What the list itself hides may be called the same.
-    const taken = new Set<Variable>();
-    const hidden = new Set(symbols);
-    for (let outer = environment; outer !== null; outer = outer.outer) {
-      if (hidden.has(outer.symbol)) continue;
-      hidden.add(outer.symbol);
-      if (outer.value.kind === "element") taken.add(outer.value.variable);
-      else for (const variable of freeVariables(outer.value.formula)) taken.add(variable);
-    }
-    let inner = environment;
-    for (const symbol of symbols) {
-      const variable = variableOfSymbol(
-        symbol,
-        (name) => taken.has(name) || (name !== symbol && symbols.has(name)),
-      );
-      taken.add(variable);
-      variables.push(variable);
-      inner = { symbol, value: { kind: "element", variable }, outer: inner };
-    }
-    return { environment: inner, variables };
+    return [...symbols];
   }
 
   /** `(let ((a t) (b u)) φ)`: all terms are read outside, then bound at once. */
-  #let(term: List, rest: readonly SExpression[], environment: Environment): Value {
+  #let(term: List, rest: readonly SExpression[]): Value {
     const [list, body] = rest;
     if (rest.length !== 2 || list?.kind !== "list" || list.items.length === 0)
       this.#fail("unexpected", term, "expected `(let ((a t)) φ)`");
-    let inner = environment;
-    const symbols = new Set<string>();
-    for (const item of list.items) {
-      const [symbol, bound] = item.kind === "list" ? item.items : [];
-      if (item.kind !== "list" || item.items.length !== 2 || symbol?.kind !== "symbol")
-        this.#fail("unexpected", item, "expected `(a t)`, a variable with what it stands for");
-      if (symbols.has(symbol.text))
-        this.#fail("variable-twice", symbol, `${quote(symbol.text)} occurs twice in one list`);
-      symbols.add(symbol.text);
-      inner = { symbol: symbol.text, value: this.#value(bound!, environment), outer: inner };
-    }
-    return this.#value(body!, inner);
+    const values: Value[] = [];
+    const symbols = this.#distinctSymbols(list, "(a t)", (bound) => values.push(this.#value(bound)));
+    for (const [index, symbol] of symbols.entries()) this.#bindings.bind(symbol, values[index]!);
+    const value = this.#value(body!);
+    this.#bindings.release(symbols);
+    return value;
   }
 
-  #apply(term: SExpression, head: Symbol, rest: readonly SExpression[], environment: Environment): Made {
+  #apply(term: SExpression, head: Symbol, rest: readonly SExpression[]): Made {
     const relation = this.#relations.get(head.text);
     const macro = this.#macros.get(head.text);
     if (relation === undefined && macro === undefined) return this.#failUnknown(head, rest.length > 0);
-    const args = rest.map((part) => this.#element(part, environment));
+    const args = rest.map((part) => this.#element(part));
     const places = relation?.places ?? macro!.parameters.length;
     if (args.length !== places)
       this.#fail(
@@ -454,8 +422,3 @@ const FORMERS: ReadonlySet<string> = new Set([
   ...RESERVED_FORMERS,
   ..."= distinct ite not and or => xor".split(" "),
 ]);
-
-function find(environment: Environment, symbol: string): Value | undefined {
-  for (let at = environment; at !== null; at = at.outer) if (at.symbol === symbol) return at.value;
-  return undefined;
-}
