@@ -72,7 +72,11 @@ describe("demo notebooks", () => {
         .flatMap(({ events }) => events)
         .flatMap((event) => (event.kind === "display" && "twoplace" in event.metadata ? [event.data] : []));
     expect(bundles(again)).toEqual(bundles(ran));
-    for (const bundle of bundles(ran)) checkBundle(bundle);
+    for (const bundle of bundles(ran)) {
+      checkBundle(bundle);
+      // What LaTeX reads without packages for further alphabets (common practice); signs stand as commands.
+      expect(bundle["text/latex"] ?? "").toMatch(/^[\n\u0020-\u007e\u00a0-\u00ff–]*$/);
+    }
     const cells = ran.map(({ cell, events }) => ({
       ...cell,
       outputs: events.flatMap((event) =>

@@ -3,6 +3,7 @@
  * they show stands in the tables.
  */
 import { printFormula, printTerm } from "../../lib/language/printer.ts";
+import { relationSigns } from "../../lib/language/tokens.ts";
 import type { Block, Inline, TableBlock } from "./blocks.ts";
 import { visible } from "./text.ts";
 import { longColumns } from "./to-text.ts";
@@ -11,8 +12,12 @@ import { longColumns } from "./to-text.ts";
 const LONG_TABLE = 24;
 
 /** Signs of prose that fonts for text often lack, as mathematics. */
-export const SIGNS: ReadonlyMap<string, string> = new Map(
-  Object.entries({
+export const SIGNS: ReadonlyMap<string, string> = new Map([
+  ...relationSigns.flatMap(({ symbol, latex }): [string, string][] =>
+    latex[0] === undefined ? [] : [[symbol, latex[0]]],
+  ),
+  ...[..."⁰¹²³⁴⁵⁶⁷⁸⁹"].map((sign, digit): [string, string] => [sign, `{}^{${digit}}`]),
+  ...Object.entries({
     "∀": "\\forall",
     "∃": "\\exists",
     "¬": "\\neg",
@@ -46,13 +51,13 @@ export const SIGNS: ReadonlyMap<string, string> = new Map(
     "≈": "\\approx",
     "≡": "\\equiv",
     "⁻": "{}^{-}",
-    "¹": "{}^{1}",
+    "−": "-",
     "…": "\\ldots",
     "<": "<",
     ">": ">",
     "|": "|",
   }),
-);
+]);
 
 const SPECIAL: ReadonlyMap<string, string> = new Map([
   ["\\", "\\textbackslash{}"],
