@@ -30,7 +30,7 @@ export function writeDimacs(
   let variables = 0;
   const sink = {
     newVariable: () => ++variables,
-    addClause: (literals: readonly number[]) => clauses.push([...literals]),
+    addClause: (literals: readonly number[]) => clauses.push([...new Set(literals)]),
   };
   try {
     const layout = layOut({ carrier, sentences, relations }, sink, meterFor(work), true, false);
