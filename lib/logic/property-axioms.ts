@@ -85,7 +85,7 @@ const pairs: readonly PropertyAxiom[] = [
   axiom("right-serial serial left-total", "Every element is related to some element.", BURGHARDT, (R) =>
     forall(x, exists(y, R(x, y))),
   ),
-  axiom("left-serial surjective right-total", "Some element is related to every element.", BURGHARDT, (R) =>
+  axiom("left-serial surjective right-total", "Each element has one that is related to it.", BURGHARDT, (R) =>
     forall(y, exists(x, R(x, y))),
   ),
   axiom("left-unique injective", "No two elements are related to the same one.", BURGHARDT, (R) =>
@@ -226,10 +226,10 @@ const branching: readonly PropertyAxiom[] = [
   axiom("up-directed", "Any two elements are related to a common one.", LATTICES, (R) =>
     forall([x, y], exists(z, and(R(x, z), R(y, z)))),
   ),
-  axiom("down-directed", "Some element is related to any two.", LATTICES, (R) =>
+  axiom("down-directed", "Any two elements have one that is related to both.", LATTICES, (R) =>
     forall([x, y], exists(z, and(R(z, x), R(z, y)))),
   ),
-  axiom("least-element", "Some element is related to every element.", LATTICES, (R) =>
+  axiom("least-element", "There is one element that is related to all.", LATTICES, (R) =>
     exists(x, forall(y, R(x, y))),
   ),
   axiom(
