@@ -106,6 +106,25 @@ describe("nesting", () => {
     },
   );
 
+  const terms: readonly [string, (depth: number) => string][] = [
+    ["brackets", (depth) => `${"(".repeat(depth)}R${")".repeat(depth)} = R`],
+    ["complements", (depth) => `${"∁".repeat(depth)}R = R`],
+    ["converses", (depth) => `R${"⁻¹".repeat(depth)} = R`],
+    ["compositions", (depth) => `R${" ∘ R".repeat(depth)} ⊆ R`],
+    ["unions in brackets", (depth) => `${"(R ∪ ".repeat(depth)}R${")".repeat(depth)} ⊆ R`],
+    ["arguments of a property", (depth) => `transitive(${"co(".repeat(depth)}R${")".repeat(depth)})`],
+  ];
+
+  test.each(terms)("of relation terms: %s", (_, shape) => {
+    expect(codesOf(`claim {} ⊨ ${shape(10_000)}`)).toEqual(["nested-too-deep"]);
+    expect(codesOf(`claim {} ⊨ ${shape(MAX_NESTING / 4)}`)).toEqual([]);
+  });
+
+  test("properties of large relations are counted before they are unfolded", () => {
+    const wide = `define Wide(x, y) := ${"Rxy ∧ ".repeat(500_000)}Rxy`;
+    expect(codesOf(`${wide}\nclaim {} ⊨ n-free(Wide)`)).toEqual(["cell-too-large"]);
+  });
+
   test("theory expressions are bounded too", () => {
     expect(codesOf(`describe ${"(".repeat(10_000)}{}${")".repeat(10_000)}`)).toEqual(["nested-too-deep"]);
     expect(codesOf(`describe ${"converse(".repeat(10_000)}{}`)).toEqual(["nested-too-deep"]);
@@ -133,6 +152,34 @@ describe("any text", () => {
     ...latexSpellings.map(({ typed }) => typed),
     ...["relation", "define", "describe", "claim", "derive", "compare", "models", "check-finite", "points"],
     ...["of", "size", "where", "is", "has", "up", "to", "within", "steps", "replacing", "by", "converse"],
+    ...[
+      "transitive",
+      "acyclic",
+      "connected",
+      "finite",
+      "total",
+      "exactly",
+      "at-most",
+      "points",
+      "id",
+      "none",
+      "o",
+    ],
+    ...[
+      "count",
+      "normalise",
+      "write",
+      "as",
+      "SMT-LIB",
+      "DIMACS",
+      "with",
+      "form",
+      "Skolem",
+      "(R)",
+      "R ∘ R",
+      "T ⊨",
+    ],
+    ...["smt-lib {", "(assert", "|", "(declare-sort U 0)"],
     ...["R", "S", "T", "Rxy", "x", "y", "x1'", "Foo", "before", "1", "2", "0", "2.5", "(x,y)", "T.a", "a:"],
     ...[
       "\n",

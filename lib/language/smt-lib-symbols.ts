@@ -3,9 +3,9 @@
  * and symbols names again.
  *
  * Relations and the names of axioms are function symbols of one namespace, in which the symbols of the core theory
- * are taken too. A name that is taken gets an ending in brackets, which no name of a cell can have: the relation
- * `distinct` is `|distinct (relation)|`, the axiom `R` beside a relation `R` is `|R (axiom)|`. Reading takes the
- * ending off again.
+ * and the reserved words are taken too. A name that is taken gets an ending in brackets, which no name of a cell can
+ * have: the relation `distinct` is `|distinct (relation)|`, the axiom `R` beside a relation `R` is `|R (axiom)|`.
+ * Reading takes the ending off again.
  */
 import { isSignWord, wordLength } from "./lexer.ts";
 import { isVariable } from "./names.ts";
@@ -43,16 +43,21 @@ export function writeSymbol(name: string): string {
   return SIMPLE.test(name) && !RESERVED.has(name) ? name : `|${name}|`;
 }
 
+/** Reserved words too: between bars they are symbols by the standard, and not for every reader of it. */
+function isTaken(name: string): boolean {
+  return CORE.has(name) || RESERVED.has(name);
+}
+
 const ENDING = / \((?:relation|axiom)\)$/;
 
 /** The symbol of a relation. */
 export function relationSymbol(name: string): string {
-  return writeSymbol(CORE.has(name) ? `${name} (relation)` : name);
+  return writeSymbol(isTaken(name) ? `${name} (relation)` : name);
 }
 
 /** The symbol that names an axiom, beside relations of those names. */
 export function axiomSymbol(label: string, relations: ReadonlySet<string>): string {
-  return writeSymbol(relations.has(label) || CORE.has(label) ? `${label} (axiom)` : label);
+  return writeSymbol(relations.has(label) || isTaken(label) ? `${label} (axiom)` : label);
 }
 
 /** The name that a symbol stands for, its ending taken off. */
