@@ -288,7 +288,7 @@ describe("the table", () => {
   });
 
   test("holds different properties under different names", () => {
-    // But for pairs that differ only on more points than these, or on infinitely many.
+    // But for pairs that none of these relations tells apart: they differ on more points, or on infinitely many.
     const agreeing: string[] = [];
     const seen = new Map<string, string>();
     for (const property of namedProperties) {

@@ -376,6 +376,7 @@ function readModels(reader: Reader): StatementBody | null {
 
 function readCount(reader: Reader): StatementBody | null {
   const theory = readTheory(reader);
+  const mistakes = reader.diagnostics.length;
   let representatives = false;
   const options = readOptions(reader, {
     word: "with",
@@ -384,7 +385,7 @@ function readCount(reader: Reader): StatementBody | null {
       reader.expectWord("representatives", "write `with representatives`");
     },
   });
-  if (options.upTo === null)
+  if (options.upTo === null && reader.diagnostics.length === mistakes)
     reader.failExpected(
       "`up to n`: the largest number of points on which models are counted",
       "write `count T up to 5`",
@@ -411,7 +412,8 @@ function readForm(reader: Reader): NormalFormName {
   );
   if (form === undefined) {
     const phrases = normalFormHelp.map(({ phrase }) => phrase.join(" "));
-    const near = word.kind === "word" ? nearestName(word.text, phrases) : null;
+    // The conjunctive form is that of clauses; by its letters it is nearer to the disjunctive one.
+    const near = reader.atWord("conjunctive") ? "clause" : nearestName(word.text, phrases);
     return reader.failExpected(
       "the name of a normal form",
       near === null ? `forms are ${phrases.map(quote).join(", ")}` : `write \`${near}\``,
