@@ -246,6 +246,12 @@ describe("published examples", () => {
       expect(maximal.length).toBeGreaterThan(0);
       for (const { finiteModelProperty } of maximal) expect(finiteModelProperty).toBe(true);
     }
+    // Two classes allow identity beside one unary function (Rabin, Shelah).
+    const classOf = (text: string, fragment: FragmentName) =>
+      describeTexts(text).fragments.find((one) => one.fragment === fragment)?.maximalClass;
+    expect(classOf("forall x. exists y. x != y & R(x,y)", "ackermann")).toContain("Shelah");
+    expect(classOf("forall x. exists y. x != y & R(y,y)", "monadic")).toContain("Rabin");
+    expect(classOf("forall x. exists y. R(y,y)", "monadic")).toContain("Löb");
   });
 });
 

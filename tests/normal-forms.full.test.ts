@@ -174,8 +174,8 @@ function selection(): Formula[] {
     ...infiniteOnly.slice(0, 30).flatMap(({ axioms }) => axioms),
     ...questions.slice(0, 60).flatMap(({ premises, conclusion }) => [...premises, conclusion]),
   ]);
-  const own = [...texts].slice(0, 80).map((text) => readSentences([text])[0]!);
-  return [...own, ...fc.sample(sentences([R, P], 3), { seed, numRuns: 60 })];
+  const own = [...texts].slice(0, 60).map((text) => readSentences([text])[0]!);
+  return [...own, ...fc.sample(sentences([R, P], 3), { seed, numRuns: 40 })];
 }
 
 describe("z3-solver", () => {

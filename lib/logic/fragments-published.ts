@@ -79,8 +79,7 @@ export const PUBLISHED: Readonly<Record<FragmentName, Published>> = {
     decidable: "yes",
     finiteModelProperty: true,
     bound: "at most 2^k points for k relations; with identity 2^k times the number of variables",
-    maximalClass:
-      "monadic with unary functions, without identity (Löb, Gurevich), where there is no identity",
+    maximalClass: "monadic with unary functions, without identity (Löb, Gurevich)",
     source: "Löwenheim 1915; Behmann 1922; Pietruszczak 1996",
   },
   maslov: {
@@ -103,4 +102,10 @@ export const PUBLISHED: Readonly<Record<FragmentName, Published>> = {
     maximalClass: null,
     source: "Aanderaa & Lewis 1973",
   },
+};
+
+/** The maximal classes of sentences with identity, where they differ; both allow one unary function besides. */
+export const MAXIMAL_WITH_IDENTITY: Partial<Readonly<Record<FragmentName, string>>> = {
+  ackermann: "∃*∀∃* with one unary function and identity (Shelah)",
+  monadic: "monadic with one unary function and identity (Rabin)",
 };

@@ -11,7 +11,7 @@ import {
   usesIdentity,
   variablesOf,
 } from "./formula.ts";
-import { PUBLISHED } from "./fragments-published.ts";
+import { MAXIMAL_WITH_IDENTITY, PUBLISHED } from "./fragments-published.ts";
 import {
   isAeaKrom,
   isAtMostOne,
@@ -237,8 +237,11 @@ function membershipsOf(forms: readonly Forms[]): readonly Membership[] {
   );
   const conjuncts = conjunctsOf(forms);
   const found: Membership[] = [];
-  const add = (fragment: FragmentName, points: number | null = null) =>
-    found.push({ ...PUBLISHED[fragment], points });
+  const add = (fragment: FragmentName, points: number | null = null) => {
+    const published = PUBLISHED[fragment];
+    const withIdentity = hasIdentity ? MAXIMAL_WITH_IDENTITY[fragment] : undefined;
+    found.push({ ...published, maximalClass: withIdentity ?? published.maximalClass, points });
+  };
 
   const witnesses = overall(forms, witnessesOf, (left, right) => left + right);
   if (witnesses !== null) add("bernays-schoenfinkel-ramsey", Math.max(1, witnesses));
