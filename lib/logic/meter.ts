@@ -30,16 +30,21 @@ export interface Spent {
 /** Asked again and again while work goes on: whether the user has asked to stop. */
 export type Poll = (spent: Spent) => boolean;
 
+/** Thousandths of a step between two polls: seldom enough to cost nothing, often enough to be seen at once. */
+const POLLED_EVERY = 1_000;
+
 export class Meter implements Spent {
   readonly limit: number;
   /** Null while work may go on. */
   ended: EndReason | null = null;
   #thousandths = 0;
+  /** What {@link #thousandths} must reach for the next poll. */
+  #nextPoll = 0;
   readonly #isInterrupted: Poll;
 
   /**
    * @param limit steps that may be spent
-   * @param isInterrupted asked at every {@link spend}
+   * @param isInterrupted asked at the first {@link spend} and about once in a step from then on
    */
   constructor(limit: number = DEFAULT_BUDGET, isInterrupted: Poll = () => false) {
     this.limit = limit;
@@ -57,13 +62,16 @@ export class Meter implements Spent {
 
   /**
    * Counts work and tells whether it may go on. Call it at least once in every few thousand visits, so that an
-   * interrupt is seen within 100 ms.
+   * interrupt is seen within 100 ms; with 0 it looks for an interrupt alone.
    */
   spend(thousandths: number): boolean {
     if (this.ended !== null) return false;
     this.#thousandths += thousandths;
     if (this.#thousandths > this.limit * 1000) this.ended = "budget";
-    else if (this.#isInterrupted(this)) this.ended = "interrupted";
+    else if (thousandths === 0 || this.#thousandths >= this.#nextPoll) {
+      this.#nextPoll = this.#thousandths + POLLED_EVERY;
+      if (this.#isInterrupted(this)) this.ended = "interrupted";
+    }
     return this.ended === null;
   }
 

@@ -17,8 +17,8 @@ export class Clausifier {
   readonly #bothWays: boolean;
   /** Clauses that the meter has not heard of yet. */
   #unmetered = 0;
-  /** The variable of each input and of each gate that has been defined, by node. */
-  readonly #variables = new Map<number, number>();
+  /** The variable of each input and of each gate that has been defined, by node; 0 where there is none yet. */
+  #variables = new Int32Array(1024);
   /** Which directions a gate has been defined in: bit 1 from its variable to it, bit 2 from it to its variable. */
   readonly #defined = new Map<number, number>();
 
@@ -32,12 +32,13 @@ export class Clausifier {
 
   /** The variable of an input, made when it is first asked for. */
   variableOf(input: Reference): number {
-    let variable = this.#variables.get(input);
-    if (variable === undefined) {
-      variable = this.#sink.newVariable();
-      this.#variables.set(input, variable);
+    if (input >= this.#variables.length) {
+      const larger = new Int32Array(Math.max(input + 1, this.#variables.length * 2));
+      larger.set(this.#variables);
+      this.#variables = larger;
     }
-    return variable;
+    if (this.#variables[input] === 0) this.#variables[input] = this.#sink.newVariable();
+    return this.#variables[input]!;
   }
 
   /**

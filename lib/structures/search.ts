@@ -100,9 +100,10 @@ export function enumerateStructures(
     const layout = layOut(task, solver, meter);
     if (layout.contradictory) return "complete";
     const over = layout.variables.flatMap((variables) => [...variables]);
-    const places = new Map(over.map((variable, index) => [variable, index]));
+    const places = new Int32Array(over.reduce((most, variable) => Math.max(most, variable), 0) + 1);
+    for (const [place, variable] of over.entries()) places[variable] = place;
     const end = solver.enumerate(meter, over, (values) =>
-      see(structureFrom(task, layout, (variable) => values[places.get(variable)!] === 1)),
+      see(structureFrom(task, layout, (variable) => values[places[variable]!] === 1)),
     );
     return end === "ended" ? (meter.ended ?? "budget") : end;
   } catch (problem) {
