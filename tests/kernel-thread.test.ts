@@ -76,7 +76,7 @@ describe("an interrupt", () => {
     start({ interruptGrace: 50 });
     await run("define Marsh 1\ndefine Moor(x) := 2");
     events = [];
-    const running = run("print begun\ndeaf");
+    const running = run("deaf begun");
     await begun();
     evaluator.interrupt();
     const outcome = (await running) as CellOutcome & { evalue: string };

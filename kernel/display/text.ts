@@ -88,9 +88,14 @@ export function wrap(text: string, width: number): readonly string[] {
   return lines;
 }
 
-/** A whole number with commas between thousands. */
+/** Digits beyond which a number is told by its length. */
+const LONGEST_NUMBER = 60;
+
+/** A whole number with commas between thousands; a very long one is told by its first digits and their number. */
 export function grouped(value: number | bigint): string {
-  return String(value).replace(/\B(?=(\d{3})+$)/g, ",");
+  const digits = String(value);
+  if (digits.length > LONGEST_NUMBER) return `${digits.slice(0, 12)}… (${grouped(digits.length)} digits)`;
+  return digits.replace(/\B(?=(\d{3})+$)/g, ",");
 }
 
 /** `1 point`, `3 points`. */

@@ -8,7 +8,7 @@ export const LARGEST_DOMAIN = 1_000_000;
  * Entries that all tables of one structure may have together: the number of points to the power of the number of
  * places, summed over the relations.
  */
-export const LARGEST_TABLES = 1_000_000;
+export const LARGEST_TABLES = 250_000;
 
 /** A domain, named. What can be said about its elements is in `lib/carriers`, one file for each kind. */
 export interface PointsDescription {

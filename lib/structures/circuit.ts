@@ -12,6 +12,8 @@ export const FALSE: Reference = -1;
 
 /** Where clauses go: the solver, or a list of them. Literals are DIMACS literals. */
 export interface ClauseSink {
+  /** Told how many variables are coming, where that is known. */
+  reserve?(variables: number): void;
   newVariable(): number;
   addClause(literals: readonly number[]): unknown;
 }

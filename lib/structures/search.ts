@@ -51,6 +51,9 @@ export function layOut(
   const circuit = new Circuit(meter);
   const tables = unknownTables(task.carrier, task.relations, circuit, meter);
   const clausifier = new Clausifier(circuit, sink, meter, bothWays);
+  let entries = 0;
+  for (const inputs of tables.values()) entries += inputs.length;
+  sink.reserve?.(entries);
   const variables = task.relations.map((relation) =>
     tables.get(relation.name)!.map((input, kind) => {
       if (kind % POLLED_AT_ONCE === 0) meter.charge(0);

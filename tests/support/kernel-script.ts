@@ -15,7 +15,7 @@
  * | `fail TEXT`       | the cell goes on and ends with an error                                 |
  * | `spin`            | keeps the thread busy until it is interrupted                           |
  * | `pause`           | waits for an interrupt without keeping the thread busy                  |
- * | `deaf`            | keeps the thread busy and does not look at the interrupt                |
+ * | `deaf TEXT`       | prints text, then keeps the thread busy and never looks at an interrupt  |
  * | `throw TEXT`      | throws, as a mistake of ours would                                      |
  * | `crash`           | fails outside of any call, which ends a worker                          |
  * | `exit`            | ends the thread at once                                                 |
@@ -94,6 +94,7 @@ export class ScriptEvaluator implements Evaluator {
         while (!this.#isInterrupted()) await new Promise((resolve) => setTimeout(resolve, 1));
         break;
       case "deaf":
+        show({ kind: "stream", name: "stdout", text: rest });
         for (;;);
       case "throw":
         throw new Error(rest);

@@ -144,13 +144,15 @@ export class Core {
   newVariable(): number {
     this.variables += 1;
     const variable = this.variables;
-    if (variable >= this.trail.length) this.#reserve(variable * 2);
+    if (variable >= this.trail.length) this.reserve(variable * 2);
     this.saved[variable] = 1;
     this.heap.insert(variable);
     return variable;
   }
 
-  #reserve(variables: number): void {
+  /** Makes room for variables below `variables`. */
+  reserve(variables: number): void {
+    if (variables <= this.trail.length) return;
     const values = new Int8Array(variables * 2);
     values.set(this.values);
     this.values = values;

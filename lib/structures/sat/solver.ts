@@ -78,6 +78,11 @@ export class Solver {
     return this.#core.variables;
   }
 
+  /** Makes room for so many more variables at once, which saves moving those there are again and again. */
+  reserve(variables: number): void {
+    this.#core.reserve(this.#core.variables + variables + 1);
+  }
+
   /** Adds a variable; they are 1, 2, … */
   newVariable(): number {
     const variable = this.#core.newVariable();
