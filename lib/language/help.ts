@@ -1,7 +1,8 @@
 /**
  * What the statements and their parts mean, in one place for the parser's messages, completion and inspection.
  */
-import type { NormalFormName, StatementKind } from "./statements.ts";
+import type { NormalFormName } from "../logic/normal-forms/result.ts";
+import type { StatementKind } from "./statements.ts";
 
 export interface NormalFormHelp {
   readonly name: NormalFormName;

@@ -3,6 +3,7 @@
  * help.ts, its reader here.
  */
 import type { RelationSymbol, Variable } from "../logic/formula.ts";
+import type { NormalFormName } from "../logic/normal-forms/result.ts";
 import { LARGEST_DOMAIN } from "../logic/structure-definition.ts";
 import { readClaim, readConclusion, relationsAbout } from "./claims.ts";
 import { readClosed, readOpen } from "./formulas.ts";
@@ -15,14 +16,7 @@ import { readWhole } from "./numbers.ts";
 import { readOptions } from "./options.ts";
 import { quote, type Reader, Unreadable } from "./reader.ts";
 import { readSmtLib, type SmtLibReading } from "./smt-lib-reader.ts";
-import type {
-  Definition,
-  NamedTheory,
-  NormalFormName,
-  Statement,
-  StatementKind,
-  WrittenFormat,
-} from "./statements.ts";
+import type { Definition, NamedTheory, Statement, StatementKind, WrittenFormat } from "./statements.ts";
 import { isStructureAhead, readStructure } from "./structures.ts";
 import { expressionAhead } from "./subjects.ts";
 import { readTheory } from "./theories.ts";

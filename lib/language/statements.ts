@@ -1,5 +1,6 @@
 /** What the statements of a cell come to once all names in them are resolved. */
 import type { Formula, RelationSymbol, Variable } from "../logic/formula.ts";
+import type { NormalFormName } from "../logic/normal-forms/result.ts";
 import type { StructureDefinition } from "../logic/structure-definition.ts";
 import type { Theory } from "../logic/theory.ts";
 import type { Diagnostic, Place } from "./diagnostics.ts";
@@ -113,16 +114,6 @@ export type Statement = StatementBase &
   );
 
 export type StatementKind = Statement["kind"];
-
-/** The forms that `normalise` makes; see lib/logic/normal-forms. */
-export type NormalFormName =
-  | "negation"
-  | "prenex"
-  | "miniscoped"
-  | "skolem"
-  | "clause"
-  | "definitional-clause"
-  | "disjunctive";
 
 /** How `write` prints a theory or a question for other programs. */
 export type WrittenFormat =
