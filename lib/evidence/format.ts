@@ -8,9 +8,9 @@
  * | `version`   | `1`                                                                                              |
  * | `sentences` | the closed formulas that the question is about, each once; elsewhere they go by their index here |
  * | `question`  | what was asked, expanded: no name of a definition is left in it                                  |
- * | `digest`    | SHA-256, in hexadecimal, of the JSON text of `[sentences, question]`                             |
+ * | `digest`    | SHA-256, in hexadecimal, of the JSON text of the question with its sentences written out         |
  * | `verdict`   | the verdict that the facts below support                                                         |
- * | `facts`     | what was established, each with the structure that shows it                                      |
+ * | `facts`     | what was established, each with the structure or the derivation that shows it                    |
  *
  * A formula is a nested list: `["is", "R", "x", "y"]`, `["=", "x", "y"]`, `["true"]`, `["false"]`, `["not", φ]`,
  * `["and", φ, ψ, …]`, `["or", φ, ψ, …]`, `["implies", φ, ψ]`, `["iff", φ, ψ]`, `["forall", "x", φ]`,
@@ -26,6 +26,22 @@ export const EVIDENCE_FORMAT = "twoplace-evidence";
 export const EVIDENCE_VERSION = 1;
 
 export type FormulaRecord = readonly [string, ...(string | FormulaRecord)[]];
+
+/** A variable, or a function with its arguments: `["2.0", "x"]`. Functions come in by clause forms alone. */
+export type TermRecord = string | readonly [string, ...TermRecord[]];
+/** `["is", "R", t, …]` or `["=", t, t]`. A relation that a derivation defines may have no arguments. */
+export type AtomRecord = readonly ["is", string, ...TermRecord[]] | readonly ["=", TermRecord, TermRecord];
+export type LiteralRecord = AtomRecord | readonly ["not", AtomRecord];
+/** The disjunction of its literals, for all values of its variables; false when there are none. */
+export type ClauseRecord = readonly LiteralRecord[];
+/** A formula whose atoms may have terms and no arguments. */
+export type TermFormulaRecord =
+  | AtomRecord
+  | readonly ["true" | "false"]
+  | readonly ["not", TermFormulaRecord]
+  | readonly ["and" | "or", ...TermFormulaRecord[]]
+  | readonly ["implies" | "iff", TermFormulaRecord, TermFormulaRecord]
+  | readonly ["forall" | "exists", string, TermFormulaRecord];
 
 export interface TableRecord {
   readonly places: number;
@@ -78,7 +94,62 @@ export interface StructureFact {
   /** Null when nothing is said to fail. */
   readonly fails: TheoryRecord | null;
 }
-export type Fact = StructureFact;
+
+/**
+ * A refutation: from all of `premises` and the negation of `conclusion`, or from the premises alone where that is
+ * null, the last line derives the clause without literals.
+ *
+ * Its formulas are numbered: the premises in order, then the negated conclusion if there is one, then `made`.
+ */
+export interface DerivationFact {
+  readonly fact: "derivation";
+  readonly premises: TheoryRecord;
+  readonly conclusion: SentenceIndex | null;
+  readonly made: readonly MadeFormula[];
+  readonly lines: readonly LineRecord[];
+}
+
+/**
+ * A formula made of earlier ones, which go by number:
+ * - `["define", "d", ["x", …], φ]` is ∀x … (d(x, …) ↔ φ) for a relation d that occurs in no formula before. The
+ *   variables x, … are distinct and all that is free in φ; functions in φ belong to formulas before;
+ * - `["unfold", i, j]` is formula i with the body of j in place of the relation that j, ∀x … (d(x, …) ↔ φ), is about;
+ * - `["fold", i, j, φ]` is φ, of which formula i is the unfolding by j, up to names of bound variables;
+ * - `["miniscope", i]` is formula i in negation normal form, its quantifiers as far inside as they go.
+ */
+export type MadeFormula =
+  | readonly ["define", string, readonly string[], TermFormulaRecord]
+  | readonly ["unfold", number, number]
+  | readonly ["fold", number, number, TermFormulaRecord]
+  | readonly ["miniscope", number];
+
+/**
+ * - `["clause", i, k]`: clause k of the clause form of formula i. Its functions are called `"i.0"`, `"i.1"`, …;
+ * - `["identity", C]`: C is true by the laws of identity alone: after each s ≠ t in it, in order, has made t of every
+ *   s in the other literals, one of them is u = u, or two are opposite;
+ * - `["infer", C, [[line, {"x": t, …}], …]]`: with terms in place of variables, the lines named have C as a consequence
+ *   by unit propagation: assume that no literal of C is true, and let each line of which all literals but one are
+ *   false make that one true, until all literals of one line are false.
+ */
+export type LineRecord =
+  | readonly ["clause", number, number]
+  | readonly ["identity", ClauseRecord]
+  | readonly ["infer", ClauseRecord, readonly UseRecord[]];
+/** An earlier line, and what stands in it for its variables; one that is not mentioned stays. */
+export type UseRecord = readonly [number, Readonly<Record<string, TermRecord>>];
+
+/**
+ * There is no model of `axioms` on `size` points. The proof is a list of clauses in the variables of the propositional
+ * form that `lib/evidence/ground-form.ts` defines, as in DIMACS; each follows by unit propagation from that form and
+ * the clauses before it, and so at last does the empty clause.
+ */
+export interface NoModelFact {
+  readonly fact: "no-model";
+  readonly axioms: TheoryRecord;
+  readonly size: number;
+  readonly proof: readonly (readonly number[])[];
+}
+export type Fact = StructureFact | DerivationFact | NoModelFact;
 
 /**
  * The verdict that the facts support: one word; for `independence`, `compare` and `dualise` one word for each axiom

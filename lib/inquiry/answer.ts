@@ -1,8 +1,9 @@
 /** Answers to questions: a verdict of a closed list, what it rests on, and what was tried. */
 import type { Structure } from "../carriers/structure.ts";
-import type { Evidence } from "../evidence/format.ts";
+import type { DerivationFact, Evidence } from "../evidence/format.ts";
+import type { Formula } from "../logic/formula.ts";
 import type { EndReason } from "../logic/meter.ts";
-import type { Theory } from "../logic/theory.ts";
+import type { Axiom, Theory } from "../logic/theory.ts";
 
 /** `derive` and claims. */
 export type ClaimVerdict = "holds" | "fails" | "open";
@@ -48,6 +49,28 @@ export interface Search {
    * nothing; null when they were not, or one was found.
    */
   readonly symmetricUpTo: number | null;
+}
+
+/** A derivation that an answer rests on, for people to read. */
+export interface ShownDerivation {
+  /** What it derives, for people: "trans follows from the others", "the premises contradict each other". */
+  readonly role: string;
+  /** The premises that are used, with their labels, in the order of the fact's premises. */
+  readonly premises: readonly Pick<Axiom, "label" | "formula">[];
+  /** Null when the premises contradict each other by themselves. */
+  readonly conclusion: Formula | null;
+  readonly fact: DerivationFact;
+}
+
+/** How the search for a derivation went. */
+export interface DerivationSearch {
+  /** What was to be derived, for people: "the conclusion", "a contradiction". */
+  readonly sought: string;
+  readonly result: "derived" | "saturated" | "ended" | "not-needed";
+  /** Why it ended without a result; null for the other results. */
+  readonly ended: EndReason | null;
+  /** Clauses generated in all. */
+  readonly generated: number;
 }
 
 interface AnswerBase {

@@ -1,8 +1,9 @@
 /** `check-finite T`: has the theory finite models, none, or only infinite ones? */
-import { EvidenceWriter } from "../evidence/record.ts";
+
 import { sentencesOf, type Theory } from "../logic/theory.ts";
 import type { FiniteAnswer } from "./answer.ts";
 import { certify } from "./certify.ts";
+import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature, searchFinite } from "./finite-search.ts";
 import { meterFor, type Work } from "./work.ts";
 

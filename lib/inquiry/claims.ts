@@ -1,13 +1,14 @@
 /** The questions that `derive`, `claim` and `conjecture` ask. Each answer is `holds`, `fails` or `open`. */
 import type { Structure } from "../carriers/structure.ts";
 import type { QuestionRecord } from "../evidence/format.ts";
-import { EvidenceWriter, recordStructure } from "../evidence/record.ts";
+import { recordStructure } from "../evidence/record.ts";
 import { type Formula, not } from "../logic/formula.ts";
 import { WorkEnded } from "../logic/meter.ts";
 import { conjunctionOf, sentencesOf, type Theory } from "../logic/theory.ts";
 import { satisfies } from "../structures/evaluate.ts";
 import type { ClaimAnswer, Search, ShownStructure } from "./answer.ts";
 import { certify } from "./certify.ts";
+import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature, searchFinite } from "./finite-search.ts";
 import { independenceOf } from "./independence.ts";
 import { meterFor, type Work } from "./work.ts";

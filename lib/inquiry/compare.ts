@@ -1,8 +1,9 @@
 /** `compare T, U, …`: the order of strength of theories. */
-import { EvidenceWriter } from "../evidence/record.ts";
+
 import { sentencesOf, type Theory } from "../logic/theory.ts";
 import type { CompareAnswer, PairAnswer } from "./answer.ts";
 import { certify } from "./certify.ts";
+import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature } from "./finite-search.ts";
 import { Separator } from "./separate.ts";
 import type { Work } from "./work.ts";

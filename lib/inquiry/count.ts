@@ -1,9 +1,10 @@
 /** `count T up to n`: how many models there are of each size, labelled and up to isomorphism. */
-import { EvidenceWriter } from "../evidence/record.ts";
+
 import { sentencesOf, type Theory } from "../logic/theory.ts";
 import { countStructures } from "../structures/count.ts";
 import type { CountAnswer, CountedSize } from "./answer.ts";
 import { certify } from "./certify.ts";
+import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature } from "./finite-search.ts";
 import { SHOWN_MODELS } from "./models.ts";
 import { meterFor, type Work } from "./work.ts";

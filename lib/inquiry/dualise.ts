@@ -1,8 +1,9 @@
 /** `dualise T`: the theory, its converse, its complement and both; which of the four coincide. */
-import { EvidenceWriter } from "../evidence/record.ts";
+
 import { complementTheory, converseTheory, sentencesOf, type Theory } from "../logic/theory.ts";
 import type { DualAnswer, DualPair } from "./answer.ts";
 import { certify } from "./certify.ts";
+import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature } from "./finite-search.ts";
 import { Separator } from "./separate.ts";
 import type { Work } from "./work.ts";

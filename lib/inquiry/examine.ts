@@ -3,7 +3,6 @@
 import { Points } from "../carriers/points.ts";
 import type { Structure } from "../carriers/structure.ts";
 import type { Evidence } from "../evidence/format.ts";
-import { EvidenceWriter } from "../evidence/record.ts";
 import { type Formula, not, type RelationSymbol } from "../logic/formula.ts";
 import { type FiniteCheck, finiteCheckBound } from "../logic/fragments.ts";
 import { type Meter, WorkEnded } from "../logic/meter.ts";
@@ -12,6 +11,7 @@ import { sentencesOf, type Theory } from "../logic/theory.ts";
 import { satisfies } from "../structures/evaluate.ts";
 import { enumerateStructures } from "../structures/search.ts";
 import { certify } from "./certify.ts";
+import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature, searchFinite } from "./finite-search.ts";
 import { meterFor, type Work } from "./work.ts";
 

@@ -1,9 +1,10 @@
 /** `independence T`: for each axiom, a structure where it alone fails. */
-import { EvidenceWriter } from "../evidence/record.ts";
+
 import { not } from "../logic/formula.ts";
 import { sentencesOf, type Theory } from "../logic/theory.ts";
 import type { AxiomAnswer, IndependenceAnswer } from "./answer.ts";
 import { certify } from "./certify.ts";
+import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature, searchFinite } from "./finite-search.ts";
 import { meterFor, type Work } from "./work.ts";
 

@@ -1,12 +1,12 @@
 /** `models T of size n`: the models themselves, one of each class of isomorphic ones. */
 import { Points } from "../carriers/points.ts";
 import type { Structure } from "../carriers/structure.ts";
-import { EvidenceWriter } from "../evidence/record.ts";
 import { sentencesOf, type Theory } from "../logic/theory.ts";
 import { canonicalForm } from "../structures/isomorphism.ts";
 import { enumerateStructures } from "../structures/search.ts";
 import type { ModelsAnswer } from "./answer.ts";
 import { certify } from "./certify.ts";
+import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature } from "./finite-search.ts";
 import { meterFor, type Work } from "./work.ts";
 

@@ -1,10 +1,10 @@
 /** Telling theories apart: a model of one that is none of the other, kept for the next pair. */
 import type { Structure } from "../carriers/structure.ts";
-import type { EvidenceWriter } from "../evidence/record.ts";
 import { type Formula, not } from "../logic/formula.ts";
 import { Meter, WorkEnded } from "../logic/meter.ts";
 import { conjunctionOf, type Signature, sentencesOf, type Theory } from "../logic/theory.ts";
 import { satisfiesAll } from "../structures/evaluate.ts";
+import type { EvidenceWriter } from "./evidence-writer.ts";
 import { searchFinite } from "./finite-search.ts";
 import type { Work } from "./work.ts";
 

@@ -3,12 +3,12 @@ import { Points } from "../carriers/points.ts";
 import type { Structure } from "../carriers/structure.ts";
 import type { Formula, RelationSymbol } from "../logic/formula.ts";
 import { type EndReason, type Meter, WorkEnded } from "../logic/meter.ts";
+import { MeterShare } from "../logic/share.ts";
 import { Canoniser } from "./canonical.ts";
 import { ClauseList, countAssignments } from "./components.ts";
 import { FormSet } from "./forms.ts";
 import { Solver } from "./sat/solver.ts";
 import { layOut } from "./search.ts";
-import { MeterShare } from "./share.ts";
 
 export interface CountTask {
   /** How many points; at least 1. */

@@ -7,8 +7,8 @@ import { Orbits, type Permutation, plainStructure } from "../carriers/orbits.ts"
 import type { Structure } from "../carriers/structure.ts";
 import type { Formula, RelationSymbol } from "../logic/formula.ts";
 import type { Meter } from "../logic/meter.ts";
+import { MeterShare } from "../logic/share.ts";
 import { findStructure } from "./search.ts";
-import { MeterShare } from "./share.ts";
 
 /** Points below which structures are found by the complete search anyway. */
 export const LEAST_SYMMETRIC_SIZE = 5;

@@ -1,5 +1,5 @@
 /** A meter for a part of some work, which pays from the meter of the whole. */
-import { type EndReason, Meter } from "../logic/meter.ts";
+import { type EndReason, Meter } from "./meter.ts";
 
 export class MeterShare {
   readonly meter: Meter;
