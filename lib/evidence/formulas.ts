@@ -1,0 +1,177 @@
+/**
+ * Formulas as records: their parts, free variables, substitution, and sameness up to names of bound variables. The
+ * checker works on nothing else, so that what it reads is what it reasons about.
+ */
+import type { AtomRecord, TermFormulaRecord, TermRecord } from "./format.ts";
+
+/** What stands in place of variables. */
+export type Terms = ReadonlyMap<string, TermRecord>;
+
+/** Thrown when a formula or clause form made of others would be larger than the bounds here allow. */
+export class FormulaTooLarge extends Error {}
+
+/** Parts of a formula beyond which none is made of others: repeated unfolding could double it without end. */
+const LARGEST_FORMULA = 100_000;
+
+/** Counts the parts that one operation makes. */
+export class Growth {
+  #parts = 0;
+
+  /** @throws FormulaTooLarge */
+  add(): void {
+    this.#parts += 1;
+    if (this.#parts > LARGEST_FORMULA) throw new FormulaTooLarge();
+  }
+}
+
+export function substituteInTerm(term: TermRecord, terms: Terms): TermRecord {
+  if (typeof term === "string") return terms.get(term) ?? term;
+  const [name, ...args] = term;
+  return [name, ...args.map((arg) => substituteInTerm(arg, terms))];
+}
+
+export function substituteInAtom(atom: AtomRecord, terms: Terms): AtomRecord {
+  if (atom[0] === "=") return ["=", substituteInTerm(atom[1], terms), substituteInTerm(atom[2], terms)];
+  const [head, name, ...args] = atom;
+  return [head, name, ...args.map((arg) => substituteInTerm(arg, terms))];
+}
+
+export function termVariables(term: TermRecord): readonly string[] {
+  return typeof term === "string" ? [term] : term.slice(1).flatMap((arg) => termVariables(arg));
+}
+
+export function atomTerms(atom: AtomRecord): readonly TermRecord[] {
+  return (atom[0] === "=" ? atom.slice(1) : atom.slice(2)) as TermRecord[];
+}
+
+/** The immediate subformulas, in order. */
+export function partsOf(formula: TermFormulaRecord): readonly TermFormulaRecord[] {
+  switch (formula[0]) {
+    case "is":
+    case "=":
+      return [];
+    case "forall":
+    case "exists":
+      return [formula[2]];
+    default:
+      return formula.slice(1) as TermFormulaRecord[];
+  }
+}
+
+/** The formula with other subformulas in place of its own, as many and in the same order. */
+export function withParts(
+  formula: TermFormulaRecord,
+  parts: readonly TermFormulaRecord[],
+): TermFormulaRecord {
+  if (formula[0] === "is" || formula[0] === "=") return formula;
+  if (formula[0] === "forall" || formula[0] === "exists") return [formula[0], formula[1], parts[0]!];
+  return [formula[0], ...parts] as TermFormulaRecord;
+}
+
+/** Remembered, since quantifiers ask for it again at each level. */
+const freeOf = new WeakMap<TermFormulaRecord, readonly string[]>();
+
+/** The free variables of a formula, each once, in the order they occur. */
+export function freeVariables(formula: TermFormulaRecord): readonly string[] {
+  const known = freeOf.get(formula);
+  if (known !== undefined) return known;
+  const found =
+    formula[0] === "is" || formula[0] === "="
+      ? atomTerms(formula).flatMap(termVariables)
+      : partsOf(formula).flatMap(freeVariables);
+  const bound = formula[0] === "forall" || formula[0] === "exists" ? formula[1] : null;
+  const free = [...new Set(found)].filter((variable) => variable !== bound);
+  freeOf.set(formula, free);
+  return free;
+}
+
+/** The name with as many primes as make it new. */
+export function freshName(like: string, taken: ReadonlySet<string>): string {
+  let name = like;
+  while (taken.has(name)) name += "'";
+  return name;
+}
+
+/**
+ * The formula with terms in place of its free variables. A quantifier whose variable occurs in a term that comes into
+ * its scope binds another variable instead.
+ * @throws FormulaTooLarge
+ */
+export function substitute(formula: TermFormulaRecord, terms: Terms, growth: Growth): TermFormulaRecord {
+  growth.add();
+  if (formula[0] === "is" || formula[0] === "=") return substituteInAtom(formula, terms);
+  if (formula[0] !== "forall" && formula[0] !== "exists")
+    return withParts(
+      formula,
+      partsOf(formula).map((part) => substitute(part, terms, growth)),
+    );
+  const [kind, variable, body] = formula;
+  const coming = new Map(
+    freeVariables(formula).flatMap((free) => (terms.has(free) ? [[free, terms.get(free)!]] : [])),
+  );
+  const taken = new Set([...coming.values()].flatMap(termVariables));
+  const name = taken.has(variable)
+    ? freshName(variable, new Set([...taken, ...freeVariables(body)]))
+    : variable;
+  return [kind, name, substitute(body, coming.set(variable, name), growth)];
+}
+
+/** Whether two closed formulas are the same up to the names of bound variables. */
+export function sameUpToNames(left: TermFormulaRecord, right: TermFormulaRecord): boolean {
+  return JSON.stringify(renamed(left, 0, new Map())) === JSON.stringify(renamed(right, 0, new Map()));
+}
+
+/** The formula with the variable of each quantifier called by how many quantifiers are around it. */
+function renamed(formula: TermFormulaRecord, depth: number, names: Terms): TermFormulaRecord {
+  if (formula[0] === "is" || formula[0] === "=") return substituteInAtom(formula, names);
+  const [kind, variable] = formula;
+  const isQuantified = kind === "forall" || kind === "exists";
+  const inner = isQuantified ? new Map(names).set(variable as string, `${depth}`) : names;
+  const parts = partsOf(formula).map((part) => renamed(part, isQuantified ? depth + 1 : depth, inner));
+  return isQuantified ? [kind, `${depth}`, parts[0]!] : withParts(formula, parts);
+}
+
+/**
+ * Negation normal form: ¬ at atoms only, of the other connectives only ∧ and ∨.
+ * @param positive false for that of the negation
+ * @throws FormulaTooLarge
+ */
+export function negationNormalForm(
+  formula: TermFormulaRecord,
+  positive: boolean,
+  growth: Growth,
+): TermFormulaRecord {
+  growth.add();
+  const part = (inner: TermFormulaRecord, sign: boolean) => negationNormalForm(inner, sign, growth);
+  const either = (yes: "and" | "true" | "forall", kind: string) => (kind === yes) === positive;
+  switch (formula[0]) {
+    case "is":
+    case "=":
+      return positive ? formula : ["not", formula];
+    case "true":
+    case "false":
+      return [either("true", formula[0]) ? "true" : "false"];
+    case "not":
+      return part(formula[1], !positive);
+    case "and":
+    case "or":
+      return [
+        either("and", formula[0]) ? "and" : "or",
+        ...partsOf(formula).map((one) => part(one, positive)),
+      ];
+    case "implies":
+      return [positive ? "or" : "and", part(formula[1], !positive), part(formula[2], positive)];
+    case "iff": {
+      // ¬(φ ↔ ψ) is ¬φ ↔ ψ.
+      const [, left, right] = formula;
+      return [
+        "and",
+        ["or", part(left, !positive), part(right, true)],
+        ["or", part(left, positive), part(right, false)],
+      ];
+    }
+    case "forall":
+    case "exists":
+      return [either("forall", formula[0]) ? "forall" : "exists", formula[1], part(formula[2], positive)];
+  }
+}
