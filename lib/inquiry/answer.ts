@@ -63,11 +63,16 @@ export interface ShownDerivation {
 }
 
 /** How the search for a derivation went. */
-export interface DerivationSearch {
+export interface DerivationReport {
   /** What was to be derived, for people: "the conclusion", "a contradiction". */
   readonly sought: string;
-  readonly result: "derived" | "saturated" | "ended" | "not-needed";
-  /** Why it ended without a result; null for the other results. */
+  /**
+   * `saturated`: all that follows was derived without a contradiction, so that there is no derivation; this is
+   * computed, and no verdict rests on it. `ended`: the budget ended, the user interrupted, or a bound was met.
+   * `stopped`: something else had settled the question.
+   */
+  readonly result: "derived" | "saturated" | "ended" | "stopped";
+  /** Why it ended; null for the other results. */
   readonly ended: EndReason | null;
   /** Clauses generated in all. */
   readonly generated: number;
@@ -87,6 +92,11 @@ export interface ClaimAnswer extends AnswerBase {
   /** For people: what the structures below are, in the order found. */
   readonly structures: readonly ShownStructure[];
   readonly searches: readonly Search[];
+  /** The derivations that the verdict rests on, in the order found. */
+  readonly derivations: readonly ShownDerivation[];
+  readonly reports: readonly DerivationReport[];
+  /** Premises that contradict each other have been derived to: everything follows from them. */
+  readonly inconsistent: boolean;
   /** For `independent`: each axiom's own verdict; else null. */
   readonly axioms: readonly AxiomAnswer[] | null;
 }
@@ -107,8 +117,13 @@ export interface FiniteAnswer extends AnswerBase {
   readonly modelSize: number | null;
   /** There is no model on 1, …, this many points. */
   readonly noModelUpTo: number;
+  /** For 1, …, this many of those sizes the evidence has a clause proof; for the others it is computed. */
+  readonly provenUpTo: number;
   readonly model: Structure | null;
   readonly search: Search;
+  /** Of a contradiction; null unless `inconsistent`. */
+  readonly derivation: ShownDerivation | null;
+  readonly report: DerivationReport;
 }
 
 export interface ModelsAnswer extends AnswerBase {
@@ -121,6 +136,8 @@ export interface ModelsAnswer extends AnswerBase {
   readonly complete: boolean;
   /** Whether there are others, which are not shown; false when that is not known. */
   readonly more: boolean;
+  /** Whether the evidence has a clause proof that there are none. */
+  readonly provenNone: boolean;
   readonly ended: EndReason | null;
 }
 
@@ -151,7 +168,10 @@ export interface AxiomAnswer {
   readonly verdict: IndependenceVerdict;
   /** A structure where all axioms but this one hold; null unless independent. */
   readonly witness: Structure | null;
+  /** Of the axiom from the others; null unless redundant. */
+  readonly derivation: ShownDerivation | null;
   readonly search: Search;
+  readonly report: DerivationReport;
 }
 
 export interface IndependenceAnswer extends AnswerBase {
@@ -172,6 +192,10 @@ export interface PairAnswer {
   /** False when a common model is known, true when it is derived that there is none, else null. */
   readonly jointlyInconsistent: boolean | null;
   readonly common: Structure | null;
+  /** Whether all axioms of the right theory are derived from the left one. */
+  readonly leftEntailsRight: boolean;
+  readonly rightEntailsLeft: boolean;
+  readonly derivations: readonly ShownDerivation[];
 }
 
 export interface CompareAnswer extends AnswerBase {
@@ -181,6 +205,8 @@ export interface CompareAnswer extends AnswerBase {
   readonly pairs: readonly PairAnswer[];
   /** Names of theories shown to be equivalent, together; every name occurs once. */
   readonly classes: readonly (readonly string[])[];
+  /** Names of theories that are derived to contradict themselves, with the derivations. */
+  readonly inconsistent: readonly { readonly name: string; readonly derivation: ShownDerivation }[];
   /** Whether the user interrupted; pairs after that were not searched. */
   readonly interrupted: boolean;
 }
@@ -202,6 +228,28 @@ export interface DualPair {
   readonly verdict: DualVerdict;
   /** A model of one and not the other, and which of the two it is a model of; null when none is known. */
   readonly witness: { readonly structure: Structure; readonly modelOf: number } | null;
+  /** Of each from the other; none unless equivalent. */
+  readonly derivations: readonly ShownDerivation[];
+}
+
+/** An irredundant set of axioms from which all others follow. */
+export interface MinimalSet {
+  readonly labels: readonly string[];
+  /** Of the axioms that are left out. */
+  readonly derivations: readonly ShownDerivation[];
+  /** For each label, a structure where it alone of the set fails. */
+  readonly witnesses: readonly Structure[];
+}
+
+export interface MinimiseAnswer extends AnswerBase {
+  readonly question: "minimise";
+  readonly verdict: null;
+  readonly sets: readonly MinimalSet[];
+  /** Whether the sets are all there are. */
+  readonly complete: boolean;
+  /** Sets of labels of which it is open whether the other axioms follow from them. */
+  readonly open: readonly (readonly string[])[];
+  readonly ended: EndReason | null;
 }
 
 export type Answer =
@@ -211,6 +259,7 @@ export type Answer =
   | CountAnswer
   | IndependenceAnswer
   | CompareAnswer
+  | MinimiseAnswer
   | DualAnswer;
 
 /** Told by a question while it works, for progress displays. Nothing of an answer depends on it. */

@@ -1,39 +1,56 @@
 /** `check-finite T`: has the theory finite models, none, or only infinite ones? */
-
+import { Meter } from "../logic/meter.ts";
 import { sentencesOf, type Theory } from "../logic/theory.ts";
 import type { FiniteAnswer } from "./answer.ts";
 import { certify } from "./certify.ts";
 import { EvidenceWriter } from "./evidence-writer.ts";
-import { jointSignature, searchFinite } from "./finite-search.ts";
-import { meterFor, type Work } from "./work.ts";
+import { jointSignature } from "./finite-search.ts";
+import { proveNoModel } from "./no-model.ts";
+import { recordQuestion } from "./question-record.ts";
+import { Settler } from "./settle.ts";
+import type { Work } from "./work.ts";
 
-/** `finite` with a smallest model, or `open` with the sizes that have none. */
+/** The clause proof for one size may cost one part of so many of the budget. */
+const PROOF_SHARE = 8;
+
+/**
+ * `finite` with a model, a smallest one where smaller sizes are settled; `inconsistent` with a derivation; `open` with
+ * the sizes that have no model.
+ */
 export function checkFinite(theory: Theory, work: Work): FiniteAnswer {
   const writer = new EvidenceWriter();
-  const sentences = sentencesOf(theory);
-  const axioms = writer.theory(sentences);
-  const meter = meterFor(work);
-  const signature = jointSignature([theory]);
-  const { structure, search } = searchFinite(
-    { sought: "a model", alternatives: [sentences], signature },
-    meter,
-    work,
+  const question = recordQuestion({ ask: "check-finite", theory }, writer);
+  const settler = new Settler(jointSignature([theory]), writer, work);
+  const settled = settler.settle(
+    { premises: theory.axioms, conclusions: [], sought: "a model" },
+    settler.left,
   );
-  const result = {
+  const { search, report, structure } = settled;
+  const verdict =
+    settled.outcome === "refuted" ? "finite" : settled.outcome === "derived" ? "inconsistent" : "open";
+  let { steps } = settler;
+  let provenUpTo = 0;
+  while (verdict === "finite" && provenUpTo < search.noneUpTo && steps < work.budget) {
+    const meter = new Meter(Math.min(work.budget - steps, work.budget / PROOF_SHARE), work.isInterrupted);
+    work.report(`proving that there is no model on ${provenUpTo + 1} points`);
+    const proof = proveNoModel(sentencesOf(theory), provenUpTo + 1, meter);
+    steps += meter.steps;
+    if (proof === null) break;
+    provenUpTo += 1;
+    writer.addNoModel(sentencesOf(theory), provenUpTo, proof);
+  }
+  return {
     question: "check-finite",
-    steps: meter.steps,
+    verdict,
+    steps,
+    evidence: verdict === "open" ? null : certify(writer.finish(question, verdict), work),
+    leastSize: search.foundAt !== null && search.foundAt === search.noneUpTo + 1 ? search.foundAt : null,
+    modelSize: search.foundAt,
     noModelUpTo: search.noneUpTo,
+    provenUpTo,
     model: structure,
     search,
-  } as const;
-  if (structure === null)
-    return { ...result, verdict: "open", evidence: null, leastSize: null, modelSize: null };
-  writer.addStructure(structure, sentences, null);
-  return {
-    ...result,
-    verdict: "finite",
-    evidence: certify(writer.finish({ ask: "check-finite", axioms }, "finite"), work),
-    leastSize: search.foundAt === search.noneUpTo + 1 ? search.foundAt : null,
-    modelSize: search.foundAt,
+    derivation: settled.derivations[0] ?? null,
+    report,
   };
 }

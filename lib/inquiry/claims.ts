@@ -1,24 +1,24 @@
 /** The questions that `derive`, `claim` and `conjecture` ask. Each answer is `holds`, `fails` or `open`. */
 import type { Structure } from "../carriers/structure.ts";
-import type { QuestionRecord } from "../evidence/format.ts";
-import { recordStructure } from "../evidence/record.ts";
-import { type Formula, not } from "../logic/formula.ts";
+import type { Formula } from "../logic/formula.ts";
 import { WorkEnded } from "../logic/meter.ts";
-import { conjunctionOf, sentencesOf, type Theory } from "../logic/theory.ts";
+import type { Theory } from "../logic/theory.ts";
 import { satisfies } from "../structures/evaluate.ts";
-import type { ClaimAnswer, Search, ShownStructure } from "./answer.ts";
+import type { ClaimAnswer, ClaimVerdict, ShownDerivation, ShownStructure } from "./answer.ts";
 import { certify } from "./certify.ts";
 import { EvidenceWriter } from "./evidence-writer.ts";
-import { jointSignature, searchFinite } from "./finite-search.ts";
+import { jointSignature } from "./finite-search.ts";
 import { independenceOf } from "./independence.ts";
+import { type Asked, recordQuestion } from "./question-record.ts";
+import { type Settled, Settler } from "./settle.ts";
 import { meterFor, type Work } from "./work.ts";
 
-/** `T ⊨ φ`: fails when a structure is found in which all of T holds and φ does not. */
+/** `T ⊨ φ`: holds when φ is derived from T, fails when a structure is found in which all of T holds and φ does not. */
 export function askEntails(premises: Theory, conclusion: Formula, work: Work): ClaimAnswer {
   return askEntailment("entails", premises, conclusion, work);
 }
 
-/** `T ⊭ φ`: holds when a structure is found in which all of T holds and φ does not. */
+/** `T ⊭ φ`: the other way round. */
 export function askDoesNotEntail(premises: Theory, conclusion: Formula, work: Work): ClaimAnswer {
   return askEntailment("does-not-entail", premises, conclusion, work);
 }
@@ -29,23 +29,22 @@ function askEntailment(
   conclusion: Formula,
   work: Work,
 ): ClaimAnswer {
-  const writer = new EvidenceWriter();
-  const question: QuestionRecord = {
-    ask,
-    premises: writer.theory(sentencesOf(premises)),
-    conclusion: writer.sentence(conclusion),
-  };
-  const meter = meterFor(work);
-  const signature = jointSignature([premises], [conclusion]);
-  const alternatives = [[...sentencesOf(premises), not(conclusion)]];
-  const found = searchFinite({ sought: "a countermodel", alternatives, signature }, meter, work);
-  const structures: ShownStructure[] = [];
-  if (found.structure !== null) {
-    writer.addStructure(found.structure, sentencesOf(premises), [conclusion]);
-    structures.push({ role: "countermodel", structure: found.structure });
-  }
-  const verdict = ask === "entails" ? "fails" : "holds";
-  return concluded(writer, question, verdict, structures, [found.search], meter.steps, work);
+  const claim = new ClaimWork({ ask, premises, conclusion }, [premises], [conclusion], work);
+  const { settler } = claim;
+  const settled = settler.settle(
+    {
+      premises: premises.axioms,
+      // The premises are told apart from it by the label: nothing else is called so.
+      conclusions: [{ label: "the conclusion", formula: conclusion, named: false }],
+      sought: "a countermodel",
+    },
+    settler.left,
+  );
+  claim.add(settled, "countermodel");
+  if (settled.outcome === "open") return claim.answer("open");
+  if (settled.outcome === "derived" && !settled.inconsistent)
+    claim.addContradiction(settler.contradiction(premises.axioms));
+  return claim.answer((settled.outcome === "derived") === (ask === "entails") ? "holds" : "fails");
 }
 
 /** `A ⊨ φ` or `A ⊭ φ` for a structure A: decided by evaluation. */
@@ -56,11 +55,7 @@ export function askTruth(
   work: Work,
 ): ClaimAnswer {
   const writer = new EvidenceWriter();
-  const question: QuestionRecord = {
-    ask,
-    structure: recordStructure(structure),
-    sentence: writer.sentence(sentence),
-  };
+  const question = recordQuestion({ ask, structure, sentence }, writer);
   const meter = meterFor(work);
   const search = {
     sought: "the truth value",
@@ -69,6 +64,7 @@ export function askTruth(
     endedAt: null,
     symmetricUpTo: null,
   };
+  const rest = { derivations: [], reports: [], inconsistent: false, axioms: null } as const;
   try {
     work.report("the truth value");
     const verdict = satisfies(structure, sentence, meter) === (ask === "true-in") ? "holds" : "fails";
@@ -80,132 +76,170 @@ export function askTruth(
       evidence,
       structures: [{ role: "structure", structure }],
       searches: [{ ...search, ended: null }],
-      axioms: null,
+      ...rest,
     };
   } catch (problem) {
     if (!(problem instanceof WorkEnded)) throw problem;
-    const searches = [{ ...search, ended: problem.reason }];
     return {
       question: "claim",
       verdict: "open",
       steps: meter.steps,
       evidence: null,
       structures: [],
-      searches,
-      axioms: null,
+      searches: [{ ...search, ended: problem.reason }],
+      ...rest,
     };
   }
 }
 
-/** `T is consistent`: holds when a model is found. */
+/** `T is consistent`: holds when a model is found, fails when a contradiction is derived. */
 export function askConsistent(theory: Theory, work: Work): ClaimAnswer {
-  return askForModel("consistent", "holds", theory, work);
+  return askForModel("consistent", "holds", "fails", theory, work);
 }
 
-/** `T is infinite-only`: fails when a finite model is found. */
+/** `T is infinite-only`: fails when a finite model is found, or when there is no model at all. */
 export function askInfiniteOnly(theory: Theory, work: Work): ClaimAnswer {
-  return askForModel("infinite-only", "fails", theory, work);
+  return askForModel("infinite-only", "fails", "fails", theory, work);
 }
 
-/** `T has no finite model`: fails when a finite model is found. */
+/** `T has no finite model`: fails when a finite model is found, holds when a contradiction is derived. */
 export function askNoFiniteModel(theory: Theory, work: Work): ClaimAnswer {
-  return askForModel("no-finite-model", "fails", theory, work);
+  return askForModel("no-finite-model", "fails", "holds", theory, work);
 }
 
 function askForModel(
   ask: "consistent" | "infinite-only" | "no-finite-model",
-  verdict: "holds" | "fails",
+  withModel: ClaimVerdict,
+  withContradiction: ClaimVerdict,
   theory: Theory,
   work: Work,
 ): ClaimAnswer {
-  const writer = new EvidenceWriter();
-  const sentences = sentencesOf(theory);
-  const question: QuestionRecord = { ask, axioms: writer.theory(sentences) };
-  const meter = meterFor(work);
-  const signature = jointSignature([theory]);
-  const found = searchFinite({ sought: "a model", alternatives: [sentences], signature }, meter, work);
-  const structures: ShownStructure[] = [];
-  if (found.structure !== null) {
-    writer.addStructure(found.structure, sentences, null);
-    structures.push({ role: "model", structure: found.structure });
-  }
-  return concluded(writer, question, verdict, structures, [found.search], meter.steps, work);
+  const claim = new ClaimWork({ ask, theory }, [theory], [], work);
+  const { settler } = claim;
+  const entailment = { premises: theory.axioms, conclusions: [], sought: "a model" };
+  const settled = settler.settle(entailment, settler.left);
+  claim.add(settled, "model");
+  const { outcome } = settled;
+  return claim.answer(outcome === "open" ? "open" : outcome === "refuted" ? withModel : withContradiction);
 }
 
-/** `T is independent`: holds when for each axiom a structure is found where it alone fails. */
+/**
+ * `T is independent`: holds when for each axiom a structure is found where it alone fails, fails when one is derived
+ * from the others.
+ */
 export function askIndependent(theory: Theory, work: Work): ClaimAnswer {
-  const writer = new EvidenceWriter();
-  const sentences = sentencesOf(theory);
-  const question: QuestionRecord = { ask: "independent", axioms: writer.theory(sentences) };
-  const { axioms, steps } = independenceOf(theory, writer, work);
-  const all = axioms.every((axiom) => axiom.verdict === "independent");
-  return {
-    question: "claim",
-    verdict: all ? "holds" : "open",
-    steps,
-    evidence: all ? certify(writer.finish(question, "holds"), work) : null,
-    structures: axioms.flatMap(({ label, witness }) =>
-      witness === null ? [] : [{ role: `all axioms but ${label} hold`, structure: witness }],
-    ),
-    searches: axioms.map((axiom) => axiom.search),
-    axioms,
-  };
-}
-
-/** `T is weaker than U`: U says all that T says, and T does not say all that U says. Fails when U has a model that T lacks. */
-export function askWeaker(left: Theory, right: Theory, work: Work): ClaimAnswer {
-  return askOrder("weaker", left, right, work);
-}
-
-/** `T is equivalent to U`: fails when one has a model that the other lacks. */
-export function askEquivalent(left: Theory, right: Theory, work: Work): ClaimAnswer {
-  return askOrder("equivalent", left, right, work);
-}
-
-function askOrder(ask: "weaker" | "equivalent", left: Theory, right: Theory, work: Work): ClaimAnswer {
-  const writer = new EvidenceWriter();
-  const question: QuestionRecord = {
-    ask,
-    left: writer.theory(sentencesOf(left)),
-    right: writer.theory(sentencesOf(right)),
-  };
-  const meter = meterFor(work);
-  const signature = jointSignature([left, right]);
-  const pairs: [Theory, Theory, string][] = [
-    [right, left, "model of the second theory that is none of the first"],
-  ];
-  if (ask === "equivalent")
-    pairs.unshift([left, right, "model of the first theory that is none of the second"]);
-  const alternatives = pairs.map(([model, other]) => [...sentencesOf(model), not(conjunctionOf(other))]);
-  const sought = "a model of one theory that is none of the other";
-  const found = searchFinite({ sought, alternatives, signature }, meter, work);
-  const structures: ShownStructure[] = [];
-  if (found.structure !== null) {
-    const [model, other, role] = pairs[found.alternative]!;
-    writer.addStructure(found.structure, sentencesOf(model), sentencesOf(other));
-    structures.push({ role, structure: found.structure });
+  const asked: Asked = { ask: "independent", theory };
+  const claim = new ClaimWork(asked, [theory], [], work);
+  const axioms = independenceOf(theory, claim.settler);
+  for (const { label, witness, derivation, search, report } of axioms) {
+    if (witness !== null) claim.structures.push({ role: `all axioms but ${label} hold`, structure: witness });
+    if (derivation !== null) claim.derivations.push(derivation);
+    claim.searches.push(search);
+    claim.reports.push(report);
   }
-  return concluded(writer, question, "fails", structures, [found.search], meter.steps, work);
+  const verdicts = axioms.map((axiom) => axiom.verdict);
+  const verdict = verdicts.includes("redundant") ? "fails" : verdicts.includes("open") ? "open" : "holds";
+  return { ...claim.answer(verdict), axioms };
 }
 
-/** The answer of a question that the structures settle, or that stays open without them. */
-function concluded(
-  writer: EvidenceWriter,
-  question: QuestionRecord,
-  settled: "holds" | "fails",
-  structures: readonly ShownStructure[],
-  searches: readonly Search[],
-  steps: number,
-  work: Work,
-): ClaimAnswer {
-  const found = structures.length > 0;
-  return {
-    question: "claim",
-    verdict: found ? settled : "open",
-    steps,
-    evidence: found ? certify(writer.finish(question, settled), work) : null,
-    structures,
-    searches,
-    axioms: null,
-  };
+/**
+ * `T is weaker than U`: U says all that T says, and T does not say all that U says. Holds by derivations of T from U
+ * and a model of T that is none of U; fails by a model of U that is none of T, or by derivations of U from T.
+ */
+export function askWeaker(left: Theory, right: Theory, work: Work): ClaimAnswer {
+  const claim = new ClaimWork({ ask: "weaker", left, right }, [left, right], [], work);
+  const below = claim.direction(right, left, ["the second theory", "the first"], 2);
+  if (below.outcome === "refuted") return claim.answer("fails");
+  const above = claim.direction(left, right, ["the first theory", "the second"], 1);
+  if (above.outcome === "derived") return claim.answer("fails");
+  return claim.answer(below.outcome === "derived" && above.outcome === "refuted" ? "holds" : "open");
+}
+
+/** `T is equivalent to U`: holds by derivations both ways, fails when one has a model that the other lacks. */
+export function askEquivalent(left: Theory, right: Theory, work: Work): ClaimAnswer {
+  const claim = new ClaimWork({ ask: "equivalent", left, right }, [left, right], [], work);
+  const forth = claim.direction(left, right, ["the first theory", "the second"], 2);
+  if (forth.outcome === "refuted") return claim.answer("fails");
+  const back = claim.direction(right, left, ["the second theory", "the first"], 1);
+  if (back.outcome === "refuted") return claim.answer("fails");
+  return claim.answer(forth.outcome === "derived" && back.outcome === "derived" ? "holds" : "open");
+}
+
+/** A claim while it is worked on. */
+class ClaimWork {
+  readonly settler: Settler;
+  readonly structures: ShownStructure[] = [];
+  readonly derivations: ShownDerivation[] = [];
+  readonly searches: ClaimAnswer["searches"][number][] = [];
+  readonly reports: ClaimAnswer["reports"][number][] = [];
+  #inconsistent = false;
+  readonly #writer = new EvidenceWriter();
+  readonly #question;
+  readonly #work: Work;
+
+  constructor(asked: Asked, theories: readonly Theory[], sentences: readonly Formula[], work: Work) {
+    this.#question = recordQuestion(asked, this.#writer);
+    this.#work = work;
+    this.settler = new Settler(jointSignature(theories, sentences), this.#writer, work);
+  }
+
+  /** @param role what a structure found is, for people */
+  add(settled: Settled, role: string): void {
+    if (settled.structure !== null) this.structures.push({ role, structure: settled.structure });
+    this.derivations.push(...settled.derivations);
+    this.searches.push(settled.search);
+    this.reports.push(settled.report);
+    if (settled.inconsistent) this.#inconsistent = true;
+  }
+
+  /** Adds a derivation of a contradiction, which is to be shown first. */
+  addContradiction(derivation: ShownDerivation | null): void {
+    if (derivation === null) return;
+    this.derivations.unshift(derivation);
+    this.#inconsistent = true;
+  }
+
+  /** Whether one theory entails all of the other, with the steps of one of so many searches to come. */
+  direction(from: Theory, to: Theory, names: readonly [string, string], searches: number): Settled {
+    const entailment = {
+      premises: from.axioms,
+      conclusions: to.axioms,
+      sought: `a model of ${names[0]} that is none of ${names[1]}`,
+    };
+    const settled =
+      to.axioms.length === 0
+        ? this.#nothingToShow(entailment.sought)
+        : this.settler.settle(entailment, Math.max(1, Math.floor(this.settler.left / searches)));
+    this.add(settled, entailment.sought.slice(2));
+    return settled;
+  }
+
+  answer(verdict: ClaimVerdict): ClaimAnswer {
+    return {
+      question: "claim",
+      verdict,
+      steps: this.settler.steps,
+      evidence: verdict === "open" ? null : certify(this.#writer.finish(this.#question, verdict), this.#work),
+      structures: this.structures,
+      searches: this.searches,
+      derivations: this.derivations,
+      reports: this.reports,
+      inconsistent: this.#inconsistent,
+      axioms: null,
+    };
+  }
+
+  /** A theory without axioms follows from every theory. */
+  #nothingToShow(sought: string): Settled {
+    const search = { sought, noneUpTo: 0, foundAt: null, ended: null, endedAt: null, symmetricUpTo: null };
+    const report = { sought: "the axioms", result: "derived", ended: null, generated: 0 } as const;
+    return {
+      outcome: "derived",
+      structure: null,
+      derivations: [],
+      inconsistent: false,
+      search,
+      report,
+    };
+  }
 }

@@ -1,11 +1,11 @@
 /** `dualise T`: the theory, its converse, its complement and both; which of the four coincide. */
-
-import { complementTheory, converseTheory, sentencesOf, type Theory } from "../logic/theory.ts";
+import { complementTheory, converseTheory, type Theory } from "../logic/theory.ts";
 import type { DualAnswer, DualPair } from "./answer.ts";
 import { certify } from "./certify.ts";
 import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature } from "./finite-search.ts";
-import { Separator } from "./separate.ts";
+import { recordQuestion } from "./question-record.ts";
+import { Settler } from "./settle.ts";
 import type { Work } from "./work.ts";
 
 /** Six pairs of the four, each in two directions. */
@@ -28,35 +28,59 @@ export function dualsOf(
 export function askDuals(name: string, theory: Theory, work: Work): DualAnswer {
   const writer = new EvidenceWriter();
   const duals = dualsOf(name, theory);
-  const records = duals.map((dual) => writer.theory(sentencesOf(dual.theory)));
-  const separator = new Separator(jointSignature(duals.map((dual) => dual.theory)), writer, work);
-  const budget = Math.max(1, Math.floor(work.budget / SEARCHES));
+  const theories = duals.map((dual) => dual.theory);
+  const question = recordQuestion({ ask: "dualise", theories }, writer);
+  const settler = new Settler(jointSignature(theories), writer, work);
+  let searches = SEARCHES;
+  const direction = (from: number, to: number) =>
+    settler.settle(
+      {
+        premises: theories[from]!.axioms,
+        conclusions: theories[to]!.axioms,
+        sought: `a model of ${duals[from]!.name} that is none of ${duals[to]!.name}`,
+      },
+      Math.max(1, Math.floor(settler.left / searches--)),
+    );
+  const compare = (left: number, right: number): DualPair => {
+    // Without axioms there is nothing that the duals could differ in.
+    if (theory.axioms.length === 0)
+      return { left, right, verdict: "equivalent", witness: null, derivations: [] };
+    const different = (
+      structure: NonNullable<DualPair["witness"]>["structure"],
+      modelOf: number,
+    ): DualPair => ({
+      left,
+      right,
+      verdict: "different",
+      witness: { structure, modelOf },
+      derivations: [],
+    });
+    const forth = direction(left, right);
+    if (forth.structure !== null) return different(forth.structure, left);
+    const back = direction(right, left);
+    if (back.structure !== null) return different(back.structure, right);
+    const isEquivalent = forth.outcome === "derived" && back.outcome === "derived";
+    return {
+      left,
+      right,
+      verdict: isEquivalent ? "equivalent" : "open",
+      witness: null,
+      derivations: isEquivalent ? [...forth.derivations, ...back.derivations] : [],
+    };
+  };
   const pairs: DualPair[] = [];
-  for (const [left, { theory: first }] of duals.entries())
-    for (const [right, { theory: second }] of duals.entries()) {
-      if (right <= left) continue;
-      const leftOnly = separator.separate(first, second, budget);
-      if (leftOnly !== null) {
-        pairs.push({ left, right, verdict: "different", witness: { structure: leftOnly, modelOf: left } });
-        continue;
-      }
-      const rightOnly = separator.separate(second, first, budget);
-      pairs.push(
-        rightOnly === null
-          ? { left, right, verdict: "open", witness: null }
-          : { left, right, verdict: "different", witness: { structure: rightOnly, modelOf: right } },
-      );
-    }
+  for (const left of duals.keys())
+    for (const right of duals.keys()) if (right > left) pairs.push(compare(left, right));
   const verdicts = pairs.map((pair) => pair.verdict);
   return {
     question: "dualise",
     verdict: null,
-    steps: separator.steps,
-    evidence: verdicts.includes("different")
-      ? certify(writer.finish({ ask: "dualise", theories: records }, verdicts), work)
+    steps: settler.steps,
+    evidence: verdicts.some((verdict) => verdict !== "open")
+      ? certify(writer.finish(question, verdicts), work)
       : null,
     duals,
     pairs,
-    interrupted: separator.interrupted,
+    interrupted: settler.interrupted,
   };
 }

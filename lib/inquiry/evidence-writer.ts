@@ -22,6 +22,16 @@ export class EvidenceWriter {
   readonly #numbers = new Map<string, number>();
   readonly #facts: Fact[] = [];
 
+  /** Whether there are no facts yet. */
+  get isEmpty(): boolean {
+    return this.#facts.length === 0;
+  }
+
+  /** The sentences so far. */
+  get sentences(): readonly FormulaRecord[] {
+    return this.#sentences;
+  }
+
   /** The number of a sentence, the same for the same sentence. */
   sentence(formula: Formula): number {
     const record = recordFormula(formula);

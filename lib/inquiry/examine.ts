@@ -2,6 +2,8 @@
 
 import { Points } from "../carriers/points.ts";
 import type { Structure } from "../carriers/structure.ts";
+import type { Derivation, DerivationTask } from "../derivation/derive.ts";
+import { DerivationSearch } from "../derivation/turns.ts";
 import type { Evidence } from "../evidence/format.ts";
 import { type Formula, not, type RelationSymbol } from "../logic/formula.ts";
 import { type FiniteCheck, finiteCheckBound } from "../logic/fragments.ts";
@@ -9,6 +11,7 @@ import { type Meter, WorkEnded } from "../logic/meter.ts";
 import { namedProperties, propertyOf } from "../logic/properties.ts";
 import { sentencesOf, type Theory } from "../logic/theory.ts";
 import { satisfies } from "../structures/evaluate.ts";
+import { Solver } from "../structures/sat/solver.ts";
 import { enumerateStructures } from "../structures/search.ts";
 import { certify } from "./certify.ts";
 import { EvidenceWriter } from "./evidence-writer.ts";
@@ -19,6 +22,8 @@ import { meterFor, type Work } from "./work.ts";
 export type ModelSearch =
   /** A model was found, on so many points; there may be smaller ones. */
   | { readonly kind: "found"; readonly size: number }
+  /** It is derived that there is none. */
+  | { readonly kind: "derived" }
   /**
    * There is none on 1, …, this many points; 0 when not even one point was finished. Where a published bound says
    * that larger ones need not be looked at, there is none at all, and `decided` has the bound.
@@ -48,6 +53,8 @@ export interface Findings {
 const LISTED_SIZES = 3;
 /** Models that are listed of each of those sizes. */
 const LISTED_MODELS = 60;
+/** A derivation of a property is given up when so many clauses have been generated. */
+const DERIVATION_CLAUSES = 100;
 
 /**
  * Looks for models with and without each named property of each two-place relation of the theory. Models that are
@@ -84,6 +91,8 @@ class Examiner {
   /** Models of the theory, each with the sentences that it was found or tried to satisfy besides. */
   readonly #models: { readonly structure: Structure; readonly shows: Formula[] }[] = [];
 
+  readonly #derived: { readonly task: DerivationTask; readonly derivation: Derivation }[] = [];
+
   constructor(theory: Theory, meter: Meter, work: Work) {
     this.#theory = theory;
     this.#sentences = sentencesOf(theory);
@@ -112,13 +121,15 @@ class Examiner {
         model.shows.push(sentence);
         return { kind: "found", size: model.structure.carrier.size! };
       }
+    if (this.#derive(not(sentence))) return { kind: "derived" };
     const sentences = [...this.#sentences, sentence];
     const bound = finiteCheckBound(sentences);
     const upTo = Math.min(this.#work.upTo, bound?.points ?? this.#work.upTo);
     const signature = jointSignature([this.#theory], [sentence]);
     const task = { sought: "a model", alternatives: [sentences], signature };
-    const { structure, search } = searchFinite(task, this.#meter, { ...this.#work, upTo });
-    if (structure !== null) {
+    const { found, search } = searchFinite(task, this.#meter, { ...this.#work, upTo });
+    if (found !== null) {
+      const { structure } = found;
       this.#models.push({ structure, shows: [sentence] });
       return { kind: "found", size: structure.carrier.size! };
     }
@@ -127,14 +138,27 @@ class Examiner {
     return { kind: "none", upTo: search.noneUpTo, decided };
   }
 
-  /** What the models show, each in one fact; checked. */
+  /** Whether a short search derives a sentence from the theory. */
+  #derive(conclusion: Formula): boolean {
+    const task = { premises: this.#sentences, conclusion };
+    const search = new DerivationSearch(task, () => new Solver());
+    while (search.generated < DERIVATION_CLAUSES) {
+      const outcome = search.next(this.#meter);
+      if (outcome.result === "derived") this.#derived.push({ task, derivation: outcome.derivation });
+      if (outcome.result !== "gave-up") return outcome.result === "derived";
+    }
+    return false;
+  }
+
+  /** What the models and derivations show, each in one fact; checked. */
   evidence(): Evidence | null {
     const writer = new EvidenceWriter();
     const axioms = writer.theory(this.#sentences);
     const showing = this.#models.filter(({ shows }) => shows.length > 0);
     for (const { structure, shows } of showing)
       writer.addStructure(structure, [...this.#sentences, ...shows], null);
-    if (showing.length === 0) return null;
+    for (const { task, derivation } of this.#derived) writer.addDerivation(task, derivation);
+    if (writer.isEmpty) return null;
     return certify(writer.finish({ ask: "models", axioms }, null), this.#work);
   }
 }

@@ -18,10 +18,9 @@ export interface FiniteSearchTask {
   readonly signature: Signature;
 }
 
-export interface FiniteSearchResult {
-  readonly search: Search;
-  readonly structure: Structure | null;
-  /** Which alternative holds in the structure; −1 when none was found. */
+export interface FoundStructure {
+  readonly structure: Structure;
+  /** Which alternative holds in the structure. */
   readonly alternative: number;
 }
 
@@ -35,80 +34,135 @@ const STEPS_BEYOND = 200;
 const SHARE_BEYOND = 8;
 
 /**
- * Goes through 1, 2, … points until a structure is found, the sizes asked for are done or the meter ends: at each
- * size a short search for symmetric structures, then the complete search. Where that ends for good, larger sizes are
- * searched for symmetric structures alone, so that one may be found with smaller sizes unsettled.
+ * Goes through 1, 2, … points until a structure is found or all sizes asked for are done: at each size a short search
+ * for symmetric structures, then the complete search. Where that has ended early, larger sizes may be searched for
+ * symmetric structures alone, so that one may be found with smaller sizes unsettled. The search goes on where it was
+ * whenever it is told to.
  */
-export function searchFinite(task: FiniteSearchTask, meter: Meter, work: Work): FiniteSearchResult {
-  const { relations } = task.signature;
-  const largest = Math.max(work.upTo, work.symmetricUpTo);
-  const kept = largest > DEFAULT_LARGEST_SIZE ? 1 / SHARE_BEYOND : 0;
-  const complete = new MeterShare(meter, (meter.left / 1000) * (1 - kept));
-  const before = new MeterShare(complete.meter, meter.left / 1000 / SHARE_BEFORE);
-  let noneUpTo = 0;
-  let ended: EndReason | null = null;
-  for (let size = 1; size <= work.upTo && ended === null; size += 1) {
-    report(size, "");
-    const symmetric = size < LEAST_SYMMETRIC_SIZE ? null : lookForSymmetric(size, before.meter, STEPS_BEFORE);
-    if (symmetric !== null) return symmetric;
-    const carrier = new Points(size);
-    for (const [alternative, sentences] of task.alternatives.entries()) {
-      const outcome = findStructure({ carrier, sentences, relations }, complete.meter);
-      if (outcome.result === "found") return found(size, outcome.structure, alternative);
-      if (outcome.result === "ended") {
-        ended = outcome.reason;
-        break;
-      }
-    }
-    if (ended === null) noneUpTo = size;
-  }
-  settle();
-  const endedAt = ended === null ? null : noneUpTo + 1;
-  let symmetricUpTo: number | null = null;
-  for (let size = Math.max(noneUpTo + 1, LEAST_SYMMETRIC_SIZE); size <= largest; size += 1) {
-    if (meter.ended !== null || meter.left < 1000 || ended === "interrupted") break;
-    report(size, ", symmetric ones only");
-    const symmetric = lookForSymmetric(size, meter, STEPS_BEYOND);
-    if (symmetric !== null) return symmetric;
-    if (meter.ended === null) symmetricUpTo = size;
-  }
-  // Of an interrupt beyond the complete sizes the rest of a question must know.
-  if (ended === null && meter.ended === "interrupted") ended = "interrupted";
-  return {
-    search: { sought: task.sought, noneUpTo, foundAt: null, ended, endedAt, symmetricUpTo },
-    structure: null,
-    alternative: -1,
-  };
+export class FiniteSearch {
+  found: FoundStructure | null = null;
+  /** There is no structure on 1, …, this many points. */
+  #noneUpTo = 0;
+  #foundAt: number | null = null;
+  /** Why the complete search of the next size ended; null when it has not been begun. */
+  #ended: EndReason | null = null;
+  /** Sizes up to this one had the short search for symmetric structures. */
+  #shortUpTo = LEAST_SYMMETRIC_SIZE - 1;
+  #symmetricUpTo: number | null = null;
+  readonly #task: FiniteSearchTask;
+  readonly #meter: Meter;
+  readonly #work: Work;
 
-  function report(size: number, how: string): void {
-    work.report(`${task.sought} on ${size} ${size === 1 ? "point" : "points"}${how}`);
+  constructor(task: FiniteSearchTask, meter: Meter, work: Work) {
+    this.#task = task;
+    this.#meter = meter;
+    this.#work = work;
   }
 
-  function lookForSymmetric(size: number, payer: Meter, steps: number): FiniteSearchResult | null {
-    const outcome = findSymmetric({ size, alternatives: task.alternatives, relations }, payer, steps);
-    return outcome === null ? null : found(size, outcome.structure, outcome.alternative);
+  /** Whether all sizes asked for are searched completely. */
+  get isComplete(): boolean {
+    return this.#noneUpTo >= this.#work.upTo;
   }
 
-  function found(size: number, structure: Structure, alternative: number): FiniteSearchResult {
-    settle();
+  /** Whether {@link advance} and {@link goBeyond} have nothing more to do. */
+  get isExhausted(): boolean {
+    const largest = Math.max(this.#work.upTo, this.#work.symmetricUpTo);
+    return this.isComplete && (this.#symmetricUpTo ?? this.#noneUpTo) >= largest;
+  }
+
+  get search(): Search {
     return {
-      search: {
-        sought: task.sought,
-        noneUpTo,
-        foundAt: size,
-        ended: null,
-        endedAt: null,
-        symmetricUpTo: null,
-      },
-      structure,
-      alternative,
+      sought: this.#task.sought,
+      noneUpTo: this.#noneUpTo,
+      foundAt: this.#foundAt,
+      ended: this.found === null ? this.#ended : null,
+      endedAt: this.found === null && this.#ended !== null ? this.#noneUpTo + 1 : null,
+      symmetricUpTo: this.found === null ? this.#symmetricUpTo : null,
     };
   }
 
-  function settle(): void {
-    before.settle();
-    complete.settle();
+  /** Searches the sizes up to `size` (and those asked for) completely, within so many steps. */
+  advance(size: number, steps: number): void {
+    const complete = new MeterShare(this.#meter, steps);
+    const before = new MeterShare(complete.meter, steps / SHARE_BEFORE);
+    try {
+      const last = Math.min(size, this.#work.upTo);
+      while (this.found === null && this.#noneUpTo < last && complete.ended === null) {
+        const next = this.#noneUpTo + 1;
+        this.#report(next, "");
+        this.#ended = null;
+        if (next > this.#shortUpTo) {
+          this.#shortUpTo = next;
+          if (this.#searchSymmetric(next, before.meter, STEPS_BEFORE)) return;
+        }
+        this.#searchSize(next, complete.meter);
+      }
+    } finally {
+      before.settle();
+      complete.settle();
+      // Of an interrupt the rest of a question must know.
+      if (this.#meter.ended === "interrupted") this.#ended = "interrupted";
+    }
   }
+
+  /** Searches for symmetric structures on the sizes that are not searched completely. */
+  goBeyond(): void {
+    const largest = Math.max(this.#work.upTo, this.#work.symmetricUpTo);
+    const first = Math.max(this.#noneUpTo + 1, this.#symmetricUpTo ?? 0, LEAST_SYMMETRIC_SIZE);
+    for (let size = first; size <= largest; size += 1) {
+      if (this.#meter.ended !== null || this.#meter.left < 1000 || this.#ended === "interrupted") break;
+      this.#report(size, ", symmetric ones only");
+      if (this.#searchSymmetric(size, this.#meter, STEPS_BEYOND)) return;
+      if (this.#meter.ended === null) this.#symmetricUpTo = size;
+    }
+    if (this.#ended === null && this.#meter.ended === "interrupted") this.#ended = "interrupted";
+  }
+
+  #searchSize(size: number, meter: Meter): void {
+    const { alternatives, signature } = this.#task;
+    const carrier = new Points(size);
+    for (const [alternative, sentences] of alternatives.entries()) {
+      const outcome = findStructure({ carrier, sentences, relations: signature.relations }, meter);
+      if (outcome.result === "found") {
+        this.#keep(size, { structure: outcome.structure, alternative });
+        return;
+      }
+      if (outcome.result === "ended") {
+        this.#ended = outcome.reason;
+        return;
+      }
+    }
+    this.#noneUpTo = size;
+  }
+
+  #searchSymmetric(size: number, payer: Meter, steps: number): boolean {
+    const { alternatives, signature } = this.#task;
+    const outcome = findSymmetric({ size, alternatives, relations: signature.relations }, payer, steps);
+    if (outcome !== null) this.#keep(size, outcome);
+    return outcome !== null;
+  }
+
+  #keep(size: number, found: FoundStructure): void {
+    this.found = found;
+    this.#foundAt = size;
+  }
+
+  #report(size: number, how: string): void {
+    this.#work.report(`${this.#task.sought} on ${size} ${size === 1 ? "point" : "points"}${how}`);
+  }
+}
+
+/** The part of a budget that the complete search may have, where larger sizes are to be looked at as well. */
+export function shareOfComplete(work: Work): number {
+  return Math.max(work.upTo, work.symmetricUpTo) > DEFAULT_LARGEST_SIZE ? 1 - 1 / SHARE_BEYOND : 1;
+}
+
+/** Goes through all sizes asked for until a structure is found, all are done, or the meter ends. */
+export function searchFinite(task: FiniteSearchTask, meter: Meter, work: Work): FiniteSearch {
+  const search = new FiniteSearch(task, meter, work);
+  search.advance(work.upTo, (meter.left / 1000) * shareOfComplete(work));
+  if (search.found === null) search.goBeyond();
+  return search;
 }
 
 /** The signature of several theories and some sentences together. */

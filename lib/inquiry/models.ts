@@ -1,6 +1,7 @@
 /** `models T of size n`: the models themselves, one of each class of isomorphic ones. */
 import { Points } from "../carriers/points.ts";
 import type { Structure } from "../carriers/structure.ts";
+import { Meter } from "../logic/meter.ts";
 import { sentencesOf, type Theory } from "../logic/theory.ts";
 import { canonicalForm } from "../structures/isomorphism.ts";
 import { enumerateStructures } from "../structures/search.ts";
@@ -8,6 +9,7 @@ import type { ModelsAnswer } from "./answer.ts";
 import { certify } from "./certify.ts";
 import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature } from "./finite-search.ts";
+import { proveNoModel } from "./no-model.ts";
 import { meterFor, type Work } from "./work.ts";
 
 /** Models that are shown; whether there are more is said. */
@@ -35,15 +37,25 @@ export function findModels(theory: Theory, size: number, work: Work): ModelsAnsw
     return true;
   });
   for (const model of models) writer.addStructure(model, sentences, null);
+  let { steps } = meter;
+  let provenNone = false;
+  if (end === "complete" && models.length === 0) {
+    const proofMeter = new Meter(Math.max(1, work.budget - steps), work.isInterrupted);
+    const proof = proveNoModel(sentences, size, proofMeter);
+    steps += proofMeter.steps;
+    if (proof !== null) writer.addNoModel(sentences, size, proof);
+    provenNone = proof !== null;
+  }
   return {
     question: "models",
     verdict: null,
-    steps: meter.steps,
-    evidence: models.length > 0 ? certify(writer.finish({ ask: "models", axioms }, null), work) : null,
+    steps,
+    evidence: writer.isEmpty ? null : certify(writer.finish({ ask: "models", axioms }, null), work),
     size,
     models,
     complete: end === "complete",
     more,
+    provenNone,
     ended: end === "complete" || end === "stopped" ? null : end,
   };
 }

@@ -1,0 +1,330 @@
+/**
+ * Settling whether sentences follow from others: the search for derivations and the search for structures, in turns
+ * from a fixed list. The first to answer decides.
+ */
+import type { Structure } from "../carriers/structure.ts";
+import type { Derivation, DerivationTask } from "../derivation/derive.ts";
+import { DerivationSearch } from "../derivation/turns.ts";
+import { recordFormula } from "../evidence/record.ts";
+import { and, type Formula, not } from "../logic/formula.ts";
+import { type EndReason, Meter, WorkEnded } from "../logic/meter.ts";
+import { MeterShare } from "../logic/share.ts";
+import type { Axiom, Signature } from "../logic/theory.ts";
+import { satisfiesAll } from "../structures/evaluate.ts";
+import { Solver } from "../structures/sat/solver.ts";
+import type { DerivationReport, Search, ShownDerivation } from "./answer.ts";
+import type { EvidenceWriter } from "./evidence-writer.ts";
+import { FiniteSearch, shareOfComplete } from "./finite-search.ts";
+import type { Work } from "./work.ts";
+
+/** Whether all conclusions follow from the premises; without conclusions, whether the premises contradict each other. */
+export interface Entailment {
+  readonly premises: readonly Axiom[];
+  readonly conclusions: readonly Axiom[];
+  /** What a structure against it would be, for people: "a countermodel". */
+  readonly sought: string;
+}
+
+export interface Settled {
+  readonly outcome: "derived" | "refuted" | "open";
+  /** A model of the premises where some conclusion fails; null unless refuted. */
+  readonly structure: Structure | null;
+  /** One for each conclusion that is not itself a premise, or one of a contradiction; none unless derived. */
+  readonly derivations: readonly ShownDerivation[];
+  /** Whether the premises are derived to contradict each other. */
+  readonly inconsistent: boolean;
+  readonly search: Search;
+  readonly report: DerivationReport;
+}
+
+type Stage =
+  /** Derivations until so many clauses have been generated for each conclusion. */
+  | { readonly kind: "derive"; readonly generated: number }
+  /** Structures on up to so many points, within a part of the budget. */
+  | { readonly kind: "structures"; readonly upTo: number; readonly share: number };
+
+/**
+ * Most that is settled at all is settled by a short derivation or a very small structure; each stage costs at most a few
+ * times as much as those before it. What is left of the budget after them is shared by both searches.
+ */
+const STAGES: readonly Stage[] = [
+  { kind: "derive", generated: 150 },
+  { kind: "structures", upTo: 3, share: 1 / 20 },
+  { kind: "derive", generated: 1_500 },
+  { kind: "structures", upTo: 5, share: 1 / 10 },
+  { kind: "derive", generated: 8_000 },
+  { kind: "structures", upTo: 7, share: 1 / 8 },
+  { kind: "derive", generated: 40_000 },
+];
+
+/** Premises without a model on so many points are looked at for a contradiction, after something was derived from them … */
+const CONTRADICTION_POINTS = 3;
+/** … within so many generated clauses, … */
+const CONTRADICTION_CLAUSES = 1_000;
+/** … and within this part of the budget, structures included. */
+const CONTRADICTION_SHARE = 1 / 20;
+
+/** Settles entailments over one signature, adds what they rest on to the evidence, and keeps the structures it finds. */
+export class Settler {
+  readonly #signature: Signature;
+  readonly #writer: EvidenceWriter;
+  readonly #work: Work;
+  readonly #known: Structure[] = [];
+  /** Steps spent so far. */
+  steps = 0;
+  /** Whether the user has interrupted; nothing more is searched then. */
+  interrupted = false;
+
+  constructor(signature: Signature, writer: EvidenceWriter, work: Work) {
+    this.#signature = signature;
+    this.#writer = writer;
+    this.#work = work;
+  }
+
+  /** Steps that are left of the whole question's. */
+  get left(): number {
+    return Math.max(1, this.#work.budget - this.steps);
+  }
+
+  /** @param budget steps for this entailment */
+  settle(entailment: Entailment, budget: number): Settled {
+    const meter = new Meter(budget, this.#work.isInterrupted);
+    const run = new Run(entailment, this.#signature, this.#known, meter, this.#work);
+    if (!this.interrupted) run.go();
+    this.steps += meter.steps;
+    if (meter.ended === "interrupted") this.interrupted = true;
+    return this.#record(entailment, run);
+  }
+
+  /**
+   * A derivation that the premises contradict each other, where a short search finds one and no small model. Meant for
+   * premises from which something has been derived: everything follows from a contradiction.
+   */
+  contradiction(premises: readonly Axiom[]): ShownDerivation | null {
+    if (this.interrupted || premises.length === 0) return null;
+    const budget = Math.min(this.left, Math.max(1, Math.floor(this.#work.budget * CONTRADICTION_SHARE)));
+    const meter = new Meter(budget, this.#work.isInterrupted);
+    const entailment = { premises, conclusions: [], sought: "a model of the premises" };
+    const run = new Run(entailment, this.#signature, this.#known, meter, this.#work);
+    run.lookForContradiction();
+    this.steps += meter.steps;
+    if (meter.ended === "interrupted") this.interrupted = true;
+    return run.derived === null ? null : (this.#record(entailment, run).derivations[0] ?? null);
+  }
+
+  #record(entailment: Entailment, run: Run): Settled {
+    const { premises, conclusions } = entailment;
+    const structure = run.structure;
+    if (structure !== null) {
+      if (!this.#known.includes(structure)) this.#known.push(structure);
+      const fails = conclusions.length === 0 ? null : formulasOf(conclusions);
+      this.#writer.addStructure(structure, formulasOf(premises), fails);
+    }
+    const derivations = (run.derived ?? []).map(({ task, derivation, label }): ShownDerivation => {
+      const fact = this.#writer.addDerivation(task, derivation);
+      const used = derivation.premises.map((place) => premises[place]!);
+      const conclusion = derivation.usesConclusion ? task.conclusion : null;
+      const role = conclusion === null ? "the premises contradict each other" : label;
+      return { role, premises: used, conclusion, fact };
+    });
+    return {
+      outcome: run.derived !== null ? "derived" : structure !== null ? "refuted" : "open",
+      structure,
+      derivations,
+      inconsistent: derivations.some(({ conclusion }) => conclusion === null),
+      search: run.search,
+      report: run.report,
+    };
+  }
+}
+
+interface Derived {
+  readonly task: DerivationTask;
+  readonly derivation: Derivation;
+  /** What is derived, for people. */
+  readonly label: string;
+}
+
+/** A conclusion that is to be derived, or a contradiction. */
+interface Goal {
+  readonly task: DerivationTask;
+  readonly label: string;
+  readonly search: DerivationSearch;
+  derivation: Derivation | null;
+}
+
+/** One entailment while it is worked on. */
+class Run {
+  /** What was derived for all goals; null while some goal is open. */
+  derived: readonly Derived[] | null = null;
+  structure: Structure | null = null;
+  /** Whether some goal is shown to have no derivation. */
+  #saturated = false;
+  #ended: EndReason | null = null;
+  readonly #goals: readonly Goal[];
+  readonly #finite: FiniteSearch;
+  readonly #wanted: readonly Formula[];
+  readonly #structures: readonly Structure[];
+  readonly #meter: Meter;
+  readonly #work: Work;
+  readonly #sought: string;
+  readonly #budget: number;
+
+  constructor(
+    { premises, conclusions, sought }: Entailment,
+    signature: Signature,
+    structures: readonly Structure[],
+    meter: Meter,
+    work: Work,
+  ) {
+    this.#structures = structures;
+    this.#meter = meter;
+    this.#work = work;
+    this.#budget = meter.left / 1000;
+    const formulas = formulasOf(premises);
+    // As evidence sees it: the very same sentence, names of variables included.
+    const known = new Set(formulas.map(textOf));
+    const open = conclusions.filter(({ formula }) => !known.has(textOf(formula)));
+    const goals =
+      conclusions.length === 0
+        ? [{ conclusion: null, label: "a contradiction" }]
+        : open.map(({ label, formula }) => ({ conclusion: formula, label }));
+    this.#goals = goals.map(({ conclusion, label }) => {
+      const task = { premises: formulas, conclusion };
+      return { task, label, search: new DerivationSearch(task, () => new Solver()), derivation: null };
+    });
+    this.#sought =
+      conclusions.length === 0
+        ? "a contradiction"
+        : conclusions.length === 1
+          ? "the conclusion"
+          : "the axioms";
+    this.#wanted = conclusions.length === 0 ? formulas : [...formulas, not(and(...formulasOf(conclusions)))];
+    this.#finite = new FiniteSearch({ sought, alternatives: [this.#wanted], signature }, meter, work);
+    if (this.#goals.length === 0) this.derived = [];
+  }
+
+  get search(): Search {
+    return this.#finite.search;
+  }
+
+  get report(): DerivationReport {
+    const generated = this.#goals.reduce((sum, { search }) => sum + search.generated, 0);
+    const result =
+      this.derived !== null
+        ? "derived"
+        : this.#saturated
+          ? "saturated"
+          : this.structure !== null
+            ? "stopped"
+            : "ended";
+    return {
+      sought: this.#sought,
+      result,
+      ended: result === "ended" ? (this.#ended ?? this.#meter.ended ?? "budget") : null,
+      generated,
+    };
+  }
+
+  go(): void {
+    this.#guard(() => {
+      this.#tryKnown();
+      for (const stage of STAGES) {
+        if (this.#isSettled) return;
+        if (stage.kind === "derive") this.#derive(stage.generated, this.#meter.left / 1000);
+        else this.#searchStructures(stage.upTo, this.#budget * stage.share);
+      }
+      // Each search has half of what is left; what one leaves goes to the other.
+      const left = () => this.#meter.left / 1000;
+      if (!this.#isSettled)
+        this.#searchStructures(this.#work.upTo, (left() / 2) * shareOfComplete(this.#work));
+      if (!this.#isSettled && this.#finite.isComplete) this.#finite.goBeyond();
+      this.#keepStructure();
+      const kept = this.#finite.isExhausted ? 1 : 3 / 4;
+      if (!this.#isSettled) this.#derive(Number.POSITIVE_INFINITY, left() * kept);
+      if (!this.#isSettled) this.#searchStructures(this.#work.upTo, left() * shareOfComplete(this.#work));
+      if (!this.#isSettled) this.#finite.goBeyond();
+      this.#keepStructure();
+    });
+  }
+
+  /** A short look for a small model or a contradiction. */
+  lookForContradiction(): void {
+    this.#guard(() => {
+      this.#tryKnown();
+      if (!this.#isSettled) this.#searchStructures(CONTRADICTION_POINTS, this.#budget / 2);
+      if (!this.#isSettled) this.#derive(CONTRADICTION_CLAUSES, this.#budget);
+    });
+  }
+
+  get #isSettled(): boolean {
+    return this.derived !== null || this.structure !== null || this.#meter.ended === "interrupted";
+  }
+
+  #guard(work: () => void): void {
+    try {
+      work();
+    } catch (problem) {
+      if (!(problem instanceof WorkEnded)) throw problem;
+      this.#ended = problem.reason;
+    }
+  }
+
+  #tryKnown(): void {
+    if (this.derived !== null) return;
+    this.structure = this.#structures.find((one) => satisfiesAll(one, this.#wanted, this.#meter)) ?? null;
+  }
+
+  #searchStructures(upTo: number, steps: number): void {
+    this.#finite.advance(upTo, Math.max(1, steps));
+    this.#keepStructure();
+  }
+
+  #keepStructure(): void {
+    this.structure ??= this.#finite.found?.structure ?? null;
+  }
+
+  /** Turns of the derivation search, until so many clauses have been generated for each goal. */
+  #derive(generated: number, steps: number): void {
+    if (this.#saturated) return;
+    const share = new MeterShare(this.#meter, Math.max(1, steps));
+    try {
+      for (const goal of this.#goals) {
+        while (goal.derivation === null && goal.search.generated < generated) {
+          this.#work.report(`${this.#sought}: ${goal.search.generated} clauses`);
+          const outcome = goal.search.next(share.meter);
+          if (outcome.result === "saturated") {
+            this.#saturated = true;
+            return;
+          }
+          if (outcome.result === "derived") goal.derivation = outcome.derivation;
+        }
+        if (goal.derivation?.usesConclusion === false) {
+          // The premises contradict each other: that is all there is to show.
+          this.derived = [{ task: goal.task, derivation: goal.derivation, label: goal.label }];
+          return;
+        }
+      }
+    } catch (problem) {
+      // That the share ended is no reason to stop.
+      if (!(problem instanceof WorkEnded) || share.ended === "interrupted") throw problem;
+      this.#ended = problem.reason;
+    } finally {
+      share.settle();
+    }
+    if (this.#goals.every(({ derivation }) => derivation !== null))
+      this.derived = this.#goals.map(({ task, derivation, label }) => ({
+        task,
+        derivation: derivation!,
+        label,
+      }));
+  }
+}
+
+function textOf(formula: Formula): string {
+  return JSON.stringify(recordFormula(formula));
+}
+
+function formulasOf(axioms: readonly Axiom[]): readonly Formula[] {
+  return axioms.map(({ formula }) => formula);
+}
