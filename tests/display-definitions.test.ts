@@ -36,6 +36,7 @@ import {
   irr,
   order,
   R,
+  reported,
   searched,
   serial,
   stated,
@@ -98,7 +99,16 @@ describe("hostile names", () => {
         verdict: null,
         steps: 1,
         evidence,
-        axioms: [{ label: name, verdict: "independent", witness: structure, search: searched() }],
+        axioms: [
+          {
+            label: name,
+            verdict: "independent",
+            witness: structure,
+            derivation: null,
+            search: searched(),
+            report: reported(),
+          },
+        ],
       }).data,
       showDescription(
         stated("describe", { subject: { kind: "theory", theory } }) as Statement & { kind: "describe" },

@@ -7,6 +7,8 @@ import type {
   CompareAnswer,
   DualAnswer,
   IndependenceAnswer,
+  MinimiseAnswer,
+  ShownDerivation,
 } from "../../lib/inquiry/answer.ts";
 import { DEFAULT_LARGEST_SIZE } from "../../lib/inquiry/work.ts";
 import type { Claim, NamedTheory, Statement } from "../../lib/language/statements.ts";
@@ -16,9 +18,10 @@ import type { MimeBundle } from "../session/evaluator.ts";
 import { type Block, code, type Inline, leadingVerdict, line, note, verdict } from "./blocks.ts";
 import { renderBundle } from "./bundle.ts";
 import { countBlocks } from "./counts.ts";
+import { showDerivation } from "./derivations.ts";
 import { numberedStructures } from "./galleries.ts";
 import { sizeOf, structureBlocks } from "./structures.ts";
-import { budgetOf, claimOf, endText, pairReason, summarise } from "./summaries.ts";
+import { budgetOf, claimOf, derivedText, endText, pairReason, reportText, summarise } from "./summaries.ts";
 import { counted, onSizesTo } from "./text.ts";
 import { theoryTable } from "./theories.ts";
 
@@ -65,6 +68,7 @@ function sentencesAsked(statement: Statement): readonly Formula[] {
   switch (statement.kind) {
     case "check-finite":
     case "independence":
+    case "minimise":
     case "models":
     case "count":
     case "dualise":
@@ -99,7 +103,10 @@ function detailsOf(statement: Statement, answer: Answer): readonly Block[] {
     case "claim":
       return claimBlocks(answer);
     case "check-finite":
-      return answer.model === null ? [] : structureBlocks("model", answer.model);
+      return [
+        ...(answer.derivation === null ? [] : showDerivation(answer.derivation)),
+        ...(answer.model === null ? [] : structureBlocks("model", answer.model)),
+      ];
     case "models":
       return numberedStructures("model", answer.models);
     case "count":
@@ -108,6 +115,8 @@ function detailsOf(statement: Statement, answer: Answer): readonly Block[] {
       return axiomsBlocks(answer, answer.axioms, statement);
     case "compare":
       return compareBlocks(answer, statement);
+    case "minimise":
+      return minimalBlocks(answer);
     case "dualise":
       return dualBlocks(answer, statement);
   }
@@ -119,7 +128,10 @@ function detailsOf(statement: Statement, answer: Answer): readonly Block[] {
       const blocks = claim.structures.flatMap(({ role, structure }) => structureBlocks(role, structure));
       return [{ kind: "fold", title: "The structure", blocks }];
     }
-    return foldRest(claim.structures.map(({ role, structure }) => structureBlocks(role, structure)));
+    return [
+      ...foldDerivations(claim.derivations),
+      ...foldRest(claim.structures.map(({ role, structure }) => structureBlocks(role, structure))),
+    ];
   }
 }
 
@@ -154,17 +166,58 @@ function axiomsBlocks(
   const witnesses = axioms.flatMap(({ label, witness }) =>
     witness === null ? [] : structureBlocks(`only ${label} fails`, witness),
   );
-  if (witnesses.length === 0) return [table];
-  return [table, { kind: "fold", title: "The structures", blocks: witnesses }];
+  const derivations = axioms.flatMap(({ derivation }) => (derivation === null ? [] : [derivation]));
+  return [
+    table,
+    ...foldDerivations(derivations),
+    ...(witnesses.length === 0
+      ? []
+      : [{ kind: "fold", title: "The structures", blocks: witnesses } as const]),
+  ];
+}
+
+/** One derivation open, several each in a fold of its own. */
+function foldDerivations(derivations: readonly ShownDerivation[]): readonly Block[] {
+  if (derivations.length <= 1) return derivations.flatMap(showDerivation);
+  return derivations.map((derivation) => ({
+    kind: "fold",
+    title: `Derivation: ${derivation.role}`,
+    blocks: showDerivation(derivation),
+  }));
+}
+
+function minimalBlocks(answer: MinimiseAnswer): readonly Block[] {
+  if (answer.sets.length === 0) return [];
+  const table: Block = {
+    kind: "table",
+    caption: null,
+    head: ["set", "axioms", "the others"],
+    rows: answer.sets.map(({ labels, derivations }, index) => [
+      [`${index + 1}`],
+      [labels.length === 0 ? "none" : labels.join(", ")],
+      [derivations.length === 0 ? "there are none" : derivedText(derivations)],
+    ]),
+    look: "prose",
+  };
+  const derivations = answer.sets.flatMap((set) => set.derivations);
+  const structures = answer.sets.flatMap(({ labels, witnesses }) =>
+    witnesses.flatMap((structure, place) =>
+      structureBlocks(`of ${labels.join(", ")} only ${labels[place]} fails`, structure),
+    ),
+  );
+  const blocks: Block[] = [table, ...foldDerivations(derivations)];
+  if (structures.length > 0) blocks.push({ kind: "fold", title: "The structures", blocks: structures });
+  return blocks;
 }
 
 function axiomReason(axiom: AxiomAnswer, checked: string, share: number): string {
   if (axiom.witness !== null) return `fails alone on ${sizeOf(axiom.witness)}${checked}`;
-  const { search } = axiom;
-  if (axiom.verdict === "redundant") return `follows from the others${checked}`;
+  const { search, derivation } = axiom;
+  if (derivation !== null) return `${derivedText([derivation])}${checked}`;
+  if (axiom.verdict === "redundant") return `the same as another axiom${checked}`;
   const none = search.noneUpTo > 0 ? `no such structure ${onSizesTo(search.noneUpTo)}` : "";
   const end = search.ended === null ? "" : endText(search.ended, share, search.endedAt);
-  return [none, end].filter(Boolean).join("; ");
+  return [reportText(axiom.report), none, end].filter(Boolean).join("; ");
 }
 
 function compareBlocks(answer: CompareAnswer, statement: Statement): readonly Block[] {
@@ -187,6 +240,13 @@ function compareBlocks(answer: CompareAnswer, statement: Statement): readonly Bl
   const equivalent = classes.map((names) =>
     line("equivalent: ", ...names.flatMap((name, i) => [i === 0 ? "" : ", ", code(name)])),
   );
+  const inconsistent = answer.inconsistent.map(({ name }) =>
+    note(code(name), " is inconsistent: everything follows from it."),
+  );
+  const derivations = [
+    ...answer.inconsistent.map(({ derivation }) => derivation),
+    ...answer.pairs.flatMap((pair) => pair.derivations),
+  ];
   const structures = answer.pairs.flatMap((pair): readonly Block[] => {
     const [left, right] = [answer.names[pair.left]!, answer.names[pair.right]!];
     return [
@@ -197,7 +257,9 @@ function compareBlocks(answer: CompareAnswer, statement: Statement): readonly Bl
       ...(pair.common === null ? [] : structureBlocks(`model of both ${left} and ${right}`, pair.common)),
     ];
   });
-  const blocks: Block[] = [table, ...equivalent, ...interruptedNote(answer.interrupted)];
+  const blocks: Block[] = [...inconsistent, table, ...equivalent, ...interruptedNote(answer.interrupted)];
+  if (derivations.length > 0)
+    blocks.push({ kind: "fold", title: "The derivations", blocks: derivations.flatMap(showDerivation) });
   const isOpen = answer.pairs.some(({ verdict: word }) => word === "open");
   if (isOpen) blocks.push(rangeNote(statement));
   if (structures.length > 0) blocks.push({ kind: "fold", title: "The structures", blocks: structures });
@@ -210,7 +272,7 @@ function commonText(
   checked: string,
 ): string {
   if (common !== null) return `a common model on ${sizeOf(common)}${checked}`;
-  return isInconsistent === true ? "no common model" : "no common model found";
+  return isInconsistent === true ? `no common model${checked}` : "no common model found";
 }
 
 /** How far the searches of a comparison could go: where one ended is not told, so no size is claimed to be empty. */
@@ -249,6 +311,9 @@ function dualBlocks(answer: DualAnswer, statement: Statement): readonly Block[] 
   };
   const blocks: Block[] = [table, ...interruptedNote(answer.interrupted)];
   if (answer.pairs.some(({ verdict: word }) => word === "open")) blocks.push(rangeNote(statement));
+  const derivations = answer.pairs.flatMap((pair) => pair.derivations);
+  if (derivations.length > 0)
+    blocks.push({ kind: "fold", title: "The derivations", blocks: derivations.flatMap(showDerivation) });
   const duals = answer.duals.slice(1).map(({ name: title, theory }) => theoryTable(title, theory));
   blocks.push({ kind: "fold", title: "The duals", blocks: duals });
   const structures = answer.pairs.flatMap(({ left, right, witness }) =>

@@ -1,7 +1,7 @@
 /** The `data` of `eval --json`: what a program wants to know of an answer. The README lists the keys. */
 
 import { buildStructure } from "../../lib/carriers/structure.ts";
-import type { Answer, ClaimAnswer } from "../../lib/inquiry/answer.ts";
+import type { Answer, ClaimAnswer, ShownDerivation } from "../../lib/inquiry/answer.ts";
 import type { Findings } from "../../lib/inquiry/examine.ts";
 import { printFormula } from "../../lib/language/printer.ts";
 import type { Definition, DescribeSubject, Statement } from "../../lib/language/statements.ts";
@@ -35,7 +35,13 @@ export function dataOf(statement: Statement, answer: Answer | null, findings: Fi
     case "claim":
       return claimData(statement, answer);
     case "check-finite":
-      return { leastSize: answer.leastSize, modelSize: answer.modelSize, noModelUpTo: answer.noModelUpTo };
+      return {
+        leastSize: answer.leastSize,
+        modelSize: answer.modelSize,
+        noModelUpTo: answer.noModelUpTo,
+        provenUpTo: answer.provenUpTo,
+        ...usedIn(answer.derivation === null ? [] : [answer.derivation]),
+      };
     case "models":
       return {
         size: answer.size,
@@ -55,6 +61,13 @@ export function dataOf(statement: Statement, answer: Answer | null, findings: Fi
           jointlyInconsistent,
         })),
         classes: answer.classes,
+        inconsistent: answer.inconsistent.map(({ name }) => name),
+      };
+    case "minimise":
+      return {
+        sets: answer.sets.map(({ labels }) => labels),
+        complete: answer.complete,
+        open: answer.open,
       };
     case "dualise":
       return {
@@ -74,17 +87,18 @@ function claimData(statement: Statement, answer: ClaimAnswer): Data {
   const noneUpTo =
     answer.searches.length === 0 ? 0 : Math.min(...answer.searches.map((search) => search.noneUpTo));
   const kind = { claim: claim?.kind ?? null };
+  const derived = { ...usedIn(answer.derivations), inconsistent: answer.inconsistent };
   switch (claim?.kind) {
     case "entails":
     case "does-not-entail":
-      return { ...kind, countermodelSize: size, noCountermodelUpTo: noneUpTo };
+      return { ...kind, countermodelSize: size, noCountermodelUpTo: noneUpTo, ...derived };
     case "consistent":
     case "infinite-only":
     case "no-finite-model":
-      return { ...kind, modelSize: size, noModelUpTo: noneUpTo };
+      return { ...kind, modelSize: size, noModelUpTo: noneUpTo, ...derived };
     case "weaker":
     case "equivalent":
-      return { ...kind, separatingSize: size, noneUpTo };
+      return { ...kind, separatingSize: size, noneUpTo, ...derived };
     case "independent":
       return {
         ...kind,
@@ -93,6 +107,12 @@ function claimData(statement: Statement, answer: ClaimAnswer): Data {
     default:
       return kind;
   }
+}
+
+/** The axioms that derivations use, by label; nothing where nothing was derived. */
+function usedIn(derivations: readonly ShownDerivation[]): Data {
+  if (derivations.length === 0) return {};
+  return { used: [...new Set(derivations.flatMap(({ premises }) => premises.map(({ label }) => label)))] };
 }
 
 function stated(statement: Statement, findings: Findings | null): Data {

@@ -5,13 +5,23 @@ import { type Block, type Inline, line, note } from "./blocks.ts";
 import { counted, onSizesTo } from "./text.ts";
 
 /**
- * The word for a finding in `eval --json`. `neither`: there are models with the property and models without;
+ * The word for a finding in `eval --json`. `follows`: it is derived that all models have it; `excluded`: that none has
+ * it; `neither`: there are models with the property and models without;
  * `no-countermodel`: none without it up to the size searched; `no-example`: none with it up to that size;
  * `no-model`: none with it and none without; `unsearched`: a search did not finish even one point.
  */
-export type PropertyStatus = "neither" | "no-countermodel" | "no-example" | "no-model" | "unsearched";
+export type PropertyStatus =
+  | "follows"
+  | "excluded"
+  | "neither"
+  | "no-countermodel"
+  | "no-example"
+  | "no-model"
+  | "unsearched";
 
 export function propertyStatus({ having, lacking }: PropertyFinding): PropertyStatus {
+  if (lacking.kind === "derived") return "follows";
+  if (having.kind === "derived") return "excluded";
   if (having.kind === "found" && lacking.kind === "found") return "neither";
   if ((having.kind === "none" && having.upTo === 0) || (lacking.kind === "none" && lacking.upTo === 0))
     return "unsearched";
@@ -30,6 +40,7 @@ export function findingsData({ properties }: Findings): readonly Readonly<Record
 }
 
 function searchData(search: ModelSearch): Readonly<Record<string, unknown>> {
+  if (search.kind === "derived") return { size: null, noneUpTo: null, decided: true };
   return search.kind === "found"
     ? { size: search.size, noneUpTo: null, decided: false }
     : { size: null, noneUpTo: search.upTo, decided: search.decided !== null };
@@ -122,7 +133,14 @@ function checkNotes(properties: readonly PropertyFinding[]): readonly Block[] {
 /** Names by what is known of them; sizes belong to the title, so that no line says more than was searched. */
 function groupsOf(properties: readonly PropertyFinding[]): ReadonlyMap<string, readonly PropertyFinding[]> {
   const groups = new Map<string, PropertyFinding[]>();
-  const order: PropertyStatus[] = ["no-countermodel", "no-example", "no-model", "unsearched"];
+  const order: PropertyStatus[] = [
+    "follows",
+    "excluded",
+    "no-countermodel",
+    "no-example",
+    "no-model",
+    "unsearched",
+  ];
   for (const status of order) {
     const found = properties.filter((finding) => propertyStatus(finding) === status);
     // What a finite check decided stands before what was searched on some sizes only.
@@ -139,10 +157,14 @@ const DECIDED = "by a finite check";
 
 function titleOf({ having, lacking }: PropertyFinding, status: PropertyStatus): string {
   const where = (search: ModelSearch) => {
-    if (search.kind === "found") return "";
+    if (search.kind !== "none") return "";
     return search.decided === null ? ` ${onSizesTo(search.upTo)}` : `, ${DECIDED}`;
   };
   switch (status) {
+    case "follows":
+      return "follow (derived, checked)";
+    case "excluded":
+      return "no model has it (derived, checked)";
     case "no-countermodel":
       return `no model without it${where(lacking)}`;
     case "no-example":

@@ -10,12 +10,15 @@ import type {
   CompareAnswer,
   CountAnswer,
   CountedSize,
+  DerivationReport,
   DualAnswer,
   FiniteAnswer,
   IndependenceAnswer,
+  MinimiseAnswer,
   ModelsAnswer,
   PairAnswer,
   Search,
+  ShownDerivation,
 } from "../../lib/inquiry/answer.ts";
 import type { Claim, Statement } from "../../lib/language/statements.ts";
 import { DEFAULT_BUDGET, type EndReason } from "../../lib/logic/meter.ts";
@@ -42,6 +45,8 @@ export function summarise(statement: Statement, answer: Answer): string {
       return independenceSummary(answer);
     case "compare":
       return compareSummary(answer);
+    case "minimise":
+      return minimiseSummary(answer, budget);
     case "dualise":
       return dualSummary(answer);
   }
@@ -64,16 +69,57 @@ function claimReason(statement: Statement, answer: ClaimAnswer, budget: number):
     answer.structures.map(({ role, structure }) => `${withArticle(role)} on ${sizeOf(structure)}`),
   );
   if (answer.verdict === "open") {
-    const open = answer.searches
-      .filter((search) => search.foundAt === null)
-      .map((search) => searchText(search, budget, answer.steps));
+    const open = answer.searches.flatMap((search, place) => {
+      const report = answer.reports[place];
+      return search.foundAt !== null || report?.result === "derived"
+        ? []
+        : [openText(search, report ?? null, budget, answer.steps)];
+    });
     const reasons = [...(found === "" ? [] : [`${found}${checked}`]), ...open];
     return reasons.length === 0 ? `${stepsText(answer.steps, budget)} spent` : reasons.join("; ");
   }
   if (claim?.kind === "true-in" || claim?.kind === "false-in")
     return `evaluated in ${claim.structure.text}, ${counted(claim.structure.structure.carrier.size, "point")}${checked}`;
-  if (found === "") return `${stepsText(answer.steps, budget)}${checked}`;
+  if (answer.inconsistent) return `${inconsistencyText(claim)}${checked}`;
+  if (answer.derivations.length > 0 || found === "") {
+    const derived = derivedText(answer.derivations);
+    return found === "" ? `${derived}${checked}` : `${derived}; ${found}${checked}`;
+  }
   return `${found}${checked}${fewerText(answer.searches)}`;
+}
+
+/** What an inconsistent theory means for a claim. */
+function inconsistencyText(claim: Claim | null): string {
+  switch (claim?.kind) {
+    case "entails":
+    case "does-not-entail":
+      return "the premises are inconsistent, and everything follows from them";
+    case "weaker":
+    case "equivalent":
+      return "one of the theories is inconsistent, and everything follows from it";
+    default:
+      return "the axioms are inconsistent: there is no model at all";
+  }
+}
+
+/** What was derived, from which axioms: `derived from irr and trans`. */
+export function derivedText(derivations: readonly ShownDerivation[]): string {
+  const labels = [...new Set(derivations.flatMap(({ premises }) => premises.map(({ label }) => label)))];
+  return labels.length === 0 ? "follows from no axioms at all" : `derived from ${enumerate(labels)}`;
+}
+
+/** How far both searches came without settling anything. */
+function openText(search: Search, report: DerivationReport | null, budget: number, steps: number): string {
+  return [reportText(report), searchText(search, budget, steps)].filter(Boolean).join("; ");
+}
+
+/** `no derivation among 12,345 clauses`; empty when none was looked for. */
+export function reportText(report: DerivationReport | null): string {
+  if (report === null || report.result === "derived") return "";
+  if (report.result === "saturated")
+    return "there is no derivation (all that follows was computed, not certified)";
+  const memory = report.ended === "memory" ? ", where the bound on memory was met" : "";
+  return report.generated === 0 ? "" : `no derivation among ${counted(report.generated, "clause")}${memory}`;
 }
 
 /** That the structure found is a smallest one, where the search went through all smaller sizes; else how far it went. */
@@ -128,21 +174,31 @@ function finiteReason(answer: FiniteAnswer, budget: number): string {
       const size = answer.modelSize ?? answer.leastSize ?? 0;
       if (answer.leastSize === 1) return `a model on 1 point${checked}`;
       if (answer.leastSize !== null)
-        return `a smallest model has ${counted(answer.leastSize, "point")}${checked}; none ${onSizesTo(answer.leastSize - 1)} (complete search)`;
-      const none = answer.noModelUpTo > 0 ? `; none ${onSizesTo(answer.noModelUpTo)} (complete search)` : "";
+        return `a smallest model has ${counted(answer.leastSize, "point")}${checked}${smallerText(answer)}`;
+      const none = smallerText(answer);
       return `a model on ${counted(size, "point")}${checked}${none}; whether it is a smallest one is open`;
     }
     case "infinite-only":
       return `an infinite model, and no finite one${checked}`;
     case "inconsistent":
-      return `no model${checked}`;
+      return `${answer.derivation === null ? "no model" : `a contradiction, ${derivedText([answer.derivation])}`}${checked}`;
     case "no-finite-model":
       return `no finite model${checked}; consistency is open`;
     case "consistent":
       return `an infinite model${checked}; finite ones are open`;
     case "open":
-      return searchText(answer.search, budget, answer.steps);
+      return openText(answer.search, answer.report, budget, answer.steps);
   }
+}
+
+/** What is known of the sizes below that of the model: proofs that the checker accepted, or a search alone. */
+function smallerText({ noModelUpTo, provenUpTo }: FiniteAnswer): string {
+  if (noModelUpTo === 0) return "";
+  const none = `; none ${onSizesTo(noModelUpTo)}`;
+  if (provenUpTo >= noModelUpTo) return `${none} (clause proofs, checked)`;
+  return provenUpTo === 0
+    ? `${none} (complete search)`
+    : `${none} (complete search; clause proofs ${onSizesTo(provenUpTo)})`;
 }
 
 function modelsSummary(answer: ModelsAnswer, budget: number): string {
@@ -154,7 +210,9 @@ function modelsSummary(answer: ModelsAnswer, budget: number): string {
       ? "the search was not finished"
       : endText(ended, budget, null);
   if (models.length === 0)
-    return complete ? `no model on ${points} (complete search)` : `no model found on ${points}; ${end}`;
+    return complete
+      ? `no model on ${points} (${answer.provenNone ? "clause proof, checked" : "complete search"})`
+      : `no model found on ${points}; ${end}`;
   const checked = answer.evidence === null ? "" : models.length === 1 ? ", checked" : ", each checked";
   const found = `${counted(models.length, "model")} on ${points} up to isomorphism${checked}`;
   return complete ? `${found}; no others (complete search)` : `at least ${found}; ${end}`;
@@ -233,8 +291,10 @@ export function pairReason(pair: PairAnswer, names: readonly string[], checked: 
   const found: string[] = [];
   if (pair.leftOnly !== null)
     found.push(`a model of ${left} on ${sizeOf(pair.leftOnly)} is none of ${right}${checked}`);
+  else if (pair.leftEntailsRight) found.push(`${left} entails ${right}${checked}`);
   if (pair.rightOnly !== null)
     found.push(`a model of ${right} on ${sizeOf(pair.rightOnly)} is none of ${left}${checked}`);
+  else if (pair.rightEntailsLeft) found.push(`${right} entails ${left}${checked}`);
   if (
     pair.verdict === "open" ||
     pair.verdict === "at-least-as-strong" ||
@@ -246,6 +306,20 @@ export function pairReason(pair: PairAnswer, names: readonly string[], checked: 
       found.push(`whether ${right} entails ${left} is open`);
   }
   return found.length === 0 ? `${left} and ${right}` : found.join("; ");
+}
+
+function minimiseSummary(answer: MinimiseAnswer, budget: number): string {
+  const { sets, complete, open, ended } = answer;
+  const labels = (set: readonly string[]) => `{${set.join(", ")}}`;
+  const found =
+    sets.length === 0
+      ? "no irredundant set of axioms found"
+      : `${enumerate(sets.map((set) => labels(set.labels)))} ${sets.length === 1 ? "is" : "are"} irredundant and ${
+          sets.length === 1 ? "has" : "have"
+        } all axioms as consequences (checked)`;
+  if (complete) return `${found}; there is no other such set`;
+  const more = open.length === 0 ? "" : `; ${counted(open.length, "set")} open`;
+  return `${found}${more}${ended === null ? "" : `; ${endText(ended, budget, null)}`}`;
 }
 
 function dualSummary(answer: DualAnswer): string {

@@ -15,9 +15,11 @@ import {
 } from "../../lib/inquiry/claims.ts";
 import { compareTheories } from "../../lib/inquiry/compare.ts";
 import { countModels } from "../../lib/inquiry/count.ts";
-import { askDuals } from "../../lib/inquiry/dualise.ts";
+import { askDuals, dualsOf } from "../../lib/inquiry/dualise.ts";
 import { askIndependence } from "../../lib/inquiry/independence.ts";
+import { minimise } from "../../lib/inquiry/minimise.ts";
 import { findModels } from "../../lib/inquiry/models.ts";
+import type { Asked } from "../../lib/inquiry/question-record.ts";
 import { DEFAULT_LARGEST_SIZE, DEFAULT_LARGEST_SYMMETRIC_SIZE, type Work } from "../../lib/inquiry/work.ts";
 import type { Claim, Options, Statement } from "../../lib/language/statements.ts";
 import { DEFAULT_BUDGET } from "../../lib/logic/meter.ts";
@@ -57,6 +59,8 @@ export function answerQuestion(question: Question, watch: Watch): Answer {
       );
     case "independence":
       return askIndependence(question.theory.theory, work);
+    case "minimise":
+      return minimise(question.theory.theory, work);
     case "models":
       return findModels(question.theory.theory, question.size, work);
     case "count":
@@ -88,18 +92,65 @@ function answerClaim(claim: Claim, work: Work): ClaimAnswer {
   }
 }
 
+/**
+ * What evidence for a question is about. `models` and `count` leave sizes to the statement's text.
+ */
+export function askedOf(question: Question): Asked {
+  switch (question.kind) {
+    case "derive":
+      return { ask: "entails", premises: question.premises.theory, conclusion: question.conclusion.formula };
+    case "claim":
+    case "conjecture":
+      return askedInClaim(question.claim);
+    case "dualise":
+      return {
+        ask: "dualise",
+        theories: dualsOf(question.theory.text, question.theory.theory).map(({ theory }) => theory),
+      };
+    case "compare":
+      return { ask: "compare", theories: question.theories.map(({ theory }) => theory) };
+    case "count":
+      return { ask: "models", theory: question.theory.theory };
+    default:
+      return { ask: question.kind, theory: question.theory.theory };
+  }
+}
+
+function askedInClaim(claim: Claim): Asked {
+  switch (claim.kind) {
+    case "entails":
+    case "does-not-entail":
+      return { ask: claim.kind, premises: claim.premises.theory, conclusion: claim.conclusion.formula };
+    case "true-in":
+    case "false-in":
+      return {
+        ask: claim.kind,
+        structure: buildStructure(claim.structure.structure),
+        sentence: claim.sentence.formula,
+      };
+    case "weaker":
+    case "equivalent":
+      return { ask: claim.kind, left: claim.left.theory, right: claim.right.theory };
+    default:
+      return { ask: claim.kind, theory: claim.theory.theory };
+  }
+}
+
 /** Whether the user stopped the work on a question before it was done. */
 export function wasInterrupted(answer: Answer): boolean {
   switch (answer.question) {
     case "claim":
-      return answer.searches.some((search) => search.ended === "interrupted");
+      return [...answer.searches, ...answer.reports].some(({ ended }) => ended === "interrupted");
     case "check-finite":
-      return answer.search.ended === "interrupted";
+      return [answer.search, answer.report].some(({ ended }) => ended === "interrupted");
     case "models":
     case "count":
+    case "minimise":
       return answer.ended === "interrupted";
     case "independence":
-      return answer.axioms.some((axiom) => axiom.search.ended === "interrupted");
+      return answer.axioms.some(({ search, report }) =>
+        [search, report].some(({ ended }) => ended === "interrupted"),
+      );
     case "compare":
     case "dualise":
       return answer.interrupted;

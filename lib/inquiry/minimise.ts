@@ -11,9 +11,6 @@ import { recordQuestion } from "./question-record.ts";
 import { Settler } from "./settle.ts";
 import type { Work } from "./work.ts";
 
-/** Theories with more axioms are refused: their sets of axioms are too many to go through. */
-export const MOST_AXIOMS = 16;
-
 /** Each set may cost one part of so many of what is left of the budget … */
 const SHARE = 10;
 /** … and none is begun with fewer steps than this. */
@@ -23,7 +20,7 @@ const LEAST_STEPS = 20;
  * Goes through the sets of axioms, as bit masks, largest first (after Liffiton, Previti, Malik & Marques-Silva 2016): one
  * from which all axioms follow is made smaller until it is irredundant, and with it all larger sets are known; a
  * structure in which just some axioms hold shows of all sets of these that they are too weak.
- * @param theory with at most {@link MOST_AXIOMS} axioms
+ * @param theory with at most {@link MOST_MINIMISED} axioms
  */
 export function minimise(theory: Theory, work: Work): MinimiseAnswer {
   const writer = new EvidenceWriter();

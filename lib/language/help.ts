@@ -114,6 +114,12 @@ export const statementHelp: readonly StatementHelp[] = [
     options: true,
   },
   {
+    word: "minimise",
+    form: "minimise T",
+    meaning: "Lists the sets of axioms from which the others follow and in which none is redundant.",
+    options: true,
+  },
+  {
     word: "models",
     form: "models T of size n",
     meaning: "Shows the models on n points, up to isomorphism.",
@@ -150,7 +156,6 @@ export function helpOf(word: string): StatementHelp | undefined {
 export const laterStatements: readonly string[] = [
   "weaken",
   "negate",
-  "minimise",
   "completeness",
   "explore",
   "place",

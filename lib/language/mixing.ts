@@ -38,6 +38,7 @@ function formulasIn(statement: StatementBody): readonly Formula[] {
     case "check-finite":
     case "dualise":
     case "independence":
+    case "minimise":
     case "models":
     case "count":
       return sentencesOf(statement.theory.theory);

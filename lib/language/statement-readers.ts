@@ -5,6 +5,7 @@
 import type { RelationSymbol, Variable } from "../logic/formula.ts";
 import type { NormalFormName } from "../logic/normal-forms/result.ts";
 import { LARGEST_DOMAIN } from "../logic/structure-definition.ts";
+import { MOST_MINIMISED } from "../logic/theory.ts";
 import { readClaim, readConclusion, relationsAbout } from "./claims.ts";
 import { readClosed, readOpen } from "./formulas.ts";
 import { normalFormHelp } from "./help.ts";
@@ -49,6 +50,7 @@ export const statementReaders: Readonly<Record<StatementKind, StatementReader>> 
   dualise: (reader) => readQuestion(reader, "dualise"),
   compare: readCompare,
   independence: (reader) => readQuestion(reader, "independence"),
+  minimise: readMinimise,
   models: readModels,
   count: readCount,
   normalise: readNormalise,
@@ -333,11 +335,25 @@ function readStatedClaim(reader: Reader, kind: "claim" | "conjecture"): Statemen
 
 function readQuestion(
   reader: Reader,
-  kind: "check-finite" | "dualise" | "independence",
+  kind: "check-finite" | "dualise" | "independence" | "minimise",
 ): StatementBody | null {
   const theory = readTheory(reader);
   const options = readOptions(reader);
   return theory === null ? null : { kind, theory, options };
+}
+
+function readMinimise(reader: Reader): StatementBody | null {
+  const first = reader.peek();
+  const statement = readQuestion(reader, "minimise");
+  const axioms = statement !== null && "theory" in statement ? statement.theory.theory.axioms.length : 0;
+  if (axioms <= MOST_MINIMISED) return statement;
+  reader.report(
+    "too-many-axioms",
+    { from: first.from, to: reader.last.to },
+    `expected a theory of at most ${MOST_MINIMISED} axioms, found ${axioms}: their sets are too many to go through`,
+    "join axioms with ∧, or ask `independence T` first",
+  );
+  return null;
 }
 
 function readCompare(reader: Reader): StatementBody | null {

@@ -80,7 +80,7 @@ export type Statement = StatementBase &
     | { readonly kind: "check-finite"; readonly theory: NamedTheory; readonly options: Options }
     | { readonly kind: "dualise"; readonly theory: NamedTheory; readonly options: Options }
     | { readonly kind: "compare"; readonly theories: readonly NamedTheory[]; readonly options: Options }
-    | { readonly kind: "independence"; readonly theory: NamedTheory; readonly options: Options }
+    | { readonly kind: "independence" | "minimise"; readonly theory: NamedTheory; readonly options: Options }
     | {
         readonly kind: "models";
         readonly theory: NamedTheory;

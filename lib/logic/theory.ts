@@ -35,6 +35,9 @@ export interface Theory {
   readonly fallback: RelationSymbol | null;
 }
 
+/** Axioms of a theory whose sets of axioms are gone through; those of larger ones are too many. */
+export const MOST_MINIMISED = 16;
+
 /** What went wrong when theories were put together. Every case names the label or relation at fault. */
 export type TheoryProblem =
   | { readonly kind: "label-twice"; readonly label: string }

@@ -41,6 +41,7 @@ function renderStatement(statement: Statement): string {
     case "check-finite":
     case "dualise":
     case "independence":
+    case "minimise":
       return `${statement.kind} ${theory(statement.theory)}${options(statement.options)}`;
     case "compare":
       return `compare ${statement.theories.map(theory).join(", ")}${options(statement.options)}`;

@@ -1,6 +1,6 @@
 import { buildStructure, type Structure } from "../../lib/carriers/structure.ts";
 import { EVIDENCE_FORMAT, EVIDENCE_VERSION, type Evidence } from "../../lib/evidence/format.ts";
-import type { ClaimAnswer, Search } from "../../lib/inquiry/answer.ts";
+import type { ClaimAnswer, DerivationReport, Search } from "../../lib/inquiry/answer.ts";
 import type { Claim, NamedTheory, Statement, StatementKind } from "../../lib/language/statements.ts";
 import {
   and,
@@ -79,6 +79,10 @@ export function searched(rest: Partial<Search> = {}): Search {
   };
 }
 
+export function reported(rest: Partial<DerivationReport> = {}): DerivationReport {
+  return { sought: "the conclusion", result: "stopped", ended: null, generated: 0, ...rest };
+}
+
 export function claimAnswer(rest: Partial<ClaimAnswer>): ClaimAnswer {
   return {
     question: "claim",
@@ -87,6 +91,9 @@ export function claimAnswer(rest: Partial<ClaimAnswer>): ClaimAnswer {
     evidence: null,
     structures: [],
     searches: [],
+    derivations: [],
+    reports: [],
+    inconsistent: false,
     axioms: null,
     ...rest,
   };
