@@ -21,8 +21,11 @@ export interface TableBlock {
   readonly head: readonly string[];
   /** Rows as long as the head; each cell a list of pieces. The first cell of a row is its head. */
   readonly rows: readonly (readonly (readonly Inline[])[])[];
-  /** `prose` wraps its last column; `matrix` sets every cell to the same width; `numbers` sets digits under digits. */
-  readonly look: "prose" | "matrix" | "numbers";
+  /**
+   * `prose` wraps its last column; `matrix` sets every cell to the same width; `numbers` sets digits under digits;
+   * `derivation` has a number, a formula and its reason in each row.
+   */
+  readonly look: "prose" | "matrix" | "numbers" | "derivation";
 }
 
 export interface PictureBlock {

@@ -5,7 +5,7 @@
  */
 import { printFormula, printTerm } from "../../lib/language/printer.ts";
 import type { Block, Inline, PictureBlock, TableBlock } from "./blocks.ts";
-import { visible } from "./text.ts";
+import { displayWidth, visible } from "./text.ts";
 import { inlineToText, longColumns } from "./to-text.ts";
 
 const RULE = "#8a8a8a";
@@ -88,7 +88,7 @@ function blockToHtml(block: Block): string {
   }
 }
 
-const ALIGN = { matrix: "center", numbers: "right", prose: "left" } as const;
+const ALIGN = { matrix: "center", numbers: "right", prose: "left", derivation: "left" } as const;
 
 const BESIDE = "display:inline-block;vertical-align:top;margin:0 28px 4px 0;max-width:100%";
 
@@ -100,10 +100,24 @@ function pictureToHtml({ svg, alt }: PictureBlock): string {
   return `<img src="data:image/svg+xml;base64,${data}" alt="${escapeHtml(alt)}" style="max-width:100%">`;
 }
 
+/** Columns that a sentence of a derivation may take on one line, before its reason gets narrow. */
+const SENTENCE_WIDTH = 44;
+
+/** Browsers would break a sentence to give its reason more room than it needs. */
+function keptTogether({ look, head }: TableBlock, column: number, cell: readonly Inline[]): string {
+  const isSentence = look === "derivation" && column < head.length - 1;
+  return isSentence && displayWidth(inlineToText(cell)) <= SENTENCE_WIDTH ? ";white-space:nowrap" : "";
+}
+
 function tableToHtml(table: TableBlock): string {
   const matrix = table.look === "matrix";
   const align = ALIGN[table.look];
-  const space = { matrix: "1px 7px", numbers: "3px 4px 3px 18px", prose: "3px 14px 3px 4px" }[table.look];
+  const space = {
+    matrix: "1px 7px",
+    numbers: "3px 4px 3px 18px",
+    prose: "3px 14px 3px 4px",
+    derivation: "2px 18px 2px 4px",
+  }[table.look];
   const isLong = longColumns(table);
   // Beside a long last column, browsers would break titles of several words after each of them.
   const isPhrase =
@@ -116,7 +130,7 @@ function tableToHtml(table: TableBlock): string {
     const cells = row.map((cell, column) => {
       const inner = inlineToHtml(cell);
       if (column > 0)
-        return `<td style="text-align:${align};padding:${space};vertical-align:top">${
+        return `<td style="text-align:${align};padding:${space};vertical-align:top${keptTogether(table, column, cell)}">${
           matrix && inner === "1" ? "<strong>1</strong>" : inner
         }</td>`;
       const rule = matrix ? `;border-right:1px solid ${RULE}` : "";

@@ -155,6 +155,7 @@ function columnsOf(table: TableBlock): string {
   const last = head.length - 1;
   if (look === "numbers") return "r".repeat(last + 1);
   if (look === "matrix") return `c@{\\quad}${"c".repeat(last)}`;
+  if (look === "derivation") return "rp{0.46\\linewidth}p{0.4\\linewidth}";
   const isLong = longColumns(table);
   const before = isLong.map((long) => (long && last > 0 ? "p{0.3\\linewidth}" : "l"));
   const rest = last > 2 || isLong.includes(true) ? "0.4" : "0.65";

@@ -57,8 +57,9 @@ function lineToText(parts: readonly Inline[]): string {
   return isCopied ? text : wrap(text, WIDTH).join("\n");
 }
 
-/** Columns that a cell of prose before the last one may take. */
+/** Columns that a cell of prose before the last one may take, and a sentence of a derivation. */
 const CELL_WIDTH = 38;
+const SENTENCE_WIDTH = 54;
 
 /** For each column of a table of prose, whether it stands before the last one and has cells of several lines. */
 export function longColumns({ look, head, rows }: TableBlock): readonly boolean[] {
@@ -72,13 +73,14 @@ export function longColumns({ look, head, rows }: TableBlock): readonly boolean[
 
 /** Columns set under each other, a rule under the head; long cells of prose go on below themselves. */
 function tableToText(table: TableBlock): string {
-  const isProse = table.look === "prose";
+  const isWrapped = table.look === "prose" || table.look === "derivation";
+  const cellWidth = table.look === "derivation" ? SENTENCE_WIDTH : CELL_WIDTH;
   const head = table.head.map(visible);
   const last = head.length - 1;
   const rows = table.rows.map((row) =>
     row.map((cell, column): readonly string[] => {
       const text = inlineToText(cell);
-      return isProse && column < last ? wrap(text, CELL_WIDTH) : [text];
+      return isWrapped && column < last ? wrap(text, cellWidth) : [text];
     }),
   );
   const widths = head.map((title, column) => widestOf([title, ...rows.flatMap((row) => row[column] ?? [])]));
@@ -96,7 +98,7 @@ function tableToText(table: TableBlock): string {
   const lines: string[] = [];
   for (const row of rows) {
     const cells = row.map((cell, column) =>
-      isProse && column === last
+      isWrapped && column === last
         ? wrap(cell[0]!, lastWidth).map((text, at) => (at === 0 ? text : `  ${text}`))
         : cell,
     );
