@@ -7,7 +7,7 @@ import { describe, expect, it } from "vitest";
 import { Points } from "../lib/carriers/points.ts";
 import type { Structure } from "../lib/carriers/structure.ts";
 import { isTrueIn } from "../lib/evidence/evaluate.ts";
-import { recordStructure } from "../lib/evidence/record.ts";
+import { recordFormula, recordStructure } from "../lib/evidence/record.ts";
 import { type Formula, not, type RelationSymbol, relationsOf } from "../lib/logic/formula.ts";
 import { Meter } from "../lib/logic/meter.ts";
 import { satisfies } from "../lib/structures/evaluate.ts";
@@ -52,7 +52,7 @@ function checkEverywhere(sentence: Formula, sizes: readonly number[], relations:
     for (const { given, structure } of all) {
       const expected = isTrue(sentence, size, given);
       expect(satisfies(structure, sentence, meter)).toBe(expected);
-      expect(isTrueIn(recordStructure(structure), sentence, meter)).toBe(expected);
+      expect(isTrueIn(recordStructure(structure), recordFormula(sentence), meter)).toBe(expected);
     }
     const task = { carrier: new Points(size), sentences: [sentence], relations };
     const found = findStructure(task, meter);

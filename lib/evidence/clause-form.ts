@@ -5,7 +5,6 @@
  */
 import type { AtomRecord, ClauseRecord, LiteralRecord, TermFormulaRecord, TermRecord } from "./format.ts";
 import {
-  FormulaTooLarge,
   freeVariables,
   freshName,
   Growth,
@@ -18,16 +17,16 @@ import {
 
 export { atomTerms, freeVariables, substituteInAtom, substituteInTerm, termVariables } from "./formulas.ts";
 
-/** Literals in a clause form beyond which there is none; those written down on the way to it count. */
-export const LARGEST_CLAUSE_FORM = 20_000;
+/** Parts and literals beyond which there is no clause form; those written down on the way to it count. */
+export const LARGEST_CLAUSE_FORM = 50_000;
 
-/** Thrown when a clause form would have more than {@link LARGEST_CLAUSE_FORM} literals. */
-export class ClauseFormTooLarge extends FormulaTooLarge {}
+export function substituteInClause(clause: ClauseRecord, terms: Terms, growth?: Growth): ClauseRecord {
+  return clause.map((literal) => changeAtom(literal, (atom) => substituteInAtom(atom, terms, growth)));
+}
 
-export function substituteInClause(clause: ClauseRecord, terms: Terms): ClauseRecord {
-  return clause.map((literal) =>
-    literal[0] === "not" ? ["not", substituteInAtom(literal[1], terms)] : substituteInAtom(literal, terms),
-  );
+/** The literal with another atom, negated if it is. */
+export function changeAtom(literal: LiteralRecord, change: (atom: AtomRecord) => AtomRecord): LiteralRecord {
+  return literal[0] === "not" ? ["not", change(literal[1])] : change(literal);
 }
 
 export function atomOf(literal: LiteralRecord): AtomRecord {
@@ -44,15 +43,16 @@ type KeyedClause = Map<string, LiteralRecord>;
  *
  * A structure where the formula is true has, for each of its functions, one that makes the clauses true in it.
  * @param number of the formula; its functions are called `number.0`, `number.1`, … in the order of their quantifiers
- * @throws ClauseFormTooLarge
+ * @throws FormulaTooLarge
  */
-export function clauseForm(formula: TermFormulaRecord, number: number): readonly ClauseRecord[] {
+export function clauseForm(
+  formula: TermFormulaRecord,
+  number: number,
+  growth: Growth = new Growth(LARGEST_CLAUSE_FORM),
+): readonly ClauseRecord[] {
   let functions = 0;
-  let literals = 0;
   const taken = new Set<string>();
-  return clauses(negationNormalForm(formula, true, new Growth()), new Map()).map((clause) => [
-    ...clause.values(),
-  ]);
+  return clauses(negationNormalForm(formula, true, growth), new Map()).map((clause) => [...clause.values()]);
 
   function clauses(part: TermFormulaRecord, terms: Terms): readonly KeyedClause[] {
     switch (part[0]) {
@@ -74,7 +74,9 @@ export function clauseForm(formula: TermFormulaRecord, number: number): readonly
       }
       default: {
         const clause: KeyedClause = new Map();
-        return addLiterals(clause, substituteInClause([part as LiteralRecord], terms)) ? [clause] : [];
+        return addLiterals(clause, substituteInClause([part as LiteralRecord], terms, growth))
+          ? [clause]
+          : [];
       }
     }
   }
@@ -88,8 +90,7 @@ export function clauseForm(formula: TermFormulaRecord, number: number): readonly
         for (const [place, second] of set.entries()) {
           // The last may have the clause itself, the others need copies.
           const joined = place === set.length - 1 ? first : new Map(first);
-          literals += joined === first ? second.size : first.size + second.size;
-          if (literals > LARGEST_CLAUSE_FORM) throw new ClauseFormTooLarge();
+          growth.add(joined === first ? second.size : first.size + second.size);
           if (addKeyed(joined, second)) longer.push(joined);
         }
       result = longer;

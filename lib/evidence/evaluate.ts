@@ -5,18 +5,24 @@
  */
 import type { Carrier } from "../carriers/carrier.ts";
 import { buildCarrier } from "../carriers/structure.ts";
-import { depthOf, type Formula, type Variable } from "../logic/formula.ts";
 import type { Meter } from "../logic/meter.ts";
-import type { StructureRecord } from "./format.ts";
+import type { FormulaRecord, StructureRecord } from "./format.ts";
+import { atomTerms, partsOf } from "./formulas.ts";
 import { reject } from "./read.ts";
 
 /**
+ * @param sentence closed and without functions
  * @param meter counts a thousandth of a step for each subformula looked at
  * @throws Rejected when the structure does not interpret a relation of the sentence
  */
-export function isTrueIn(record: StructureRecord, sentence: Formula, meter: Meter): boolean {
+export function isTrueIn(record: StructureRecord, sentence: FormulaRecord, meter: Meter): boolean {
   const carrier: Carrier = buildCarrier(record.carrier);
-  const holds = new Map(Object.entries(record.tables).map(([name, table]) => [name, new Set(table.holds)]));
+  const tables = new Map(
+    Object.entries(record.tables).map(([name, { places, holds }]) => [
+      name,
+      { places, holds: new Set(holds) },
+    ]),
+  );
   return isTrue(sentence, carrier.empty, new Map(), 0);
 
   /**
@@ -24,52 +30,50 @@ export function isTrueIn(record: StructureRecord, sentence: Formula, meter: Mete
    * @param named how many elements the configuration has
    */
   function isTrue(
-    formula: Formula,
+    formula: FormulaRecord,
     configuration: unknown,
-    places: ReadonlyMap<Variable, number>,
+    places: ReadonlyMap<string, number>,
     named: number,
   ): boolean {
     meter.charge(1);
-    const placeOf = (variable: Variable) => places.get(variable)!;
-    switch (formula.kind) {
+    const part = (inner: FormulaRecord) => isTrue(inner, configuration, places, named);
+    switch (formula[0]) {
       case "true":
         return true;
       case "false":
         return false;
-      case "atom": {
-        const table = record.tables[formula.relation.name];
-        if (table === undefined) return reject(`the structure does not say what ${formula.relation.name} is`);
-        if (table.places !== formula.args.length)
-          return reject(`${formula.relation.name} has ${table.places} places in the structure`);
-        return holds
-          .get(formula.relation.name)!
-          .has(carrier.kindOf(configuration, formula.args.map(placeOf)));
+      case "is":
+      case "=": {
+        const args = atomTerms(formula).map((variable) => places.get(variable as string)!);
+        if (formula[0] === "=") return carrier.same(configuration, args[0]!, args[1]!);
+        const table = tables.get(formula[1]) ?? reject(`the structure does not say what ${formula[1]} is`);
+        if (table.places !== args.length) reject(`${formula[1]} has ${table.places} places in the structure`);
+        return table.holds.has(carrier.kindOf(configuration, args));
       }
-      case "equal":
-        return carrier.same(configuration, placeOf(formula.left), placeOf(formula.right));
       case "not":
-        return !isTrue(formula.body, configuration, places, named);
+        return !part(formula[1]);
       case "and":
-        return formula.parts.every((part) => isTrue(part, configuration, places, named));
+        return partsOf(formula).every(part);
       case "or":
-        return formula.parts.some((part) => isTrue(part, configuration, places, named));
+        return partsOf(formula).some(part);
       case "implies":
-        return (
-          !isTrue(formula.left, configuration, places, named) ||
-          isTrue(formula.right, configuration, places, named)
-        );
+        return !part(formula[1]) || part(formula[2]);
       case "iff":
-        return (
-          isTrue(formula.left, configuration, places, named) ===
-          isTrue(formula.right, configuration, places, named)
-        );
+        return part(formula[1]) === part(formula[2]);
       case "forall":
       case "exists": {
-        const inner = new Map(places).set(formula.variable, named);
-        const extensions = carrier.extensions(configuration, depthOf(formula.body));
-        const check = (extended: unknown) => isTrue(formula.body, extended, inner, named + 1);
-        return formula.kind === "forall" ? extensions.every(check) : extensions.some(check);
+        const [kind, variable, body] = formula;
+        const inner = new Map(places).set(variable, named);
+        const check = (extended: unknown) => isTrue(body, extended, inner, named + 1);
+        const extensions = carrier.extensions(configuration, depthOf(body));
+        return kind === "forall" ? extensions.every(check) : extensions.some(check);
       }
     }
   }
+}
+
+/** How many quantifiers lie one inside another at most. */
+function depthOf(formula: FormulaRecord): number {
+  const inner = partsOf(formula).reduce((most, part) => Math.max(most, depthOf(part)), 0);
+  return formula[0] === "forall" || formula[0] === "exists" ? inner + 1 : inner;
 }

@@ -25,7 +25,8 @@ import type { CarrierDescription } from "../logic/structure-definition.ts";
 export const EVIDENCE_FORMAT = "twoplace-evidence";
 export const EVIDENCE_VERSION = 1;
 
-export type FormulaRecord = readonly [string, ...(string | FormulaRecord)[]];
+/** A sentence: closed, its terms are variables, its atoms have arguments. */
+export type FormulaRecord = TermFormulaRecord;
 
 /** A variable, or a function with its arguments: `["2.0", "x"]`. Functions come in by clause forms alone. */
 export type TermRecord = string | readonly [string, ...TermRecord[]];
@@ -74,7 +75,10 @@ export type QuestionRecord =
   | { readonly ask: "weaker" | "equivalent"; readonly left: TheoryRecord; readonly right: TheoryRecord }
   | { readonly ask: "compare" | "dualise"; readonly theories: readonly TheoryRecord[] };
 
-/** Questions about one theory. `models` asks for models of a size, and each fact is one. */
+/**
+ * Questions about one theory. `models` asks for models of a size; each structure among the facts is one. `minimise` asks
+ * which sets of its axioms say as much as all of them and no smaller set within does.
+ */
 export const THEORY_QUESTIONS = [
   "consistent",
   "infinite-only",
@@ -83,6 +87,7 @@ export const THEORY_QUESTIONS = [
   "check-finite",
   "independence",
   "models",
+  "minimise",
 ] as const;
 export type TheoryQuestion = (typeof THEORY_QUESTIONS)[number];
 
@@ -153,7 +158,9 @@ export type Fact = StructureFact | DerivationFact | NoModelFact;
 
 /**
  * The verdict that the facts support: one word; for `independence`, `compare` and `dualise` one word for each axiom
- * or pair, pairs in the order (0,1), (0,2), …, (1,2), …; null where a question has no verdict.
+ * or pair, pairs in the order (0,1), (0,2), …, (1,2), …; for `minimise` one for each set that was found, the places of
+ * its axioms in ascending order, `"0,2,3"`, and before them `"complete"` where the facts show that there are no more;
+ * null where a question has no verdict.
  */
 export type VerdictRecord = string | readonly string[] | null;
 

@@ -2,38 +2,59 @@
  * Formulas as records: their parts, free variables, substitution, and sameness up to names of bound variables. The
  * checker works on nothing else, so that what it reads is what it reasons about.
  */
+import type { Meter } from "../logic/meter.ts";
 import type { AtomRecord, TermFormulaRecord, TermRecord } from "./format.ts";
 
 /** What stands in place of variables. */
 export type Terms = ReadonlyMap<string, TermRecord>;
 
-/** Thrown when a formula or clause form made of others would be larger than the bounds here allow. */
+/** Thrown when formulas or clauses made of others would be larger than a bound. */
 export class FormulaTooLarge extends Error {}
 
-/** Parts of a formula beyond which none is made of others: repeated unfolding could double it without end. */
+/** Parts that are made by one operation at most when nobody sets another bound. */
 const LARGEST_FORMULA = 100_000;
 
-/** Counts the parts that one operation makes. */
+/** Counts parts of formulas and terms as they are made: repeated unfolding could double them without end. */
 export class Growth {
-  #parts = 0;
+  readonly #meter: Meter | null;
+  #left: number;
+
+  /** @param meter pays a thousandth of a step for each part */
+  constructor(limit: number = LARGEST_FORMULA, meter: Meter | null = null) {
+    this.#left = limit;
+    this.#meter = meter;
+  }
 
   /** @throws FormulaTooLarge */
-  add(): void {
-    this.#parts += 1;
-    if (this.#parts > LARGEST_FORMULA) throw new FormulaTooLarge();
+  add(parts = 1): void {
+    this.#meter?.charge(parts);
+    this.#left -= parts;
+    if (this.#left < 0) throw new FormulaTooLarge();
   }
 }
 
-export function substituteInTerm(term: TermRecord, terms: Terms): TermRecord {
-  if (typeof term === "string") return terms.get(term) ?? term;
+const NOTHING: Terms = new Map();
+
+/** The term with terms in place of variables, all at once. */
+export function substituteInTerm(term: TermRecord, terms: Terms, growth?: Growth): TermRecord {
+  growth?.add();
+  if (typeof term === "string") {
+    const value = terms.get(term);
+    // A copy, so that its parts are counted.
+    return value === undefined ? term : substituteInTerm(value, NOTHING, growth);
+  }
   const [name, ...args] = term;
-  return [name, ...args.map((arg) => substituteInTerm(arg, terms))];
+  return [name, ...args.map((arg) => substituteInTerm(arg, terms, growth))];
 }
 
-export function substituteInAtom(atom: AtomRecord, terms: Terms): AtomRecord {
-  if (atom[0] === "=") return ["=", substituteInTerm(atom[1], terms), substituteInTerm(atom[2], terms)];
+export function substituteInAtom(atom: AtomRecord, terms: Terms, growth?: Growth): AtomRecord {
+  return changeTerms(atom, (term) => substituteInTerm(term, terms, growth));
+}
+
+export function changeTerms(atom: AtomRecord, change: (term: TermRecord) => TermRecord): AtomRecord {
+  if (atom[0] === "=") return ["=", change(atom[1]), change(atom[2])];
   const [head, name, ...args] = atom;
-  return [head, name, ...args.map((arg) => substituteInTerm(arg, terms))];
+  return [head, name, ...args.map(change)];
 }
 
 export function termVariables(term: TermRecord): readonly string[] {
@@ -99,7 +120,7 @@ export function freshName(like: string, taken: ReadonlySet<string>): string {
  */
 export function substitute(formula: TermFormulaRecord, terms: Terms, growth: Growth): TermFormulaRecord {
   growth.add();
-  if (formula[0] === "is" || formula[0] === "=") return substituteInAtom(formula, terms);
+  if (formula[0] === "is" || formula[0] === "=") return substituteInAtom(formula, terms, growth);
   if (formula[0] !== "forall" && formula[0] !== "exists")
     return withParts(
       formula,

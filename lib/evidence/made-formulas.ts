@@ -36,11 +36,11 @@ function meaningOf(formula: TermFormulaRecord): Meaning | null {
 export function unfoldFormula(
   formula: TermFormulaRecord,
   definition: TermFormulaRecord,
+  growth: Growth = new Growth(),
 ): TermFormulaRecord | null {
   const meaning = meaningOf(definition);
   if (meaning === null) return null;
   const { name, parameters, body } = meaning;
-  const growth = new Growth();
   return unfold(formula);
 
   function unfold(part: TermFormulaRecord): TermFormulaRecord {
@@ -63,8 +63,10 @@ export function unfoldFormula(
  * Of quantifiers of one kind, each moves past the others where that takes it further.
  * @throws FormulaTooLarge
  */
-export function miniscopeFormula(formula: TermFormulaRecord): TermFormulaRecord {
-  const growth = new Growth();
+export function miniscopeFormula(
+  formula: TermFormulaRecord,
+  growth: Growth = new Growth(),
+): TermFormulaRecord {
   return moveInside(negationNormalForm(formula, true, growth));
 
   function moveInside(part: TermFormulaRecord): TermFormulaRecord {
