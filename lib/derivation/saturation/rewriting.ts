@@ -1,0 +1,134 @@
+/** Rewriting with unit equations (Knuth & Bendix 1970), also with those that only some instances orient. */
+import { type ClauseStore, DELETED } from "./clauses.ts";
+import { NumberList } from "./lists.ts";
+import { atomOf, isNegative, type Ordering } from "./ordering.ts";
+import type { Substitution } from "./substitution.ts";
+import { HEADER, IDENTITY, indexOf, type TermBank } from "./terms.ts";
+
+/** Entries of the table of terms known to have nothing to rewrite at their head. */
+const KNOWN = 1 << 14;
+
+export class RewriteIndex {
+  readonly #bank: TermBank;
+  readonly #store: ClauseStore;
+  readonly #ordering: Ordering;
+  readonly #substitution: Substitution;
+  /** By head of the side that is rewritten: records of clause, side, 1 if every instance is oriented, 0. */
+  readonly #lists: NumberList[] = [];
+  /** Terms whose head was found irreducible, as of {@link #size}. */
+  #known = new Int32Array(KNOWN);
+  #size = 0;
+
+  /** What the last rewriting found: the place in the atom, the equation and the side that fits, the new term. */
+  place = 0;
+  unit = -1;
+  side = 0;
+  term = 0;
+  #count = 0;
+
+  constructor(bank: TermBank, store: ClauseStore, ordering: Ordering, substitution: Substitution) {
+    this.#bank = bank;
+    this.#store = store;
+    this.#ordering = ordering;
+    this.#substitution = substitution;
+  }
+
+  get isEmpty(): boolean {
+    return this.#size === 0;
+  }
+
+  /** Adds a positive unit equation. */
+  add(clause: number): void {
+    const atom = atomOf(this.#store.literal(clause, 0));
+    const { words } = this.#bank;
+    const compared = this.#ordering.compare(words[atom + HEADER]!, words[atom + HEADER + 1]!);
+    for (let side = 0; side < 2; side += 1) {
+      if (compared === (side === 0 ? "less" : "greater")) continue;
+      const from = words[atom + HEADER + side]!;
+      if (from < 0 || !this.#hasVariablesOf(from, words[atom + HEADER + 1 - side]!)) continue;
+      const head = words[from]!;
+      while (this.#lists.length <= head) this.#lists.push(new NumberList());
+      this.#lists[head]!.push4(clause, side, compared === "incomparable" ? 0 : 1, 0);
+      this.#size += 1;
+      this.#known.fill(0);
+    }
+  }
+
+  #hasVariablesOf(term: number, other: number): boolean {
+    if (other < 0) return this.#bank.occurs(indexOf(other), term);
+    if (this.#bank.isGround(other)) return true;
+    const { words } = this.#bank;
+    const end = other + HEADER + this.#bank.arities[words[other]!]!;
+    for (let k = other + HEADER; k < end; k += 1) if (!this.#hasVariablesOf(term, words[k]!)) return false;
+    return true;
+  }
+
+  /**
+   * Looks for something to rewrite in a literal, with any equation but `self`, and tells whether it found it. A side
+   * of a positive equation is rewritten at its head only where that makes less than the equation: so clauses that
+   * saturation needs are kept.
+   */
+  find(literal: number, self: number): boolean {
+    const atom = atomOf(literal);
+    this.#count = 0;
+    const { words } = this.#bank;
+    const arity = this.#bank.arities[words[atom]!]!;
+    const isEquation = words[atom] === IDENTITY && !isNegative(literal);
+    for (let k = 0; k < arity; k += 1)
+      if (this.#findIn(words[atom + HEADER + k]!, self, isEquation ? words[atom + HEADER + 1 - k]! : 0))
+        return true;
+    return false;
+  }
+
+  /** @param other the other side of a positive equation, 0 elsewhere */
+  #findIn(term: number, self: number, other: number): boolean {
+    this.#count += 1;
+    if (term < 0) return false;
+    const at = this.#count;
+    if (this.#findAt(term, self, other)) {
+      this.place = at;
+      return true;
+    }
+    const arity = this.#bank.arities[this.#bank.words[term]!]!;
+    for (let k = 0; k < arity; k += 1)
+      if (this.#findIn(this.#bank.words[term + HEADER + k]!, self, 0)) return true;
+    return false;
+  }
+
+  #findAt(term: number, self: number, other: number): boolean {
+    const head = this.#bank.words[term]!;
+    const list = this.#lists[head];
+    if (list === undefined || list.length === 0) return false;
+    const slot = (term * 5) & (KNOWN - 1);
+    if (this.#known[slot] === term) return false;
+    let isIrreducible = true;
+    for (let k = 0; k < list.length; k += 4) {
+      const unit = list.values[k]!;
+      if (this.#store.is(unit, DELETED)) continue;
+      const side = list.values[k + 1]!;
+      const atom = atomOf(this.#store.literal(unit, 0));
+      const mark = this.#substitution.mark;
+      if (this.#substitution.match(this.#bank.words[atom + HEADER + side]!, term)) {
+        isIrreducible = false;
+        const image =
+          unit === self ? 0 : this.#substitution.image(this.#bank.words[atom + HEADER + 1 - side]!);
+        if (image !== 0 && this.#isAllowed(term, image, list.values[k + 2] === 1, other)) {
+          this.#substitution.undo(mark);
+          this.unit = unit;
+          this.side = side;
+          this.term = image;
+          return true;
+        }
+      }
+      this.#substitution.undo(mark);
+    }
+    if (isIrreducible) this.#known[slot] = term;
+    return false;
+  }
+
+  #isAllowed(term: number, image: number, isOriented: boolean, other: number): boolean {
+    if (!isOriented && this.#ordering.compare(term, image) !== "greater") return false;
+    if (other === 0 || this.#ordering.compare(other, term) === "greater") return true;
+    return this.#ordering.compare(other, image) === "greater";
+  }
+}

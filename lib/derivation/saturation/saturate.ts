@@ -1,0 +1,320 @@
+/**
+ * Saturation: clauses are picked one by one, and all that follows from a picked clause and those picked before is added,
+ * until the clause without literals appears or nothing new does (given-clause algorithm; Bachmair & Ganzinger 1994 for
+ * the calculus). Cheap simplifications are done on every clause at its birth, with all unit clauses and unit
+ * equations kept; full subsumption only on the clause that is picked.
+ */
+import type { Meter } from "../../logic/meter.ts";
+import type { ClauseTask, EngineOutcome } from "../refutation.ts";
+import { ACTIVE, ClauseStore, DELETED, GOAL, kept } from "./clauses.ts";
+import { Draft, type DraftState } from "./draft.ts";
+import { Inferences } from "./inferences.ts";
+import { goalFunctions, orderingFor, type ReadClause, readClause } from "./input.ts";
+import { ClauseHeap } from "./lists.ts";
+import { atomOf, isNegative, type Ordering } from "./ordering.ts";
+import { replay } from "./replay.ts";
+import { RewriteIndex } from "./rewriting.ts";
+import { Selection } from "./selection.ts";
+import { parentsOf, Simplifier } from "./simplify.ts";
+import type { Strategy } from "./strategy.ts";
+import { Substitution, shifted } from "./substitution.ts";
+import { SubsumptionIndex } from "./subsumption.ts";
+import { HEADER, IDENTITY, TermBank } from "./terms.ts";
+import { UnitIndex } from "./units.ts";
+import { WorkClock } from "./work-clock.ts";
+
+export { DEFAULT_STRATEGY, type Strategy } from "./strategy.ts";
+
+export interface SaturationLimits {
+  /** Clauses that the run may generate. */
+  readonly clauses: number;
+  /** Literals of kept clauses and different terms, together, that it may hold in memory. */
+  readonly literals: number;
+}
+
+/**
+ * Searches for a refutation. Each clause that an inference or a simplification makes is charged as a step.
+ * @throws WorkEnded when the meter says so
+ */
+export function saturate(
+  task: ClauseTask,
+  strategy: Strategy,
+  limits: SaturationLimits,
+  meter: Meter,
+): EngineOutcome {
+  return new Saturation(task, strategy, limits, meter).run();
+}
+
+/** Thrown inside a run to unwind it. */
+class RunEnded extends Error {
+  readonly reason: "steps" | "memory";
+  constructor(reason: "steps" | "memory") {
+    super(`run ended: ${reason}`);
+    this.reason = reason;
+  }
+}
+
+/** Thrown inside a run when the clause without literals has been stored, as the last one. */
+class Refuted extends Error {}
+
+class Saturation {
+  readonly #task: ClauseTask;
+  readonly #strategy: Strategy;
+  readonly #limits: SaturationLimits;
+  readonly #meter: Meter;
+  readonly #bank = new TermBank();
+  readonly #store = new ClauseStore();
+  readonly #input: readonly ReadClause[];
+  readonly #ordering: Ordering;
+  readonly #substitution = new Substitution(this.#bank);
+  readonly #draft: Draft;
+  readonly #units: UnitIndex;
+  readonly #rewriting: RewriteIndex;
+  readonly #subsumption: SubsumptionIndex;
+  readonly #simplifier: Simplifier;
+  readonly #inferences: Inferences;
+  readonly #selection: Selection;
+  readonly #waiting: ClauseHeap;
+  readonly #isGoalFunction: readonly boolean[];
+  /** Whether some equation occurs positively, so that identity needs more than equality resolution. */
+  readonly #hasEquality: boolean;
+  #generated = 0;
+  /** All clauses before this one have been picked or deleted. */
+  #oldest = 0;
+  /** Whether a clause was dropped that is needed to say that nothing more follows. */
+  #hasDropped = false;
+
+  constructor(task: ClauseTask, strategy: Strategy, limits: SaturationLimits, meter: Meter) {
+    this.#task = task;
+    this.#strategy = strategy;
+    this.#limits = limits;
+    this.#meter = meter;
+    const bank = this.#bank;
+    const store = this.#store;
+    const substitution = this.#substitution;
+    const clock = new WorkClock(meter);
+    this.#input = task.clauses.map(({ clause }) => readClause(bank, clause));
+    this.#ordering = orderingFor(bank, this.#input, strategy);
+    this.#isGoalFunction = goalFunctions(bank, this.#input, task);
+    this.#hasEquality = this.#input.some(({ literals }) =>
+      literals.some((literal) => !isNegative(literal) && bank.words[atomOf(literal)] === IDENTITY),
+    );
+    this.#draft = new Draft(bank, store, this.#ordering, substitution);
+    this.#units = new UnitIndex(bank, store, substitution);
+    this.#rewriting = new RewriteIndex(bank, store, this.#ordering, substitution);
+    this.#subsumption = new SubsumptionIndex(bank, store, substitution, clock);
+    this.#simplifier = new Simplifier(bank, this.#draft, substitution, this.#units, this.#rewriting, clock);
+    this.#inferences = new Inferences(
+      bank,
+      store,
+      this.#draft,
+      this.#ordering,
+      substitution,
+      clock,
+      (state) => this.#conclude(state),
+    );
+    this.#selection = new Selection(bank, store, this.#ordering, strategy, (literal) =>
+      this.#inferences.partnersOf(literal),
+    );
+    this.#waiting = new ClauseHeap(store);
+  }
+
+  run(): EngineOutcome {
+    try {
+      this.#takeInput();
+      this.#saturate();
+    } catch (error) {
+      if (error instanceof RunEnded) return { result: "gave-up", reason: error.reason };
+      if (!(error instanceof Refuted)) throw error;
+      const refutation = replay(this.#bank, this.#store, this.#draft, this.#substitution, this.#input);
+      return { result: "refuted", refutation };
+    }
+    const isComplete = !this.#hasDropped && !this.#strategy.isSupported;
+    return isComplete ? { result: "saturated" } : { result: "gave-up", reason: "incomplete" };
+  }
+
+  #takeInput(): void {
+    const hasGoal = this.#task.clauses.some(({ goal }) => goal);
+    const premises: number[] = [];
+    this.#input.forEach(({ literals, names }, number) => {
+      const isGoal = this.#task.clauses[number]!.goal;
+      const state = this.#simplifier.simplify(this.#draft.input(number, literals, names.length), -1);
+      const clause = this.#keep(state, isGoal ? GOAL : 0);
+      if (clause >= 0 && !isGoal) premises.push(clause);
+    });
+    if (!this.#strategy.isSupported || !hasGoal) return;
+    for (const clause of premises) if (!this.#store.is(clause, DELETED)) this.#activate(clause);
+  }
+
+  #saturate(): void {
+    const { byAge, byWeight } = this.#strategy;
+    for (let turn = 0; ; turn = (turn + 1) % (byAge + byWeight)) {
+      const clause = this.#pick(turn < byAge);
+      if (clause < 0) return;
+      this.#process(clause);
+    }
+  }
+
+  #pick(byAge: boolean): number {
+    const store = this.#store;
+    if (byAge) {
+      while (this.#oldest < store.count) {
+        const clause = this.#oldest++;
+        if (!store.is(clause, DELETED | ACTIVE)) return clause;
+      }
+      return -1;
+    }
+    for (;;) {
+      const clause = this.#waiting.pop();
+      if (clause < 0 || !store.is(clause, DELETED | ACTIVE)) return clause;
+    }
+  }
+
+  #process(picked: number): void {
+    const clause = this.#refresh(picked);
+    if (clause < 0) return;
+    const store = this.#store;
+    if (this.#subsumption.findSubsuming(clause) >= 0) {
+      store.mark(clause, DELETED);
+      return;
+    }
+    this.#subsumption.forSubsumed(clause, (other) => store.mark(other, DELETED));
+    if (this.#hasEquality) this.#rewriteActive(clause);
+    const eligible = this.#activate(clause);
+    this.#inferences.infer(clause, eligible, this.#hasEquality);
+  }
+
+  /** The picked clause, simplified by what has come since it was made; -1 when nothing is left of it. */
+  #refresh(picked: number): number {
+    const state = this.#simplifier.simplify(this.#draft.copy(picked), picked);
+    if (state === "clause" && this.#draft.recordLength === 2) return picked;
+    this.#store.mark(picked, DELETED);
+    if (state === "true") return -1;
+    this.#charge();
+    return this.#keep(state, this.#store.is(picked, GOAL) ? GOAL : 0);
+  }
+
+  /** Puts active clauses back in which a new unit equation rewrites something. */
+  #rewriteActive(clause: number): void {
+    const store = this.#store;
+    if (store.length(clause) !== 1) return;
+    const literal = store.literal(clause, 0);
+    if (isNegative(literal) || this.#bank.words[atomOf(literal)] !== IDENTITY) return;
+    const found = new Set<number>();
+    for (let side = 0; side < 2; side += 1)
+      this.#inferences.forRewritable(this.#bank.words[atomOf(literal) + HEADER + side]!, (other) =>
+        found.add(other),
+      );
+    for (const other of found) {
+      if (other === clause || store.is(other, DELETED)) continue;
+      const state = this.#simplifier.simplify(this.#draft.copy(other), other);
+      if (state === "clause" && this.#draft.recordLength === 2) continue;
+      store.mark(other, DELETED);
+      if (state === "true") continue;
+      this.#charge();
+      this.#keep(state, store.is(other, GOAL) ? GOAL : 0);
+    }
+  }
+
+  #activate(clause: number): readonly number[] {
+    this.#store.mark(clause, ACTIVE);
+    const eligible = this.#selection.eligible(clause);
+    if (this.#store.length(clause) > 1) this.#subsumption.add(clause);
+    this.#inferences.add(clause, eligible, this.#hasEquality);
+    return eligible;
+  }
+
+  #charge(): void {
+    if (this.#generated >= this.#limits.clauses) throw new RunEnded("steps");
+    this.#generated += 1;
+    this.#meter.charge(1000);
+  }
+
+  #conclude(state: DraftState): void {
+    this.#charge();
+    const simplified = this.#simplifier.simplify(state, -1);
+    if (simplified === "true") return;
+    const isFromGoal = parentsOf(this.#draft.record.subarray(0, this.#draft.recordLength)).some((parent) =>
+      this.#store.is(parent, GOAL),
+    );
+    this.#keep(simplified, isFromGoal ? GOAL : 0);
+  }
+
+  /** Stores the draft if it is new and not too large; -1 otherwise. */
+  #keep(state: DraftState, goal: number): number {
+    if (state === "true") return -1;
+    const draft = this.#draft;
+    if (state === "too-large" || !draft.settle() || this.#isTooLarge()) {
+      this.#hasDropped = true;
+      return -1;
+    }
+    const store = this.#store;
+    if (store.has(draft.literals, draft.length)) return -1;
+    const key = this.#weigh() * (goal !== 0 ? this.#strategy.goalFactor : this.#strategy.otherFactor);
+    const clause = store.add(
+      draft.literals,
+      draft.length,
+      draft.variables,
+      goal,
+      key,
+      draft.record,
+      draft.recordLength,
+    );
+    if (draft.length === 0) throw new Refuted();
+    if (kept(store, this.#bank) > this.#limits.literals) throw new RunEnded("memory");
+    this.#waiting.push(clause);
+    if (draft.length === 1) this.#keepUnit(clause);
+    return clause;
+  }
+
+  #keepUnit(clause: number): void {
+    const literal = this.#store.literal(clause, 0);
+    const atom = atomOf(literal);
+    this.#units.add(clause);
+    const isEquation = this.#bank.words[atom] === IDENTITY;
+    if (isEquation && !isNegative(literal)) this.#rewriting.add(clause);
+    if (isEquation) return;
+    const other = this.#units.findUnifiable(shifted(this.#bank, atom), !isNegative(literal));
+    if (other < 0) return;
+    this.#charge();
+    this.#draft.setGiven(clause);
+    this.#substitution.unify(atomOf(this.#draft.given[0]!), atomOf(this.#store.literal(other, 0)));
+    const state = this.#draft.resolve(clause, 0, other, 0);
+    this.#substitution.undo(0);
+    this.#keep(state, GOAL);
+  }
+
+  #isTooLarge(): boolean {
+    const { literals, length } = this.#draft;
+    if (length > this.#strategy.mostLiterals) return true;
+    let weight = 0;
+    for (let k = 0; k < length; k += 1) {
+      const atom = atomOf(literals[k]!);
+      weight += this.#bank.weight(atom);
+      if (this.#bank.depth(atom) > this.#strategy.mostDepth) return true;
+    }
+    return weight > this.#strategy.mostWeight;
+  }
+
+  #weigh(): number {
+    const { literals, length } = this.#draft;
+    let weight = length * this.#strategy.literalWeight;
+    for (let k = 0; k < length; k += 1) weight += this.#weighTerm(atomOf(literals[k]!));
+    return weight;
+  }
+
+  #weighTerm(term: number): number {
+    const strategy = this.#strategy;
+    if (term < 0) return strategy.variableWeight;
+    const bank = this.#bank;
+    const symbol = bank.words[term]!;
+    let weight = bank.isRelation[symbol]
+      ? strategy.relationWeight
+      : this.#isGoalFunction[symbol]
+        ? strategy.goalFunctionWeight
+        : strategy.functionWeight;
+    for (let k = 0; k < bank.arities[symbol]!; k += 1)
+      weight += this.#weighTerm(bank.words[term + HEADER + k]!);
+    return weight;
+  }
+}

@@ -1,0 +1,114 @@
+/** The unit clauses kept: which of them generalises an atom, or can be unified with it. */
+import { type ClauseStore, DELETED } from "./clauses.ts";
+import { NumberList } from "./lists.ts";
+import { atomOf, isNegative } from "./ordering.ts";
+import type { Substitution } from "./substitution.ts";
+import { HEADER, IDENTITY, type TermBank } from "./terms.ts";
+
+/** Bits of a filter for each of the first three arguments: one more than its head's number, 0 for a variable. */
+const BITS = 10;
+const FIELD = (1 << BITS) - 1;
+
+export class UnitIndex {
+  readonly #bank: TermBank;
+  readonly #store: ClauseStore;
+  readonly #substitution: Substitution;
+  /** By literal head (twice the relation, plus one if negative): records of clause, atom, filter, its mask. */
+  readonly #lists: NumberList[] = [];
+  /** Whether the last unit found fits with the sides of its equation exchanged. */
+  exchanged = false;
+
+  constructor(bank: TermBank, store: ClauseStore, substitution: Substitution) {
+    this.#bank = bank;
+    this.#store = store;
+    this.#substitution = substitution;
+  }
+
+  #list(head: number): NumberList {
+    while (this.#lists.length <= head) this.#lists.push(new NumberList());
+    return this.#lists[head]!;
+  }
+
+  add(clause: number): void {
+    const literal = this.#store.literal(clause, 0);
+    const atom = atomOf(literal);
+    const list = this.#list(this.#bank.words[atom]! * 2 + (isNegative(literal) ? 1 : 0));
+    const filter = this.#filter(atom, false);
+    list.push4(clause, atom, filter, maskOf(filter));
+    if ((list.length & 1023) === 0) list.retain4((unit) => !this.#store.is(unit, DELETED));
+  }
+
+  #filter(atom: number, exchanged: boolean): number {
+    const { words } = this.#bank;
+    const arity = Math.min(3, this.#bank.arities[words[atom]!]!);
+    let filter = 0;
+    for (let k = 0; k < arity; k += 1) {
+      const arg = words[atom + HEADER + (exchanged ? 1 - k : k)]!;
+      if (arg > 0) filter |= ((words[arg]! % FIELD) + 1) << (BITS * k);
+    }
+    return filter;
+  }
+
+  /**
+   * A unit clause, not `self`, of a sign of which the atom is an instance; -1 if there is none. The bindings that
+   * make it so are left in place.
+   */
+  findGeneral(atom: number, negative: boolean, self: number): number {
+    const head = this.#bank.words[atom]! * 2 + (negative ? 1 : 0);
+    if (head >= this.#lists.length || this.#lists[head]!.length === 0) return -1;
+    this.exchanged = false;
+    const found = this.#findGeneral(head, atom, self);
+    if (found >= 0 || this.#bank.words[atom] !== IDENTITY) return found;
+    this.exchanged = true;
+    return this.#findGeneral(head, atom, self);
+  }
+
+  #findGeneral(head: number, atom: number, self: number): number {
+    const list = this.#lists[head]!;
+    const { values } = list;
+    const filter = this.#filter(atom, this.exchanged);
+    for (let k = 0; k < list.length; k += 4) {
+      if ((filter & values[k + 3]!) !== values[k + 2]!) continue;
+      const unit = values[k]!;
+      if (unit === self || this.#store.is(unit, DELETED)) continue;
+      const mark = this.#substitution.mark;
+      if (this.#matches(values[k + 1]!, atom)) return unit;
+      this.#substitution.undo(mark);
+    }
+    return -1;
+  }
+
+  #matches(pattern: number, atom: number): boolean {
+    if (!this.exchanged) return this.#substitution.match(pattern, atom);
+    const { words } = this.#bank;
+    return (
+      this.#substitution.match(words[pattern + HEADER]!, words[atom + HEADER + 1]!) &&
+      this.#substitution.match(words[pattern + HEADER + 1]!, words[atom + HEADER]!)
+    );
+  }
+
+  /** A unit clause of a sign whose atom can be unified with a shifted atom; -1 if there is none. No bindings are left. */
+  findUnifiable(atom: number, negative: boolean): number {
+    const head = this.#bank.words[atom]! * 2 + (negative ? 1 : 0);
+    if (head >= this.#lists.length) return -1;
+    const list = this.#lists[head]!;
+    const { values } = list;
+    const filter = this.#filter(atom, false);
+    const mask = maskOf(filter);
+    for (let k = 0; k < list.length; k += 4) {
+      if (((filter ^ values[k + 2]!) & mask & values[k + 3]!) !== 0) continue;
+      if (this.#store.is(values[k]!, DELETED)) continue;
+      const mark = this.#substitution.mark;
+      const fits = this.#substitution.unify(atom, values[k + 1]!);
+      this.#substitution.undo(mark);
+      if (fits) return values[k]!;
+    }
+    return -1;
+  }
+}
+
+function maskOf(filter: number): number {
+  let mask = 0;
+  for (let k = 0; k < 3; k += 1) if (((filter >> (BITS * k)) & FIELD) !== 0) mask |= FIELD << (BITS * k);
+  return mask;
+}
