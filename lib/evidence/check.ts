@@ -9,6 +9,7 @@ import { isTrueIn } from "./evaluate.ts";
 import type { Fact, FormulaRecord, StructureFact } from "./format.ts";
 import { FormulaTooLarge } from "./formulas.ts";
 
+import { checkNoModel } from "./ground-form.ts";
 import { Rejected, readEvidence, reject } from "./read.ts";
 import { digestOf } from "./record.ts";
 import { isBorneOut } from "./verdicts.ts";
@@ -54,7 +55,7 @@ function checkFact(fact: Fact, at: string, sentences: readonly FormulaRecord[], 
       checkDerivation(fact, sentences, at, meter);
       break;
     case "no-model":
-      reject("clause proofs are not read yet");
+      checkNoModel(fact, sentences, at, meter);
   }
 }
 

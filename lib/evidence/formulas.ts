@@ -27,9 +27,9 @@ export class Growth {
 
   /** @throws FormulaTooLarge */
   add(parts = 1): void {
-    this.#meter?.charge(parts);
     this.#left -= parts;
     if (this.#left < 0) throw new FormulaTooLarge();
+    this.#meter?.charge(parts);
   }
 }
 
