@@ -1,10 +1,11 @@
 /**
  * The command line. Results go to standard output, messages for people to standard error. The status is 0 when all
- * is well, 1 when a claim or cell failed, 2 for wrong usage or unreadable input.
+ * is well, 1 when a claim, cell or evidence failed, 2 for wrong usage or unreadable input.
  */
 import { Command, CommanderError, InvalidArgumentError } from "commander";
 import { evaluateText } from "./commands/eval.ts";
 import { EXIT_USAGE, UnreadableInput } from "./commands/exit.ts";
+import { recheck } from "./commands/recheck.ts";
 import { runNotebook } from "./commands/run.ts";
 import { serve } from "./commands/serve.ts";
 import { KERNEL_VERSION } from "./protocol/kernel-info.ts";
@@ -40,6 +41,11 @@ function makeProgram(finish: (status: number) => void): Command {
     .argument("[file]", "a file, or - for standard input", "-")
     .option("--json", "print one array, with an object for each statement", false)
     .action(async (file: string, options: { json: boolean }) => finish(await evaluateText(file, options)));
+  program
+    .command("recheck")
+    .description("verify the stored evidence of a notebook without searching")
+    .argument("<notebook>", "a notebook that has been run")
+    .action(async (notebook: string) => finish(await recheck(notebook)));
   program
     .command("serve")
     .description("start the kernel server and print its address with a token")

@@ -1,0 +1,328 @@
+/**
+ * What a stored result says in its verdict and data, held against its evidence. Only what evidence can bear out is
+ * looked at; sizes and counts that a complete search has settled without evidence are remarked on.
+ */
+import type {
+  Evidence,
+  Fact,
+  FormulaRecord,
+  StructureRecord,
+  TheoryRecord,
+} from "../../lib/evidence/format.ts";
+import { recordFormula } from "../../lib/evidence/record.ts";
+import { dualsOf } from "../../lib/inquiry/dualise.ts";
+import type { Statement } from "../../lib/language/statements.ts";
+import { type Formula, not } from "../../lib/logic/formula.ts";
+import { findProperty, propertyOf } from "../../lib/logic/properties.ts";
+import { type Theory, theorySignature } from "../../lib/logic/theory.ts";
+
+/** The parts of a stored result that say what was found. */
+export interface Stored {
+  readonly verdict: string | null;
+  readonly data: Readonly<Record<string, unknown>>;
+}
+
+type Words = readonly string[];
+
+/** Why the stored words are not those of the evidence, or null. */
+export function findDisagreement(
+  statement: Statement,
+  stored: Stored,
+  evidence: Evidence | null,
+): string | null {
+  if (evidence === null) return findUnsupported(statement, stored);
+  switch (statement.kind) {
+    case "derive":
+    case "claim":
+    case "conjecture":
+    case "check-finite":
+      return (
+        findOtherVerdict(stored.verdict, evidence.verdict) ??
+        findInconsistency(stored, evidence) ??
+        findOtherSizes(stored, evidence)
+      );
+    case "independence":
+    case "compare":
+    case "dualise":
+    case "minimise":
+      return findOtherWords(statement, stored, evidence.verdict) ?? findPairs(statement, stored, evidence);
+    case "models":
+      return findOtherModels(stored.data.models, statement.size, evidence);
+    case "count":
+      return findForeignSize(statement.options.upTo ?? 0, evidence);
+    case "describe":
+      return findOtherFindings(statement, stored.data.properties, evidence);
+    default:
+      return "the statement has no evidence of its own";
+  }
+}
+
+/** Without evidence everything must be open, computed or of no consequence. */
+function findUnsupported(statement: Statement, stored: Stored): string | null {
+  const bare = (what: string) => `${what} is stored without evidence`;
+  switch (statement.kind) {
+    case "derive":
+    case "claim":
+    case "conjecture":
+    case "check-finite":
+      return stored.verdict === "open" ? null : bare(`the verdict ${quoted(stored.verdict)}`);
+    case "independence":
+    case "compare":
+    case "dualise": {
+      const words = wordsOf(statement, stored);
+      const settled = words?.find((word) => word !== "open");
+      if (words === null) return DAMAGED;
+      return settled === undefined
+        ? findOtherWords(
+            statement,
+            stored,
+            words.map(() => "open"),
+          )
+        : bare(`the verdict ${quoted(settled)}`);
+    }
+    case "minimise":
+      return JSON.stringify(stored.data.sets) === "[]" ? null : bare("a set of axioms");
+    case "models":
+      return JSON.stringify(stored.data.models) === "[]" ? null : bare("a model");
+    default:
+      return stored.verdict === null ? null : bare(`the verdict ${quoted(stored.verdict)}`);
+  }
+}
+
+const DAMAGED = "the stored data do not have the form that they were written in";
+
+function quoted(value: unknown): string {
+  return typeof value === "string" ? `\`${value}\`` : String(value);
+}
+
+function findOtherVerdict(stored: string | null, shown: Evidence["verdict"]): string | null {
+  if (stored === shown) return null;
+  return `the stored verdict is ${quoted(stored)}, and the evidence is for ${quoted(shown)}`;
+}
+
+/** The words of a result with several verdicts, in the order of the evidence; null when the data are damaged. */
+function wordsOf(statement: Statement, { data }: Stored): Words | null {
+  switch (statement.kind) {
+    case "independence": {
+      const axioms = data.axioms as Record<string, string> | undefined;
+      const labels = statement.theory.theory.axioms.map(({ label }) => label);
+      if (typeof axioms !== "object" || axioms === null || Object.keys(axioms).length !== labels.length)
+        return null;
+      return labels.map((label) => String(axioms[label]));
+    }
+    case "compare":
+    case "dualise": {
+      const names =
+        statement.kind === "compare"
+          ? statement.theories.map(({ text }) => text)
+          : dualsOf(statement.theory.text, statement.theory.theory).map(({ name }) => name);
+      const pairs = pairsIn(data);
+      const expected = pairsOf(names);
+      if (pairs?.length !== expected.length) return null;
+      const isOwn = pairs.every(
+        ({ left, right }, place) => left === expected[place]![0] && right === expected[place]![1],
+      );
+      return isOwn ? pairs.map(({ verdict }) => String(verdict)) : null;
+    }
+    case "minimise": {
+      const labels = statement.theory.theory.axioms.map(({ label }) => label);
+      if (!Array.isArray(data.sets)) return null;
+      return data.sets.map((set: unknown) =>
+        Array.isArray(set) ? set.map((label) => labels.indexOf(label as string)).join(",") : "",
+      );
+    }
+    default:
+      return null;
+  }
+}
+
+interface StoredPair {
+  readonly left?: unknown;
+  readonly right?: unknown;
+  readonly verdict?: unknown;
+  readonly jointlyInconsistent?: unknown;
+}
+
+function pairsIn({ pairs }: Stored["data"]): readonly StoredPair[] | null {
+  return isListOfObjects(pairs) ? pairs : null;
+}
+
+function isListOfObjects(value: unknown): value is readonly object[] {
+  return Array.isArray(value) && value.every((part) => typeof part === "object" && part !== null);
+}
+
+/** All pairs of different places, in order. */
+function pairsOf<Thing>(things: readonly Thing[]): readonly (readonly [Thing, Thing])[] {
+  return things.flatMap((left, place) =>
+    things.slice(place + 1).map((right): readonly [Thing, Thing] => [left, right]),
+  );
+}
+
+function findOtherWords(statement: Statement, stored: Stored, shown: Evidence["verdict"]): string | null {
+  const words = wordsOf(statement, stored);
+  if (words === null || !Array.isArray(shown)) return DAMAGED;
+  const [only] = words;
+  const single = statement.kind === "compare" && words.length === 1 ? (only ?? null) : null;
+  if (stored.verdict !== single)
+    return `the stored verdict is ${quoted(stored.verdict)}, and the stored data say ${quoted(single)}`;
+  if (words.length !== shown.length)
+    return `the stored data have ${words.length} verdicts, and the evidence has ${shown.length}`;
+  const place = words.findIndex((word, index) => word !== shown[index]);
+  if (place === -1) return null;
+  return `the stored data say ${quoted(words[place])}, and the evidence is for ${quoted(shown[place])}`;
+}
+
+/** What `compare` says besides the verdicts: common models, and theories without a model. */
+function findPairs(statement: Statement, stored: Stored, { question, facts }: Evidence): string | null {
+  if (statement.kind !== "compare" || question.ask !== "compare") return null;
+  const { theories } = question;
+  for (const [place, [left, right]] of pairsOf(theories).entries()) {
+    const both = [...left, ...right];
+    const said = pairsIn(stored.data)?.[place]?.jointlyInconsistent;
+    if (said === true && !contradicts(facts, both))
+      return "a pair is said to be jointly inconsistent, and no derivation shows that";
+    if (said === false && !facts.some((fact) => fact.fact === "structure" && contains(fact.holds, both)))
+      return "a pair is said to have a common model, and no structure shows that";
+  }
+  const { inconsistent } = stored.data;
+  const names = statement.theories.map(({ text }) => text);
+  if (!Array.isArray(inconsistent)) return DAMAGED;
+  const unshown = inconsistent.find(
+    (name) => !contradicts(facts, theories[names.indexOf(name as string)] ?? []),
+  );
+  return unshown === undefined
+    ? null
+    : `${quoted(unshown)} is said to have no model, and no derivation shows that`;
+}
+
+/** Whether a derivation of a contradiction starts from nothing but these sentences. */
+function contradicts(facts: readonly Fact[], theory: TheoryRecord): boolean {
+  return facts.some(
+    (fact) => fact.fact === "derivation" && fact.conclusion === null && contains(theory, fact.premises),
+  );
+}
+
+function contains(larger: TheoryRecord, smaller: TheoryRecord): boolean {
+  return smaller.every((index) => larger.includes(index));
+}
+
+function findInconsistency({ data }: Stored, { facts }: Evidence): string | null {
+  if (data.inconsistent !== true) return null;
+  const isShown = facts.some((fact) => fact.fact === "derivation" && fact.conclusion === null);
+  return isShown ? null : "the premises are said to be inconsistent, and no derivation shows that";
+}
+
+/** Keys of data that give the size of a structure in the evidence. */
+const SIZES = ["modelSize", "countermodelSize", "separatingSize"];
+
+function findOtherSizes({ data }: Stored, { facts }: Evidence): string | null {
+  const structures = structuresIn(facts);
+  for (const key of SIZES) {
+    const size = data[key] ?? null;
+    if (size !== null && !structures.some(({ carrier }) => carrier.size === size))
+      return `a structure on ${String(size)} points is stored, and the evidence has none of that size`;
+  }
+  const proven = facts.flatMap((fact) => (fact.fact === "no-model" ? [fact.size] : []));
+  const upTo = data.provenUpTo ?? 0;
+  if (typeof upTo !== "number") return DAMAGED;
+  for (let size = 1; size <= upTo; size += 1)
+    if (!proven.includes(size))
+      return `that no model has ${size} points is said to be proven, and no proof is there`;
+  return null;
+}
+
+function structuresIn(facts: readonly Fact[]): readonly StructureRecord[] {
+  return facts.flatMap((fact) => (fact.fact === "structure" ? [fact.structure] : []));
+}
+
+function findOtherModels(models: unknown, size: number, { facts }: Evidence): string | null {
+  const structures = structuresIn(facts);
+  if (!isListOfObjects(models)) return DAMAGED;
+  if (models.length !== structures.length)
+    return `${models.length} models are stored, and the evidence has ${structures.length}`;
+  for (const [place, { carrier, tables }] of structures.entries()) {
+    if (carrier.size !== size)
+      return `the evidence has a model on ${carrier.size} points, where ${size} were asked for`;
+    const relations = models[place] as Readonly<Record<string, unknown>>;
+    const isSame =
+      Object.keys(relations).length === Object.keys(tables).length &&
+      Object.entries(tables).every(
+        ([name, { places, holds }]) =>
+          JSON.stringify(relations[name]) ===
+          JSON.stringify(holds.map((kind) => tupleOf(kind, places, carrier.size))),
+      );
+    if (!isSame) return `model ${place + 1} is not the one in the evidence`;
+  }
+  return null;
+}
+
+/** The tuple of points, counted from 1, that has a kind; as the format of evidence numbers them. */
+function tupleOf(kind: number, places: number, size: number): readonly number[] {
+  const tuple: number[] = [];
+  for (let rest = kind, place = 0; place < places; place += 1, rest = Math.floor(rest / size))
+    tuple.unshift((rest % size) + 1);
+  return tuple;
+}
+
+function findForeignSize(upTo: number, { facts }: Evidence): string | null {
+  const larger = structuresIn(facts).find(({ carrier }) => carrier.size > upTo);
+  return larger === undefined
+    ? null
+    : `the evidence has a model on ${larger.carrier.size} points, where up to ${upTo} were asked for`;
+}
+
+interface StoredFinding {
+  readonly property?: unknown;
+  readonly status?: unknown;
+  readonly modelWith?: { readonly size?: unknown } | null;
+  readonly modelWithout?: { readonly size?: unknown } | null;
+}
+
+/** What `describe` has found out about named properties. */
+function findOtherFindings(
+  statement: Statement & { kind: "describe" },
+  properties: unknown,
+  evidence: Evidence,
+): string | null {
+  if (statement.subject.kind !== "theory" || !isListOfObjects(properties)) return DAMAGED;
+  const { theory } = statement.subject.theory;
+  for (const { property, status, modelWith, modelWithout } of properties as readonly StoredFinding[]) {
+    const sentence = sentenceOfProperty(String(property), theory);
+    if (sentence === null) return `${quoted(property)} is no property of a relation of the theory`;
+    const shows = (wanted: Formula, size: unknown) =>
+      size === null || size === undefined || hasModel(evidence, wanted, size);
+    if (!shows(sentence, modelWith?.size) || !shows(not(sentence), modelWithout?.size))
+      return `no structure of the evidence shows what is stored of ${quoted(property)}`;
+    const derived = status === "follows" ? not(not(sentence)) : status === "excluded" ? not(sentence) : null;
+    if (derived !== null && !hasDerivation(evidence, derived))
+      return `no derivation of the evidence shows what is stored of ${quoted(property)}`;
+  }
+  return null;
+}
+
+/** The sentence that a property, written `transitive(R)`, is of a relation of the theory; null when it is none. */
+function sentenceOfProperty(text: string, theory: Theory): Formula | null {
+  const [, name, of] = /^([^()]+)\((.*)\)$/.exec(text) ?? [];
+  const property = findProperty(name ?? "");
+  const relation = theorySignature(theory).relations.find((one) => one.name === of && one.places === 2);
+  return property === undefined || relation === undefined ? null : propertyOf(property, relation);
+}
+
+function indexOf({ sentences }: Evidence, formula: Formula): number {
+  const text = JSON.stringify(recordFormula(formula));
+  return sentences.findIndex((sentence: FormulaRecord) => JSON.stringify(sentence) === text);
+}
+
+function hasModel(evidence: Evidence, formula: Formula, size: unknown): boolean {
+  const index = indexOf(evidence, formula);
+  return evidence.facts.some(
+    (fact) => fact.fact === "structure" && fact.structure.carrier.size === size && fact.holds.includes(index),
+  );
+}
+
+function hasDerivation(evidence: Evidence, formula: Formula): boolean {
+  const index = indexOf(evidence, formula);
+  return evidence.facts.some(
+    (fact) => fact.fact === "derivation" && (fact.conclusion === null || fact.conclusion === index),
+  );
+}
