@@ -1,6 +1,15 @@
-/** Derivations of a conclusion from premises, as inquiries ask for them. */
+/** Derivations of a conclusion from premises, as inquiries ask for them, and one attempt at one. */
 import type { DerivationFact } from "../evidence/format.ts";
+import { FormulaTooLarge } from "../evidence/formulas.ts";
 import type { Formula } from "../logic/formula.ts";
+import type { Meter } from "../logic/meter.ts";
+import { assemble } from "./assemble.ts";
+import type { CreateSolver } from "./ground-solver.ts";
+import { instantiate } from "./instantiation/instantiate.ts";
+import { type Preparation, type Prepared, prepare } from "./prepare.ts";
+import type { EngineOutcome } from "./refutation.ts";
+import { saturate } from "./saturation/saturate.ts";
+import type { Strategy } from "./saturation/strategy.ts";
 
 export interface DerivationTask {
   /** Closed. */
@@ -23,3 +32,61 @@ export type TurnOutcome =
   /** There is no derivation: premises and negated conclusion have a model together, perhaps an infinite one. */
   | { readonly result: "saturated" }
   | { readonly result: "gave-up"; readonly reason: "steps" | "memory" | "incomplete" };
+
+/** What refutes the clauses: saturation by a strategy, or instances of the clauses. */
+export type Engine =
+  | { readonly by: "saturation"; readonly strategy: Strategy }
+  | { readonly by: "instances" };
+
+/** One bounded attempt. */
+export interface Turn {
+  readonly engine: Engine;
+  readonly preparation: Preparation;
+  /** Clauses that may be generated. */
+  readonly clauses: number;
+}
+
+/** Literals that an engine may keep in memory. */
+const MOST_LITERALS = 8_000_000;
+
+/** The clauses for a turn; null when they would be too many. */
+export function prepareTurn(task: DerivationTask, preparation: Preparation): Prepared | null {
+  try {
+    return prepare(task, preparation);
+  } catch (problem) {
+    if (problem instanceof FormulaTooLarge) return null;
+    throw problem;
+  }
+}
+
+/**
+ * Tries to derive the conclusion in one turn.
+ * @param prepared what {@link prepareTurn} gave for the turn
+ * @param meter pays a step for each generated clause
+ * @throws WorkEnded
+ */
+export function runTurn(
+  task: DerivationTask,
+  turn: Turn,
+  prepared: Prepared,
+  meter: Meter,
+  createSolver: CreateSolver,
+): TurnOutcome {
+  const outcome = refute(turn, prepared, meter, createSolver);
+  if (outcome.result === "refuted")
+    return { result: "derived", derivation: assemble(task, prepared, outcome.refutation) };
+  if (outcome.result === "saturated" && !prepared.isComplete)
+    return { result: "gave-up", reason: "incomplete" };
+  return outcome;
+}
+
+function refute(
+  { engine, clauses }: Turn,
+  prepared: Prepared,
+  meter: Meter,
+  createSolver: CreateSolver,
+): EngineOutcome {
+  if (engine.by === "saturation")
+    return saturate(prepared.task, engine.strategy, { clauses, literals: MOST_LITERALS }, meter);
+  return instantiate(prepared.task, { instances: clauses, literals: MOST_LITERALS }, meter, createSolver);
+}
