@@ -80,7 +80,7 @@ export class Inferences {
     while (lists.length <= head) lists.push(new NumberList());
     const list = lists[head]!;
     list.push4(a, b, c, d);
-    if ((list.length & 2047) === 0) list.retain4((clause) => !this.#store.is(clause, DELETED));
+    list.retain4((clause) => !this.#store.is(clause, DELETED));
   }
 
   /** The sides of an equation that are not less than the other one. */

@@ -6,6 +6,7 @@ import { grown } from "./terms.ts";
 export class NumberList {
   values: Int32Array = new Int32Array(16);
   length = 0;
+  #nextRetain = 2048;
 
   push4(a: number, b: number, c: number, d: number): void {
     if (this.length + 4 > this.values.length) this.values = grown(this.values, this.length + 4);
@@ -16,8 +17,12 @@ export class NumberList {
     this.length += 4;
   }
 
-  /** Drops the records of four whose first number fails a test, keeping the order. */
+  /**
+   * Drops the records of four whose first number fails a test, keeping the order; does nothing unless the list has
+   * doubled since it was done last.
+   */
   retain4(isKept: (first: number) => boolean): void {
+    if (this.length < this.#nextRetain) return;
     let length = 0;
     for (let from = 0; from < this.length; from += 4) {
       if (!isKept(this.values[from]!)) continue;
@@ -25,6 +30,7 @@ export class NumberList {
       length += 4;
     }
     this.length = length;
+    this.#nextRetain = Math.max(2048, 2 * length);
   }
 }
 

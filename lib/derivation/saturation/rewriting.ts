@@ -1,7 +1,7 @@
 /** Rewriting with unit equations (Knuth & Bendix 1970), also with those that only some instances orient. */
 import { type ClauseStore, DELETED } from "./clauses.ts";
-import { NumberList } from "./lists.ts";
 import { atomOf, isNegative, type Ordering } from "./ordering.ts";
+import { PatternTree } from "./pattern-tree.ts";
 import type { Substitution } from "./substitution.ts";
 import { HEADER, IDENTITY, indexOf, type TermBank } from "./terms.ts";
 
@@ -13,8 +13,9 @@ export class RewriteIndex {
   readonly #store: ClauseStore;
   readonly #ordering: Ordering;
   readonly #substitution: Substitution;
-  /** By head of the side that is rewritten: records of clause, side, 1 if every instance is oriented, 0. */
-  readonly #lists: NumberList[] = [];
+  /** Sides that are rewritten, with 4 · clause + 2 · side, plus 1 if every instance is oriented. */
+  readonly #tree: PatternTree;
+  readonly #heads: boolean[] = [];
   /** Terms whose head was found irreducible, as of {@link #size}. */
   #known = new Int32Array(KNOWN);
   #size = 0;
@@ -31,6 +32,7 @@ export class RewriteIndex {
     this.#store = store;
     this.#ordering = ordering;
     this.#substitution = substitution;
+    this.#tree = new PatternTree(bank);
   }
 
   get isEmpty(): boolean {
@@ -46,9 +48,8 @@ export class RewriteIndex {
       if (compared === (side === 0 ? "less" : "greater")) continue;
       const from = words[atom + HEADER + side]!;
       if (from < 0 || !this.#hasVariablesOf(from, words[atom + HEADER + 1 - side]!)) continue;
-      const head = words[from]!;
-      while (this.#lists.length <= head) this.#lists.push(new NumberList());
-      this.#lists[head]!.push4(clause, side, compared === "incomparable" ? 0 : 1, 0);
+      this.#heads[words[from]!] = true;
+      this.#tree.add(from, 4 * clause + 2 * side + (compared === "incomparable" ? 0 : 1));
       this.#size += 1;
       this.#known.fill(0);
     }
@@ -96,35 +97,40 @@ export class RewriteIndex {
   }
 
   #findAt(term: number, self: number, other: number): boolean {
-    const head = this.#bank.words[term]!;
-    const list = this.#lists[head];
-    if (list === undefined || list.length === 0) return false;
+    if (this.#heads[this.#bank.words[term]!] !== true) return false;
     const slot = (term * 5) & (KNOWN - 1);
     if (this.#known[slot] === term) return false;
-    let isIrreducible = true;
-    for (let k = 0; k < list.length; k += 4) {
-      const unit = list.values[k]!;
-      if (this.#store.is(unit, DELETED)) continue;
-      const side = list.values[k + 1]!;
-      const atom = atomOf(this.#store.literal(unit, 0));
-      const mark = this.#substitution.mark;
-      if (this.#substitution.match(this.#bank.words[atom + HEADER + side]!, term)) {
-        isIrreducible = false;
-        const image =
-          unit === self ? 0 : this.#substitution.image(this.#bank.words[atom + HEADER + 1 - side]!);
-        if (image !== 0 && this.#isAllowed(term, image, list.values[k + 2] === 1, other)) {
-          this.#substitution.undo(mark);
-          this.unit = unit;
-          this.side = side;
-          this.term = image;
-          return true;
-        }
-      }
-      this.#substitution.undo(mark);
-    }
-    if (isIrreducible) this.#known[slot] = term;
+    this.#asked = term;
+    this.#self = self;
+    this.#other = other;
+    this.#isIrreducible = true;
+    if (this.#tree.find(term, this.#accept) >= 0) return true;
+    if (this.#isIrreducible) this.#known[slot] = term;
     return false;
   }
+  #asked = 0;
+  #self = -1;
+  #other = 0;
+  #isIrreducible = true;
+
+  /** Whether an equation's side of which the term asked for is an instance may be used, and what it gives. */
+  readonly #accept = (value: number): boolean => {
+    const unit = value >> 2;
+    if (this.#store.is(unit, DELETED)) return false;
+    this.#isIrreducible = false;
+    if (unit === this.#self) return false;
+    const side = (value >> 1) & 1;
+    const atom = atomOf(this.#store.literal(unit, 0));
+    const mark = this.#substitution.mark;
+    this.#substitution.match(this.#bank.words[atom + HEADER + side]!, this.#asked);
+    const image = this.#substitution.image(this.#bank.words[atom + HEADER + 1 - side]!);
+    this.#substitution.undo(mark);
+    if (!this.#isAllowed(this.#asked, image, (value & 1) === 1, this.#other)) return false;
+    this.unit = unit;
+    this.side = side;
+    this.term = image;
+    return true;
+  };
 
   #isAllowed(term: number, image: number, isOriented: boolean, other: number): boolean {
     if (!isOriented && this.#ordering.compare(term, image) !== "greater") return false;

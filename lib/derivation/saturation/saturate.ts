@@ -103,7 +103,7 @@ class Saturation {
     this.#units = new UnitIndex(bank, store, substitution);
     this.#rewriting = new RewriteIndex(bank, store, this.#ordering, substitution);
     this.#subsumption = new SubsumptionIndex(bank, store, substitution, clock);
-    this.#simplifier = new Simplifier(bank, this.#draft, substitution, this.#units, this.#rewriting, clock);
+    this.#simplifier = new Simplifier(bank, this.#draft, this.#units, this.#rewriting, clock);
     this.#inferences = new Inferences(
       bank,
       store,

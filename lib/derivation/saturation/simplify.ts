@@ -2,7 +2,6 @@
 import { type Draft, type DraftState, RECORD_WORDS, Rule } from "./draft.ts";
 import { atomOf, isNegative } from "./ordering.ts";
 import type { RewriteIndex } from "./rewriting.ts";
-import type { Substitution } from "./substitution.ts";
 import { HEADER, IDENTITY, indexOf, type TermBank } from "./terms.ts";
 import type { UnitIndex } from "./units.ts";
 import type { WorkClock } from "./work-clock.ts";
@@ -13,22 +12,13 @@ const LONGEST_RECORD = 4_000;
 export class Simplifier {
   readonly #bank: TermBank;
   readonly #draft: Draft;
-  readonly #substitution: Substitution;
   readonly #units: UnitIndex;
   readonly #rewriting: RewriteIndex;
   readonly #clock: WorkClock;
 
-  constructor(
-    bank: TermBank,
-    draft: Draft,
-    substitution: Substitution,
-    units: UnitIndex,
-    rewriting: RewriteIndex,
-    clock: WorkClock,
-  ) {
+  constructor(bank: TermBank, draft: Draft, units: UnitIndex, rewriting: RewriteIndex, clock: WorkClock) {
     this.#bank = bank;
     this.#draft = draft;
-    this.#substitution = substitution;
     this.#units = units;
     this.#rewriting = rewriting;
     this.#clock = clock;
@@ -60,9 +50,7 @@ export class Simplifier {
           return draft.rewrite(k, rewriting.place, rewriting.unit, rewriting.side, rewriting.term);
     for (let k = 0; k < draft.length; k += 1) {
       const literal = draft.literals[k]!;
-      const mark = this.#substitution.mark;
       const unit = this.#units.findGeneral(atomOf(literal), !isNegative(literal), self);
-      this.#substitution.undo(mark);
       if (unit >= 0) return draft.cut(k, unit, this.#units.exchanged);
     }
     return null;
@@ -81,9 +69,7 @@ export class Simplifier {
     const draft = this.#draft;
     for (let k = 0; k < draft.length; k += 1) {
       const literal = draft.literals[k]!;
-      const mark = this.#substitution.mark;
       const unit = this.#units.findGeneral(atomOf(literal), isNegative(literal), self);
-      this.#substitution.undo(mark);
       if (unit >= 0) return true;
     }
     return false;

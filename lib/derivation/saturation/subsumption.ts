@@ -41,7 +41,7 @@ export class SubsumptionIndex {
   add(clause: number): void {
     this.#sign(clause);
     this.#list.push4(clause, this.#heads, this.#inner, this.#sizes);
-    if ((this.#list.length & 2047) === 0) this.#list.retain4((other) => !this.#store.is(other, DELETED));
+    this.#list.retain4((other) => !this.#store.is(other, DELETED));
   }
 
   /** An active clause, not itself, that subsumes a clause; -1 if there is none. */

@@ -2,6 +2,7 @@
 import { type ClauseStore, DELETED } from "./clauses.ts";
 import { NumberList } from "./lists.ts";
 import { atomOf, isNegative } from "./ordering.ts";
+import { PatternTree } from "./pattern-tree.ts";
 import type { Substitution } from "./substitution.ts";
 import { HEADER, IDENTITY, type TermBank } from "./terms.ts";
 
@@ -15,6 +16,8 @@ export class UnitIndex {
   readonly #substitution: Substitution;
   /** By literal head (twice the relation, plus one if negative): records of clause, atom, filter, its mask. */
   readonly #lists: NumberList[] = [];
+  /** Positive and negative atoms. */
+  readonly #trees: readonly PatternTree[];
   /** Whether the last unit found fits with the sides of its equation exchanged. */
   exchanged = false;
 
@@ -22,6 +25,7 @@ export class UnitIndex {
     this.#bank = bank;
     this.#store = store;
     this.#substitution = substitution;
+    this.#trees = [new PatternTree(bank), new PatternTree(bank)];
   }
 
   #list(head: number): NumberList {
@@ -33,59 +37,36 @@ export class UnitIndex {
     const literal = this.#store.literal(clause, 0);
     const atom = atomOf(literal);
     const list = this.#list(this.#bank.words[atom]! * 2 + (isNegative(literal) ? 1 : 0));
-    const filter = this.#filter(atom, false);
+    const filter = this.#filter(atom);
     list.push4(clause, atom, filter, maskOf(filter));
-    if ((list.length & 1023) === 0) list.retain4((unit) => !this.#store.is(unit, DELETED));
+    list.retain4((unit) => !this.#store.is(unit, DELETED));
+    this.#trees[isNegative(literal) ? 1 : 0]!.add(atom, clause);
   }
 
-  #filter(atom: number, exchanged: boolean): number {
+  #filter(atom: number): number {
     const { words } = this.#bank;
     const arity = Math.min(3, this.#bank.arities[words[atom]!]!);
     let filter = 0;
     for (let k = 0; k < arity; k += 1) {
-      const arg = words[atom + HEADER + (exchanged ? 1 - k : k)]!;
+      const arg = words[atom + HEADER + k]!;
       if (arg > 0) filter |= ((words[arg]! % FIELD) + 1) << (BITS * k);
     }
     return filter;
   }
 
-  /**
-   * A unit clause, not `self`, of a sign of which the atom is an instance; -1 if there is none. The bindings that
-   * make it so are left in place.
-   */
+  /** A unit clause, not `self`, of a sign of which the atom is an instance; -1 if there is none. */
   findGeneral(atom: number, negative: boolean, self: number): number {
-    const head = this.#bank.words[atom]! * 2 + (negative ? 1 : 0);
-    if (head >= this.#lists.length || this.#lists[head]!.length === 0) return -1;
+    const tree = this.#trees[negative ? 1 : 0]!;
     this.exchanged = false;
-    const found = this.#findGeneral(head, atom, self);
+    if (tree.isEmpty) return -1;
+    this.#self = self;
+    const found = tree.find(atom, this.#isUsable);
     if (found >= 0 || this.#bank.words[atom] !== IDENTITY) return found;
     this.exchanged = true;
-    return this.#findGeneral(head, atom, self);
+    return tree.findExchanged(atom, this.#isUsable);
   }
-
-  #findGeneral(head: number, atom: number, self: number): number {
-    const list = this.#lists[head]!;
-    const { values } = list;
-    const filter = this.#filter(atom, this.exchanged);
-    for (let k = 0; k < list.length; k += 4) {
-      if ((filter & values[k + 3]!) !== values[k + 2]!) continue;
-      const unit = values[k]!;
-      if (unit === self || this.#store.is(unit, DELETED)) continue;
-      const mark = this.#substitution.mark;
-      if (this.#matches(values[k + 1]!, atom)) return unit;
-      this.#substitution.undo(mark);
-    }
-    return -1;
-  }
-
-  #matches(pattern: number, atom: number): boolean {
-    if (!this.exchanged) return this.#substitution.match(pattern, atom);
-    const { words } = this.#bank;
-    return (
-      this.#substitution.match(words[pattern + HEADER]!, words[atom + HEADER + 1]!) &&
-      this.#substitution.match(words[pattern + HEADER + 1]!, words[atom + HEADER]!)
-    );
-  }
+  #self = -1;
+  readonly #isUsable = (unit: number) => unit !== this.#self && !this.#store.is(unit, DELETED);
 
   /** A unit clause of a sign whose atom can be unified with a shifted atom; -1 if there is none. No bindings are left. */
   findUnifiable(atom: number, negative: boolean): number {
@@ -93,7 +74,7 @@ export class UnitIndex {
     if (head >= this.#lists.length) return -1;
     const list = this.#lists[head]!;
     const { values } = list;
-    const filter = this.#filter(atom, false);
+    const filter = this.#filter(atom);
     const mask = maskOf(filter);
     for (let k = 0; k < list.length; k += 4) {
       if (((filter ^ values[k + 2]!) & mask & values[k + 3]!) !== 0) continue;
