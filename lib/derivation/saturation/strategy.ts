@@ -41,12 +41,12 @@ export interface Strategy {
 /** Good on nearly everything; the first to try. */
 export const DEFAULT_STRATEGY: Strategy = {
   selection: "heaviest",
-  selectsSparingly: false,
+  selectsSparingly: true,
   ordering: "weight",
   precedence: "places",
   byAge: 1,
   byWeight: 5,
-  literalWeight: 1,
+  literalWeight: 3,
   relationWeight: 1,
   functionWeight: 2,
   goalFunctionWeight: 2,
