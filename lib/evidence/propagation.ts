@@ -44,6 +44,7 @@ export class Propagation {
 
   /** Whether a clause follows by unit propagation. */
   follows(signed: readonly number[]): boolean {
+    this.#meter.charge(1 + signed.length);
     if (this.#contradictory) return true;
     const before = this.#trail.length;
     let isTrue = false;
