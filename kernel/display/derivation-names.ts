@@ -10,12 +10,21 @@ import type {
   TermFormulaRecord,
   TermRecord,
 } from "../../lib/evidence/format.ts";
-import { Growth, negationNormalForm, partsOf } from "../../lib/evidence/formulas.ts";
+import {
+  atomTerms,
+  Growth,
+  negationNormalForm,
+  partsOf,
+  termVariables,
+} from "../../lib/evidence/formulas.ts";
 import type { FunctionSymbol, Term, TermFormula } from "../../lib/logic/clausal.ts";
 import { type Formula, type RelationSymbol, relationsOf, variablesOf } from "../../lib/logic/formula.ts";
 import { isNegated } from "./derivation-steps.ts";
 
-const VARIABLES = ["x", "y", "z", "u", "v", "w"];
+/** Variables in the order in which they are taken. */
+export const VARIABLES = ["x", "y", "z", "u", "v", "w"];
+const MORE_VARIABLES = [...VARIABLES, "t", "s", "r"];
+const PLAIN = /^[a-z]$/;
 const CONSTANTS = ["a", "b", "c", "d", "e", "k", "m", "n", "p", "q", "r", "s", "t"];
 const FUNCTIONS = ["f", "g", "h"];
 const RELATIONS = ["D", "E", "F", "G", "H", "J", "K", "L"];
@@ -38,6 +47,8 @@ export class DerivationNames {
   readonly #taken: Set<string>;
   readonly #formulas: readonly TermFormulaRecord[];
   readonly #origins = new Map<number, readonly string[]>();
+  /** For variables that came in when formulas were made of others, mostly primed ones, letters that are free. */
+  readonly plain: Renaming;
 
   /**
    * @param sentences the premises and the conclusion, as the user has them
@@ -50,6 +61,20 @@ export class DerivationNames {
       this.#relations.set(relation.name, relation);
       this.#taken.add(relation.name);
     }
+    this.plain = this.#letters(new Set(sentences.flatMap((sentence) => [...variablesOf(sentence)])));
+  }
+
+  #letters(own: Set<string>): Renaming {
+    const letters = new Map<string, string>();
+    for (const name of new Set(this.#formulas.flatMap(variableNames))) {
+      if (own.has(name)) continue;
+      const letter = PLAIN.test(name) ? name : MORE_VARIABLES.find((one) => !own.has(one));
+      if (letter === undefined) continue;
+      own.add(letter);
+      this.#taken.add(letter);
+      letters.set(name, letter);
+    }
+    return letters;
   }
 
   /** The name by which a relation that was defined on the way is shown. */
@@ -123,7 +148,7 @@ export class DerivationNames {
     switch (formula[0]) {
       case "is":
       case "=":
-        return this.atom(formula, new Map());
+        return this.atom(formula, this.plain);
       case "true":
       case "false":
         return { kind: formula[0] };
@@ -139,7 +164,11 @@ export class DerivationNames {
         return { kind: formula[0], left: this.formula(formula[1]), right: this.formula(formula[2]) };
       case "forall":
       case "exists":
-        return { kind: formula[0], variable: formula[1], body: this.formula(formula[2]) };
+        return {
+          kind: formula[0],
+          variable: this.plain.get(formula[1]) ?? formula[1],
+          body: this.formula(formula[2]),
+        };
     }
   }
 
@@ -148,31 +177,45 @@ export class DerivationNames {
     return isNegated(literal) ? { kind: "not", body: atom } : atom;
   }
 
-  /** A clause as it reads best: an implication, a disjunction, or that some things are not so together. */
-  clause(clause: ClauseRecord, renaming: Renaming): TermFormula {
-    if (clause.length === 1) return this.literal(clause[0]!, renaming);
-    const atoms = (negated: boolean) =>
-      clause
-        .filter((literal) => isNegated(literal) === negated)
-        .map((literal) => this.atom(atomOf(literal), renaming));
-    const [conditions, results] = [atoms(true), atoms(false)];
-    if (conditions.length === 0) return join("or", results);
-    if (results.length > 0)
-      return { kind: "implies", left: join("and", conditions), right: join("or", results) };
-    const isEquation = (atom: TermFormula) => atom.kind === "equal";
-    const equations = conditions.filter(isEquation);
-    // Rxy → x ≠ y reads better than ¬(Rxy ∧ x = y).
-    if (equations.length === 1)
-      return {
-        kind: "implies",
-        left: join(
-          "and",
-          conditions.filter((atom) => !isEquation(atom)),
-        ),
-        right: { kind: "not", body: equations[0]! },
-      };
-    return { kind: "not", body: join("and", conditions) };
+  /**
+   * A clause as it reads best: an implication, a disjunction, or that some things are not so together. Several with the
+   * same conditions, each with one result, become one statement.
+   */
+  statement(clauses: readonly ClauseRecord[], renaming: Renaming): TermFormula {
+    const implications = clauses.map(implicationOf);
+    const conditions = join(
+      "and",
+      implications[0]!.conditions.map((atom) => this.atom(atom, renaming)),
+    );
+    const results = implications.flatMap((one) =>
+      one.results.map((literal) => this.literal(literal, renaming)),
+    );
+    if (results.length === 0) return { kind: "not", body: conditions };
+    const result = join(clauses.length === 1 ? "or" : "and", results);
+    return implications[0]!.conditions.length === 0
+      ? result
+      : { kind: "implies", left: conditions, right: result };
   }
+}
+
+/** A clause as a statement that some things together have one of some results. */
+export interface Implication {
+  readonly conditions: readonly AtomRecord[];
+  readonly results: readonly LiteralRecord[];
+}
+
+export function implicationOf(clause: ClauseRecord): Implication {
+  const positive = clause.filter((literal) => !isNegated(literal));
+  const negative = clause.filter(isNegated);
+  const split = (results: readonly LiteralRecord[]): Implication => ({
+    conditions: clause.filter((literal) => !results.includes(literal)).map(atomOf),
+    results,
+  });
+  if (positive.length > 0) return split(positive);
+  if (negative.length === 1) return split(negative);
+  // Rxy → x ≠ y reads better than ¬(Rxy ∧ x = y).
+  const unequal = negative.filter((literal) => atomOf(literal)[0] === "=");
+  return split(unequal.length === 1 ? unequal : []);
 }
 
 function join(kind: "and" | "or", parts: readonly TermFormula[]): TermFormula {
@@ -194,4 +237,18 @@ function chosenVariables(formula: TermFormulaRecord): readonly string[] {
 /** The functions in a term, each once, in the order they occur. */
 export function functionsOfTerm(term: TermRecord): readonly (readonly [string, ...TermRecord[]])[] {
   return typeof term === "string" ? [] : [term, ...term.slice(1).flatMap((arg) => functionsOfTerm(arg))];
+}
+
+/** The terms in a formula. */
+export function termsOfFormula(formula: TermFormulaRecord): readonly TermRecord[] {
+  return formula[0] === "is" || formula[0] === "="
+    ? atomTerms(formula)
+    : partsOf(formula).flatMap(termsOfFormula);
+}
+
+/** All variables that are written in a formula, bound ones that are not used as well. */
+export function variableNames(formula: TermFormulaRecord): readonly string[] {
+  if (formula[0] === "is" || formula[0] === "=") return atomTerms(formula).flatMap(termVariables);
+  const within = partsOf(formula).flatMap(variableNames);
+  return formula[0] === "forall" || formula[0] === "exists" ? [formula[1], ...within] : within;
 }

@@ -10,13 +10,22 @@ import type {
   TermFormulaRecord,
   TermRecord,
 } from "../../lib/evidence/format.ts";
-import { atomTerms, partsOf, termVariables } from "../../lib/evidence/formulas.ts";
+import { atomTerms } from "../../lib/evidence/formulas.ts";
 import { miniscopeFormula, unfoldFormula } from "../../lib/evidence/made-formulas.ts";
 import { recordFormula } from "../../lib/evidence/record.ts";
 import type { ShownDerivation } from "../../lib/inquiry/answer.ts";
 import type { Term, TermFormula } from "../../lib/logic/clausal.ts";
-import { DerivationNames, functionsOfTerm, type Renaming } from "./derivation-names.ts";
 import {
+  DerivationNames,
+  functionsOfTerm,
+  implicationOf,
+  type Renaming,
+  termsOfFormula,
+  VARIABLES,
+  variableNames,
+} from "./derivation-names.ts";
+import {
+  atomKey,
   instanceOf,
   isNegated,
   type Step,
@@ -83,7 +92,7 @@ export interface Reading {
 
 /** Clauses that a sentence may have for a reader to see each of them in it. */
 const PLAIN_CLAUSES = 4;
-/** Facts read off that one line may join. */
+/** Clauses that one line may join. */
 const MOST_JOINED = 4;
 
 export function readDerivation(shown: ShownDerivation): Reading {
@@ -135,8 +144,6 @@ interface Place {
   readonly renaming: Renaming;
 }
 
-const UNCHANGED: Renaming = new Map();
-
 class Reader {
   readonly #shown: ShownDerivation;
   readonly #formulas: readonly TermFormulaRecord[];
@@ -150,6 +157,12 @@ class Reader {
   /** Formulas that the reader needs, by number. */
   readonly #needed = new Set<number>();
   #isGeneral = false;
+  /** What the last line says, where it is an inference. */
+  #last: {
+    readonly clauses: readonly ClauseRecord[];
+    readonly renaming: Renaming;
+    readonly reason: Reason;
+  } | null = null;
 
   constructor(shown: ShownDerivation, formulas: readonly TermFormulaRecord[], steps: Steps) {
     this.#shown = shown;
@@ -191,14 +204,16 @@ class Reader {
     if (made[0] !== "miniscope") this.#need(made[2]);
   }
 
-  /** @param clauses whose functions are introduced here, unless they have been */
   #add(sentence: TermFormula | null, reason: Reason, introduced: readonly Introduction[] = []): LineNumber {
     return this.#lines.push({ sentence, reason, introduced });
   }
 
   #addGiven(formula: number): void {
     const premise = this.#shown.premises[formula];
-    const sentence = this.#names.formula(this.#formulas[formula]!);
+    const record = this.#formulas[formula]!;
+    // The negation of ¬φ is shown as φ.
+    const isTwice = premise === undefined && record[0] === "not" && record[1][0] === "not";
+    const sentence = this.#names.formula(isTwice ? (record[1][1] as TermFormulaRecord) : record);
     this.#formulaLines.set(
       formula,
       premise === undefined
@@ -210,7 +225,7 @@ class Reader {
   #addMade(formula: number, made: DerivationFact["made"][number]): void {
     const record = this.#formulas[formula]!;
     if (made[0] === "define") {
-      const introduced = this.#introduce(termsOfFormula(record), null, UNCHANGED);
+      const introduced = this.#introduce(termsOfFormula(record), null, this.#names.plain);
       const sentence = this.#names.formula(record);
       const { name } = this.#names.relation(made[1], made[2].length);
       this.#formulaLines.set(formula, this.#add(sentence, { kind: "definition", name }, introduced));
@@ -232,11 +247,12 @@ class Reader {
     this.#formulaLines.set(formula, this.#add(this.#names.formula(record), { kind, from, by }));
   }
 
-  /** The clauses of a formula that are used. */
+  /** The clauses of a formula that are used, in the order in which it says them. */
   #stepsOf(formula: number): readonly (readonly [number, Step])[] {
-    return [...this.#steps].filter(
-      ([, { origin }]) => origin.kind === "clause" && origin.formula === formula,
-    );
+    const placeIn = ({ origin }: Step) => (origin.kind === "clause" ? origin.place : 0);
+    return [...this.#steps]
+      .filter(([, { origin }]) => origin.kind === "clause" && origin.formula === formula)
+      .sort(([, one], [, other]) => placeIn(one) - placeIn(other));
   }
 
   /** What is read off from a formula, as far as it cannot be seen in it. */
@@ -251,8 +267,10 @@ class Reader {
       const isSeen =
         isPlain &&
         !namesFunctionOf(step.clause, formula) &&
-        variablesOf(step.clause).every((variable) => this.#bindings(from, variable) === 1);
-      if (isSeen) this.#places.set(number, { line: from, renaming: UNCHANGED });
+        variablesOf(step.clause).every(
+          (variable) => this.#bindings(from, this.#names.plain.get(variable) ?? variable) === 1,
+        );
+      if (isSeen) this.#places.set(number, { line: from, renaming: this.#names.plain });
       else apart.push([number, step]);
     }
     for (const group of grouped(apart)) {
@@ -260,14 +278,12 @@ class Reader {
       const variables = [...new Set(clauses.flatMap(variablesOf))];
       const own = new Set(variableNames(record));
       const renaming = variables.every((variable) => own.has(variable))
-        ? UNCHANGED
+        ? this.#names.plain
         : this.#rename(variables, new Map());
       const introduced = this.#introduce(clauses.flatMap(termsOf), formula, renaming);
-      const parts = clauses.map((clause) => this.#names.clause(clause, renaming));
-      const sentence: TermFormula = parts.length === 1 ? parts[0]! : { kind: "and", parts };
       if (variables.length > 0) this.#isGeneral = true;
       const line = this.#add(
-        clauses[0]!.length === 0 ? null : sentence,
+        clauses[0]!.length === 0 ? null : this.#names.statement(clauses, renaming),
         { kind: "read-off", from },
         introduced,
       );
@@ -306,23 +322,23 @@ class Reader {
     formula: number | null,
     renaming: Renaming,
   ): readonly Introduction[] {
-    const found: Introduction[] = [];
-    for (const application of terms.flatMap(functionsOfTerm)) {
-      const [name, ...args] = application;
-      if (this.#introduced.has(name)) continue;
+    const fresh = new Map<string, readonly [string, ...TermRecord[]]>();
+    for (const application of terms.flatMap(functionsOfTerm))
+      if (!this.#introduced.has(application[0])) fresh.set(application[0], application);
+    // Named in the order of their quantifiers.
+    const inPlace = [...fresh.values()].sort(([a], [b]) => placeOf(a) - placeOf(b));
+    return inPlace.map(([name, ...args]): Introduction => {
       this.#introduced.add(name);
       const origin = this.#names.originOf(name);
       const isPromised = origin.formula === formula;
-      const parameters = isPromised ? args.map((arg) => this.#names.term(arg, renaming)) : [];
-      found.push({
-        term: this.#names.term(isPromised ? application : [name, ...placeholders(args.length)], renaming),
-        parameters: isPromised
-          ? parameters.filter((one) => typeof one === "string")
-          : placeholders(args.length),
+      const own = isPromised ? args : placeholders(args.length);
+      const parameters = own.map((arg) => this.#names.term(arg, renaming));
+      return {
+        term: this.#names.term([name, ...own], renaming),
+        parameters: parameters.filter((one) => typeof one === "string"),
         variable: isPromised ? origin.variable : null,
-      });
-    }
-    return found;
+      };
+    });
   }
 
   #rename(variables: readonly string[], known: ReadonlyMap<string, string>): Renaming {
@@ -347,9 +363,30 @@ class Reader {
     if (own.length > 0) this.#isGeneral = true;
     const terms = [clause, ...uses.map((use) => instanceOf(use, this.#steps))].flatMap(termsOf);
     const introduced = this.#introduce(terms, null, renaming);
-    const sentence = clause.length === 0 ? null : this.#names.clause(clause, renaming);
-    const line = this.#add(sentence, this.#inference(uses, renaming), introduced);
+    const reason = this.#inference(uses, renaming);
+    const joined = introduced.length === 0 ? this.#joinLast(clause, renaming, reason) : null;
+    const sentence = clause.length === 0 ? null : this.#names.statement([clause], renaming);
+    const line = joined ?? this.#add(sentence, reason, introduced);
+    if (joined === null) this.#last = { clauses: [clause], renaming, reason };
     this.#places.set(number, { line, renaming });
+  }
+
+  /** Adds a clause to the line before, where that has the same conditions and the same reason; null elsewhere. */
+  #joinLast(clause: ClauseRecord, renaming: Renaming, reason: Reason): LineNumber | null {
+    const before = this.#last;
+    if (before === null || JSON.stringify(before.reason) !== JSON.stringify(reason)) return null;
+    const known = [...before.renaming].every(([variable, name]) => (renaming.get(variable) ?? name) === name);
+    const clauses = [...before.clauses, clause];
+    const all = clauses.map(implicationOf);
+    const isOne = all.every(
+      ({ conditions, results }) =>
+        results.length === 1 && JSON.stringify(conditions) === JSON.stringify(all[0]!.conditions),
+    );
+    if (!known || !isOne || clauses.length > MOST_JOINED) return null;
+    this.#last = { clauses, renaming: new Map([...before.renaming, ...renaming]), reason };
+    const sentence = this.#names.statement(clauses, this.#last.renaming);
+    this.#lines[this.#lines.length - 1] = { ...this.#lines.at(-1)!, sentence };
+    return this.#lines.length;
   }
 
   /** Names of variables that come from cited lines unchanged. */
@@ -378,21 +415,23 @@ class Reader {
       laws
         .flatMap((use) => instanceOf(use, this.#steps))
         .filter((literal) => isNegated(literal) && atomOf(literal)[0] === "=")
-        .map((literal) => JSON.stringify(atomOf(literal))),
+        .map(atomKey),
     );
     const isEquation = (use: Use) => {
       const [literal, ...rest] = instanceOf(use, this.#steps);
-      return literal !== undefined && rest.length === 0 && exchanged.has(JSON.stringify(literal));
+      return (
+        literal !== undefined && rest.length === 0 && !isNegated(literal) && exchanged.has(atomKey(literal))
+      );
     };
     const equations = others.filter(isEquation);
     const isExchange = equations.length > 0 && equations.length < others.length;
     const cited = isExchange ? others.filter((use) => !isEquation(use)) : others;
     return {
       kind: "inference",
-      cited: inOrder(cited.map((use) => this.#cite(use, renaming))),
+      cited: citationsOf(cited.map((use) => this.#cite(use, renaming))),
       since: isExchange
         ? equations.map((use) => ({
-            equation: this.#names.clause(instanceOf(use, this.#steps), renaming),
+            equation: this.#names.statement([instanceOf(use, this.#steps)], renaming),
             line: this.#places.get(use.step)!.line,
           }))
         : [],
@@ -400,52 +439,85 @@ class Reader {
     };
   }
 
-  #cite({ step, terms }: Use, renaming: Renaming): Citation {
+  /** What stands for each variable of a cited line. */
+  #cite({ step, terms }: Use, renaming: Renaming): Instance {
     const place = this.#places.get(step)!;
-    const values = variablesOf(this.#steps.get(step)!.clause).flatMap((variable) => {
-      const name = place.renaming.get(variable) ?? variable;
-      const value = this.#names.term(terms.get(variable) ?? variable, renaming);
-      return value === name ? [] : [{ variable: name, value }];
-    });
-    return { line: place.line, values };
+    const values = variablesOf(this.#steps.get(step)!.clause).map((variable): [string, Term] => [
+      place.renaming.get(variable) ?? variable,
+      this.#names.term(terms.get(variable) ?? variable, renaming),
+    ]);
+    return { line: place.line, values: new Map(values) };
   }
 }
 
-/** Facts first, each by line; the same citation once. */
-function inOrder(citations: readonly Citation[]): readonly Citation[] {
-  const seen = new Map(citations.map((one) => [JSON.stringify(one), one]));
-  return [...seen.values()].sort(
-    (a, b) => Number(a.values.length > 0) - Number(b.values.length > 0) || a.line - b.line,
+/** A line with values for some of its variables. */
+interface Instance {
+  readonly line: LineNumber;
+  readonly values: ReadonlyMap<string, Term>;
+}
+
+/** Facts first, each by line; instances of one line that agree are one citation. */
+function citationsOf(instances: readonly Instance[]): readonly Citation[] {
+  const joined: Instance[] = [];
+  for (const one of instances) {
+    const place = joined.findIndex((other) => other.line === one.line && agree(one.values, other.values));
+    if (place === -1) joined.push(one);
+    else joined[place] = { line: one.line, values: new Map([...joined[place]!.values, ...one.values]) };
+  }
+  return joined
+    .map(({ line, values }): Citation => {
+      const special = [...values].filter(([variable, value]) => variable !== value);
+      return {
+        line,
+        values: special
+          .sort(([a], [b]) => orderOf(a) - orderOf(b) || (a < b ? -1 : 1))
+          .map(([variable, value]) => ({ variable, value })),
+      };
+    })
+    .sort((a, b) => Number(a.values.length > 0) - Number(b.values.length > 0) || a.line - b.line);
+}
+
+function agree(left: ReadonlyMap<string, Term>, right: ReadonlyMap<string, Term>): boolean {
+  return [...left].every(
+    ([variable, value]) =>
+      !right.has(variable) || JSON.stringify(right.get(variable)) === JSON.stringify(value),
   );
 }
 
-/** Facts together: those about named elements, and those that are general; the other clauses one by one. */
+/** The usual order of variables. */
+function orderOf(variable: string): number {
+  const place = VARIABLES.indexOf(variable);
+  return place === -1 ? VARIABLES.length : place;
+}
+
+/** The place of a function, `"2.0"`, in its clause form. */
+function placeOf(name: string): number {
+  return Number(name.slice(name.indexOf(".") + 1));
+}
+
+/**
+ * Clauses with the same conditions together, each with one result; facts about named elements apart from general ones.
+ */
 function grouped(
   steps: readonly (readonly [number, Step])[],
 ): readonly (readonly (readonly [number, Step])[])[] {
-  const groups: (readonly (readonly [number, Step])[])[] = [];
-  for (const isGeneral of [false, true]) {
-    const facts = steps.filter(
-      ([, { clause }]) => clause.length === 1 && variablesOf(clause).length > 0 === isGeneral,
-    );
-    for (let at = 0; at < facts.length; at += MOST_JOINED) groups.push(facts.slice(at, at + MOST_JOINED));
+  const groups = new Map<string, (readonly [number, Step])[]>();
+  for (const one of steps) {
+    const [number, { clause }] = one;
+    const { conditions, results } = implicationOf(clause);
+    const isGeneral = variablesOf(clause).length > 0;
+    const key = results.length === 1 ? JSON.stringify([isGeneral, conditions]) : String(number);
+    groups.set(key, [...(groups.get(key) ?? []), one]);
   }
-  return [...groups, ...steps.filter(([, { clause }]) => clause.length !== 1).map((one) => [one])];
+  return [...groups.values()].flatMap((group) => {
+    const parts: (readonly (readonly [number, Step])[])[] = [];
+    for (let at = 0; at < group.length; at += MOST_JOINED) parts.push(group.slice(at, at + MOST_JOINED));
+    return parts;
+  });
 }
 
 function termsOf(clause: ClauseRecord): readonly TermRecord[] {
   return clause.flatMap((literal) => atomTerms(atomOf(literal)));
-}
-
-function termsOfFormula(formula: TermFormulaRecord): readonly TermRecord[] {
-  return formula[0] === "is" || formula[0] === "="
-    ? atomTerms(formula)
-    : partsOf(formula).flatMap(termsOfFormula);
-}
-
-/** All variables that are written in a formula. */
-function variableNames(formula: TermFormulaRecord): readonly string[] {
-  return termsOfFormula(formula).flatMap(termVariables);
 }
 
 function namesFunctionOf(clause: ClauseRecord, formula: number): boolean {
@@ -463,6 +535,7 @@ function promisesOf(formula: TermFormulaRecord, number: number): string {
   return [...new Set(found)].sort().join(" ");
 }
 
+/** Variables for a function of which nothing is known. */
 function placeholders(count: number): readonly string[] {
-  return ["x", "y", "z", "u", "v", "w"].slice(0, count);
+  return Array.from({ length: count }, (_, place) => VARIABLES[place] ?? `x${place}`);
 }

@@ -62,6 +62,9 @@ function readSteps(lines: readonly LineRecord[], formulas: readonly TermFormulaR
     forms.set(formula, form);
     return form[place]!;
   };
+  const obvious = new Set(
+    lines.flatMap((line, number) => (line[0] === "identity" && isObvious(line[1]) ? [number] : [])),
+  );
   const stepOf = (line: LineRecord): Step => {
     switch (line[0]) {
       case "clause": {
@@ -71,7 +74,9 @@ function readSteps(lines: readonly LineRecord[], formulas: readonly TermFormulaR
       case "identity":
         return { clause: line[1], origin: { kind: "identity" } };
       case "infer": {
-        const uses = line[2].map(([step, terms]) => ({ step, terms: new Map(Object.entries(terms)) }));
+        const uses = line[2]
+          .filter(([step]) => !obvious.has(step))
+          .map(([step, terms]) => ({ step, terms: new Map(Object.entries(terms)) }));
         return { clause: line[1], origin: { kind: "infer", uses } };
       }
     }
@@ -219,8 +224,25 @@ export function isNegated(literal: LiteralRecord): boolean {
   return literal[0] === "not";
 }
 
-function atomKey(literal: LiteralRecord): string {
-  return JSON.stringify(atomOf(literal));
+/** The same for an equation and the equation turned round: readers need no step for that. */
+export function atomKey(literal: LiteralRecord): string {
+  const atom = atomOf(literal);
+  if (atom[0] !== "=") return JSON.stringify(atom);
+  return JSON.stringify([
+    "=",
+    ...atom
+      .slice(1)
+      .map((term) => JSON.stringify(term))
+      .sort(),
+  ]);
+}
+
+/** Whether a law of identity says only that everything is itself, or that an equation may be turned round. */
+function isObvious(clause: ClauseRecord): boolean {
+  const [first, second] = clause;
+  if (first === undefined) return false;
+  if (second === undefined) return true;
+  return clause.length === 2 && isNegated(first) !== isNegated(second) && atomKey(first) === atomKey(second);
 }
 
 /** Each once, in the order they occur. */

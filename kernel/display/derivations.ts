@@ -89,8 +89,8 @@ function inferenceParts({ cited, since, byIdentity }: Inference): readonly Inlin
   const parts: Inline[] = [...citedParts(cited)];
   for (const [index, { equation, line }] of since.entries())
     parts.push(index === 0 ? ", since " : " and ", formulaOf(equation), ` (line ${line})`);
-  if (byIdentity) parts.push(parts.length === 0 ? "by the laws of identity" : ", by the laws of identity");
-  return parts;
+  if (parts.length === 0) return ["by the laws of identity"];
+  return byIdentity ? [...parts, ", by the laws of identity"] : parts;
 }
 
 /** `from 5 and 6, and 2 with x = a, y = b`. */

@@ -71,6 +71,22 @@ export function longColumns({ look, head, rows }: TableBlock): readonly boolean[
   );
 }
 
+/** Stands for a space at which no line may end. */
+const HELD = "\u00a0";
+/** Columns that a formula in the middle of prose may take for it to stay in one piece. */
+const UNBROKEN_WIDTH = 24;
+
+/** The text of a cell with its short formulas in one piece. */
+function unbroken(cell: readonly Inline[]): string {
+  return cell
+    .map((piece) => {
+      const text = pieceToText(piece);
+      const isShort = typeof piece !== "string" && displayWidth(text) <= UNBROKEN_WIDTH;
+      return isShort ? text.replaceAll(" ", HELD) : text;
+    })
+    .join("");
+}
+
 /** Columns set under each other, a rule under the head; long cells of prose go on below themselves. */
 function tableToText(table: TableBlock): string {
   const isWrapped = table.look === "prose" || table.look === "derivation";
@@ -79,7 +95,7 @@ function tableToText(table: TableBlock): string {
   const last = head.length - 1;
   const rows = table.rows.map((row) =>
     row.map((cell, column): readonly string[] => {
-      const text = inlineToText(cell);
+      const text = column === last ? unbroken(cell) : inlineToText(cell);
       return isWrapped && column < last ? wrap(text, cellWidth) : [text];
     }),
   );
@@ -99,7 +115,7 @@ function tableToText(table: TableBlock): string {
   for (const row of rows) {
     const cells = row.map((cell, column) =>
       isWrapped && column === last
-        ? wrap(cell[0]!, lastWidth).map((text, at) => (at === 0 ? text : `  ${text}`))
+        ? wrap(cell[0]!, lastWidth).map((text, at) => (at === 0 ? text : `  ${text}`).replaceAll(HELD, " "))
         : cell,
     );
     const height = Math.max(...cells.map((cell) => cell.length));
