@@ -54,8 +54,13 @@ export type Reason =
   | { readonly kind: "definition"; readonly name: string }
   /** The quantifiers moved inside. */
   | { readonly kind: "inside"; readonly from: LineNumber }
-  /** A line with a relation replaced by what the line `by` says that it means, or the other way round. */
-  | { readonly kind: "written-out" | "abbreviated"; readonly from: LineNumber; readonly by: LineNumber }
+  /** A line with a relation, of this name, replaced by what the line `by` says that it means, or the other way round. */
+  | {
+      readonly kind: "written-out" | "abbreviated";
+      readonly from: LineNumber;
+      readonly by: LineNumber;
+      readonly name: string;
+    }
   | { readonly kind: "read-off"; readonly from: LineNumber }
   | Inference;
 
@@ -244,7 +249,17 @@ class Reader {
     }
     const kind = made[0] === "unfold" ? "written-out" : "abbreviated";
     const by = this.#formulaLines.get(made[2])!;
-    this.#formulaLines.set(formula, this.#add(this.#names.formula(record), { kind, from, by }));
+    const name = this.#definedIn(this.#formulas[made[2]]!);
+    this.#formulaLines.set(formula, this.#add(this.#names.formula(record), { kind, from, by, name }));
+  }
+
+  /** The name of the relation that a definition ∀x … (d(x, …) ↔ φ) is about. */
+  #definedIn(definition: TermFormulaRecord): string {
+    let inner = definition;
+    while (inner[0] === "forall") inner = inner[2];
+    if (inner[0] !== "iff" || inner[1][0] !== "is") throw new Error("a definition of no relation");
+    const [, name, ...args] = inner[1];
+    return this.#names.relation(name, args.length).name;
   }
 
   /** The clauses of a formula that are used, in the order in which it says them. */

@@ -75,9 +75,9 @@ function reasonParts({ reason }: ReadingLine): readonly Inline[] {
     case "inside":
       return [`from ${reason.from}, quantifiers moved inside`];
     case "written-out":
-      return [`${reason.from}, with ${reason.by} written out`];
+      return [`from ${reason.from}, with ${reason.name} written out as in ${reason.by}`];
     case "abbreviated":
-      return [`${reason.from}, shortened by ${reason.by}`];
+      return [`from ${reason.from}, with ${reason.name} put in as in ${reason.by}`];
     case "read-off":
       return [`from ${reason.from}`];
     case "inference":

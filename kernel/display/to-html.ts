@@ -100,13 +100,19 @@ function pictureToHtml({ svg, alt }: PictureBlock): string {
   return `<img src="data:image/svg+xml;base64,${data}" alt="${escapeHtml(alt)}" style="max-width:100%">`;
 }
 
-/** Columns that a sentence of a derivation may take on one line, before its reason gets narrow. */
-const SENTENCE_WIDTH = 44;
+/** Columns that a sentence of a derivation, and a formula in its reason, may take to be kept on one line. */
+const SENTENCE_WIDTH = 36;
+const VALUE_WIDTH = 20;
 
-/** Browsers would break a sentence to give its reason more room than it needs. */
-function keptTogether({ look, head }: TableBlock, column: number, cell: readonly Inline[]): string {
-  const isSentence = look === "derivation" && column < head.length - 1;
-  return isSentence && displayWidth(inlineToText(cell)) <= SENTENCE_WIDTH ? ";white-space:nowrap" : "";
+/** A cell of a derivation: browsers would break short formulas before they make the table wider. */
+function derivationCell(cell: readonly Inline[], isLast: boolean): string {
+  const width = isLast ? VALUE_WIDTH : SENTENCE_WIDTH;
+  return cell
+    .map((piece) => {
+      const isShort = typeof piece !== "string" && displayWidth(inlineToText([piece])) <= width;
+      return isShort ? `<span style="white-space:nowrap">${pieceToHtml(piece)}</span>` : pieceToHtml(piece);
+    })
+    .join("");
 }
 
 function tableToHtml(table: TableBlock): string {
@@ -122,15 +128,25 @@ function tableToHtml(table: TableBlock): string {
   // Beside a long last column, browsers would break titles of several words after each of them.
   const isPhrase =
     table.look === "prose" && table.rows.some(([title]) => inlineToText(title ?? []).length > 20);
+  const isReason = (column: number) => table.look === "derivation" && column === table.head.length - 1;
   const headCell = (title: string, column: number) =>
     `<th scope="col" style="text-align:${align};padding:${space};border-bottom:1px solid ${RULE}${
-      isLong[column] ? ";width:16em" : column === 0 && isPhrase ? ";min-width:10em" : ""
+      isLong[column]
+        ? ";width:16em"
+        : isReason(column)
+          ? ";min-width:15em"
+          : column === 0 && isPhrase
+            ? ";min-width:10em"
+            : ""
     }">${escapeHtml(title)}</th>`;
   const rows = table.rows.map((row) => {
     const cells = row.map((cell, column) => {
-      const inner = inlineToHtml(cell);
+      const inner =
+        table.look === "derivation"
+          ? derivationCell(cell, column === table.head.length - 1)
+          : inlineToHtml(cell);
       if (column > 0)
-        return `<td style="text-align:${align};padding:${space};vertical-align:top${keptTogether(table, column, cell)}">${
+        return `<td style="text-align:${align};padding:${space};vertical-align:top">${
           matrix && inner === "1" ? "<strong>1</strong>" : inner
         }</td>`;
       const rule = matrix ? `;border-right:1px solid ${RULE}` : "";
