@@ -141,7 +141,7 @@ class Examiner {
   /** Whether a short search derives a sentence from the theory. */
   #derive(conclusion: Formula): boolean {
     const task = { premises: this.#sentences, conclusion };
-    const search = new DerivationSearch(task, () => new Solver());
+    const search = new DerivationSearch(task, (onDerived) => new Solver({ observer: { onDerived } }));
     while (search.generated < DERIVATION_CLAUSES) {
       const outcome = search.next(this.#meter);
       if (outcome.result === "derived") this.#derived.push({ task, derivation: outcome.derivation });

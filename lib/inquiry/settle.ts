@@ -191,7 +191,12 @@ class Run {
         : open.map(({ label, formula }) => ({ conclusion: formula, label }));
     this.#goals = goals.map(({ conclusion, label }) => {
       const task = { premises: formulas, conclusion };
-      return { task, label, search: new DerivationSearch(task, () => new Solver()), derivation: null };
+      return {
+        task,
+        label,
+        search: new DerivationSearch(task, (onDerived) => new Solver({ observer: { onDerived } })),
+        derivation: null,
+      };
     });
     this.#sought =
       conclusions.length === 0
