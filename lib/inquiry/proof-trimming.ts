@@ -21,6 +21,7 @@ export function trimProof(
   derived: readonly (readonly number[])[],
   meter: Meter,
 ): readonly (readonly number[])[] {
+  if (form.clauses.some((clause) => clause.length === 0)) return [[]];
   const given = form.clauses.length;
   const trimming = new Trimming(form.variables, [...form.clauses, ...derived], meter);
   trimming.derive([], given + derived.length);
