@@ -99,7 +99,7 @@ function relationsOf(sentences: readonly FormulaRecord[]): readonly string[] {
 const MOST_CELLS = 12;
 
 /** All interpretations on a number of points; null when there are too many. */
-function interpretationsOn(size: number, relations: readonly string[]): readonly Interpretation[] | null {
+export function interpretationsOn(size: number, relations: readonly string[]): readonly Interpretation[] | null {
   let cells = 0;
   const firsts = new Map<string, number>();
   for (const relation of relations) {
