@@ -23,7 +23,7 @@ import { HEADER, IDENTITY, TermBank } from "./terms.ts";
 import { UnitIndex } from "./units.ts";
 import { WorkClock } from "./work-clock.ts";
 
-export { DEFAULT_STRATEGY, type Strategy } from "./strategy.ts";
+export * from "./strategy.ts";
 
 export interface SaturationLimits {
   /** Clauses that the run may generate. */

@@ -58,3 +58,33 @@ export const DEFAULT_STRATEGY: Strategy = {
   mostDepth: 24,
   mostLiterals: 40,
 };
+
+/** Always selects, and prefers functions of the goal: for axioms whose clauses are large, as unfolded definitions. */
+export const RARE_STRATEGY: Strategy = { ...DEFAULT_STRATEGY, selectsSparingly: false, precedence: "rare" };
+
+/**
+ * No ordering of literals and terms that stay shallow: for long clauses and nested witnesses, where the default drowns
+ * in deep terms. Not complete.
+ */
+export const SHALLOW_STRATEGY: Strategy = {
+  ...DEFAULT_STRATEGY,
+  ordering: "none",
+  precedence: "frequent",
+  literalWeight: 0,
+  functionWeight: 5,
+  goalFunctionWeight: 3,
+  variableWeight: 3,
+  goalFactor: 1,
+  otherFactor: 4,
+  mostDepth: 4,
+};
+
+/** Only what comes from the negated conclusion: for many premises of which few matter. Not complete. */
+export const SUPPORTED_STRATEGY: Strategy = {
+  ...DEFAULT_STRATEGY,
+  selectsSparingly: false,
+  isSupported: true,
+};
+
+/** No selection: for cases that are finite and ground after some steps. */
+export const UNSELECTED_STRATEGY: Strategy = { ...DEFAULT_STRATEGY, selection: "none" };
