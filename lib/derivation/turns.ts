@@ -103,7 +103,8 @@ export class DerivationSearch {
     if (known !== undefined) return known;
     const prepared = prepareTurn(this.#task, preparation);
     if (prepared === null) return null;
-    const text = JSON.stringify(prepared.task.clauses.map(({ clause, goal }) => [clause, goal]));
+    const clauses = prepared.task.clauses.map(({ clause, goal }) => [clause, goal]);
+    const text = JSON.stringify([prepared.isComplete, clauses]);
     const same = [...this.#prepared.values()].find((other) => other.text === text);
     const once = same ?? {
       number: this.#prepared.size,
