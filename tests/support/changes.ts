@@ -19,16 +19,16 @@ const WORDS = [
 const MORE = ["independent", "redundant", "incomparable", "stronger", "different", "open", "entails", "", 1];
 
 /**
- * All copies of a value with one leaf, key or list member changed, left out or doubled.
- * @param words put in place of words
+ * All copies of a value with one leaf, key or list member changed, left out, doubled or put first.
+ * @param wordsFor what is put in place of a word
  */
 export function* changes(
   value: unknown,
-  words: readonly unknown[] = [...WORDS, ...MORE],
+  wordsFor: () => readonly unknown[] = () => [...WORDS, ...MORE],
 ): Generator<unknown> {
   if (Array.isArray(value)) {
     for (const [index, member] of value.entries()) {
-      for (const changed of changes(member, words)) yield value.with(index, changed);
+      for (const changed of changes(member, wordsFor)) yield value.with(index, changed);
       yield value.toSpliced(index, 1);
       yield value.toSpliced(index, 0, member);
       if (index > 0) yield value.with(index, value[0]).with(0, member);
@@ -36,13 +36,13 @@ export function* changes(
     yield [];
   } else if (typeof value === "object" && value !== null) {
     for (const [key, member] of Object.entries(value)) {
-      for (const changed of changes(member, words)) yield { ...value, [key]: changed };
+      for (const changed of changes(member, wordsFor)) yield { ...value, [key]: changed };
       const { [key]: _, ...rest } = value as Record<string, unknown>;
       yield rest;
     }
     yield { ...value, foreign: 1 };
   } else if (typeof value === "number") yield* [value + 1, value - 1, -value, 0.5, null, `${value}`];
-  else if (typeof value === "string") yield* words.filter((word) => word !== value);
+  else if (typeof value === "string") yield* wordsFor().filter((word) => word !== value);
   else yield* ["something", 0];
 }
 

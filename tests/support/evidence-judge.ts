@@ -19,7 +19,7 @@ export interface Interpretation {
   readonly holds: (relation: string, points: readonly number[]) => boolean;
   readonly value: (name: string, points: readonly number[]) => number;
 }
-type Values = ReadonlyMap<string, number>;
+type Values = Pick<ReadonlyMap<string, number>, "get">;
 
 export function isTrue(
   formula: TermFormulaRecord,
@@ -27,7 +27,7 @@ export function isTrue(
   values: Values = new Map(),
 ): boolean {
   const within = (variable: string, body: TermFormulaRecord) => (point: number) =>
-    isTrue(body, over, new Map(values).set(variable, point));
+    isTrue(body, over, { get: (name) => (name === variable ? point : values.get(name)) });
   const points = () => Array.from({ length: over.size }, (_, point) => point);
   switch (formula[0]) {
     case "true":
@@ -99,7 +99,10 @@ function relationsOf(sentences: readonly FormulaRecord[]): readonly string[] {
 const MOST_CELLS = 12;
 
 /** All interpretations on a number of points; null when there are too many. */
-export function interpretationsOn(size: number, relations: readonly string[]): readonly Interpretation[] | null {
+export function interpretationsOn(
+  size: number,
+  relations: readonly string[],
+): readonly Interpretation[] | null {
   let cells = 0;
   const firsts = new Map<string, number>();
   for (const relation of relations) {
