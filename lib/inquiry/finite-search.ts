@@ -100,8 +100,8 @@ export class FiniteSearch {
     } finally {
       before.settle();
       complete.settle();
-      // Of an interrupt the rest of a question must know.
-      if (this.#meter.ended === "interrupted") this.#ended = "interrupted";
+      // Of an interrupt the rest of a question must know. A part that was told to stop does not know why.
+      if (this.#ended === "interrupted" || this.#meter.ended === "interrupted") this.#ended = complete.ended;
     }
   }
 

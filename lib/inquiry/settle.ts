@@ -5,7 +5,7 @@
 import type { Structure } from "../carriers/structure.ts";
 import type { Derivation, DerivationTask } from "../derivation/derive.ts";
 import { DerivationSearch } from "../derivation/turns.ts";
-import { recordFormula } from "../evidence/record.ts";
+import { recordFormula } from "../logic/formula-records.ts";
 import { and, type Formula, not } from "../logic/formula.ts";
 import { type EndReason, Meter, WorkEnded } from "../logic/meter.ts";
 import { MeterShare } from "../logic/share.ts";
@@ -313,7 +313,7 @@ class Run {
     } catch (problem) {
       // That the share ended is no reason to stop.
       if (!(problem instanceof WorkEnded) || share.ended === "interrupted") throw problem;
-      this.#ended = problem.reason;
+      this.#ended = share.ended ?? problem.reason;
     } finally {
       share.settle();
     }
