@@ -1,7 +1,7 @@
 /** Formulas made of formulas and clause forms: they say what they should, by trying all small structures. */
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { atomOf, clauseForm, simplifyClause } from "../lib/evidence/clause-form.ts";
+import { clauseForm, simplifyClause } from "../lib/evidence/clause-form.ts";
 import type {
   AtomRecord,
   ClauseRecord,
@@ -9,9 +9,16 @@ import type {
   TermFormulaRecord,
   TermRecord,
 } from "../lib/evidence/format.ts";
-import { atomTerms, freeVariables, partsOf, sameUpToNames, termVariables } from "../lib/evidence/formulas.ts";
-import { miniscopeFormula, unfoldFormula } from "../lib/evidence/made-formulas.ts";
-import { recordFormula } from "../lib/evidence/record.ts";
+import {
+  atomOf,
+  atomTerms,
+  freeVariables,
+  partsOf,
+  recordFormula,
+  sameUpToNames,
+  termVariables,
+} from "../lib/logic/formula-records.ts";
+import { miniscopeFormula, unfoldFormula } from "../lib/logic/made-formulas.ts";
 import { type Interpretation, interpretationsOn, isTrue, isTrueClause } from "./support/evidence-judge.ts";
 import { sentences } from "./support/random-formulas.ts";
 

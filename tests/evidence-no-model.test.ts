@@ -1,13 +1,12 @@
 /** "No model of size n": the propositional form by brute force, clause proofs of published facts, and wrong proofs. */
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { FormulaTooLarge } from "../lib/evidence/formulas.ts";
 import { checkNoModel, groundForm } from "../lib/evidence/ground-form.ts";
 import { Propagation } from "../lib/evidence/propagation.ts";
 import { Rejected } from "../lib/evidence/read.ts";
-import { recordFormula } from "../lib/evidence/record.ts";
 import { proveNoModel } from "../lib/inquiry/no-model.ts";
 import { and, atom, equal, exists, type Formula, forall, implies, not, or } from "../lib/logic/formula.ts";
+import { FormulaTooLarge, recordFormula } from "../lib/logic/formula-records.ts";
 import { Meter } from "../lib/logic/meter.ts";
 import { Solver } from "../lib/structures/sat/solver.ts";
 import { allInterpretations, isTrue } from "./support/brute-force.ts";

@@ -9,10 +9,10 @@ import type {
   StructureRecord,
   TheoryRecord,
 } from "../../lib/evidence/format.ts";
-import { recordFormula } from "../../lib/evidence/record.ts";
 import { dualsOf } from "../../lib/inquiry/dualise.ts";
 import type { Statement } from "../../lib/language/statements.ts";
 import { type Formula, not } from "../../lib/logic/formula.ts";
+import { recordFormula } from "../../lib/logic/formula-records.ts";
 import { findProperty, propertyOf } from "../../lib/logic/properties.ts";
 import { type Theory, theorySignature } from "../../lib/logic/theory.ts";
 

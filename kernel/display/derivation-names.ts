@@ -2,7 +2,7 @@
  * Names for what a derivation brings in, and its formulas and terms as they are printed. Elements that an ∃ promises
  * are called a, b, c, …, or f(x), g(x), … where they depend on others; relations that were defined on the way D, E, …
  */
-import { atomOf } from "../../lib/evidence/clause-form.ts";
+
 import type {
   AtomRecord,
   ClauseRecord,
@@ -10,15 +10,10 @@ import type {
   TermFormulaRecord,
   TermRecord,
 } from "../../lib/evidence/format.ts";
-import {
-  atomTerms,
-  Growth,
-  negationNormalForm,
-  partsOf,
-  termVariables,
-} from "../../lib/evidence/formulas.ts";
 import type { FunctionSymbol, Term, TermFormula } from "../../lib/logic/clausal.ts";
 import { type Formula, type RelationSymbol, relationsOf, variablesOf } from "../../lib/logic/formula.ts";
+import { atomOf, atomTerms, Growth, partsOf, termVariables } from "../../lib/logic/formula-records.ts";
+import { negationNormalForm } from "../../lib/logic/made-formulas.ts";
 import { isNegated } from "./derivation-steps.ts";
 
 /** Variables in the order in which they are taken. */

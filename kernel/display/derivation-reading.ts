@@ -3,18 +3,18 @@
  * for the elements that they promise, then what follows, down to a contradiction. Each line says what the evidence
  * says at that place; only names and the grouping are made here.
  */
-import { atomOf, clauseForm } from "../../lib/evidence/clause-form.ts";
+
+import { clauseForm } from "../../lib/evidence/clause-form.ts";
 import type {
   ClauseRecord,
   DerivationFact,
   TermFormulaRecord,
   TermRecord,
 } from "../../lib/evidence/format.ts";
-import { atomTerms } from "../../lib/evidence/formulas.ts";
-import { miniscopeFormula, unfoldFormula } from "../../lib/evidence/made-formulas.ts";
-import { recordFormula } from "../../lib/evidence/record.ts";
 import type { ShownDerivation } from "../../lib/inquiry/answer.ts";
 import type { Term, TermFormula } from "../../lib/logic/clausal.ts";
+import { atomOf, atomTerms, recordFormula } from "../../lib/logic/formula-records.ts";
+import { miniscopeFormula, unfoldFormula } from "../../lib/logic/made-formulas.ts";
 import {
   DerivationNames,
   functionsOfTerm,

@@ -4,7 +4,8 @@
  * drawn into the step that needs them. No clause is changed by that: what is left is some of the derivation's clauses,
  * each of which follows from the ones it cites as the format of evidence demands.
  */
-import { atomOf, clauseForm, simplifyClause, substituteInClause } from "../../lib/evidence/clause-form.ts";
+
+import { clauseForm, simplifyClause } from "../../lib/evidence/clause-form.ts";
 import type {
   ClauseRecord,
   LineRecord,
@@ -12,7 +13,13 @@ import type {
   TermFormulaRecord,
   TermRecord,
 } from "../../lib/evidence/format.ts";
-import { atomTerms, substituteInTerm, termVariables } from "../../lib/evidence/formulas.ts";
+import {
+  atomOf,
+  atomTerms,
+  substituteInClause,
+  substituteInTerm,
+  termVariables,
+} from "../../lib/logic/formula-records.ts";
 
 export type Terms = ReadonlyMap<string, TermRecord>;
 

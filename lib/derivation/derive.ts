@@ -1,7 +1,7 @@
 /** Derivations of a conclusion from premises, as inquiries ask for them, and one attempt at one. */
 import type { DerivationFact } from "../evidence/format.ts";
-import { FormulaTooLarge } from "../evidence/formulas.ts";
 import type { Formula } from "../logic/formula.ts";
+import { FormulaTooLarge } from "../logic/formula-records.ts";
 import type { Meter } from "../logic/meter.ts";
 import { assemble } from "./assemble.ts";
 import type { CreateSolver } from "./ground-solver.ts";

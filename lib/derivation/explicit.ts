@@ -3,8 +3,9 @@
  * shape ∀x … (R(x, …) ↔ φ) are abbreviations; a search that starts from what they abbreviate has fewer clauses to
  * combine, and shorter ones.
  */
-import { freeVariables } from "../evidence/clause-form.ts";
+
 import type { TermFormulaRecord } from "../evidence/format.ts";
+import { freeVariables } from "../logic/formula-records.ts";
 
 /** What a formula ∀x … (R(x, …) ↔ φ) defines, R not being in φ. */
 export interface ExplicitDefinition {

@@ -2,8 +2,9 @@
  * Names for parts of formulas: a fresh relation in place of a part, so that clause forms stay small or a formula shows
  * its propositional structure. Each name comes with a definition, from which the formula can be had back.
  */
-import { freeVariables } from "../evidence/clause-form.ts";
+
 import type { TermFormulaRecord } from "../evidence/format.ts";
+import { freeVariables } from "../logic/formula-records.ts";
 
 /** The part for which a relation was put, and the formula after that. */
 export interface NamedPart {

@@ -5,11 +5,13 @@
  */
 import { clauseForm } from "../evidence/clause-form.ts";
 import type { ClauseRecord, MadeFormula, TermFormulaRecord } from "../evidence/format.ts";
-import { miniscopeFormula, unfoldFormula } from "../evidence/made-formulas.ts";
-import { recordFormula } from "../evidence/record.ts";
 import type { Formula } from "../logic/formula.ts";
+import { recordFormula } from "../logic/formula-records.ts";
+import { miniscopeFormula, unfoldFormula } from "../logic/made-formulas.ts";
+import { condense } from "./condense.ts";
 import type { DerivationTask } from "./derive.ts";
 import { explicitDefinition, orderDefinitions, relationsIn } from "./explicit.ts";
+import type { Substitution } from "./lines.ts";
 import { type NamedPart, nameClosedParts, nameLargeParts } from "./naming.ts";
 import type { ClauseTask, InputClause } from "./refutation.ts";
 
@@ -39,7 +41,10 @@ export interface PreparedFormula {
 }
 
 export interface Prepared {
+  /** Its clauses are condensed. */
   readonly task: ClauseTask;
+  /** By input clause: what stands in the clause form, and how it was condensed; null where it is the same. */
+  readonly condensed: readonly ({ readonly from: ClauseRecord; readonly terms: Substitution } | null)[];
   readonly formulas: readonly PreparedFormula[];
   /** Whether the clauses say all that the premises and the negated conclusion say, as far as models are concerned. */
   readonly isComplete: boolean;
@@ -88,8 +93,15 @@ export function prepare(task: DerivationTask, preparation: Preparation): Prepare
   if (preparation.miniscope) preparer.miniscope();
   if (preparation.letters) preparer.nameClosed();
   else preparer.nameLarge(preparation.mostClauses);
+  const input = preparer.clauses().map((one) => ({ one, smaller: condense(one.clause) }));
   return {
-    task: { clauses: preparer.clauses(), formulas: preparer.formulas.length },
+    task: {
+      clauses: input.map(({ one, smaller }) => (smaller === null ? one : { ...one, clause: smaller.clause })),
+      formulas: preparer.formulas.length,
+    },
+    condensed: input.map(({ one, smaller }) =>
+      smaller === null ? null : { from: one.clause, terms: smaller.terms },
+    ),
     formulas: preparer.formulas,
     isComplete: !preparation.letters && preparation.premises.length === task.premises.length,
   };

@@ -2,8 +2,9 @@
  * Derivations shortened for reading: what is not needed goes, as do lines that repeat another one or merely put terms in
  * place of its variables, and lines on the way to a shorter one that is seen at once.
  */
-import { substituteInClause, substituteInTerm } from "../evidence/clause-form.ts";
+
 import type { ClauseRecord, TermRecord } from "../evidence/format.ts";
+import { substituteInClause, substituteInTerm } from "../logic/formula-records.ts";
 import {
   addVariables,
   clauseVariables,

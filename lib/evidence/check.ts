@@ -3,11 +3,12 @@
  * search, and trusts nothing that a search has written. What it relies on is this folder, `lib/carriers` and
  * `lib/logic`.
  */
+
+import { FormulaTooLarge } from "../logic/formula-records.ts";
 import { Meter, WorkEnded } from "../logic/meter.ts";
 import { checkDerivation } from "./derivation.ts";
 import { isTrueIn } from "./evaluate.ts";
 import type { Fact, FormulaRecord, StructureFact } from "./format.ts";
-import { FormulaTooLarge } from "./formulas.ts";
 
 import { checkNoModel } from "./ground-form.ts";
 import { Rejected, readEvidence, reject } from "./read.ts";

@@ -3,35 +3,22 @@
  * searches use it too, so that both mean the same by a clause and a function; that is safe, since the checker works
  * it all out again.
  */
-import type { AtomRecord, ClauseRecord, LiteralRecord, TermFormulaRecord, TermRecord } from "./format.ts";
+
 import {
+  atomOf,
   freeVariables,
   freshName,
   Growth,
-  negationNormalForm,
   partsOf,
-  substituteInAtom,
+  substituteInClause,
   type Terms,
   termVariables,
-} from "./formulas.ts";
-
-export { atomTerms, freeVariables, substituteInAtom, substituteInTerm, termVariables } from "./formulas.ts";
+} from "../logic/formula-records.ts";
+import { negationNormalForm } from "../logic/made-formulas.ts";
+import type { ClauseRecord, LiteralRecord, TermFormulaRecord, TermRecord } from "./format.ts";
 
 /** Parts and literals beyond which there is no clause form; those written down on the way to it count. */
 export const LARGEST_CLAUSE_FORM = 50_000;
-
-export function substituteInClause(clause: ClauseRecord, terms: Terms, growth?: Growth): ClauseRecord {
-  return clause.map((literal) => changeAtom(literal, (atom) => substituteInAtom(atom, terms, growth)));
-}
-
-/** The literal with another atom, negated if it is. */
-export function changeAtom(literal: LiteralRecord, change: (atom: AtomRecord) => AtomRecord): LiteralRecord {
-  return literal[0] === "not" ? ["not", change(literal[1])] : change(literal);
-}
-
-export function atomOf(literal: LiteralRecord): AtomRecord {
-  return literal[0] === "not" ? literal[1] : literal;
-}
 
 /** A clause by keys of its literals: `+` or `-`, and the JSON text of the atom. */
 type KeyedClause = Map<string, LiteralRecord>;

@@ -9,8 +9,22 @@
  * Relations are told apart by name and places, functions by name and number of arguments; a function that no clause
  * form brings in may be interpreted in any way.
  */
+
+import {
+  atomOf,
+  atomTerms,
+  changeAtom,
+  changeTerms,
+  freeVariables,
+  Growth,
+  partsOf,
+  sameUpToNames,
+  substituteInClause,
+  substituteInTerm,
+} from "../logic/formula-records.ts";
+import { miniscopeFormula, unfoldFormula } from "../logic/made-formulas.ts";
 import type { Meter } from "../logic/meter.ts";
-import { atomOf, changeAtom, clauseForm, simplifyClause, substituteInClause } from "./clause-form.ts";
+import { clauseForm, simplifyClause } from "./clause-form.ts";
 import type {
   AtomRecord,
   ClauseRecord,
@@ -21,16 +35,6 @@ import type {
   TermFormulaRecord,
   TermRecord,
 } from "./format.ts";
-import {
-  atomTerms,
-  changeTerms,
-  freeVariables,
-  Growth,
-  partsOf,
-  sameUpToNames,
-  substituteInTerm,
-} from "./formulas.ts";
-import { miniscopeFormula, unfoldFormula } from "./made-formulas.ts";
 import { Propagation } from "./propagation.ts";
 import { reject } from "./read.ts";
 

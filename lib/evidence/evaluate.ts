@@ -5,9 +5,9 @@
  */
 import type { Carrier } from "../carriers/carrier.ts";
 import { buildCarrier } from "../carriers/structure.ts";
+import { atomTerms, partsOf } from "../logic/formula-records.ts";
 import type { Meter } from "../logic/meter.ts";
 import type { FormulaRecord, StructureRecord } from "./format.ts";
-import { atomTerms, partsOf } from "./formulas.ts";
 import { reject } from "./read.ts";
 
 /**

@@ -20,29 +20,13 @@
  * at which it holds, in ascending order. On the carrier `{"kind": "points", "size": n}` the kind of a tuple of
  * points p₁ … p_k, counted from 1, is the number (p₁ − 1)·n^(k−1) + … + (p_k − 1).
  */
+import type { ClauseRecord, FormulaRecord, TermFormulaRecord, TermRecord } from "../logic/formula-records.ts";
 import type { CarrierDescription } from "../logic/structure-definition.ts";
+
+export type * from "../logic/formula-records.ts";
 
 export const EVIDENCE_FORMAT = "twoplace-evidence";
 export const EVIDENCE_VERSION = 1;
-
-/** A sentence: closed, its terms are variables, its atoms have arguments. */
-export type FormulaRecord = TermFormulaRecord;
-
-/** A variable, or a function with its arguments: `["2.0", "x"]`. Functions come in by clause forms alone. */
-export type TermRecord = string | readonly [string, ...TermRecord[]];
-/** `["is", "R", t, …]` or `["=", t, t]`. A relation that a derivation defines may have no arguments. */
-export type AtomRecord = readonly ["is", string, ...TermRecord[]] | readonly ["=", TermRecord, TermRecord];
-export type LiteralRecord = AtomRecord | readonly ["not", AtomRecord];
-/** The disjunction of its literals, for all values of its variables; false when there are none. */
-export type ClauseRecord = readonly LiteralRecord[];
-/** A formula whose atoms may have terms and no arguments. */
-export type TermFormulaRecord =
-  | AtomRecord
-  | readonly ["true" | "false"]
-  | readonly ["not", TermFormulaRecord]
-  | readonly ["and" | "or", ...TermFormulaRecord[]]
-  | readonly ["implies" | "iff", TermFormulaRecord, TermFormulaRecord]
-  | readonly ["forall" | "exists", string, TermFormulaRecord];
 
 export interface TableRecord {
   readonly places: number;

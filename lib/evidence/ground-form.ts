@@ -2,10 +2,11 @@
  * "No model on n points": the propositional form of "these sentences hold on n points", and the check of a clause proof
  * that nothing satisfies it. The search proves things of the very clauses that are made here.
  */
+
+import { atomTerms, freeVariables, Growth, partsOf } from "../logic/formula-records.ts";
+import { miniscopeFormula } from "../logic/made-formulas.ts";
 import type { Meter } from "../logic/meter.ts";
 import type { FormulaRecord, NoModelFact } from "./format.ts";
-import { atomTerms, freeVariables, Growth, partsOf } from "./formulas.ts";
-import { miniscopeFormula } from "./made-formulas.ts";
 import { Propagation } from "./propagation.ts";
 import { reject } from "./read.ts";
 

@@ -2,6 +2,8 @@
  * Reading evidence: from JSON of unknown origin to typed records, or a refusal that names the place. Nothing that
  * is not in the format passes: no foreign keys, no missing ones, no sentence with free variables.
  */
+
+import { freeVariables } from "../logic/formula-records.ts";
 import { LARGEST_DOMAIN } from "../logic/structure-definition.ts";
 import {
   EVIDENCE_FORMAT,
@@ -10,7 +12,6 @@ import {
   type TermFormulaRecord,
   THEORY_QUESTIONS,
 } from "./format.ts";
-import { freeVariables } from "./formulas.ts";
 
 /** Thrown while reading and checking, caught by the checker: evidence that does not bear out its verdict. */
 export class Rejected extends Error {}

@@ -1,32 +1,8 @@
-/** Writing evidence: formulas and structures as records, and the digest of a question. */
+/** Writing evidence: structures as records, and the digest of a question. */
 import { sha256 } from "@noble/hashes/sha2.js";
 import { bytesToHex, utf8ToBytes } from "@noble/hashes/utils.js";
 import type { Structure } from "../carriers/structure.ts";
-import type { Formula } from "../logic/formula.ts";
 import type { FormulaRecord, QuestionRecord, StructureRecord, TableRecord } from "./format.ts";
-
-export function recordFormula(formula: Formula): FormulaRecord {
-  switch (formula.kind) {
-    case "true":
-    case "false":
-      return [formula.kind];
-    case "atom":
-      return ["is", formula.relation.name, ...formula.args];
-    case "equal":
-      return ["=", formula.left, formula.right];
-    case "not":
-      return ["not", recordFormula(formula.body)];
-    case "and":
-    case "or":
-      return [formula.kind, ...formula.parts.map(recordFormula)];
-    case "implies":
-    case "iff":
-      return [formula.kind, recordFormula(formula.left), recordFormula(formula.right)];
-    case "forall":
-    case "exists":
-      return [formula.kind, formula.variable, recordFormula(formula.body)];
-  }
-}
 
 export function recordStructure(structure: Structure): StructureRecord {
   const tables: Record<string, TableRecord> = {};

@@ -13,8 +13,9 @@ import {
   type TheoryRecord,
   type VerdictRecord,
 } from "../evidence/format.ts";
-import { digestOf, recordFormula, recordStructure } from "../evidence/record.ts";
+import { digestOf, recordStructure } from "../evidence/record.ts";
 import type { Formula } from "../logic/formula.ts";
+import { recordFormula } from "../logic/formula-records.ts";
 
 /** Collects the sentences and facts of one question's evidence. */
 export class EvidenceWriter {

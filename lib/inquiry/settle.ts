@@ -5,8 +5,8 @@
 import type { Structure } from "../carriers/structure.ts";
 import type { Derivation, DerivationTask } from "../derivation/derive.ts";
 import { DerivationSearch } from "../derivation/turns.ts";
-import { recordFormula } from "../logic/formula-records.ts";
 import { and, type Formula, not } from "../logic/formula.ts";
+import { recordFormula } from "../logic/formula-records.ts";
 import { type EndReason, Meter, WorkEnded } from "../logic/meter.ts";
 import { MeterShare } from "../logic/share.ts";
 import type { Axiom, Signature } from "../logic/theory.ts";

@@ -1,10 +1,11 @@
 /** Derivations written by hand, as the search could have found them; the checker accepts each. */
 import { type DerivationFact, EVIDENCE_FORMAT, EVIDENCE_VERSION } from "../../lib/evidence/format.ts";
-import { digestOf, recordFormula } from "../../lib/evidence/record.ts";
+import { digestOf } from "../../lib/evidence/record.ts";
 import type { ShownDerivation } from "../../lib/inquiry/answer.ts";
 import { parseFormula } from "../../lib/language/parser.ts";
 import { emptyScope, type Scope } from "../../lib/language/statements.ts";
 import type { Formula } from "../../lib/logic/formula.ts";
+import { recordFormula } from "../../lib/logic/formula-records.ts";
 
 /** A sentence of cell text. */
 export function sentence(text: string, scope: Scope = emptyScope): Formula {

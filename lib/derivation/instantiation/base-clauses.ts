@@ -1,6 +1,7 @@
 /** What instances are made of: the input clauses, and clauses that say what identity is. */
-import { atomOf, atomTerms } from "../../evidence/clause-form.ts";
+
 import type { ClauseRecord, TermRecord } from "../../evidence/format.ts";
+import { atomOf, atomTerms } from "../../logic/formula-records.ts";
 import { clauseVariables } from "../lines.ts";
 import type { InputClause } from "../refutation.ts";
 

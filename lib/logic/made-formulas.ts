@@ -1,9 +1,61 @@
 /**
- * Formulas made of formulas: unfolding a definition, and miniscoping. The searches use both to make what they start
- * from, the checker to make it again.
+ * Formulas made of formulas, as records: negation normal form, miniscoping, and the unfolding of definitions. The searches
+ * use them to make what they start from, the checker of evidence to make it again.
  */
-import type { TermFormulaRecord, TermRecord } from "./format.ts";
-import { freeVariables, Growth, negationNormalForm, partsOf, substitute, withParts } from "./formulas.ts";
+import {
+  freeVariables,
+  Growth,
+  partsOf,
+  substitute,
+  type TermFormulaRecord,
+  type TermRecord,
+  withParts,
+} from "./formula-records.ts";
+
+/**
+ * Negation normal form: ¬ at atoms only, of the other connectives only ∧ and ∨.
+ * @param positive false for that of the negation
+ * @throws FormulaTooLarge
+ */
+export function negationNormalForm(
+  formula: TermFormulaRecord,
+  positive: boolean,
+  growth: Growth,
+): TermFormulaRecord {
+  growth.add();
+  const part = (inner: TermFormulaRecord, sign: boolean) => negationNormalForm(inner, sign, growth);
+  const either = (yes: "and" | "true" | "forall", kind: string) => (kind === yes) === positive;
+  switch (formula[0]) {
+    case "is":
+    case "=":
+      return positive ? formula : ["not", formula];
+    case "true":
+    case "false":
+      return [either("true", formula[0]) ? "true" : "false"];
+    case "not":
+      return part(formula[1], !positive);
+    case "and":
+    case "or":
+      return [
+        either("and", formula[0]) ? "and" : "or",
+        ...partsOf(formula).map((one) => part(one, positive)),
+      ];
+    case "implies":
+      return [positive ? "or" : "and", part(formula[1], !positive), part(formula[2], positive)];
+    case "iff": {
+      // ¬(φ ↔ ψ) is ¬φ ↔ ψ.
+      const [, left, right] = formula;
+      return [
+        "and",
+        ["or", part(left, !positive), part(right, true)],
+        ["or", part(left, positive), part(right, false)],
+      ];
+    }
+    case "forall":
+    case "exists":
+      return [either("forall", formula[0]) ? "forall" : "exists", formula[1], part(formula[2], positive)];
+  }
+}
 
 /** What ∀x … (d(x, …) ↔ φ) says of d. */
 interface Meaning {

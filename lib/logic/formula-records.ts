@@ -1,9 +1,55 @@
 /**
- * Formulas as records: their parts, free variables, substitution, and sameness up to names of bound variables. The
- * checker works on nothing else, so that what it reads is what it reasons about.
+ * Formulas, terms and clauses as records: nested lists, as evidence has them. Other than in `formula.ts` there are
+ * functions, which clause forms bring in; and since a record is JSON, what is read is what is reasoned about.
+ *
+ * A formula is `["is", "R", "x", "y"]`, `["=", "x", "y"]`, `["true"]`, `["false"]`, `["not", φ]`, `["and", φ, ψ, …]`,
+ * `["or", φ, ψ, …]`, `["implies", φ, ψ]`, `["iff", φ, ψ]`, `["forall", "x", φ]` or `["exists", "x", φ]`.
  */
-import type { Meter } from "../logic/meter.ts";
-import type { AtomRecord, TermFormulaRecord, TermRecord } from "./format.ts";
+import type { Formula } from "./formula.ts";
+import type { Meter } from "./meter.ts";
+
+/** A variable, or a function with its arguments: `["2.0", "x"]`. Functions come in by clause forms alone. */
+export type TermRecord = string | readonly [string, ...TermRecord[]];
+/** `["is", "R", t, …]` or `["=", t, t]`. A relation that a derivation defines may have no arguments. */
+export type AtomRecord = readonly ["is", string, ...TermRecord[]] | readonly ["=", TermRecord, TermRecord];
+export type LiteralRecord = AtomRecord | readonly ["not", AtomRecord];
+/** The disjunction of its literals, for all values of its variables; false when there are none. */
+export type ClauseRecord = readonly LiteralRecord[];
+/** A formula whose atoms may have terms and no arguments. */
+export type TermFormulaRecord =
+  | AtomRecord
+  | readonly ["true" | "false"]
+  | readonly ["not", TermFormulaRecord]
+  | readonly ["and" | "or", ...TermFormulaRecord[]]
+  | readonly ["implies" | "iff", TermFormulaRecord, TermFormulaRecord]
+  | readonly ["forall" | "exists", string, TermFormulaRecord];
+
+/** A sentence: closed, its terms are variables, its atoms have arguments. */
+export type FormulaRecord = TermFormulaRecord;
+
+/** The record of a formula. */
+export function recordFormula(formula: Formula): FormulaRecord {
+  switch (formula.kind) {
+    case "true":
+    case "false":
+      return [formula.kind];
+    case "atom":
+      return ["is", formula.relation.name, ...formula.args];
+    case "equal":
+      return ["=", formula.left, formula.right];
+    case "not":
+      return ["not", recordFormula(formula.body)];
+    case "and":
+    case "or":
+      return [formula.kind, ...formula.parts.map(recordFormula)];
+    case "implies":
+    case "iff":
+      return [formula.kind, recordFormula(formula.left), recordFormula(formula.right)];
+    case "forall":
+    case "exists":
+      return [formula.kind, formula.variable, recordFormula(formula.body)];
+  }
+}
 
 /** What stands in place of variables. */
 export type Terms = ReadonlyMap<string, TermRecord>;
@@ -55,6 +101,19 @@ export function changeTerms(atom: AtomRecord, change: (term: TermRecord) => Term
   if (atom[0] === "=") return ["=", change(atom[1]), change(atom[2])];
   const [head, name, ...args] = atom;
   return [head, name, ...args.map(change)];
+}
+
+export function substituteInClause(clause: ClauseRecord, terms: Terms, growth?: Growth): ClauseRecord {
+  return clause.map((literal) => changeAtom(literal, (atom) => substituteInAtom(atom, terms, growth)));
+}
+
+/** The literal with another atom, negated if it is. */
+export function changeAtom(literal: LiteralRecord, change: (atom: AtomRecord) => AtomRecord): LiteralRecord {
+  return literal[0] === "not" ? ["not", change(literal[1])] : change(literal);
+}
+
+export function atomOf(literal: LiteralRecord): AtomRecord {
+  return literal[0] === "not" ? literal[1] : literal;
 }
 
 export function termVariables(term: TermRecord): readonly string[] {
@@ -150,49 +209,4 @@ function renamed(formula: TermFormulaRecord, depth: number, names: Terms): TermF
   const inner = isQuantified ? new Map(names).set(variable as string, `${depth}`) : names;
   const parts = partsOf(formula).map((part) => renamed(part, isQuantified ? depth + 1 : depth, inner));
   return isQuantified ? [kind, `${depth}`, parts[0]!] : withParts(formula, parts);
-}
-
-/**
- * Negation normal form: ¬ at atoms only, of the other connectives only ∧ and ∨.
- * @param positive false for that of the negation
- * @throws FormulaTooLarge
- */
-export function negationNormalForm(
-  formula: TermFormulaRecord,
-  positive: boolean,
-  growth: Growth,
-): TermFormulaRecord {
-  growth.add();
-  const part = (inner: TermFormulaRecord, sign: boolean) => negationNormalForm(inner, sign, growth);
-  const either = (yes: "and" | "true" | "forall", kind: string) => (kind === yes) === positive;
-  switch (formula[0]) {
-    case "is":
-    case "=":
-      return positive ? formula : ["not", formula];
-    case "true":
-    case "false":
-      return [either("true", formula[0]) ? "true" : "false"];
-    case "not":
-      return part(formula[1], !positive);
-    case "and":
-    case "or":
-      return [
-        either("and", formula[0]) ? "and" : "or",
-        ...partsOf(formula).map((one) => part(one, positive)),
-      ];
-    case "implies":
-      return [positive ? "or" : "and", part(formula[1], !positive), part(formula[2], positive)];
-    case "iff": {
-      // ¬(φ ↔ ψ) is ¬φ ↔ ψ.
-      const [, left, right] = formula;
-      return [
-        "and",
-        ["or", part(left, !positive), part(right, true)],
-        ["or", part(left, positive), part(right, false)],
-      ];
-    }
-    case "forall":
-    case "exists":
-      return [either("forall", formula[0]) ? "forall" : "exists", formula[1], part(formula[2], positive)];
-  }
 }
