@@ -56,29 +56,44 @@ function definedFormulas({ definitions }: Refutation): readonly PreparedFormula[
   }));
 }
 
-function linesOf({ task, formulas }: Prepared, { definitions, steps }: Refutation): readonly Line[] {
+function linesOf(
+  { task, condensed, formulas }: Prepared,
+  { definitions, steps }: Refutation,
+): readonly Line[] {
   const forms = definitions.map(({ name, parameters, body }, index) =>
     clauseForm(definitionFormula(name, parameters, body), formulas.length + index),
   );
-  const lineOf = (step: RefutationStep): Line => {
+  const lines: Line[] = [];
+  /** By step: its line. A condensed clause has a line more. */
+  const places: number[] = [];
+  const add = (line: Line): number => lines.push(line) - 1;
+  for (const step of steps) places.push(addStep(step));
+  return lines;
+
+  function addStep(step: RefutationStep): number {
     switch (step.from) {
       case "input": {
         const { clause, formula, place } = task.clauses[step.input]!;
-        return { why: "clause", clause, formula, place };
+        const smaller = condensed[step.input]!;
+        const written = add({ why: "clause", clause: smaller?.from ?? clause, formula, place });
+        if (smaller === null) return written;
+        return add({ why: "infer", clause, uses: [{ line: written, terms: smaller.terms }] });
       }
       case "definition": {
         const clause = forms[step.definition]![step.place]!;
-        return { why: "clause", clause, formula: formulas.length + step.definition, place: step.place };
+        return add({ why: "clause", clause, formula: formulas.length + step.definition, place: step.place });
       }
       case "identity":
-        return { why: "identity", clause: step.clause };
+        return add({ why: "identity", clause: step.clause });
       case "inference": {
-        const uses = step.uses.map(([line, terms]) => ({ line, terms: new Map(Object.entries(terms)) }));
-        return { why: "infer", clause: step.clause, uses };
+        const uses = step.uses.map(([used, terms]) => ({
+          line: places[used]!,
+          terms: new Map(Object.entries(terms)),
+        }));
+        return add({ why: "infer", clause: step.clause, uses });
       }
     }
-  };
-  return steps.map(lineOf);
+  }
 }
 
 /** The formulas that lines need, by number, ascending: those they name, and those that these are made of. */
