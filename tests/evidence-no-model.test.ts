@@ -1,12 +1,13 @@
 /** "No model of size n": the propositional form by brute force, clause proofs of published facts, and wrong proofs. */
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { checkNoModel, groundForm } from "../lib/evidence/ground-form.ts";
+import { checkNoModel } from "../lib/evidence/no-model.ts";
 import { Propagation } from "../lib/evidence/propagation.ts";
 import { Rejected } from "../lib/evidence/read.ts";
 import { proveNoModel } from "../lib/inquiry/no-model.ts";
 import { and, atom, equal, exists, type Formula, forall, implies, not, or } from "../lib/logic/formula.ts";
 import { FormulaTooLarge, recordFormula } from "../lib/logic/formula-records.ts";
+import { groundForm } from "../lib/logic/ground-form.ts";
 import { Meter } from "../lib/logic/meter.ts";
 import { Solver } from "../lib/structures/sat/solver.ts";
 import { allInterpretations, isTrue } from "./support/brute-force.ts";

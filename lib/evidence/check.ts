@@ -10,7 +10,7 @@ import { checkDerivation } from "./derivation.ts";
 import { isTrueIn } from "./evaluate.ts";
 import type { Fact, FormulaRecord, StructureFact } from "./format.ts";
 
-import { checkNoModel } from "./ground-form.ts";
+import { checkNoModel } from "./no-model.ts";
 import { Rejected, readEvidence, reject } from "./read.ts";
 import { digestOf } from "./record.ts";
 import { isBorneOut } from "./verdicts.ts";

@@ -13,30 +13,30 @@
 import {
   atomOf,
   atomTerms,
+  type ClauseRecord,
   changeAtom,
   changeTerms,
+  type FormulaRecord,
   freeVariables,
   Growth,
-  partsOf,
+  isSameTerm,
   sameUpToNames,
   substituteInClause,
   substituteInTerm,
+  type TermFormulaRecord,
+  type TermRecord,
+  termFunctions,
+  visitAtoms,
 } from "../logic/formula-records.ts";
 import { miniscopeFormula, unfoldFormula } from "../logic/made-formulas.ts";
 import type { Meter } from "../logic/meter.ts";
 import { clauseForm, simplifyClause } from "./clause-form.ts";
-import type {
-  AtomRecord,
-  ClauseRecord,
-  DerivationFact,
-  FormulaRecord,
-  LineRecord,
-  MadeFormula,
-  TermFormulaRecord,
-  TermRecord,
-} from "./format.ts";
+import type { DerivationFact, LineRecord, MadeFormula } from "./format.ts";
 import { Propagation } from "./propagation.ts";
 import { reject } from "./read.ts";
+
+/** Parts and literals of all formulas of a derivation and their clause forms. */
+const LARGEST_DERIVATION = 3_000_000;
 
 /**
  * @param sentences what the numbers of premises and conclusion stand for, closed and without functions
@@ -48,18 +48,16 @@ export function checkDerivation(
   at: string,
   meter: Meter,
 ): void {
-  const formulas = new Formulas(meter);
+  const formulas = new Formulas(new Growth(LARGEST_DERIVATION, meter));
   for (const premise of fact.premises) formulas.add(sentences[premise]!);
   if (fact.conclusion !== null) formulas.add(["not", sentences[fact.conclusion]!]);
-  for (const [place, made] of fact.made.entries()) formulas.make(made, `${at}, formula made ${place}`);
+  for (const [place, made] of fact.made.entries())
+    formulas.add(formulas.make(made, `${at}, formula made ${place}`));
   const clauses: ClauseRecord[] = [];
   for (const [place, line] of fact.lines.entries())
     clauses.push(checkLine(line, clauses, formulas, `${at}, line ${place}`, meter));
   if (clauses.at(-1)?.length !== 0) reject(`${at}: the last line is not the empty clause`);
 }
-
-/** Parts and literals of all formulas of a derivation and their clause forms. */
-const LARGEST_DERIVATION = 3_000_000;
 
 /** The formulas of a derivation, by number. */
 class Formulas {
@@ -69,88 +67,71 @@ class Formulas {
   /** Names of the relations in the formulas so far. */
   readonly #relations = new Set<string>();
 
-  constructor(meter: Meter) {
-    this.#growth = new Growth(LARGEST_DERIVATION, meter);
+  constructor(growth: Growth) {
+    this.#growth = growth;
   }
 
   add(formula: TermFormulaRecord): void {
     this.#formulas.push(formula);
-    this.#look(formula, (atom) => {
-      if (atom[0] === "is") this.#relations.add(atom[1]);
-    });
-  }
-
-  get(number: number, at: string): TermFormulaRecord {
-    return this.#formulas[number] ?? reject(`${at}: there is no formula ${number} before`);
+    visitAtoms(formula, this.#growth, (atom) => atom[0] === "is" && this.#relations.add(atom[1]));
   }
 
   clause(number: number, place: number, at: string): ClauseRecord {
-    this.#clauses[number] ??= clauseForm(this.get(number, at), number, this.#growth);
+    this.#clauses[number] ??= clauseForm(this.#get(number, at), number, this.#growth);
     return this.#clauses[number]![place] ?? reject(`${at}: formula ${number} has no clause ${place}`);
   }
 
-  make(made: MadeFormula, at: string): void {
+  make(made: MadeFormula, at: string): TermFormulaRecord {
     switch (made[0]) {
       case "define": {
         const [, name, parameters, body] = made;
         // The relation is interpreted by the body: so it may occur neither there nor in what is settled already.
-        const use = (atom: AtomRecord) => {
-          if (atom[0] === "is" && atom[1] === name) reject(`${at}: ${name} occurs in its own definition`);
-        };
         if (this.#relations.has(name)) reject(`${at}: ${name} occurs in a formula before its definition`);
-        this.#look(body, use);
-        this.#requireEarlierFunctions(body, at);
+        this.#requireEarlier(body, name, at);
         if (new Set(parameters).size !== parameters.length) reject(`${at}: a variable occurs twice`);
         const free = freeVariables(body).find((variable) => !parameters.includes(variable));
         if (free !== undefined) reject(`${at}: ${free} is free in the definition of ${name}`);
-        this.add(
-          parameters.reduceRight<TermFormulaRecord>(
-            (inner, variable) => ["forall", variable, inner],
-            ["iff", ["is", name, ...parameters], body],
-          ),
+        const meaning: TermFormulaRecord = ["iff", ["is", name, ...parameters], body];
+        return parameters.reduceRight<TermFormulaRecord>(
+          (inner, variable) => ["forall", variable, inner],
+          meaning,
         );
-        return;
       }
       case "unfold":
-        this.add(this.#unfold(this.get(made[1], at), made[2], at));
-        return;
+        return this.#unfold(this.#get(made[1], at), made[2], at);
       case "fold": {
         // With the definition, the formula says what its unfolding says, and that is true already.
         const [, number, definition, formula] = made;
         if (freeVariables(formula).length > 0) reject(`${at} has a free variable`);
-        this.#requireEarlierFunctions(formula, at);
-        if (!sameUpToNames(this.#unfold(formula, definition, at), this.get(number, at)))
+        this.#requireEarlier(formula, null, at);
+        if (!sameUpToNames(this.#unfold(formula, definition, at), this.#get(number, at)))
           reject(`${at} does not unfold to formula ${number}`);
-        this.add(formula);
-        return;
+        return formula;
       }
       case "miniscope":
-        this.add(miniscopeFormula(this.get(made[1], at), this.#growth));
+        return miniscopeFormula(this.#get(made[1], at), this.#growth);
     }
   }
 
+  #get(number: number, at: string): TermFormulaRecord {
+    return this.#formulas[number] ?? reject(`${at}: there is no formula ${number} before`);
+  }
+
   #unfold(formula: TermFormulaRecord, definition: number, at: string): TermFormulaRecord {
-    const unfolded = unfoldFormula(formula, this.get(definition, at), this.#growth);
+    const unfolded = unfoldFormula(formula, this.#get(definition, at), this.#growth);
     return unfolded ?? reject(`${at}: formula ${definition} is not a definition`);
   }
 
-  /** The functions of formulas to come will be interpreted by what these say, so none may occur here. */
-  #requireEarlierFunctions(formula: TermFormulaRecord, at: string): void {
-    const look = (term: TermRecord): void => {
-      if (typeof term === "string") return;
-      const [name, ...args] = term;
-      const number = /^(0|[1-9]\d*)\.(0|[1-9]\d*)$/.exec(name)?.[1];
-      if (number === undefined || Number(number) >= this.#formulas.length)
-        reject(`${at}: the function ${name} does not belong to a formula before`);
-      args.forEach(look);
-    };
-    this.#look(formula, (atom) => atomTerms(atom).forEach(look));
-  }
-
-  #look(formula: TermFormulaRecord, see: (atom: AtomRecord) => void): void {
-    this.#growth.add();
-    if (formula[0] === "is" || formula[0] === "=") see(formula);
-    else for (const part of partsOf(formula)) this.#look(part, see);
+  /** Functions of this and later formulas will be interpreted by what they say, so none may occur here. */
+  #requireEarlier(formula: TermFormulaRecord, defined: string | null, at: string): void {
+    visitAtoms(formula, this.#growth, (atom) => {
+      if (atom[0] === "is" && atom[1] === defined) reject(`${at}: ${defined} occurs in its own definition`);
+      for (const name of atomTerms(atom).flatMap(termFunctions)) {
+        const number = /^(0|[1-9]\d*)\.(0|[1-9]\d*)$/.exec(name)?.[1];
+        if (number === undefined || Number(number) >= this.#formulas.length)
+          reject(`${at}: the function ${name} does not belong to a formula before`);
+      }
+    });
   }
 }
 
@@ -162,78 +143,53 @@ function checkLine(
   at: string,
   meter: Meter,
 ): ClauseRecord {
-  switch (line[0]) {
-    case "clause":
-      return formulas.clause(line[1], line[2], at);
-    case "identity":
-      if (!isTrueByIdentity(line[1], meter)) reject(`${at} is not true by the laws of identity`);
-      return line[1];
-    case "infer": {
-      // Variables of the clause and of instances stand for elements, the same in all of them: what follows for
-      // each choice of them follows for all.
-      const [, clause, uses] = line;
-      const literals = new Numbering();
-      const propagation = new Propagation(meter);
-      for (const [number, terms] of uses) {
-        const used = before[number] ?? reject(`${at}: there is no line ${number} before`);
-        const instance = substituteInClause(
-          used,
-          new Map(Object.entries(terms)),
-          new Growth(undefined, meter),
-        );
-        propagation.add(literals.of(instance));
-      }
-      if (!propagation.follows(literals.of(clause))) reject(`${at} does not follow from the lines it names`);
-      return clause;
-    }
+  if (line[0] === "clause") return formulas.clause(line[1], line[2], at);
+  const [, clause, uses] = line;
+  if (uses === undefined) {
+    if (!isTrueByIdentity(clause, new Growth(undefined, meter)))
+      reject(`${at} is not true by the laws of identity`);
+    return clause;
   }
-}
-
-/** Literals as numbers for {@link Propagation}: equal atoms get equal numbers, and s = t is not t = s. */
-class Numbering {
-  readonly #numbers = new Map<string, number>();
-
-  of(clause: ClauseRecord): number[] {
-    return clause.map((literal) => {
+  // Variables of the clause and of instances stand for elements, the same in all of them: what follows for each choice
+  // of them follows for all. Atoms get numbers, equal ones the same, and s = t another than t = s.
+  const numbers = new Map<string, number>();
+  const numbered = (literals: ClauseRecord) =>
+    literals.map((literal) => {
       const atom = atomOf(literal);
       const key = JSON.stringify(atom);
-      const number = this.#numbers.get(key) ?? this.#numbers.size + 1;
-      this.#numbers.set(key, number);
+      const number = numbers.get(key) ?? numbers.size + 1;
+      numbers.set(key, number);
       return literal === atom ? number : -number;
     });
+  const propagation = new Propagation(meter);
+  for (const [number, terms] of uses) {
+    const used = before[number] ?? reject(`${at}: there is no line ${number} before`);
+    const growth = new Growth(undefined, meter);
+    propagation.add(numbered(substituteInClause(used, new Map(Object.entries(terms)), growth)));
   }
+  if (!propagation.follows(numbered(clause))) reject(`${at} does not follow from the lines it names`);
+  return clause;
 }
 
 /**
  * s ≠ t ∨ φ says the same as s ≠ t ∨ φ′, where t stands in φ′ in place of s. So the literals are changed one after
  * another, and what comes out true for all values was true.
  */
-function isTrueByIdentity(clause: ClauseRecord, meter: Meter): boolean {
-  const growth = new Growth(undefined, meter);
+function isTrueByIdentity(clause: ClauseRecord, growth: Growth): boolean {
   let literals: ClauseRecord = clause;
   for (let place = 0; place < clause.length; place += 1) {
     const literal = literals[place]!;
     if (literal[0] !== "not" || literal[1][0] !== "=") continue;
     const [, from, to] = literal[1];
     const replace = (term: TermRecord): TermRecord => {
-      if (isSame(term, from)) return substituteInTerm(to, new Map(), growth);
-      return typeof term === "string"
-        ? term
-        : [term[0], ...term.slice(1).map((arg) => replace(arg as TermRecord))];
+      if (isSameTerm(term, from, growth)) return substituteInTerm(to, new Map(), growth);
+      if (typeof term === "string") return term;
+      const [name, ...args] = term;
+      return [name, ...args.map(replace)];
     };
     literals = literals.map((other, index) =>
       index === place ? other : changeAtom(other, (atom) => changeTerms(atom, replace)),
     );
   }
   return simplifyClause(literals) === null;
-
-  function isSame(left: TermRecord, right: TermRecord): boolean {
-    growth.add();
-    if (typeof left === "string" || typeof right === "string") return left === right;
-    return (
-      left.length === right.length &&
-      left[0] === right[0] &&
-      left.slice(1).every((arg, place) => isSame(arg as TermRecord, right[place + 1] as TermRecord))
-    );
-  }
 }

@@ -129,7 +129,7 @@ export type UseRecord = readonly [number, Readonly<Record<string, TermRecord>>];
 
 /**
  * There is no model of `axioms` on `size` points. The proof is a list of clauses in the variables of the propositional
- * form that `lib/evidence/ground-form.ts` defines, as in DIMACS; each follows by unit propagation from that form and
+ * form that `lib/logic/ground-form.ts` defines, as in DIMACS; each follows by unit propagation from that form and
  * the clauses before it, and so at last does the empty clause.
  */
 export interface NoModelFact {

@@ -2,14 +2,13 @@
  * Reading evidence: from JSON of unknown origin to typed records, or a refusal that names the place. Nothing that
  * is not in the format passes: no foreign keys, no missing ones, no sentence with free variables.
  */
-
-import { freeVariables } from "../logic/formula-records.ts";
+import { type FormulaRecord, freeVariables } from "../logic/formula-records.ts";
 import { LARGEST_DOMAIN } from "../logic/structure-definition.ts";
 import {
   EVIDENCE_FORMAT,
   EVIDENCE_VERSION,
   type Evidence,
-  type TermFormulaRecord,
+  type StructureRecord,
   THEORY_QUESTIONS,
 } from "./format.ts";
 
@@ -20,7 +19,7 @@ export function reject(message: string): never {
   throw new Rejected(message);
 }
 
-/** Nesting of formulas and terms beyond which evidence is refused, so that no recursion here runs out of stack. */
+/** Nesting beyond which evidence is refused, so that no recursion here runs out of stack. */
 const DEEPEST = 2_000;
 
 /**
@@ -29,24 +28,11 @@ const DEEPEST = 2_000;
  * @param sentences how many there are
  */
 type Shape = (value: unknown, at: string, sentences: number) => void;
-
-const listOf =
-  (member: Shape): Shape =>
-  (value, at, sentences) => {
-    for (const [place, one] of readList(value, at).entries()) member(one, `${at} ${place}`, sentences);
-  };
-
-const tuple =
-  (...members: readonly Shape[]): Shape =>
-  (value, at, sentences) => {
-    const parts = readList(value, at);
-    if (parts.length !== members.length) reject(`${at}: ${show(value)} has not ${members.length} parts`);
-    for (const [place, member] of members.entries()) member(parts[place], at, sentences);
-  };
+type Shapes = Readonly<Record<string, Shape>>;
 
 /** An object with just these keys. */
 const object =
-  (shapes: Readonly<Record<string, Shape>>): Shape =>
+  (shapes: Shapes): Shape =>
   (value, at, sentences) => {
     const members = readObject(value, at);
     for (const key of Object.keys(shapes)) if (!Object.hasOwn(members, key)) reject(`${at} lacks "${key}"`);
@@ -55,15 +41,27 @@ const object =
     for (const [key, shape] of Object.entries(shapes)) shape(members[key], `${at}, ${key}`, sentences);
   };
 
+/** A list that begins with members of these shapes; all others have the last one, or there are none. */
+const list =
+  (first: readonly Shape[], others?: Shape): Shape =>
+  (value, at, sentences) => {
+    if (!Array.isArray(value)) return reject(`${at}: ${show(value)} is not a list`);
+    if (value.length < first.length || (others === undefined && value.length > first.length))
+      reject(`${at}: ${show(value)} has ${value.length} parts`);
+    for (const [place, member] of value.entries())
+      (first[place] ?? others!)(member, `${at} ${place}`, sentences);
+  };
+const listOf = (member: Shape) => list([], member);
+
 /** An object or a list whose member under a key, a word, says which of the shapes it has. */
 const oneOf =
-  (key: string, shapes: Readonly<Record<string, Shape>>): Shape =>
+  (key: string, shapes: Shapes): Shape =>
   (value, at, sentences) => {
     const word =
       typeof value === "object" && value !== null ? (value as Record<string, unknown>)[key] : value;
-    if (typeof word !== "string" || !Object.hasOwn(shapes, word))
+    if (typeof word !== "string" || typeof value === "string" || !Object.hasOwn(shapes, word))
       return reject(`${at} is of the unknown kind ${show(word)}`);
-    return shapes[word]!(value, at, sentences);
+    shapes[word]!(value, at, sentences);
   };
 
 const nullOr =
@@ -72,73 +70,79 @@ const nullOr =
     if (value !== null) shape(value, at, sentences);
   };
 
-const wholeFrom =
+const whole =
   (least: number, most = Number.MAX_SAFE_INTEGER): Shape =>
   (value, at) => {
     if (!Number.isSafeInteger(value) || (value as number) < least || (value as number) > most)
       reject(`${at}: ${show(value)} is not a whole number from ${least} to ${most}`);
   };
 
-const any: Shape = () => undefined;
 const name: Shape = (value, at) => {
   if (typeof value !== "string" || value === "") reject(`${at}: ${show(value)} is not a name`);
 };
-const number = wholeFrom(0);
-const sentence: Shape = (value, at, sentences) => wholeFrom(0, sentences - 1)(value, at, sentences);
+const any: Shape = () => undefined;
+const number = whole(0);
+const sentence: Shape = (value, at, sentences) => whole(0, sentences - 1)(value, at, sentences);
 const theory = listOf(sentence);
 
+const term: Shape = (value, at, sentences) =>
+  (Array.isArray(value) ? list([name], term) : name)(value, at, sentences);
+
+function formulaOf(is: Shape, same: Shape): Shape {
+  const formula: Shape = (value, at, sentences) => shape(value, at, sentences);
+  const [none, two] = [list([name]), list([name, formula, formula])];
+  const [several, quantified] = [list([name, formula, formula], formula), list([name, name, formula])];
+  const parts = { and: several, or: several, implies: two, iff: two, forall: quantified, exists: quantified };
+  const shape = oneOf("0", { is, "=": same, true: none, false: none, not: list([name, formula]), ...parts });
+  return formula;
+}
+/** In a sentence, terms are variables, and atoms have some. */
+const plain = formulaOf(list([name, name, name], name), list([name, name, name]));
+const closed: Shape = (value, at, sentences) => {
+  plain(value, at, sentences);
+  for (const free of freeVariables(value as FormulaRecord)) reject(`${at} has the free variable ${free}`);
+};
+const atoms = { is: list([name, name], term), "=": list([name, term, term]) };
+const formula = formulaOf(atoms.is, atoms["="]);
+const clause = listOf(oneOf("0", { ...atoms, not: list([name, oneOf("0", atoms)]) }));
+
 const structure: Shape = (value, at, sentences) => {
-  object({ carrier, tables: any })(value, at, sentences);
-  const { carrier: description, tables } = value as { carrier: { size: number }; tables: unknown };
-  for (const [relation, record] of Object.entries(readObject(tables, `${at}, tables`))) {
+  const carrier = oneOf("kind", { points: object({ kind: name, size: whole(1, LARGEST_DOMAIN) }) });
+  object({ carrier, tables: readObject })(value, at, sentences);
+  const record = value as StructureRecord;
+  for (const [relation, table] of Object.entries(record.tables)) {
     const where = `${at}, table ${relation}`;
-    object({ places: wholeFrom(1), holds: listOf(number) })(record, where, sentences);
-    const { places, holds } = record as { places: number; holds: readonly number[] };
-    for (const [place, kind] of holds.entries())
-      if (kind <= (holds[place - 1] ?? -1) || kind >= description.size ** places)
-        reject(`${where}: ${kind} is not a kind here, or not in ascending order`);
+    object({ places: whole(1), holds: listOf(number) })(table, where, sentences);
+    const kinds = record.carrier.size ** table.places;
+    if (table.holds.some((kind, place) => kind >= kinds || kind <= (table.holds[place - 1] ?? -1)))
+      reject(`${where}: not kinds here, or not in ascending order`);
   }
 };
-const carrier = oneOf("kind", { points: object({ kind: name, size: wholeFrom(1, LARGEST_DOMAIN) }) });
 
-const formula: Shape = (value, at) => readFormula(value, at, 0, false);
-const term: Shape = (value, at) => readTerm(value, at, 0, false);
-const clause = listOf((value, at) => {
-  const [head, ...rest] = readList(value, at);
-  const atom = head === "not" && rest.length === 1 ? readList(rest[0], at) : [head];
-  if (atom[0] !== "is" && atom[0] !== "=") reject(`${at}: ${show(value)} is not a literal`);
-  readFormula(value, at, 0, false);
-});
-const use = tuple(number, (value, at, sentences) => {
-  for (const one of Object.values(readObject(value, at))) term(one, at, sentences);
-});
+const terms: Shape = (value, at, sentences) =>
+  listOf(term)(Object.values(readObject(value, at)), at, sentences);
 const made = oneOf("0", {
-  define: tuple(name, name, listOf(name), formula),
-  unfold: tuple(name, number, number),
-  fold: tuple(name, number, number, formula),
-  miniscope: tuple(name, number),
+  define: list([name, name, listOf(name), formula]),
+  unfold: list([name, number, number]),
+  fold: list([name, number, number, formula]),
+  miniscope: list([name, number]),
 });
 const line = oneOf("0", {
-  clause: tuple(name, number, number),
-  identity: tuple(name, clause),
-  infer: tuple(name, clause, listOf(use)),
+  clause: list([name, number, number]),
+  identity: list([name, clause]),
+  infer: list([name, clause, listOf(list([number, terms]))]),
 });
-
+const derivation = {
+  premises: theory,
+  conclusion: nullOr(sentence),
+  made: listOf(made),
+  lines: listOf(line),
+};
+const proof = listOf(listOf(whole(-Number.MAX_SAFE_INTEGER)));
 const fact = oneOf("fact", {
   structure: object({ fact: name, structure, holds: theory, fails: nullOr(theory) }),
-  derivation: object({
-    fact: name,
-    premises: theory,
-    conclusion: nullOr(sentence),
-    made: listOf(made),
-    lines: listOf(line),
-  }),
-  "no-model": object({
-    fact: name,
-    axioms: theory,
-    size: wholeFrom(1, LARGEST_DOMAIN),
-    proof: listOf(listOf(wholeFrom(-Number.MAX_SAFE_INTEGER))),
-  }),
+  derivation: object({ fact: name, ...derivation }),
+  "no-model": object({ fact: name, axioms: theory, size: whole(1, LARGEST_DOMAIN), proof }),
 });
 
 const entailment = object({ ask: name, premises: theory, conclusion: sentence });
@@ -147,99 +151,36 @@ const pair = object({ ask: name, left: theory, right: theory });
 const several = object({ ask: name, theories: listOf(theory) });
 const single = object({ ask: name, axioms: theory });
 const question = oneOf("ask", {
-  entails: entailment,
-  "does-not-entail": entailment,
-  "true-in": truth,
-  "false-in": truth,
-  weaker: pair,
-  equivalent: pair,
-  compare: several,
-  dualise: several,
+  ...{ entails: entailment, "does-not-entail": entailment, "true-in": truth, "false-in": truth },
+  ...{ weaker: pair, equivalent: pair, compare: several, dualise: several },
   ...Object.fromEntries(THEORY_QUESTIONS.map((ask) => [ask, single])),
 });
+const verdict: Shape = (value, at, sentences) => {
+  if (value !== null && typeof value !== "string") listOf(word)(value, at, sentences);
+};
+const word: Shape = (value, at) => {
+  if (typeof value !== "string") reject(`${at}: ${show(value)} is not a word`);
+};
 
 /** @throws Rejected */
 export function readEvidence(value: unknown): Evidence {
-  const evidence = readObject(value, "evidence");
-  if (evidence.format !== EVIDENCE_FORMAT) reject("this is not Twoplace evidence");
-  if (evidence.version !== EVIDENCE_VERSION)
-    reject(`evidence of version ${show(evidence.version)}; this checker reads version ${EVIDENCE_VERSION}`);
-  const sentences = Array.isArray(evidence.sentences) ? evidence.sentences.length : 0;
-  object({
-    format: name,
-    version: number,
-    sentences: listOf(readSentence),
-    question,
-    digest: name,
-    verdict: any,
-    facts: listOf(fact),
-  })(value, "evidence", sentences);
-  const { verdict } = evidence;
-  const isWord = (one: unknown) => typeof one === "string";
-  if (verdict !== null && !isWord(verdict) && !(Array.isArray(verdict) && verdict.every(isWord)))
-    reject("the verdict is neither a word nor a list of words");
+  const { format, version, sentences } = readObject(value, "evidence");
+  if (format !== EVIDENCE_FORMAT) reject("this is not Twoplace evidence");
+  if (version !== EVIDENCE_VERSION)
+    reject(`evidence of version ${show(version)}; this checker reads version ${EVIDENCE_VERSION}`);
+  requireShallow(value);
+  const parts = { sentences: listOf(closed), question, digest: word, verdict, facts: listOf(fact) };
+  const count = Array.isArray(sentences) ? sentences.length : 0;
+  object({ format: any, version: any, ...parts })(value, "evidence", count);
   return value as Evidence;
 }
 
-function readSentence(value: unknown, at: string): void {
-  readFormula(value, at, 0, true);
-  const free = freeVariables(value as TermFormulaRecord);
-  if (free.length > 0) reject(`${at}: ${show(value)} has the free variable ${free[0]}`);
-}
-
-/** @param isPlain whether terms are variables and atoms have arguments, as in sentences */
-function readFormula(value: unknown, at: string, depth: number, isPlain: boolean): void {
-  if (depth > DEEPEST) reject(`${at}: a formula is nested more than ${DEEPEST} levels`);
-  const [head, ...rest] = readList(value, at);
-  const wants = (least: number, most = least) => {
-    if (rest.length < least || rest.length > most) reject(`${at}: ${show(head)} with ${rest.length} parts`);
-  };
-  switch (head) {
-    case "true":
-    case "false":
-      wants(0);
-      return;
-    case "is":
-      wants(isPlain ? 2 : 1, Number.POSITIVE_INFINITY);
-      name(rest.shift(), at, 0);
-      for (const part of rest) readTerm(part, at, depth + 1, isPlain);
-      return;
-    case "=":
-      wants(2);
-      for (const part of rest) readTerm(part, at, depth + 1, isPlain);
-      return;
-    case "forall":
-    case "exists":
-      wants(2);
-      name(rest.shift(), at, 0);
-      break;
-    case "not":
-      wants(1);
-      break;
-    case "and":
-    case "or":
-      wants(2, Number.POSITIVE_INFINITY);
-      break;
-    case "implies":
-    case "iff":
-      wants(2);
-      break;
-    default:
-      reject(`${at}: ${show(head)} does not begin a formula`);
+function requireShallow(value: unknown): void {
+  let level = [value];
+  for (let depth = 0; level.length > 0; depth += 1) {
+    if (depth > DEEPEST) reject(`something is nested more than ${DEEPEST} levels`);
+    level = level.flatMap((part) => (typeof part === "object" && part !== null ? Object.values(part) : []));
   }
-  for (const part of rest) readFormula(part, at, depth + 1, isPlain);
-}
-
-function readTerm(value: unknown, at: string, depth: number, isPlain: boolean): void {
-  if (depth > DEEPEST) reject(`${at}: a term is nested more than ${DEEPEST} levels`);
-  const [head, ...args] = isPlain || !Array.isArray(value) ? [value] : value;
-  name(head, at, 0);
-  for (const arg of args) readTerm(arg, at, depth + 1, isPlain);
-}
-
-function readList(value: unknown, at: string): unknown[] {
-  if (!Array.isArray(value)) reject(`${at}: ${show(value)} is not a list`);
-  return value;
 }
 
 function readObject(value: unknown, at: string): Record<string, unknown> {

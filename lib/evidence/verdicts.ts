@@ -1,107 +1,93 @@
 /** Which verdicts checked facts bear out. */
 import type { Meter } from "../logic/meter.ts";
 import { isTrueIn } from "./evaluate.ts";
-import type { Evidence, Fact, SentenceIndex, StructureFact, TheoryRecord } from "./format.ts";
+import type { Evidence, SentenceIndex, TheoryRecord } from "./format.ts";
 
 /** The words that may be said, each with whether the facts support it. */
 type Words = Readonly<Record<string, boolean>>;
 
 /** Whether the verdict is one that the facts, all of them true, support. */
 export function isBorneOut(evidence: Evidence, meter: Meter): boolean {
-  const { question, verdict } = evidence;
-  const shown = new Shown(evidence.facts, meter);
-  if (question.ask === "models") return verdict === null && shown.onlyModels(question.axioms);
-  if (question.ask === "minimise")
-    return Array.isArray(verdict) && areMinimal(question.axioms, verdict, shown);
-  const words = wordsFor(evidence, shown, meter);
-  const isSupported = (supported: Words, word: unknown) =>
-    typeof word === "string" && Object.hasOwn(supported, word) && supported[word] === true;
-  if (!Array.isArray(words)) return isSupported(words as Words, verdict);
-  return (
+  const { question, verdict, sentences } = evidence;
+  const shown = new Shown(evidence, meter);
+  const says = (words: Words, word: unknown = verdict) =>
+    typeof word === "string" && Object.hasOwn(words, word) && words[word] === true;
+  const saysEach = (each: readonly Words[]) =>
     Array.isArray(verdict) &&
-    verdict.length === words.length &&
-    words.every((supported, place) => isSupported(supported, verdict[place]))
-  );
-}
-
-function wordsFor({ question, sentences }: Evidence, shown: Shown, meter: Meter): Words | readonly Words[] {
+    verdict.length === each.length &&
+    each.every((words, place) => says(words, verdict[place]));
   switch (question.ask) {
     case "entails":
     case "does-not-entail": {
       const yes = shown.entails(question.premises, [question.conclusion]);
       const no = shown.separates(question.premises, [question.conclusion]);
-      return question.ask === "entails" ? { holds: yes, fails: no } : { holds: no, fails: yes };
+      return says(question.ask === "entails" ? { holds: yes, fails: no } : { holds: no, fails: yes });
     }
     case "true-in":
     case "false-in": {
       const value = isTrueIn(question.structure, sentences[question.sentence]!, meter);
       const holds = value === (question.ask === "true-in");
-      return { holds, fails: !holds };
+      return says({ holds, fails: !holds });
     }
     case "weaker": {
-      // What it says follows from the other, and not the other way round.
-      const { above, below, onlyRight, onlyLeft } = shown.order(question.left, question.right);
-      return { holds: below && onlyLeft, fails: above || onlyRight };
+      // What the left one says follows from the right one, and not the other way round.
+      const { weaker, above } = shown.order(question.left, question.right);
+      return says({ holds: weaker, fails: above || shown.separates(question.right, question.left) });
     }
     case "equivalent": {
-      const { above, below, onlyRight, onlyLeft } = shown.order(question.left, question.right);
-      return { holds: above && below, fails: onlyRight || onlyLeft };
+      const { equivalent, different } = shown.order(question.left, question.right);
+      return says({ holds: equivalent, fails: different });
     }
     case "compare":
-    case "dualise":
-      return question.theories.flatMap((left, place) =>
-        question.theories.slice(place + 1).map((right): Words => {
-          const { above, below, onlyRight, onlyLeft } = shown.order(left, right);
-          const equivalent = above && below;
-          if (question.ask === "dualise") return { equivalent, different: onlyRight || onlyLeft, open: true };
+    case "dualise": {
+      const { theories, ask } = question;
+      const pairs = theories.flatMap((left, place) =>
+        theories.slice(place + 1).map((right) => shown.order(left, right)),
+      );
+      return saysEach(
+        pairs.map(({ above, below, equivalent, different, ...words }): Words => {
+          if (ask === "dualise") return { equivalent, different, open: true };
           return {
+            ...words,
             equivalent,
-            stronger: above && onlyRight,
-            weaker: below && onlyLeft,
-            incomparable: onlyLeft && onlyRight,
             "at-least-as-strong": above,
             "at-most-as-strong": below,
             open: true,
           };
         }),
       );
+    }
     case "independent":
     case "independence": {
-      const words = question.axioms.map((axiom, place): Words => {
-        const others = question.axioms.toSpliced(place, 1);
-        return {
-          independent: shown.separates(others, [axiom]),
-          redundant: shown.entails(others, [axiom]),
-          open: true,
-        };
+      const { axioms, ask } = question;
+      const each = axioms.map((axiom, place) => {
+        const others = axioms.toSpliced(place, 1);
+        const independent = shown.separates(others, [axiom]);
+        return { independent, redundant: shown.entails(others, [axiom]), open: true };
       });
-      if (question.ask === "independence") return words;
-      return {
-        holds: words.every((word) => word.independent),
-        fails: words.some((word) => word.redundant),
-      };
+      if (ask === "independence") return saysEach(each);
+      return says({
+        holds: each.every((words) => words.independent),
+        fails: each.some((words) => words.redundant),
+      });
     }
-    default:
-      return wordsOfModels(question.ask, question.axioms, shown);
-  }
-}
-
-/** The words for questions of which models there are. */
-function wordsOfModels(ask: string, axioms: TheoryRecord, shown: Shown): Words {
-  const inconsistent = shown.contradicts(axioms);
-  const finite = shown.hasModel(axioms, true);
-  switch (ask) {
-    case "consistent":
-      return { holds: shown.hasModel(axioms, false), fails: inconsistent };
-    case "infinite-only":
-      // It says that there are models, and only infinite ones.
-      return { fails: finite || inconsistent };
-    case "no-finite-model":
-      return { holds: inconsistent, fails: finite };
-    case "check-finite":
-      return { finite, inconsistent };
-    default:
-      return {};
+    case "minimise":
+      return Array.isArray(verdict) && areMinimal(question.axioms, verdict, shown);
+    case "models":
+      return (
+        verdict === null && shown.structures.every(({ holds }) => shown.contains(holds, question.axioms))
+      );
+    default: {
+      const { ask, axioms } = question;
+      const models = shown.structures.filter(({ holds }) => shown.contains(holds, axioms));
+      const finite = models.some(({ structure }) => structure.carrier.kind === "points");
+      const inconsistent = shown.derives(axioms, null);
+      if (ask === "consistent") return says({ holds: models.length > 0, fails: inconsistent });
+      if (ask === "check-finite") return says({ finite, inconsistent });
+      // That there are only infinite models says that there are some.
+      if (ask === "infinite-only") return says({ fails: finite || inconsistent });
+      return says({ holds: inconsistent, fails: finite });
+    }
   }
 }
 
@@ -117,19 +103,19 @@ function areMinimal(axioms: TheoryRecord, verdict: readonly string[], shown: Sho
   const words = isComplete ? verdict.slice(1) : verdict;
   const sets = words.map((word) => (word === "" ? [] : word.split(",").map(Number)));
   const at = (places: readonly number[]) => places.map((place) => axioms[place]!);
-  const outsides = isComplete ? shown.outsides(axioms) : [];
+  const isMinimal = (set: readonly number[]) =>
+    shown.entails(at(set), axioms) &&
+    set.every((place) => shown.separates(at(set.filter((other) => other !== place)), [axioms[place]!]));
+  const isAscending = (set: readonly number[]) =>
+    set.every((place, i) => place in axioms && place > (set[i - 1] ?? -1));
+  const isForm = new Set(words).size === words.length && sets.every((set, i) => set.join() === words[i]);
+  if (!isForm || !sets.every((set) => isAscending(set) && isMinimal(set))) return false;
+  /** For each structure in which some axiom fails: the places of the axioms that are not said to hold in it. */
+  const outsides = shown.structures
+    .filter(({ fails }) => fails !== null && shown.contains(axioms, fails))
+    .map(({ holds }) => [...axioms.keys()].filter((place) => !shown.contains(holds, [axioms[place]!])));
   let left = MOST_CHOICES;
-  return (
-    new Set(words).size === words.length &&
-    sets.every(
-      (set, index) =>
-        set.join() === words[index] &&
-        set.every((place, i) => place in axioms && place > (set[i - 1] ?? -1)) &&
-        shown.entails(at(set), axioms) &&
-        set.every((place) => shown.separates(at(set.filter((other) => other !== place)), [axioms[place]!])),
-    ) &&
-    (!isComplete || isExhausted([], 0))
-  );
+  return !isComplete || isExhausted([], 0);
 
   /**
    * A set of axioms is not enough when a structure is a model of it where some axiom fails. So a set that is enough has,
@@ -149,85 +135,52 @@ function areMinimal(axioms: TheoryRecord, verdict: readonly string[], shown: Sho
 
 /** What checked facts show about theories. */
 class Shown {
-  readonly #facts: readonly Fact[];
+  readonly structures;
+  readonly #derivations;
   readonly #meter: Meter;
   readonly #members = new WeakMap<TheoryRecord, ReadonlySet<SentenceIndex>>();
 
-  constructor(facts: readonly Fact[], meter: Meter) {
-    this.#facts = facts;
+  constructor({ facts }: Evidence, meter: Meter) {
+    this.structures = facts.filter((fact) => fact.fact === "structure");
+    this.#derivations = facts.filter((fact) => fact.fact === "derivation");
     this.#meter = meter;
+  }
+
+  /** Whether a conclusion, or a contradiction, is derived from premises. */
+  derives(premises: TheoryRecord, conclusion: SentenceIndex | null): boolean {
+    return this.#derivations.some(
+      (fact) =>
+        (fact.conclusion === conclusion || fact.conclusion === null) &&
+        this.contains(premises, fact.premises),
+    );
   }
 
   /** Whether every axiom of the second theory is in the first or derived from it. */
   entails(first: TheoryRecord, second: TheoryRecord): boolean {
-    return second.every((axiom) => this.#contains(first, [axiom]) || this.#derives(first, axiom));
-  }
-
-  /** Whether a contradiction is derived. */
-  contradicts(theory: TheoryRecord): boolean {
-    return this.#derives(theory, null);
+    return second.every((axiom) => this.contains(first, [axiom]) || this.derives(first, axiom));
   }
 
   /** Whether some structure is a model of the first theory and not of the second. */
   separates(first: TheoryRecord, second: TheoryRecord): boolean {
-    return this.#structures().some(
-      (fact) =>
-        fact.fails !== null && this.#contains(fact.holds, first) && this.#contains(second, fact.fails),
+    return this.structures.some(
+      ({ holds, fails }) => fails !== null && this.contains(holds, first) && this.contains(second, fails),
     );
   }
 
-  /** Whether some structure, or some finite one, is a model of the theory. */
-  hasModel(theory: TheoryRecord, finite: boolean): boolean {
-    return this.#structures().some(
-      ({ structure, holds }) =>
-        (!finite || structure.carrier.kind === "points") && this.#contains(holds, theory),
-    );
-  }
-
-  /** Whether every structure is a model of the theory. */
-  onlyModels(theory: TheoryRecord): boolean {
-    return this.#structures().every((fact) => this.#contains(fact.holds, theory));
-  }
-
-  /** How two theories stand to each other. */
+  /** How two theories stand to each other: `above` when the left one entails the right one. */
   order(left: TheoryRecord, right: TheoryRecord) {
+    const [above, below] = [this.entails(left, right), this.entails(right, left)];
+    const [onlyLeft, onlyRight] = [this.separates(left, right), this.separates(right, left)];
     return {
-      /** The left one entails the right one. */
-      above: this.entails(left, right),
-      below: this.entails(right, left),
-      /** Some structure is a model of the left one only. */
-      onlyLeft: this.separates(left, right),
-      onlyRight: this.separates(right, left),
+      ...{ above, below, equivalent: above && below, different: onlyLeft || onlyRight },
+      ...{ stronger: above && onlyRight, weaker: below && onlyLeft, incomparable: onlyLeft && onlyRight },
     };
   }
 
-  /** For each structure in which some axiom fails: the places of the axioms that are not said to hold in it. */
-  outsides(axioms: TheoryRecord): number[][] {
-    return this.#structures()
-      .filter((fact) => fact.fails !== null && this.#contains(axioms, fact.fails))
-      .map((fact) => [...axioms.keys()].filter((place) => !this.#contains(fact.holds, [axioms[place]!])));
-  }
-
-  #structures(): readonly StructureFact[] {
-    return this.#facts.filter((fact) => fact.fact === "structure");
-  }
-
-  #derives(premises: TheoryRecord, conclusion: SentenceIndex | null): boolean {
-    return this.#facts.some(
-      (fact) =>
-        fact.fact === "derivation" &&
-        (fact.conclusion === conclusion || fact.conclusion === null) &&
-        this.#contains(premises, fact.premises),
-    );
-  }
-
-  #contains(larger: TheoryRecord, smaller: TheoryRecord): boolean {
+  contains(larger: TheoryRecord, smaller: TheoryRecord): boolean {
     this.#meter.charge(1 + smaller.length);
-    let members = this.#members.get(larger);
-    if (members === undefined) {
-      members = new Set(larger);
-      this.#members.set(larger, members);
-    }
+    const members = this.#members.get(larger) ?? new Set(larger);
+    this.#members.set(larger, members);
     return smaller.every((index) => members.has(index));
   }
 }

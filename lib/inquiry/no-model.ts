@@ -3,9 +3,9 @@
  * that its contradiction needs. The checker makes the same propositional form and follows the proof on it.
  */
 import type { NoModelFact } from "../evidence/format.ts";
-import { type GroundForm, groundForm } from "../evidence/ground-form.ts";
 import type { Formula } from "../logic/formula.ts";
 import { FormulaTooLarge, recordFormula } from "../logic/formula-records.ts";
+import { type GroundForm, groundForm } from "../logic/ground-form.ts";
 import { type Meter, WorkEnded } from "../logic/meter.ts";
 import { MeterShare } from "../logic/share.ts";
 import { Solver } from "../structures/sat/solver.ts";

@@ -3,7 +3,7 @@
  * needed is derived again by unit propagation from those before it, and what that used is needed too (Goldberg & Novikov
  * 2003).
  */
-import type { GroundForm } from "../evidence/ground-form.ts";
+import type { GroundForm } from "../logic/ground-form.ts";
 import type { Meter } from "../logic/meter.ts";
 
 /** In {@link Trimming}, the reason of an assumption. */

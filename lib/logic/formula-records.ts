@@ -120,6 +120,25 @@ export function termVariables(term: TermRecord): readonly string[] {
   return typeof term === "string" ? [term] : term.slice(1).flatMap((arg) => termVariables(arg));
 }
 
+/** The names of the functions of a term, as often as they occur. */
+export function termFunctions(term: TermRecord): readonly string[] {
+  if (typeof term === "string") return [];
+  const [name, ...args] = term;
+  return [name, ...args.flatMap(termFunctions)];
+}
+
+/** Whether two terms are the same; the parts that are looked at count. */
+export function isSameTerm(left: TermRecord, right: TermRecord, growth: Growth): boolean {
+  growth.add();
+  if (typeof left === "string" || typeof right === "string") return left === right;
+  const [[name, ...args], [other, ...others]] = [left, right];
+  return (
+    name === other &&
+    args.length === others.length &&
+    args.every((arg, place) => isSameTerm(arg, others[place]!, growth))
+  );
+}
+
 export function atomTerms(atom: AtomRecord): readonly TermRecord[] {
   return (atom[0] === "=" ? atom.slice(1) : atom.slice(2)) as TermRecord[];
 }
@@ -136,6 +155,17 @@ export function partsOf(formula: TermFormulaRecord): readonly TermFormulaRecord[
     default:
       return formula.slice(1) as TermFormulaRecord[];
   }
+}
+
+/** Calls `see` on every atom of a formula. */
+export function visitAtoms(
+  formula: TermFormulaRecord,
+  growth: Growth,
+  see: (atom: AtomRecord) => void,
+): void {
+  growth.add();
+  if (formula[0] === "is" || formula[0] === "=") see(formula);
+  else for (const part of partsOf(formula)) visitAtoms(part, growth, see);
 }
 
 /** The formula with other subformulas in place of its own, as many and in the same order. */

@@ -1,14 +1,17 @@
 /**
- * "No model on n points": the propositional form of "these sentences hold on n points", and the check of a clause proof
- * that nothing satisfies it. The search proves things of the very clauses that are made here.
+ * The propositional form of "these sentences hold on n points", which a search for a proof that there is no such
+ * structure and the checker of that proof start from.
  */
-
-import { atomTerms, freeVariables, Growth, partsOf } from "../logic/formula-records.ts";
-import { miniscopeFormula } from "../logic/made-formulas.ts";
-import type { Meter } from "../logic/meter.ts";
-import type { FormulaRecord, NoModelFact } from "./format.ts";
-import { Propagation } from "./propagation.ts";
-import { reject } from "./read.ts";
+import {
+  atomTerms,
+  type FormulaRecord,
+  freeVariables,
+  Growth,
+  partsOf,
+  visitAtoms,
+} from "./formula-records.ts";
+import { miniscopeFormula } from "./made-formulas.ts";
+import type { Meter } from "./meter.ts";
 
 /** Literals of a propositional form beyond which there is none. */
 const LARGEST_GROUND_FORM = 10_000_000;
@@ -152,33 +155,9 @@ export function groundForm(sentences: readonly FormulaRecord[], size: number, me
 /** The relations of sentences with their places, by name and then by places. */
 function relationsOf(sentences: readonly FormulaRecord[], growth: Growth): (readonly [string, number])[] {
   const found = new Map<string, readonly [string, number]>();
-  const look = (part: FormulaRecord): void => {
-    growth.add();
-    if (part[0] === "is") found.set(JSON.stringify([part[1], part.length - 2]), [part[1], part.length - 2]);
-    partsOf(part).forEach(look);
-  };
-  sentences.forEach(look);
+  for (const sentence of sentences)
+    visitAtoms(sentence, growth, (atom) => {
+      if (atom[0] === "is") found.set(JSON.stringify([atom[1], atom.length]), [atom[1], atom.length - 2]);
+    });
   return [...found.values()].sort(([a, m], [b, n]) => (a < b ? -1 : a > b ? 1 : m - n));
-}
-
-/**
- * Checks that the axioms of a fact have no model of its size.
- * @throws Rejected
- */
-export function checkNoModel(
-  fact: NoModelFact,
-  sentences: readonly FormulaRecord[],
-  at: string,
-  meter: Meter,
-): void {
-  const axioms = fact.axioms.map((index) => sentences[index]!);
-  const { variables, clauses } = groundForm(axioms, fact.size, meter);
-  const propagation = new Propagation(meter);
-  for (const clause of clauses) propagation.add(clause);
-  for (const [place, clause] of [...fact.proof, []].entries()) {
-    if (clause.some((literal) => literal === 0 || Math.abs(literal) > variables))
-      reject(`${at}, clause ${place} has a literal of no variable`);
-    if (!propagation.follows(clause)) reject(`${at}, clause ${place} does not follow by unit propagation`);
-    propagation.add(clause);
-  }
 }
