@@ -12,9 +12,9 @@ import type {
 } from "../../lib/evidence/format.ts";
 import type { FunctionSymbol, Term, TermFormula } from "../../lib/logic/clausal.ts";
 import { type Formula, type RelationSymbol, relationsOf, variablesOf } from "../../lib/logic/formula.ts";
-import { atomOf, atomTerms, Growth, partsOf, termVariables } from "../../lib/logic/formula-records.ts";
-import { negationNormalForm } from "../../lib/logic/made-formulas.ts";
-import { isNegated } from "./derivation-steps.ts";
+import { atomOf, atomTerms, Growth, partsOf, termVariables } from "../../lib/logic/records/formulas.ts";
+import { negationNormalForm } from "../../lib/logic/records/made-formulas.ts";
+import { isNegated } from "./derivation-propagation.ts";
 
 /** Variables in the order in which they are taken. */
 export const VARIABLES = ["x", "y", "z", "u", "v", "w"];

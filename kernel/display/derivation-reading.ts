@@ -4,7 +4,7 @@
  * says at that place; only names and the grouping are made here.
  */
 
-import { clauseForm } from "../../lib/evidence/clause-form.ts";
+import { clauseForm } from "../../lib/logic/records/clause-form.ts";
 import type {
   ClauseRecord,
   DerivationFact,
@@ -13,8 +13,8 @@ import type {
 } from "../../lib/evidence/format.ts";
 import type { ShownDerivation } from "../../lib/inquiry/answer.ts";
 import type { Term, TermFormula } from "../../lib/logic/clausal.ts";
-import { atomOf, atomTerms, recordFormula } from "../../lib/logic/formula-records.ts";
-import { miniscopeFormula, unfoldFormula } from "../../lib/logic/made-formulas.ts";
+import { atomOf, atomTerms, recordFormula } from "../../lib/logic/records/formulas.ts";
+import { miniscopeFormula, unfoldFormula } from "../../lib/logic/records/made-formulas.ts";
 import {
   DerivationNames,
   functionsOfTerm,
@@ -24,16 +24,8 @@ import {
   VARIABLES,
   variableNames,
 } from "./derivation-names.ts";
-import {
-  atomKey,
-  instanceOf,
-  isNegated,
-  type Step,
-  type Steps,
-  stepsOf,
-  type Use,
-  variablesOf,
-} from "./derivation-steps.ts";
+import { atomKey, isNegated } from "./derivation-propagation.ts";
+import { instanceOf, type Step, type Steps, stepsOf, type Use, variablesOf } from "./derivation-steps.ts";
 
 /** The number of a line, from 1. */
 export type LineNumber = number;

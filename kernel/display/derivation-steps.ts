@@ -1,25 +1,21 @@
 /**
  * The steps of a derivation as a person would take them. A derivation is made for a checker: instances, laws of
- * identity and every single resolution are lines of their own there. Here steps that are needed once and say little are
- * drawn into the step that needs them. No clause is changed by that: what is left is some of the derivation's clauses,
- * each of which follows from the ones it cites as the format of evidence demands.
+ * identity and every single resolution are lines of their own there, or a dozen lines are put together at once. Here
+ * steps that are needed once and say little are drawn into the step that needs them, and steps that cite much are taken
+ * apart. The derivation's clauses are not changed by that, and each clause follows from the ones that are cited for it as
+ * the format of evidence demands.
  */
 
-import { clauseForm, simplifyClause } from "../../lib/evidence/clause-form.ts";
-import type {
-  ClauseRecord,
-  LineRecord,
-  LiteralRecord,
-  TermFormulaRecord,
-  TermRecord,
-} from "../../lib/evidence/format.ts";
+import { clauseForm } from "../../lib/logic/records/clause-form.ts";
+import type { ClauseRecord, LineRecord, TermFormulaRecord, TermRecord } from "../../lib/evidence/format.ts";
 import {
   atomOf,
   atomTerms,
   substituteInClause,
   substituteInTerm,
   termVariables,
-} from "../../lib/logic/formula-records.ts";
+} from "../../lib/logic/records/formulas.ts";
+import { atomKey, isNegated, propagate, stepsBetween } from "./derivation-propagation.ts";
 
 export type Terms = ReadonlyMap<string, TermRecord>;
 
@@ -44,6 +40,8 @@ export type Steps = ReadonlyMap<number, Step>;
 /** Lines that one shown step may cite, and how many of them for special values of their variables. */
 const MOST_CITED = 4;
 const MOST_SPECIAL = 2;
+/** Lines that one step may cite before it is taken apart. */
+const MOST_CITED_AT_ONCE = 5;
 /** The same where equals are exchanged: what they are exchanged in, and the equation. */
 const MOST_CITED_WITH_LAW = 2;
 
@@ -59,7 +57,8 @@ export function stepsOf(lines: readonly LineRecord[], formulas: readonly TermFor
     const drawn = drawIn(number, step.clause, step.origin.uses, steps, often);
     steps.set(number, { clause: step.clause, origin: { kind: "infer", uses: drawn } });
   }
-  return needed(steps);
+  const drawn = needed(steps);
+  return new Map([...drawn].flatMap(([number, step]) => takeApart(number, step, drawn)));
 }
 
 function readSteps(lines: readonly LineRecord[], formulas: readonly TermFormulaRecord[]): Map<number, Step> {
@@ -126,7 +125,7 @@ function drawIn(
         ...inner.origin.uses.map((one) => compose(one, inner.clause, use.terms, steps, fresh)),
         ...current.slice(at + 1),
       ]);
-      if (readsWell(clause, joined, steps) && follows(clause, joined, steps)) {
+      if (readsWell(clause, joined, steps) && propagate(clause, instancesOf(joined, steps)) !== null) {
         current = joined;
         continue;
       }
@@ -198,50 +197,39 @@ function readsWell(clause: ClauseRecord, uses: readonly Use[], steps: Steps): bo
   );
 }
 
+function instancesOf(uses: readonly Use[], steps: Steps): readonly ClauseRecord[] {
+  return uses.map((use) => instanceOf(use, steps));
+}
+
+/**
+ * A step that cites much, after the steps that come between; any other step by itself. Those that come between have
+ * numbers below that of the step and above all before it.
+ */
+function takeApart(number: number, step: Step, steps: Steps): readonly (readonly [number, Step])[] {
+  const uses = usesOf(step);
+  const cited = uses.filter((use) => steps.get(use.step)!.origin.kind !== "identity");
+  const special = cited.filter((use) => !isRenaming(use, steps));
+  if (cited.length <= MOST_CITED_AT_ONCE && special.length <= MOST_SPECIAL) return [[number, step]];
+  const between = stepsBetween(step.clause, instancesOf(uses, steps));
+  if (between === null) return [[number, step]];
+  const numberOf = (place: number) => number - 1 + (place + 1) / between.length;
+  return between.map(({ clause, from }, place): readonly [number, Step] => [
+    numberOf(place),
+    {
+      clause,
+      origin: {
+        kind: "infer",
+        uses: from.map((source) =>
+          source.kind === "given" ? uses[source.place]! : { step: numberOf(source.place), terms: new Map() },
+        ),
+      },
+    },
+  ]);
+}
+
 /** What a use says. */
 export function instanceOf({ step, terms }: Use, steps: Steps): ClauseRecord {
   return substituteInClause(steps.get(step)!.clause, terms);
-}
-
-/** Whether a clause is a consequence by unit propagation. */
-function follows(clause: ClauseRecord, uses: readonly Use[], steps: Steps): boolean {
-  const values = new Map<string, boolean>();
-  for (const literal of clause) values.set(atomKey(literal), isNegated(literal));
-  let waiting = uses.map((use) => simplifyClause(instanceOf(use, steps))).filter((one) => one !== null);
-  for (let before = -1; waiting.length !== before; ) {
-    before = waiting.length;
-    const kept: ClauseRecord[] = [];
-    for (const one of waiting) {
-      const value = (literal: LiteralRecord) => {
-        const known = values.get(atomKey(literal));
-        return known === undefined ? null : known !== isNegated(literal);
-      };
-      if (one.some((literal) => value(literal) === true)) continue;
-      const open = one.filter((literal) => value(literal) === null);
-      if (open.length === 0) return true;
-      if (open.length === 1) values.set(atomKey(open[0]!), !isNegated(open[0]!));
-      else kept.push(one);
-    }
-    waiting = kept;
-  }
-  return false;
-}
-
-export function isNegated(literal: LiteralRecord): boolean {
-  return literal[0] === "not";
-}
-
-/** The same for an equation and the equation turned round: readers need no step for that. */
-export function atomKey(literal: LiteralRecord): string {
-  const atom = atomOf(literal);
-  if (atom[0] !== "=") return JSON.stringify(atom);
-  return JSON.stringify([
-    "=",
-    ...atom
-      .slice(1)
-      .map((term) => JSON.stringify(term))
-      .sort(),
-  ]);
 }
 
 /** Whether a law of identity says only that everything is itself, or that an equation may be turned round. */

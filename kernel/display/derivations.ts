@@ -16,26 +16,39 @@ const OPEN_LINES = 14;
 /** Axioms that a title names; more are counted. */
 const NAMED_AXIOMS = 6;
 
-/** A derivation for people who have had one course of logic. */
+/** A derivation for people who have had one course of logic; a long one is closed at first. */
 export function showDerivation(shown: ShownDerivation): readonly Block[] {
+  const { rows, title, table, remark } = layOut(shown);
+  if (rows > OPEN_LINES) return [{ kind: "fold", title, blocks: [remark, table] }];
+  return [{ ...table, caption: `Derivation: ${shown.role}` }, remark];
+}
+
+/** Several derivations: each by itself, closed at first. One alone is shown as {@link showDerivation} does. */
+export function showDerivations(several: readonly ShownDerivation[]): readonly Block[] {
+  if (several.length === 1) return several.flatMap(showDerivation);
+  return several.map((shown) => {
+    const { title, table, remark } = layOut(shown);
+    return { kind: "fold", title, blocks: [remark, table] };
+  });
+}
+
+function layOut(shown: ShownDerivation) {
   const reading = readDerivation(shown);
   const rows = [...reading.lines.map(lineCells), ...conclusionCells(reading, shown)];
-  const isLong = rows.length > OPEN_LINES;
   const table: TableBlock = {
     kind: "table",
-    caption: isLong ? null : `Derivation: ${shown.role}`,
+    caption: null,
     head: ["line", "sentence", "because"],
     rows: rows.map((cells, index) => [[String(index + 1)], ...cells]),
     look: "derivation",
   };
-  if (!isLong) return [table, note(remark(reading))];
   const from = reading.labels.length === 0 ? "" : `, from ${axiomsText(reading.labels)}`;
   const title = `Derivation, ${counted(rows.length, "line")}${from}: ${shown.role}`;
-  return [{ kind: "fold", title, blocks: [note(remark(reading)), table] }];
+  return { rows: rows.length, title, table, remark: note(remarkOn(reading)) };
 }
 
 /** What was used, and how to read it. */
-function remark({ labels, isGeneral }: Reading): string {
+function remarkOn({ labels, isGeneral }: Reading): string {
   const used = labels.length === 0 ? "No axiom is used." : `Uses ${axiomsText(labels)}.`;
   return isGeneral ? `${used} Variables without a quantifier stand for all elements.` : used;
 }
