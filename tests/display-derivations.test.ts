@@ -3,13 +3,19 @@ import { describe, expect, it } from "vitest";
 import type { Block, Inline, TableBlock } from "../kernel/display/blocks.ts";
 import { renderBundle } from "../kernel/display/bundle.ts";
 import { type Reading, readDerivation } from "../kernel/display/derivation-reading.ts";
-import { showDerivation } from "../kernel/display/derivations.ts";
+import { showDerivation, showDerivations } from "../kernel/display/derivations.ts";
 import { blocksToText } from "../kernel/display/to-text.ts";
+import { DerivationSearch } from "../lib/derivation/turns.ts";
 import { checkEvidence } from "../lib/evidence/check.ts";
 import type { LineRecord } from "../lib/evidence/format.ts";
 import type { ShownDerivation } from "../lib/inquiry/answer.ts";
+import { EvidenceWriter } from "../lib/inquiry/evidence-writer.ts";
 import { emptyScope } from "../lib/language/statements.ts";
+import { variablesOf } from "../lib/logic/formula.ts";
+import { Meter } from "../lib/logic/meter.ts";
+import { Solver } from "../lib/structures/sat/solver.ts";
 import { checkBundle } from "./support/bundles.ts";
+import { questions, readSentences } from "./support/corpora.ts";
 import {
   asymmetry,
   cases,
@@ -224,7 +230,176 @@ line  sentence                    because
   });
 });
 
+describe("relations that are written out, or put in", () => {
+  it("names the relation, and the line that says what it means", () => {
+    const shown = derivationOf(
+      { meet: "∀x ∀y (Rxy ↔ ∃z (Szx ∧ Szy))", some: "∃x ∃y Rxy", none: "∀x ∀y ¬Sxy" },
+      null,
+      {
+        made: [["unfold", 1, 0]],
+        lines: [
+          ["clause", 3, 0],
+          ["clause", 2, 0],
+          ["infer", [], [[0, {}], [1, { x: ["3.2"], y: ["3.0"] }]]],
+        ],
+      },
+      { ...emptyScope, declared: ["R", "S"].map((name) => ({ name, places: 2, infix: false })) },
+    ); // biome-ignore format: a line each
+    expect(checkEvidence(evidenceOf(shown))).toMatchObject({ accepted: true });
+    expect(rowsOf(shown).slice(3)).toEqual([
+      "∃x ∃y ∃z (Szx ∧ Szy) | from 2, with R written out as in 1",
+      "Sba | from 4; let a and b be such x and z",
+      "contradiction | from 5, and 3 with x = b, y = a",
+    ]);
+  });
+
+  it("says where a relation made on the way has been put in, and the conclusion's negation without ¬¬", () => {
+    const shown = derivationOf({ both: "∃x (Rxx ∧ ∀y Rxy)" }, "¬∀x ¬∀y Rxy", {
+      made: [
+        ["define", "every", ["v1"], ["forall", "y", ["is", "R", "v1", "y"]]],
+        ["fold", 0, 2, ["exists", "x", ["and", ["is", "R", "x", "x"], ["is", "every", "x"]]]],
+        ["fold", 1, 2, ["not", ["not", ["forall", "x", ["not", ["is", "every", "x"]]]]]],
+      ],
+      lines: [
+        ["clause", 3, 1],
+        ["clause", 4, 0],
+        ["infer", [], [[0, {}], [1, { x: ["3.0"] }]]],
+      ],
+    }); // biome-ignore format: a line each
+    expect(checkEvidence(evidenceOf(shown))).toMatchObject({ accepted: true });
+    expect(rowsOf(shown)).toEqual([
+      "∃x (Rxx ∧ ∀y Rxy) | axiom both",
+      "∀x ¬∀y Rxy | suppose not: the conclusion is false",
+      "∀z (Dz ↔ ∀y Rzy) | D is short for the right-hand side",
+      "∃x (Rxx ∧ Dx) | from 1, with D put in as in 3",
+      "Da | from 4; let a be such an x",
+      "∀x ¬Dx | from 2, with D put in as in 3",
+      "contradiction | from 5, and 6 with x = a",
+      "¬∀x ¬∀y Rxy | so 2 is false and the conclusion holds",
+    ]);
+  });
+});
+
+describe("steps that cite much", () => {
+  it("are taken apart, and each part follows", () => {
+    const shown = derivationOf(
+      {
+        trans: "∀x ∀y ∀z (Rxy ∧ Ryz → Rxz)",
+        chain: "∃x ∃y ∃z ∃u ∃v (Rxy ∧ Ryz ∧ Rzu ∧ Ruv ∧ ¬Rxv)",
+      },
+      null,
+      {
+        made: [],
+        lines: [
+          ["clause", 0, 0],
+          ["clause", 1, 0],
+          ["clause", 1, 1],
+          ["clause", 1, 2],
+          ["clause", 1, 3],
+          ["clause", 1, 4],
+          [
+            "infer",
+            [],
+            [
+              [0, { x: ["1.0"], y: ["1.1"], z: ["1.2"] }],
+              [0, { x: ["1.0"], y: ["1.2"], z: ["1.3"] }],
+              [0, { x: ["1.0"], y: ["1.3"], z: ["1.4"] }],
+              [1, {}],
+              [2, {}],
+              [3, {}],
+              [4, {}],
+              [5, {}],
+            ],
+          ],
+        ],
+      },
+    );
+    expect(checkEvidence(evidenceOf(shown))).toMatchObject({ accepted: true });
+    const rows = rowsOf(shown);
+    expect(rows.slice(2, 4)).toEqual([
+      "Rab ∧ Rbc ∧ Rcd ∧ Rde | from 2; let a, b, c, d and e be such x, y, z, u and v",
+      "¬Rae | from 2",
+    ]);
+    expect(rows.slice(4)).toEqual([
+      "Rac | from 3, and 1 with x = a, y = b, z = c",
+      "Rad | from 3 and 5, and 1 with x = a, y = c, z = d",
+      "contradiction | from 3, 4 and 6, and 1 with x = a, y = d, z = e",
+    ]);
+  });
+});
+
+/** Derivations that the search finds, of questions with short ones. */
+function foundDerivations(count: number): readonly ShownDerivation[] {
+  const found: ShownDerivation[] = [];
+  for (const { id, premises, conclusion, expected } of questions) {
+    if (expected !== "holds" || found.length === count) continue;
+    const sentences = readSentences([...premises, conclusion]);
+    const task = { premises: sentences.slice(0, -1), conclusion: sentences.at(-1)! };
+    const search = new DerivationSearch(task, (onDerived) => new Solver({ observer: { onDerived } }));
+    const meter = new Meter(3000);
+    while (search.generated < 1000 && !search.done) search.next(meter);
+    if (!search.done) continue;
+    const outcome = search.next(meter);
+    if (outcome.result !== "derived") throw new Error(`${id}: ${outcome.result}`);
+    const { derivation } = outcome;
+    found.push({
+      role: id,
+      premises: derivation.premises.map((place) => ({
+        label: `a${place + 1}`,
+        formula: task.premises[place]!,
+      })),
+      conclusion: derivation.usesConclusion ? task.conclusion : null,
+      fact: new EvidenceWriter().addDerivation(task, derivation),
+    });
+  }
+  return found;
+}
+
+describe("derivations that the search has found", () => {
+  const found = foundDerivations(60);
+
+  it("mention earlier lines alone, and use every line", () => {
+    expect(found).toHaveLength(60);
+    for (const shown of found) {
+      const reading = readDerivation(shown);
+      const mentioned = new Set<number>();
+      for (const [number, cited] of citedLines(reading))
+        for (const line of cited) {
+          expect(line, shown.role).toBeLessThan(number);
+          mentioned.add(line);
+        }
+      expect(mentioned.size, shown.role).toBe(reading.lines.length - 1);
+    }
+  });
+
+  it("have one name for one thing: no constant is a variable of the user's", () => {
+    for (const shown of found) {
+      const given = shown.premises.map(({ formula }) => formula).concat(shown.conclusion ?? []);
+      const variables = new Set(given.flatMap((formula) => [...variablesOf(formula)]));
+      const names = readDerivation(shown).lines.flatMap(({ introduced }) =>
+        introduced.map(({ term }) => (typeof term === "string" ? term : term.symbol.name)),
+      );
+      expect(new Set(names).size).toBe(names.length);
+      for (const name of names) expect(variables.has(name), `${shown.role}: ${name}`).toBe(false);
+    }
+  });
+
+  it("are set in every form", () => {
+    for (const shown of found) checkBundle(renderBundle(showDerivation(shown), "with-latex"));
+  });
+});
+
 describe("length", () => {
+  it("folds each of several", () => {
+    const blocks = showDerivations([asymmetry, exchange]);
+    expect(blocks).toMatchObject([
+      { kind: "fold", title: "Derivation, 7 lines, from irr and trans: the conclusion follows" },
+      { kind: "fold", title: "Derivation, 7 lines, from unique: the conclusion follows" },
+    ]);
+    expect(showDerivations([asymmetry])).toEqual(showDerivation(asymmetry));
+    expect(showDerivations([])).toEqual([]);
+  });
+
   it("leaves a short one open", () => {
     expect(showDerivation(asymmetry).map(({ kind }) => kind)).toEqual(["table", "note"]);
   });

@@ -4,7 +4,6 @@
  * says at that place; only names and the grouping are made here.
  */
 
-import { clauseForm } from "../../lib/logic/records/clause-form.ts";
 import type {
   ClauseRecord,
   DerivationFact,
@@ -13,6 +12,7 @@ import type {
 } from "../../lib/evidence/format.ts";
 import type { ShownDerivation } from "../../lib/inquiry/answer.ts";
 import type { Term, TermFormula } from "../../lib/logic/clausal.ts";
+import { clauseForm } from "../../lib/logic/records/clause-form.ts";
 import { atomOf, atomTerms, recordFormula } from "../../lib/logic/records/formulas.ts";
 import { miniscopeFormula, unfoldFormula } from "../../lib/logic/records/made-formulas.ts";
 import {
@@ -207,10 +207,7 @@ class Reader {
 
   #addGiven(formula: number): void {
     const premise = this.#shown.premises[formula];
-    const record = this.#formulas[formula]!;
-    // The negation of ¬φ is shown as φ.
-    const isTwice = premise === undefined && record[0] === "not" && record[1][0] === "not";
-    const sentence = this.#names.formula(isTwice ? (record[1][1] as TermFormulaRecord) : record);
+    const sentence = this.#sentenceOf(formula);
     this.#formulaLines.set(
       formula,
       premise === undefined
@@ -219,11 +216,19 @@ class Reader {
     );
   }
 
+  /** A premise as the user has it; of what is made here, ¬¬φ is shown as φ. */
+  #sentenceOf(formula: number): TermFormula {
+    let record = this.#formulas[formula]!;
+    if (formula >= this.#shown.premises.length)
+      while (record[0] === "not" && record[1][0] === "not") record = record[1][1];
+    return this.#names.formula(record);
+  }
+
   #addMade(formula: number, made: DerivationFact["made"][number]): void {
     const record = this.#formulas[formula]!;
     if (made[0] === "define") {
       const introduced = this.#introduce(termsOfFormula(record), null, this.#names.plain);
-      const sentence = this.#names.formula(record);
+      const sentence = this.#sentenceOf(formula);
       const { name } = this.#names.relation(made[1], made[2].length);
       this.#formulaLines.set(formula, this.#add(sentence, { kind: "definition", name }, introduced));
       return;
@@ -235,14 +240,14 @@ class Reader {
         this.#stepsOf(formula).some(([, { clause }]) => namesFunctionOf(clause, formula));
       this.#formulaLines.set(
         formula,
-        changes ? this.#add(this.#names.formula(record), { kind: "inside", from }) : from,
+        changes ? this.#add(this.#sentenceOf(formula), { kind: "inside", from }) : from,
       );
       return;
     }
     const kind = made[0] === "unfold" ? "written-out" : "abbreviated";
     const by = this.#formulaLines.get(made[2])!;
     const name = this.#definedIn(this.#formulas[made[2]]!);
-    this.#formulaLines.set(formula, this.#add(this.#names.formula(record), { kind, from, by, name }));
+    this.#formulaLines.set(formula, this.#add(this.#sentenceOf(formula), { kind, from, by, name }));
   }
 
   /** The name of the relation that a definition ∀x … (d(x, …) ↔ φ) is about. */
