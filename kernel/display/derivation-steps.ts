@@ -6,8 +6,8 @@
  * the format of evidence demands.
  */
 
-import { clauseForm } from "../../lib/logic/records/clause-form.ts";
 import type { ClauseRecord, LineRecord, TermFormulaRecord, TermRecord } from "../../lib/evidence/format.ts";
+import { clauseForm } from "../../lib/logic/records/clause-form.ts";
 import {
   atomOf,
   atomTerms,
@@ -96,7 +96,7 @@ function usesOf(step: Step): readonly Use[] {
 
 /** What the last step needs, in order. */
 function needed(steps: Steps): Map<number, Step> {
-  const last = Math.max(...steps.keys());
+  const last = [...steps.keys()].reduce((most, number) => Math.max(most, number), 0);
   const reached = new Set([last]);
   for (const number of [...steps.keys()].sort((a, b) => b - a))
     if (reached.has(number)) for (const use of usesOf(steps.get(number)!)) reached.add(use.step);
