@@ -71,3 +71,38 @@ describe("files", () => {
     expect(readFileSync(join(root, file), "utf8").split("\n").length).toBeLessThanOrEqual(700);
   });
 });
+
+describe("the checker of evidence", () => {
+  /** Lines that are neither blank nor comment. */
+  const codeLines = (file: string) =>
+    readFileSync(join(root, file), "utf8")
+      .split("\n")
+      .filter((line) => !/^\s*($|\/\/|\/?\*)/.test(line)).length;
+
+  /** A file and all that it imports for more than types, and what these import. */
+  function closureOf(start: string): readonly string[] {
+    const found = new Set<string>();
+    const follow = (file: string): void => {
+      if (found.has(file)) return;
+      found.add(file);
+      const text = readFileSync(join(root, file), "utf8").replaceAll(/^(im|ex)port type [^;]*;/gm, "");
+      for (const { fileName } of ts.preProcessFile(text).importedFiles)
+        if (fileName.startsWith(".")) follow(relative(root, resolve(root, dirname(file), fileName)));
+    };
+    follow(start);
+    return [...found];
+  }
+
+  it("has less than 700 lines of code", () => {
+    const lines = files.filter((file) => file.startsWith("lib/evidence/")).map(codeLines);
+    expect(lines.reduce((sum, count) => sum + count, 0)).toBeLessThan(700);
+  });
+
+  it("stands on records of formulas, on carriers and on the meter, and on nothing else: less than 1,600 lines", () => {
+    const closure = closureOf("lib/evidence/check.ts");
+    const allowed =
+      /^lib\/(evidence|carriers|logic\/records)\/|^lib\/logic\/(meter|structure-definition)\.ts$/;
+    for (const file of closure) expect(file).toMatch(allowed);
+    expect(closure.map(codeLines).reduce((sum, count) => sum + count, 0)).toBeLessThan(1600);
+  });
+});

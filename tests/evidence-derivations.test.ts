@@ -1,6 +1,7 @@
 /** Derivations written by hand: each rule at work, and near misses of every condition that makes it sound. */
 import { describe, expect, it } from "vitest";
 import { checkEvidence } from "../lib/evidence/check.ts";
+import { digestOf } from "../lib/evidence/digest.ts";
 import {
   type DerivationFact,
   EVIDENCE_FORMAT,
@@ -13,7 +14,6 @@ import {
   type TermFormulaRecord,
   type TermRecord,
 } from "../lib/evidence/format.ts";
-import { digestOf } from "../lib/evidence/record.ts";
 import { Meter } from "../lib/logic/meter.ts";
 
 const is = (name: string, ...args: TermRecord[]) => ["is", name, ...args] as const;

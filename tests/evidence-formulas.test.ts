@@ -1,7 +1,6 @@
 /** Formulas made of formulas and clause forms: they say what they should, by trying all small structures. */
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { clauseForm, simplifyClause } from "../lib/evidence/clause-form.ts";
 import type {
   AtomRecord,
   ClauseRecord,
@@ -9,6 +8,7 @@ import type {
   TermFormulaRecord,
   TermRecord,
 } from "../lib/evidence/format.ts";
+import { clauseForm, simplifyClause } from "../lib/logic/records/clause-form.ts";
 import {
   atomOf,
   atomTerms,
@@ -17,8 +17,8 @@ import {
   recordFormula,
   sameUpToNames,
   termVariables,
-} from "../lib/logic/formula-records.ts";
-import { miniscopeFormula, unfoldFormula } from "../lib/logic/made-formulas.ts";
+} from "../lib/logic/records/formulas.ts";
+import { miniscopeFormula, unfoldFormula } from "../lib/logic/records/made-formulas.ts";
 import { type Interpretation, interpretationsOn, isTrue, isTrueClause } from "./support/evidence-judge.ts";
 import { sentences } from "./support/random-formulas.ts";
 

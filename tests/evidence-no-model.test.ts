@@ -2,13 +2,13 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { checkNoModel } from "../lib/evidence/no-model.ts";
-import { Propagation } from "../lib/evidence/propagation.ts";
 import { Rejected } from "../lib/evidence/read.ts";
 import { proveNoModel } from "../lib/inquiry/no-model.ts";
 import { and, atom, equal, exists, type Formula, forall, implies, not, or } from "../lib/logic/formula.ts";
-import { FormulaTooLarge, recordFormula } from "../lib/logic/formula-records.ts";
-import { groundForm } from "../lib/logic/ground-form.ts";
 import { Meter } from "../lib/logic/meter.ts";
+import { FormulaTooLarge, recordFormula } from "../lib/logic/records/formulas.ts";
+import { groundForm } from "../lib/logic/records/ground-form.ts";
+import { Propagation } from "../lib/logic/records/propagation.ts";
 import { Solver } from "../lib/structures/sat/solver.ts";
 import { allInterpretations, isTrue } from "./support/brute-force.ts";
 import { sentences } from "./support/random-formulas.ts";

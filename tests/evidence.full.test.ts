@@ -4,13 +4,13 @@
  */
 import { describe, expect, it } from "vitest";
 import { checkEvidence } from "../lib/evidence/check.ts";
-import { clauseForm } from "../lib/evidence/clause-form.ts";
+import { digestOf } from "../lib/evidence/digest.ts";
 import type { ClauseRecord, DerivationFact, Evidence, FormulaRecord } from "../lib/evidence/format.ts";
-import { digestOf } from "../lib/evidence/record.ts";
 import { askEntails } from "../lib/inquiry/claims.ts";
 import { unwatchedWork } from "../lib/inquiry/work.ts";
-import { substituteInClause } from "../lib/logic/formula-records.ts";
-import { miniscopeFormula, unfoldFormula } from "../lib/logic/made-formulas.ts";
+import { clauseForm } from "../lib/logic/records/clause-form.ts";
+import { substituteInClause } from "../lib/logic/records/formulas.ts";
+import { miniscopeFormula, unfoldFormula } from "../lib/logic/records/made-formulas.ts";
 import { changes, wordsIn } from "./support/changes.ts";
 import { claims, questions, readSentences, theoryOf } from "./support/corpora.ts";
 import { type Interpretation, isRight, isTrueClause } from "./support/evidence-judge.ts";

@@ -4,8 +4,8 @@
  */
 import { describe, expect, it } from "vitest";
 import { checkEvidence } from "../lib/evidence/check.ts";
+import { digestOf } from "../lib/evidence/digest.ts";
 import type { Evidence } from "../lib/evidence/format.ts";
-import { digestOf } from "../lib/evidence/record.ts";
 import { checkFinite } from "../lib/inquiry/check-finite.ts";
 import {
   askConsistent,

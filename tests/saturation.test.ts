@@ -4,7 +4,6 @@ import type { ClauseTask, EngineOutcome } from "../lib/derivation/refutation.ts"
 import { saturate } from "../lib/derivation/saturation/saturate.ts";
 import * as strategies from "../lib/derivation/saturation/strategy.ts";
 import { DEFAULT_STRATEGY, type Strategy } from "../lib/derivation/saturation/strategy.ts";
-import { clauseForm } from "../lib/evidence/clause-form.ts";
 import { checkDerivation } from "../lib/evidence/derivation.ts";
 import type {
   AtomRecord,
@@ -13,8 +12,9 @@ import type {
   LineRecord,
   TermRecord,
 } from "../lib/evidence/format.ts";
-import { recordFormula } from "../lib/logic/formula-records.ts";
 import { Meter, WorkEnded } from "../lib/logic/meter.ts";
+import { clauseForm } from "../lib/logic/records/clause-form.ts";
+import { recordFormula } from "../lib/logic/records/formulas.ts";
 import { claims, questions, readSentences } from "./support/corpora.ts";
 
 const NAMED: readonly (readonly [string, Strategy])[] = Object.entries(strategies);

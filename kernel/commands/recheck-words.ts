@@ -12,8 +12,8 @@ import type {
 import { dualsOf } from "../../lib/inquiry/dualise.ts";
 import type { Statement } from "../../lib/language/statements.ts";
 import { type Formula, not } from "../../lib/logic/formula.ts";
-import { recordFormula } from "../../lib/logic/formula-records.ts";
 import { findProperty, propertyOf } from "../../lib/logic/properties.ts";
+import { recordFormula } from "../../lib/logic/records/formulas.ts";
 import { type Theory, theorySignature } from "../../lib/logic/theory.ts";
 
 /** The parts of a stored result that say what was found. */

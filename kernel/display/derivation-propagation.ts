@@ -3,8 +3,9 @@
  * notion of consequence of the format of evidence, but for one thing: an equation and the equation turned round are the
  * same here.
  */
-import { simplifyClause } from "../../lib/logic/records/clause-form.ts";
+
 import type { ClauseRecord, LiteralRecord } from "../../lib/evidence/format.ts";
+import { simplifyClause } from "../../lib/logic/records/clause-form.ts";
 import { atomOf } from "../../lib/logic/records/formulas.ts";
 
 /** A clause that was used: all its literals but one are false, or all. */

@@ -2,7 +2,7 @@
  * From the refutation that an engine found to the derivation that evidence holds: only what is needed, shortened, and
  * numbered as the format of evidence numbers formulas, functions and lines.
  */
-import { clauseForm } from "../evidence/clause-form.ts";
+
 import type {
   ClauseRecord,
   LineRecord,
@@ -11,6 +11,7 @@ import type {
   TermRecord,
   UseRecord,
 } from "../evidence/format.ts";
+import { clauseForm } from "../logic/records/clause-form.ts";
 import type { Derivation, DerivationTask } from "./derive.ts";
 import { type Line, usesOf } from "./lines.ts";
 import { definitionFormula, freshRelationNames, type Prepared, type PreparedFormula } from "./prepare.ts";

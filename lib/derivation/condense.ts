@@ -5,7 +5,7 @@
  */
 
 import type { ClauseRecord, LiteralRecord, TermRecord } from "../evidence/format.ts";
-import { atomOf, atomTerms, substituteInClause } from "../logic/formula-records.ts";
+import { atomOf, atomTerms, substituteInClause } from "../logic/records/formulas.ts";
 import { literalText, type Substitution } from "./lines.ts";
 
 /** Attempts to match a literal, for one clause, after which it is left as it is. */

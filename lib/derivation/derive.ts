@@ -1,8 +1,8 @@
 /** Derivations of a conclusion from premises, as inquiries ask for them, and one attempt at one. */
 import type { DerivationFact } from "../evidence/format.ts";
 import type { Formula } from "../logic/formula.ts";
-import { FormulaTooLarge } from "../logic/formula-records.ts";
 import type { Meter } from "../logic/meter.ts";
+import { FormulaTooLarge } from "../logic/records/formulas.ts";
 import { assemble } from "./assemble.ts";
 import type { CreateSolver } from "./ground-solver.ts";
 import { instantiate } from "./instantiation/instantiate.ts";

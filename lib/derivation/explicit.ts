@@ -5,7 +5,7 @@
  */
 
 import type { TermFormulaRecord } from "../evidence/format.ts";
-import { freeVariables } from "../logic/formula-records.ts";
+import { freeVariables } from "../logic/records/formulas.ts";
 
 /** What a formula ∀x … (R(x, …) ↔ φ) defines, R not being in φ. */
 export interface ExplicitDefinition {

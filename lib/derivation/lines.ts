@@ -1,7 +1,7 @@
 /** The lines of a derivation while it is put together: clauses, how they follow, and what can be asked of them. */
 
 import type { ClauseRecord, LiteralRecord, TermRecord } from "../evidence/format.ts";
-import { atomOf, atomTerms, substituteInClause, substituteInTerm } from "../logic/formula-records.ts";
+import { atomOf, atomTerms, substituteInClause, substituteInTerm } from "../logic/records/formulas.ts";
 
 export type Substitution = ReadonlyMap<string, TermRecord>;
 

@@ -4,7 +4,7 @@
  */
 
 import type { TermFormulaRecord } from "../evidence/format.ts";
-import { freeVariables } from "../logic/formula-records.ts";
+import { freeVariables } from "../logic/records/formulas.ts";
 
 /** The part for which a relation was put, and the formula after that. */
 export interface NamedPart {

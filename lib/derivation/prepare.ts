@@ -3,11 +3,12 @@
  * them, and the clauses of what they have become. Every formula on the way is kept with how it was made, since a
  * derivation tells it.
  */
-import { clauseForm } from "../evidence/clause-form.ts";
+
 import type { ClauseRecord, MadeFormula, TermFormulaRecord } from "../evidence/format.ts";
 import type { Formula } from "../logic/formula.ts";
-import { recordFormula } from "../logic/formula-records.ts";
-import { miniscopeFormula, unfoldFormula } from "../logic/made-formulas.ts";
+import { clauseForm } from "../logic/records/clause-form.ts";
+import { recordFormula } from "../logic/records/formulas.ts";
+import { miniscopeFormula, unfoldFormula } from "../logic/records/made-formulas.ts";
 import { condense } from "./condense.ts";
 import type { DerivationTask } from "./derive.ts";
 import { explicitDefinition, orderDefinitions, relationsIn } from "./explicit.ts";

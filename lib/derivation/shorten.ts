@@ -4,7 +4,7 @@
  */
 
 import type { ClauseRecord, TermRecord } from "../evidence/format.ts";
-import { substituteInClause, substituteInTerm } from "../logic/formula-records.ts";
+import { substituteInClause, substituteInTerm } from "../logic/records/formulas.ts";
 import {
   addVariables,
   clauseVariables,

@@ -4,15 +4,14 @@
  * `lib/logic`.
  */
 
-import { FormulaTooLarge } from "../logic/formula-records.ts";
 import { Meter, WorkEnded } from "../logic/meter.ts";
+import { FormulaTooLarge } from "../logic/records/formulas.ts";
 import { checkDerivation } from "./derivation.ts";
+import { digestOf } from "./digest.ts";
 import { isTrueIn } from "./evaluate.ts";
-import type { Fact, FormulaRecord, StructureFact } from "./format.ts";
-
+import type { FormulaRecord, StructureFact } from "./format.ts";
 import { checkNoModel } from "./no-model.ts";
 import { Rejected, readEvidence, reject } from "./read.ts";
-import { digestOf } from "./record.ts";
 import { isBorneOut } from "./verdicts.ts";
 
 export type CheckResult =
@@ -32,7 +31,12 @@ export function checkEvidence(
     const { sentences, facts } = evidence;
     if (evidence.digest !== digestOf(sentences, evidence.question))
       reject("the digest is not that of the question");
-    for (const [index, fact] of facts.entries()) checkFact(fact, `fact ${index}`, sentences, meter);
+    for (const [index, fact] of facts.entries()) {
+      const at = `fact ${index}`;
+      if (fact.fact === "structure") checkStructure(fact, sentences, at, meter);
+      else if (fact.fact === "derivation") checkDerivation(fact, sentences, at, meter);
+      else checkNoModel(fact, sentences, at, meter);
+    }
     if (!isBorneOut(evidence, meter))
       reject(`the facts do not bear out the verdict ${JSON.stringify(evidence.verdict)}`);
     return { accepted: true, steps: meter.steps };
@@ -47,23 +51,10 @@ export function checkEvidence(
   }
 }
 
-function checkFact(fact: Fact, at: string, sentences: readonly FormulaRecord[], meter: Meter): void {
-  switch (fact.fact) {
-    case "structure":
-      checkStructure(fact, at, sentences, meter);
-      break;
-    case "derivation":
-      checkDerivation(fact, sentences, at, meter);
-      break;
-    case "no-model":
-      checkNoModel(fact, sentences, at, meter);
-  }
-}
-
 function checkStructure(
   { structure, holds, fails }: StructureFact,
-  at: string,
   sentences: readonly FormulaRecord[],
+  at: string,
   meter: Meter,
 ): void {
   const isTrue = (index: number) => isTrueIn(structure, sentences[index]!, meter);

@@ -10,6 +10,8 @@
  * form brings in may be interpreted in any way.
  */
 
+import type { Meter } from "../logic/meter.ts";
+import { clauseForm, simplifyClause } from "../logic/records/clause-form.ts";
 import {
   atomOf,
   atomTerms,
@@ -27,12 +29,10 @@ import {
   type TermRecord,
   termFunctions,
   visitAtoms,
-} from "../logic/formula-records.ts";
-import { miniscopeFormula, unfoldFormula } from "../logic/made-formulas.ts";
-import type { Meter } from "../logic/meter.ts";
-import { clauseForm, simplifyClause } from "./clause-form.ts";
+} from "../logic/records/formulas.ts";
+import { miniscopeFormula, unfoldFormula } from "../logic/records/made-formulas.ts";
+import { Propagation } from "../logic/records/propagation.ts";
 import type { DerivationFact, LineRecord, MadeFormula } from "./format.ts";
-import { Propagation } from "./propagation.ts";
 import { reject } from "./read.ts";
 
 /** Parts and literals of all formulas of a derivation and their clause forms. */

@@ -5,10 +5,13 @@
  */
 import type { Carrier } from "../carriers/carrier.ts";
 import { buildCarrier } from "../carriers/structure.ts";
-import { atomTerms, partsOf } from "../logic/formula-records.ts";
 import type { Meter } from "../logic/meter.ts";
+import { atomTerms, partsOf } from "../logic/records/formulas.ts";
 import type { FormulaRecord, StructureRecord } from "./format.ts";
 import { reject } from "./read.ts";
+
+/** Where in a configuration each variable in scope stands. */
+type Places = ReadonlyMap<string, number>;
 
 /**
  * @param sentence closed and without functions
@@ -25,16 +28,8 @@ export function isTrueIn(record: StructureRecord, sentence: FormulaRecord, meter
   );
   return isTrue(sentence, carrier.empty, new Map(), 0);
 
-  /**
-   * @param places where in the configuration each variable in scope stands
-   * @param named how many elements the configuration has
-   */
-  function isTrue(
-    formula: FormulaRecord,
-    configuration: unknown,
-    places: ReadonlyMap<string, number>,
-    named: number,
-  ): boolean {
+  /** @param named how many elements the configuration has */
+  function isTrue(formula: FormulaRecord, configuration: unknown, places: Places, named: number): boolean {
     meter.charge(1);
     const part = (inner: FormulaRecord) => isTrue(inner, configuration, places, named);
     switch (formula[0]) {

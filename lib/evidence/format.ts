@@ -12,31 +12,22 @@
  * | `verdict`   | the verdict that the facts below support                                                         |
  * | `facts`     | what was established, each with the structure or the derivation that shows it                    |
  *
- * A formula is a nested list: `["is", "R", "x", "y"]`, `["=", "x", "y"]`, `["true"]`, `["false"]`, `["not", φ]`,
- * `["and", φ, ψ, …]`, `["or", φ, ψ, …]`, `["implies", φ, ψ]`, `["iff", φ, ψ]`, `["forall", "x", φ]`,
- * `["exists", "x", φ]`.
- *
- * A structure is `{carrier, tables}`; `tables` gives for each relation its number of places and the kinds of tuples
- * at which it holds, in ascending order. On the carrier `{"kind": "points", "size": n}` the kind of a tuple of
- * points p₁ … p_k, counted from 1, is the number (p₁ − 1)·n^(k−1) + … + (p_k − 1).
+ * Formulas are as in `lib/logic/records/formulas.ts`, structures as in `lib/carriers/structure-record.ts`.
  */
-import type { ClauseRecord, FormulaRecord, TermFormulaRecord, TermRecord } from "../logic/formula-records.ts";
-import type { CarrierDescription } from "../logic/structure-definition.ts";
 
-export type * from "../logic/formula-records.ts";
+import type { StructureRecord } from "../carriers/structure-record.ts";
+import type {
+  ClauseRecord,
+  FormulaRecord,
+  TermFormulaRecord,
+  TermRecord,
+} from "../logic/records/formulas.ts";
+
+export type * from "../carriers/structure-record.ts";
+export type * from "../logic/records/formulas.ts";
 
 export const EVIDENCE_FORMAT = "twoplace-evidence";
 export const EVIDENCE_VERSION = 1;
-
-export interface TableRecord {
-  readonly places: number;
-  readonly holds: readonly number[];
-}
-export interface StructureRecord {
-  readonly carrier: CarrierDescription;
-  /** By the name of the relation, names in ascending order. */
-  readonly tables: Readonly<Record<string, TableRecord>>;
-}
 
 /** The number of a sentence in `sentences`. */
 export type SentenceIndex = number;

@@ -1,9 +1,10 @@
 /** Checking clause proofs that there is no model on so many points. */
-import type { FormulaRecord } from "../logic/formula-records.ts";
-import { groundForm } from "../logic/ground-form.ts";
+
 import type { Meter } from "../logic/meter.ts";
+import type { FormulaRecord } from "../logic/records/formulas.ts";
+import { groundForm } from "../logic/records/ground-form.ts";
+import { Propagation } from "../logic/records/propagation.ts";
 import type { NoModelFact } from "./format.ts";
-import { Propagation } from "./propagation.ts";
 import { reject } from "./read.ts";
 
 /**

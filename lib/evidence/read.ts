@@ -2,7 +2,7 @@
  * Reading evidence: from JSON of unknown origin to typed records, or a refusal that names the place. Nothing that
  * is not in the format passes: no foreign keys, no missing ones, no sentence with free variables.
  */
-import { type FormulaRecord, freeVariables } from "../logic/formula-records.ts";
+import { type FormulaRecord, freeVariables } from "../logic/records/formulas.ts";
 import { LARGEST_DOMAIN } from "../logic/structure-definition.ts";
 import {
   EVIDENCE_FORMAT,

@@ -1,6 +1,8 @@
 /** Collecting the evidence of one question while it is worked on. */
 import type { Structure } from "../carriers/structure.ts";
+import { recordStructure } from "../carriers/structure-record.ts";
 import type { Derivation, DerivationTask } from "../derivation/derive.ts";
+import { digestOf } from "../evidence/digest.ts";
 import {
   type DerivationFact,
   EVIDENCE_FORMAT,
@@ -13,9 +15,8 @@ import {
   type TheoryRecord,
   type VerdictRecord,
 } from "../evidence/format.ts";
-import { digestOf, recordStructure } from "../evidence/record.ts";
 import type { Formula } from "../logic/formula.ts";
-import { recordFormula } from "../logic/formula-records.ts";
+import { recordFormula } from "../logic/records/formulas.ts";
 
 /** Collects the sentences and facts of one question's evidence. */
 export class EvidenceWriter {

@@ -4,9 +4,9 @@
  */
 import type { NoModelFact } from "../evidence/format.ts";
 import type { Formula } from "../logic/formula.ts";
-import { FormulaTooLarge, recordFormula } from "../logic/formula-records.ts";
-import { type GroundForm, groundForm } from "../logic/ground-form.ts";
 import { type Meter, WorkEnded } from "../logic/meter.ts";
+import { FormulaTooLarge, recordFormula } from "../logic/records/formulas.ts";
+import { type GroundForm, groundForm } from "../logic/records/ground-form.ts";
 import { MeterShare } from "../logic/share.ts";
 import { Solver } from "../structures/sat/solver.ts";
 import { trimProof } from "./proof-trimming.ts";

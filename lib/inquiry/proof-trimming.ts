@@ -3,8 +3,9 @@
  * needed is derived again by unit propagation from those before it, and what that used is needed too (Goldberg & Novikov
  * 2003).
  */
-import type { GroundForm } from "../logic/ground-form.ts";
+
 import type { Meter } from "../logic/meter.ts";
+import type { GroundForm } from "../logic/records/ground-form.ts";
 
 /** In {@link Trimming}, the reason of an assumption. */
 const NO_CLAUSE = -1;

@@ -1,7 +1,8 @@
 /** Questions as evidence records them: what was asked, with all definitions expanded. */
 import type { Structure } from "../carriers/structure.ts";
+import { recordStructure } from "../carriers/structure-record.ts";
+import { digestOf } from "../evidence/digest.ts";
 import type { QuestionRecord, TheoryQuestion } from "../evidence/format.ts";
-import { digestOf, recordStructure } from "../evidence/record.ts";
 import type { Formula } from "../logic/formula.ts";
 import { sentencesOf, type Theory } from "../logic/theory.ts";
 import { EvidenceWriter } from "./evidence-writer.ts";

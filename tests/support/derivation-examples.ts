@@ -1,11 +1,12 @@
 /** Derivations written by hand, as the search could have found them; the checker accepts each. */
+
+import { digestOf } from "../../lib/evidence/digest.ts";
 import { type DerivationFact, EVIDENCE_FORMAT, EVIDENCE_VERSION } from "../../lib/evidence/format.ts";
-import { digestOf } from "../../lib/evidence/record.ts";
 import type { ShownDerivation } from "../../lib/inquiry/answer.ts";
 import { parseFormula } from "../../lib/language/parser.ts";
 import { emptyScope, type Scope } from "../../lib/language/statements.ts";
 import type { Formula } from "../../lib/logic/formula.ts";
-import { recordFormula } from "../../lib/logic/formula-records.ts";
+import { recordFormula } from "../../lib/logic/records/formulas.ts";
 
 /** A sentence of cell text. */
 export function sentence(text: string, scope: Scope = emptyScope): Formula {

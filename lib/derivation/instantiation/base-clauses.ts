@@ -1,7 +1,7 @@
 /** What instances are made of: the input clauses, and clauses that say what identity is. */
 
 import type { ClauseRecord, TermRecord } from "../../evidence/format.ts";
-import { atomOf, atomTerms } from "../../logic/formula-records.ts";
+import { atomOf, atomTerms } from "../../logic/records/formulas.ts";
 import { clauseVariables } from "../lines.ts";
 import type { InputClause } from "../refutation.ts";
 

@@ -1,7 +1,7 @@
 /** Instances of clauses in the instantiation-based search, over one bank of terms. */
 
 import type { AtomRecord, TermRecord } from "../../evidence/format.ts";
-import { atomOf, atomTerms } from "../../logic/formula-records.ts";
+import { atomOf, atomTerms } from "../../logic/records/formulas.ts";
 import { Substitution, shifted } from "../saturation/substitution.ts";
 import { HEADER, IDENTITY, TermBank, variable } from "../saturation/terms.ts";
 import type { BaseClause } from "./base-clauses.ts";

@@ -10,7 +10,7 @@ import {
   type TermFormulaRecord,
   type TermRecord,
   withParts,
-} from "./formula-records.ts";
+} from "./formulas.ts";
 
 /**
  * Negation normal form: ¬ at atoms only, of the other connectives only ∧ and ∨.

@@ -1,12 +1,12 @@
 /**
- * Formulas, terms and clauses as records: nested lists, as evidence has them. Other than in `formula.ts` there are
+ * Formulas, terms and clauses as records: nested lists, as evidence has them. Other than in `lib/logic/formula.ts` there are
  * functions, which clause forms bring in; and since a record is JSON, what is read is what is reasoned about.
  *
  * A formula is `["is", "R", "x", "y"]`, `["=", "x", "y"]`, `["true"]`, `["false"]`, `["not", φ]`, `["and", φ, ψ, …]`,
  * `["or", φ, ψ, …]`, `["implies", φ, ψ]`, `["iff", φ, ψ]`, `["forall", "x", φ]` or `["exists", "x", φ]`.
  */
-import type { Formula } from "./formula.ts";
-import type { Meter } from "./meter.ts";
+import type { Formula } from "../formula.ts";
+import type { Meter } from "../meter.ts";
 
 /** A variable, or a function with its arguments: `["2.0", "x"]`. Functions come in by clause forms alone. */
 export type TermRecord = string | readonly [string, ...TermRecord[]];

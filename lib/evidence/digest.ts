@@ -1,21 +1,7 @@
-/** Writing evidence: structures as records, and the digest of a question. */
+/** The digest of a question. */
 import { sha256 } from "@noble/hashes/sha2.js";
 import { bytesToHex, utf8ToBytes } from "@noble/hashes/utils.js";
-import type { Structure } from "../carriers/structure.ts";
-import type { FormulaRecord, QuestionRecord, StructureRecord, TableRecord } from "./format.ts";
-
-export function recordStructure(structure: Structure): StructureRecord {
-  const tables: Record<string, TableRecord> = {};
-  for (const name of [...structure.tables.keys()].sort()) {
-    const { relation, holds } = structure.tables.get(name)!;
-    const kinds: number[] = [];
-    holds.forEach((value, kind) => {
-      if (value === 1) kinds.push(kind);
-    });
-    tables[name] = { places: relation.places, holds: kinds };
-  }
-  return { carrier: structure.carrier.description, tables };
-}
+import type { FormulaRecord, QuestionRecord } from "./format.ts";
 
 /**
  * The digest by which stored evidence is known to belong to a question: of its JSON text with the sentences written out

@@ -2,16 +2,10 @@
  * The propositional form of "these sentences hold on n points", which a search for a proof that there is no such
  * structure and the checker of that proof start from.
  */
-import {
-  atomTerms,
-  type FormulaRecord,
-  freeVariables,
-  Growth,
-  partsOf,
-  visitAtoms,
-} from "./formula-records.ts";
+
+import type { Meter } from "../meter.ts";
+import { atomTerms, type FormulaRecord, freeVariables, Growth, partsOf, visitAtoms } from "./formulas.ts";
 import { miniscopeFormula } from "./made-formulas.ts";
-import type { Meter } from "./meter.ts";
 
 /** Literals of a propositional form beyond which there is none. */
 const LARGEST_GROUND_FORM = 10_000_000;

@@ -6,16 +6,19 @@
 
 import {
   atomOf,
+  type ClauseRecord,
   freeVariables,
   freshName,
   Growth,
+  type LiteralRecord,
   partsOf,
   substituteInClause,
+  type TermFormulaRecord,
+  type TermRecord,
   type Terms,
   termVariables,
-} from "../logic/formula-records.ts";
-import { negationNormalForm } from "../logic/made-formulas.ts";
-import type { ClauseRecord, LiteralRecord, TermFormulaRecord, TermRecord } from "./format.ts";
+} from "./formulas.ts";
+import { negationNormalForm } from "./made-formulas.ts";
 
 /** Parts and literals beyond which there is no clause form; those written down on the way to it count. */
 export const LARGEST_CLAUSE_FORM = 50_000;

@@ -5,7 +5,7 @@
  *
  * Sound, since it makes true only what must be true where all clauses are and the assumption holds.
  */
-import type { Meter } from "../logic/meter.ts";
+import type { Meter } from "../meter.ts";
 
 /** A literal as in DIMACS, v or −v for v ≥ 1, as an index: 2v or 2v + 1, so that `literal ^ 1` is its negation. */
 function pack(signed: number): number {
