@@ -2,7 +2,7 @@
  * All clauses of one run, one after another in one array of words, so that a million of them cost no objects. A clause
  * never changes: what simplifies it makes another one and marks it as deleted. So each clause rests on earlier ones.
  */
-import { grown, type TermBank } from "./terms.ts";
+import { grown } from "./terms.ts";
 
 /**
  * Words before the literals: how many literals; how many variables, as 0, 1, …; state, of the bits below; the key by
@@ -127,9 +127,4 @@ function hashOf(literals: Int32Array, from: number, length: number): number {
     hash ^= hash >>> 15;
   }
   return hash;
-}
-
-/** How much a run keeps, in the measure that bounds it: literals of clauses, and terms. */
-export function kept(store: ClauseStore, bank: TermBank): number {
-  return store.literals + bank.count;
 }

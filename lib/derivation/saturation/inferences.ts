@@ -4,6 +4,7 @@
  */
 import { type ClauseStore, DELETED } from "./clauses.ts";
 import type { Draft, DraftState } from "./draft.ts";
+import { filterOf, maskOf } from "./filters.ts";
 import { NumberList } from "./lists.ts";
 import { atomOf, isNegative, type Ordering } from "./ordering.ts";
 import type { Substitution } from "./substitution.ts";
@@ -20,7 +21,7 @@ export class Inferences {
   readonly #ordering: Ordering;
   readonly #substitution: Substitution;
   readonly #clock: WorkClock;
-  /** By literal head (twice the relation, plus one if negative): records of clause, literal, 0, 0. */
+  /** By literal head (twice the relation, plus one if negative): records of clause, literal, filter, its mask. */
   readonly #literals: NumberList[] = [];
   /** By head of a side of a positive equation: records of clause, literal, side, 1 if it is the greater one. */
   readonly #sides: NumberList[] = [];
@@ -61,8 +62,11 @@ export class Inferences {
       const literal = this.#store.literal(clause, place);
       const atom = atomOf(literal);
       const symbol = words[atom]!;
-      if (symbol !== IDENTITY)
-        this.#push(this.#literals, symbol * 2 + (isNegative(literal) ? 1 : 0), clause, place, 0, 0);
+      if (symbol !== IDENTITY) {
+        const head = symbol * 2 + (isNegative(literal) ? 1 : 0);
+        const filter = filterOf(this.#bank, atom);
+        this.#push(this.#literals, head, clause, place, filter, maskOf(filter));
+      }
       if (!hasEquality) continue;
       if (symbol === IDENTITY && !isNegative(literal))
         this.#forSides(atom, (side, isGreater) => {
@@ -136,7 +140,11 @@ export class Inferences {
     const atom = atomOf(literal);
     const list = this.#literals[this.#bank.words[atom]! * 2 + (isNegative(literal) ? 0 : 1)];
     if (list === undefined) return;
+    const filter = filterOf(this.#bank, atom);
+    const mask = maskOf(filter);
+    this.#clock.tick(list.length >> 4);
     for (let k = 0; k < list.length; k += 4) {
+      if (((list.values[k + 2]! ^ filter) & list.values[k + 3]! & mask) !== 0) continue;
       const other = list.values[k]!;
       if (this.#store.is(other, DELETED)) continue;
       const its = list.values[k + 1]!;

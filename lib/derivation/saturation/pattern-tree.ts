@@ -35,6 +35,11 @@ export class PatternTree {
     this.#bank = bank;
   }
 
+  /** Nodes, by which its size in memory goes. */
+  get size(): number {
+    return this.#nodes;
+  }
+
   get isEmpty(): boolean {
     return this.#used === 1;
   }

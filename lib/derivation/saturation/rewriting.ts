@@ -16,9 +16,8 @@ export class RewriteIndex {
   /** Sides that are rewritten, with 4 · clause + 2 · side, plus 1 if every instance is oriented. */
   readonly #tree: PatternTree;
   readonly #heads: boolean[] = [];
-  /** Terms whose head was found irreducible, as of {@link #size}. */
+  /** Terms whose head was found irreducible; forgotten with every new equation. */
   #known = new Int32Array(KNOWN);
-  #size = 0;
 
   /** What the last rewriting found: the place in the atom, the equation and the side that fits, the new term. */
   place = 0;
@@ -35,8 +34,13 @@ export class RewriteIndex {
     this.#tree = new PatternTree(bank);
   }
 
+  /** Nodes of its tree. */
+  get size(): number {
+    return this.#tree.size;
+  }
+
   get isEmpty(): boolean {
-    return this.#size === 0;
+    return this.#tree.isEmpty;
   }
 
   /** Adds a positive unit equation. */
@@ -50,7 +54,6 @@ export class RewriteIndex {
       if (from < 0 || !this.#hasVariablesOf(from, words[atom + HEADER + 1 - side]!)) continue;
       this.#heads[words[from]!] = true;
       this.#tree.add(from, 4 * clause + 2 * side + (compared === "incomparable" ? 0 : 1));
-      this.#size += 1;
       this.#known.fill(0);
     }
   }

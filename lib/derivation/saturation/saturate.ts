@@ -6,7 +6,7 @@
  */
 import type { Meter } from "../../logic/meter.ts";
 import type { ClauseTask, EngineOutcome } from "../refutation.ts";
-import { ACTIVE, ClauseStore, DELETED, GOAL, kept } from "./clauses.ts";
+import { ACTIVE, ClauseStore, DELETED, GOAL } from "./clauses.ts";
 import { Draft, type DraftState } from "./draft.ts";
 import { Inferences } from "./inferences.ts";
 import { goalFunctions, orderingFor, type ReadClause, readClause } from "./input.ts";
@@ -28,7 +28,10 @@ export * from "./strategy.ts";
 export interface SaturationLimits {
   /** Clauses that the run may generate. */
   readonly clauses: number;
-  /** Literals of kept clauses and different terms, together, that it may hold in memory. */
+  /**
+   * What it may hold in memory: literals of kept clauses, different terms, and nodes of the trees that find unit
+   * clauses, together. Each takes some 20 to 60 bytes.
+   */
   readonly literals: number;
 }
 
@@ -261,10 +264,15 @@ class Saturation {
       draft.recordLength,
     );
     if (draft.length === 0) throw new Refuted();
-    if (kept(store, this.#bank) > this.#limits.literals) throw new RunEnded("memory");
+    if (this.#kept() > this.#limits.literals) throw new RunEnded("memory");
     this.#waiting.push(clause);
     if (draft.length === 1) this.#keepUnit(clause);
     return clause;
+  }
+
+  /** What the run keeps, in the measure of its limit. */
+  #kept(): number {
+    return this.#store.literals + this.#bank.count + this.#units.size + this.#rewriting.size;
   }
 
   #keepUnit(clause: number): void {

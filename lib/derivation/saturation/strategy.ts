@@ -54,8 +54,8 @@ export const DEFAULT_STRATEGY: Strategy = {
   goalFactor: 2,
   otherFactor: 3,
   isSupported: false,
-  mostWeight: 300,
-  mostDepth: 24,
+  mostWeight: 100,
+  mostDepth: 16,
   mostLiterals: 40,
 };
 

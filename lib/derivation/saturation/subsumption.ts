@@ -10,7 +10,7 @@ import { HEADER, IDENTITY, type TermBank } from "./terms.ts";
 import type { WorkClock } from "./work-clock.ts";
 
 /** Literal pairs that one test of subsumption may try; beyond, it counts as failed. */
-const MOST_TRIES = 600;
+const MOST_TRIES = 300;
 
 /**
  * Sizes of a clause packed in fields, each below a guard bit: 5 bits of positive literals, 5 of negative ones, 9 of

@@ -1,14 +1,11 @@
 /** The unit clauses kept: which of them generalises an atom, or can be unified with it. */
 import { type ClauseStore, DELETED } from "./clauses.ts";
+import { filterOf, maskOf } from "./filters.ts";
 import { NumberList } from "./lists.ts";
 import { atomOf, isNegative } from "./ordering.ts";
 import { PatternTree } from "./pattern-tree.ts";
 import type { Substitution } from "./substitution.ts";
-import { HEADER, IDENTITY, type TermBank } from "./terms.ts";
-
-/** Bits of a filter for each of the first three arguments: one more than its head's number, 0 for a variable. */
-const BITS = 10;
-const FIELD = (1 << BITS) - 1;
+import { IDENTITY, type TermBank } from "./terms.ts";
 
 export class UnitIndex {
   readonly #bank: TermBank;
@@ -28,6 +25,11 @@ export class UnitIndex {
     this.#trees = [new PatternTree(bank), new PatternTree(bank)];
   }
 
+  /** Nodes of its trees. */
+  get size(): number {
+    return this.#trees[0]!.size + this.#trees[1]!.size;
+  }
+
   #list(head: number): NumberList {
     while (this.#lists.length <= head) this.#lists.push(new NumberList());
     return this.#lists[head]!;
@@ -37,21 +39,10 @@ export class UnitIndex {
     const literal = this.#store.literal(clause, 0);
     const atom = atomOf(literal);
     const list = this.#list(this.#bank.words[atom]! * 2 + (isNegative(literal) ? 1 : 0));
-    const filter = this.#filter(atom);
+    const filter = filterOf(this.#bank, atom);
     list.push4(clause, atom, filter, maskOf(filter));
     list.retain4((unit) => !this.#store.is(unit, DELETED));
     this.#trees[isNegative(literal) ? 1 : 0]!.add(atom, clause);
-  }
-
-  #filter(atom: number): number {
-    const { words } = this.#bank;
-    const arity = Math.min(3, this.#bank.arities[words[atom]!]!);
-    let filter = 0;
-    for (let k = 0; k < arity; k += 1) {
-      const arg = words[atom + HEADER + k]!;
-      if (arg > 0) filter |= ((words[arg]! % FIELD) + 1) << (BITS * k);
-    }
-    return filter;
   }
 
   /** A unit clause, not `self`, of a sign of which the atom is an instance; -1 if there is none. */
@@ -70,11 +61,12 @@ export class UnitIndex {
 
   /** A unit clause of a sign whose atom can be unified with a shifted atom; -1 if there is none. No bindings are left. */
   findUnifiable(atom: number, negative: boolean): number {
+    if (this.#bank.isGround(atom)) return this.findGeneral(atom, negative, -1);
     const head = this.#bank.words[atom]! * 2 + (negative ? 1 : 0);
     if (head >= this.#lists.length) return -1;
     const list = this.#lists[head]!;
     const { values } = list;
-    const filter = this.#filter(atom);
+    const filter = filterOf(this.#bank, atom);
     const mask = maskOf(filter);
     for (let k = 0; k < list.length; k += 4) {
       if (((filter ^ values[k + 2]!) & mask & values[k + 3]!) !== 0) continue;
@@ -86,10 +78,4 @@ export class UnitIndex {
     }
     return -1;
   }
-}
-
-function maskOf(filter: number): number {
-  let mask = 0;
-  for (let k = 0; k < 3; k += 1) if (((filter >> (BITS * k)) & FIELD) !== 0) mask |= FIELD << (BITS * k);
-  return mask;
 }
