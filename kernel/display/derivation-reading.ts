@@ -348,7 +348,7 @@ class Reader {
       return {
         term: this.#names.term([name, ...own], renaming),
         parameters: parameters.filter((one) => typeof one === "string"),
-        variable: isPromised ? origin.variable : null,
+        variable: isPromised ? (this.#names.plain.get(origin.variable) ?? origin.variable) : null,
       };
     });
   }

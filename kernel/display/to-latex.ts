@@ -130,9 +130,20 @@ function blockToLatex(block: Block): string {
 
 function tableToLatex(table: TableBlock): string {
   const columns = columnsOf(table);
-  const row = (cells: readonly string[]) => `${cells.join(" & ")} \\\\`;
+  // In ragged columns \\ ends a line of the cell.
+  const rowEnd = table.look === "derivation" ? "\\tabularnewline" : "\\\\";
+  const row = (cells: readonly string[]) => `${cells.join(" & ")} ${rowEnd}`;
   const head = row(table.head.map(escapeLatex));
-  const rows = table.rows.map((cells) => row(cells.map(inlineToLatex)));
+  // Sentences and reasons are in narrow columns, where lines of equal length would tear formulas apart.
+  const isRagged = (column: number) => table.look === "derivation" && column > 0;
+  const rows = table.rows.map((cells) =>
+    row(
+      cells.map((cell, column) => {
+        const text = inlineToLatex(cell);
+        return isRagged(column) ? `\\raggedright ${text}` : text;
+      }),
+    ),
+  );
   const caption = table.caption === null ? "" : `\\noindent ${escapeLatex(table.caption)}\n\n`;
   if (table.rows.length > LONG_TABLE)
     return [
