@@ -113,6 +113,20 @@ describe(`unfolding (seed ${seed})`, () => {
     );
   });
 
+  it("leaves relations of the same name with other places alone", () => {
+    const definition: TermFormulaRecord = ["forall", "x", ["iff", ["is", "d", "x"], ["is", "P", "x"]]];
+    const both: TermFormulaRecord = [
+      "exists",
+      "y",
+      ["and", ["is", "d", "y"], ["is", "d", "y", "y"], ["is", "d"]],
+    ];
+    expect(unfoldFormula(both, definition)).toEqual([
+      "exists",
+      "y",
+      ["and", ["is", "P", "y"], ["is", "d", "y", "y"], ["is", "d"]],
+    ]);
+  });
+
   /** The body of the first quantifier of x that no other quantifier has around it. */
   function openAt(part: FormulaRecord): FormulaRecord | null {
     if (part[0] === "forall" || part[0] === "exists") return part[1] === "x" ? part[2] : null;

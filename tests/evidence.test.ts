@@ -5,7 +5,7 @@
 import { describe, expect, it } from "vitest";
 import { checkEvidence } from "../lib/evidence/check.ts";
 import { digestOf } from "../lib/evidence/digest.ts";
-import type { Evidence } from "../lib/evidence/format.ts";
+import type { Evidence, Fact, TheoryRecord, VerdictRecord } from "../lib/evidence/format.ts";
 import { checkFinite } from "../lib/inquiry/check-finite.ts";
 import {
   askConsistent,
@@ -119,6 +119,50 @@ describe("changed evidence", () => {
   });
 });
 
+describe("all irredundant sets of axioms", () => {
+  // Of a strict order given by irreflexive (0), transitive (1) and asymmetric (2), 0 or 2 is enough beside 1.
+  const known = evidences.minimise!;
+  const structure = (
+    size: number,
+    holds: readonly number[],
+    facts: TheoryRecord,
+    fails: TheoryRecord,
+  ): Fact => ({
+    fact: "structure",
+    structure: { carrier: { kind: "points", size }, tables: { R: { places: 2, holds } } },
+    holds: facts,
+    fails,
+  });
+  // 1 before 2 before 3, but not 1 before 3; and a point before itself.
+  const weak = [structure(3, [1, 5], [0, 2], [1]), structure(1, [0], [1], [0, 2])];
+  const withMore = (verdict: VerdictRecord, facts: readonly Fact[]) =>
+    checkEvidence({ ...known, verdict, facts: [...known.facts, ...facts] }).accepted;
+
+  it("are known to be all by structures for the sets that are too weak", () => {
+    expect(known.verdict).toEqual(["0,1", "1,2"]);
+    expect(withMore(["complete", "0,1", "1,2"], weak)).toBe(true);
+    expect(isRight({ ...known, verdict: ["complete", "0,1", "1,2"], facts: [...known.facts, ...weak] })).toBe(
+      true,
+    );
+  });
+
+  it.each<[string, VerdictRecord, readonly Fact[]]>([
+    ["one set left out", ["complete", "0,1"], weak],
+    ["no set", ["complete"], weak],
+    ["a structure left out", ["complete", "0,1", "1,2"], weak.slice(1)],
+    ["a set twice", ["complete", "0,1", "1,2", "1,2"], weak],
+    ["a set that is not irredundant", ["complete", "0,1", "1,2", "0,1,2"], weak],
+    ["a set that is too weak", ["0,2"], weak],
+    ["places in another order", ["1,0"], weak],
+    ["places that there are not", ["1,3"], weak],
+    ["a place twice", ["1,1"], weak],
+    ["no numbers", ["first"], weak],
+    ["a word", "complete", weak],
+  ])("%s", (_, verdict, facts) => {
+    expect(withMore(verdict, facts)).toBe(false);
+  });
+});
+
 describe("foreign and hostile evidence is refused with the reason", () => {
   const good = JSON.parse(JSON.stringify(evidences.entails)) as Record<string, unknown>;
   let deep: unknown = ["true"];
@@ -136,6 +180,43 @@ describe("foreign and hostile evidence is refused with the reason", () => {
     const result = checkEvidence(evidence);
     expect(result.accepted).toBe(false);
     if (!result.accepted) expect(result.reason).toMatch(reason);
+  });
+
+  it.each<[string, () => Record<string, unknown>]>([
+    ["many facts", () => ({ ...good, facts: Array(20_000).fill((good.facts as unknown[])[0]) })],
+    ["many words", () => ({ ...good, verdict: Array(200_000).fill("open") })],
+    [
+      "a premise again and again",
+      () => ({ ...good, question: { ask: "entails", premises: Array(100_000).fill(0), conclusion: 1 } }),
+    ],
+    [
+      "a theory again and again",
+      () => ({ ...good, question: { ask: "compare", theories: Array(500).fill([0, 1]) } }),
+    ],
+    ["a wide formula", () => ({ ...good, sentences: [["and", ...Array(200_000).fill(["true"])], ["true"]] })],
+    ["names of JavaScript", () => ({ ...good, question: { ask: "constructor", axioms: [] } })],
+    ["a fact of a kind of JavaScript", () => ({ ...good, facts: [{ fact: "toString" }] })],
+    [
+      "a relation of JavaScript",
+      () => ({ ...good, sentences: [["exists", "x", ["is", "constructor", "x"]], ["true"]] }),
+    ],
+  ])("%s", (_, make) => {
+    const evidence = make() as unknown as Evidence;
+    const { sentences, question } = evidence;
+    expect(checkEvidence({ ...evidence, digest: digestOf(sentences, question) }).accepted).toBe(
+      evidence.facts.length === 20_000,
+    );
+  });
+
+  it("tuples that the structure does not have", () => {
+    const changed = JSON.parse(
+      JSON.stringify(good).replace(/"holds":\[[^\]]*\],?(?=\}\})/, '"holds":[1000000]'),
+    );
+    expect(JSON.stringify(changed)).toContain("[1000000]");
+    expect(checkEvidence(changed)).toMatchObject({
+      accepted: false,
+      reason: expect.stringMatching(/not kinds here/),
+    });
   });
 
   it("a domain beyond what can be evaluated", () => {

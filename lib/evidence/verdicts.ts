@@ -41,6 +41,8 @@ export function isBorneOut(evidence: Evidence, meter: Meter): boolean {
     case "compare":
     case "dualise": {
       const { theories, ask } = question;
+      // Before all pairs are gone through: their number grows with the square of what was written.
+      if (verdict?.length !== (theories.length * (theories.length - 1)) / 2) return false;
       const pairs = theories.flatMap((left, place) =>
         theories.slice(place + 1).map((right) => shown.order(left, right)),
       );
