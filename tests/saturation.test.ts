@@ -269,7 +269,7 @@ describe("random clauses over a few constants", () => {
 
   const variants: readonly Strategy[] = [
     DEFAULT_STRATEGY,
-    strategies.RARE_STRATEGY,
+    strategies.TERSE_STRATEGY,
     strategies.UNSELECTED_STRATEGY,
     { ...DEFAULT_STRATEGY, ordering: "path", selection: "lightest" },
     { ...DEFAULT_STRATEGY, ordering: "none", selection: "fewest-partners", selectsSparingly: false },

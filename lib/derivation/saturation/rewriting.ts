@@ -120,23 +120,23 @@ export class RewriteIndex {
   readonly #accept = (value: number): boolean => {
     const unit = value >> 2;
     if (this.#store.is(unit, DELETED)) return false;
-    this.#isIrreducible = false;
-    if (unit === this.#self) return false;
     const side = (value >> 1) & 1;
     const atom = atomOf(this.#store.literal(unit, 0));
     const mark = this.#substitution.mark;
     this.#substitution.match(this.#bank.words[atom + HEADER + side]!, this.#asked);
     const image = this.#substitution.image(this.#bank.words[atom + HEADER + 1 - side]!);
     this.#substitution.undo(mark);
-    if (!this.#isAllowed(this.#asked, image, (value & 1) === 1, this.#other)) return false;
+    if ((value & 1) === 0 && this.#ordering.compare(this.#asked, image) !== "greater") return false;
+    this.#isIrreducible = false;
+    if (unit === this.#self || !this.#leavesLess(this.#asked, image, this.#other)) return false;
     this.unit = unit;
     this.side = side;
     this.term = image;
     return true;
   };
 
-  #isAllowed(term: number, image: number, isOriented: boolean, other: number): boolean {
-    if (!isOriented && this.#ordering.compare(term, image) !== "greater") return false;
+  /** Whether rewriting a term at the head of a side makes less than the equation; `other` is the other side, or 0. */
+  #leavesLess(term: number, image: number, other: number): boolean {
     if (other === 0 || this.#ordering.compare(other, term) === "greater") return true;
     return this.#ordering.compare(other, image) === "greater";
   }
