@@ -23,6 +23,8 @@ export interface Stored {
 }
 
 type Words = readonly string[];
+/** Statements with one verdict. */
+type Asking = Statement & { kind: "derive" | "claim" | "conjecture" | "check-finite" };
 
 /** Why the stored words are not those of the evidence, or null. */
 export function findDisagreement(
@@ -39,7 +41,9 @@ export function findDisagreement(
       return (
         findOtherVerdict(stored.verdict, evidence.verdict) ??
         findInconsistency(stored, evidence) ??
-        findOtherSizes(stored, evidence)
+        findOtherSizes(stored, evidence) ??
+        findUnused(statement, stored, evidence) ??
+        findOtherAxioms(statement, stored, evidence)
       );
     case "independence":
     case "compare":
@@ -210,6 +214,68 @@ function findInconsistency({ data }: Stored, { facts }: Evidence): string | null
   if (data.inconsistent !== true) return null;
   const isShown = facts.some((fact) => fact.fact === "derivation" && fact.conclusion === null);
   return isShown ? null : "the premises are said to be inconsistent, and no derivation shows that";
+}
+
+/** Axioms that are said to be used in derivations must be. */
+function findUnused(statement: Asking, { data }: Stored, { sentences, facts }: Evidence): string | null {
+  const { used } = data;
+  if (used === undefined) return null;
+  if (!Array.isArray(used)) return DAMAGED;
+  const premises = new Set(
+    facts.flatMap((fact) =>
+      fact.fact === "derivation" ? fact.premises.map((index) => JSON.stringify(sentences[index])) : [],
+    ),
+  );
+  const axioms = theoriesOf(statement).flatMap(({ axioms: own }) => own);
+  const isUsed = (label: unknown) =>
+    axioms.some(
+      (axiom) => axiom.label === label && premises.has(JSON.stringify(recordFormula(axiom.formula))),
+    );
+  const unused = used.find((label) => !isUsed(label));
+  return unused === undefined ? null : `${quoted(unused)} is said to be used, and no derivation uses it`;
+}
+
+function theoriesOf(statement: Asking): readonly Theory[] {
+  if (statement.kind === "derive") return [statement.premises.theory];
+  if (statement.kind === "check-finite") return [statement.theory.theory];
+  const { claim } = statement;
+  if ("premises" in claim) return [claim.premises.theory];
+  if ("left" in claim) return [claim.left.theory, claim.right.theory];
+  return "theory" in claim ? [claim.theory.theory] : [];
+}
+
+/** What the claim that a theory is independent says of each axiom. */
+function findOtherAxioms(statement: Asking, { data }: Stored, { question, facts }: Evidence): string | null {
+  if (question.ask !== "independent") return null;
+  const words = data.axioms as Readonly<Record<string, unknown>> | undefined;
+  if (typeof words !== "object" || words === null) return DAMAGED;
+  const [theory] = theoriesOf(statement);
+  const unshown = theory?.axioms.find(({ label }, place) => {
+    const others = question.axioms.filter((_, other) => other !== place);
+    return (
+      words[label] !== "open" &&
+      !facts.some((fact) => settles(fact, words[label], question.axioms[place]!, others))
+    );
+  });
+  return unshown === undefined
+    ? null
+    : `the evidence does not show that ${unshown.label} is ${quoted(words[unshown.label])}`;
+}
+
+/** Whether a fact shows that an axiom is what a word says, beside the others. */
+function settles(fact: Fact, word: unknown, axiom: number, others: TheoryRecord): boolean {
+  switch (fact.fact) {
+    case "structure":
+      return word === "independent" && contains(fact.holds, others) && fact.fails?.includes(axiom) === true;
+    case "derivation":
+      return (
+        word === "redundant" &&
+        contains(others, fact.premises) &&
+        (fact.conclusion === null || fact.conclusion === axiom)
+      );
+    case "no-model":
+      return false;
+  }
 }
 
 /** Keys of data that give the size of a structure in the evidence. */
