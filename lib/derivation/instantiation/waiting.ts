@@ -1,8 +1,9 @@
 /** Instances that wait for their turn: light and old ones first. */
 import type { Instance } from "./instances.ts";
 
-/** A symbol more is worth so many instances of age. */
-const WEIGHT = 12;
+/** A symbol more is worth so many instances of age: in what comes from the negated conclusion, and elsewhere. */
+const GOAL_WEIGHT = 1;
+const OTHER_WEIGHT = 3;
 
 /** A heap; ties are broken by age, so that the order is the same in every run. */
 export class WaitingList {
@@ -46,6 +47,10 @@ export class WaitingList {
 }
 
 function isBefore(left: Instance, right: Instance): boolean {
-  const difference = left.weight * WEIGHT + left.number - right.weight * WEIGHT - right.number;
+  const difference = keyOf(left) - keyOf(right);
   return difference < 0 || (difference === 0 && left.number < right.number);
+}
+
+function keyOf({ base, weight, number }: Instance): number {
+  return weight * (base.goal ? GOAL_WEIGHT : OTHER_WEIGHT) + number;
 }
