@@ -3,7 +3,6 @@
  * searches use it too, so that both mean the same by a clause and a function; that is safe, since the checker works
  * it all out again.
  */
-
 import {
   atomOf,
   type ClauseRecord,

@@ -1,5 +1,5 @@
 /**
- * Formulas, terms and clauses as records: nested lists, as evidence has them. Other than in `lib/logic/formula.ts` there are
+ * Formulas, terms and clauses as records: nested lists, as evidence has them. Other than in `formula.ts` there may be
  * functions, which clause forms bring in; and since a record is JSON, what is read is what is reasoned about.
  *
  * A formula is `["is", "R", "x", "y"]`, `["=", "x", "y"]`, `["true"]`, `["false"]`, `["not", φ]`, `["and", φ, ψ, …]`,
@@ -12,6 +12,7 @@ import type { Meter } from "../meter.ts";
 export type TermRecord = string | readonly [string, ...TermRecord[]];
 /** `["is", "R", t, …]` or `["=", t, t]`. A relation that a derivation defines may have no arguments. */
 export type AtomRecord = readonly ["is", string, ...TermRecord[]] | readonly ["=", TermRecord, TermRecord];
+/** An atom or its negation. */
 export type LiteralRecord = AtomRecord | readonly ["not", AtomRecord];
 /** The disjunction of its literals, for all values of its variables; false when there are none. */
 export type ClauseRecord = readonly LiteralRecord[];
@@ -81,28 +82,35 @@ export class Growth {
 
 const NOTHING: Terms = new Map();
 
-/** The term with terms in place of variables, all at once. */
+/**
+ * The term with terms in place of variables, all at once.
+ * @param growth counts the parts of what comes out
+ */
 export function substituteInTerm(term: TermRecord, terms: Terms, growth?: Growth): TermRecord {
   growth?.add();
   if (typeof term === "string") {
     const value = terms.get(term);
+    if (value === undefined || growth === undefined) return value ?? term;
     // A copy, so that its parts are counted.
-    return value === undefined ? term : substituteInTerm(value, NOTHING, growth);
+    return substituteInTerm(value, NOTHING, growth);
   }
   const [name, ...args] = term;
   return [name, ...args.map((arg) => substituteInTerm(arg, terms, growth))];
 }
 
+/** As {@link substituteInTerm}, in an atom. */
 export function substituteInAtom(atom: AtomRecord, terms: Terms, growth?: Growth): AtomRecord {
   return changeTerms(atom, (term) => substituteInTerm(term, terms, growth));
 }
 
+/** The atom with each of its terms changed. */
 export function changeTerms(atom: AtomRecord, change: (term: TermRecord) => TermRecord): AtomRecord {
   if (atom[0] === "=") return ["=", change(atom[1]), change(atom[2])];
   const [head, name, ...args] = atom;
   return [head, name, ...args.map(change)];
 }
 
+/** As {@link substituteInTerm}, in a clause; its literals stay as many and in order. */
 export function substituteInClause(clause: ClauseRecord, terms: Terms, growth?: Growth): ClauseRecord {
   return clause.map((literal) => changeAtom(literal, (atom) => substituteInAtom(atom, terms, growth)));
 }
@@ -112,10 +120,12 @@ export function changeAtom(literal: LiteralRecord, change: (atom: AtomRecord) =>
   return literal[0] === "not" ? ["not", change(literal[1])] : change(literal);
 }
 
+/** The atom of a literal. */
 export function atomOf(literal: LiteralRecord): AtomRecord {
   return literal[0] === "not" ? literal[1] : literal;
 }
 
+/** The variables of a term, as often as they occur. */
 export function termVariables(term: TermRecord): readonly string[] {
   return typeof term === "string" ? [term] : term.slice(1).flatMap((arg) => termVariables(arg));
 }
@@ -139,6 +149,7 @@ export function isSameTerm(left: TermRecord, right: TermRecord, growth: Growth):
   );
 }
 
+/** The terms of an atom, in order. */
 export function atomTerms(atom: AtomRecord): readonly TermRecord[] {
   return (atom[0] === "=" ? atom.slice(1) : atom.slice(2)) as TermRecord[];
 }
