@@ -214,32 +214,75 @@ describe("collected questions", () => {
   });
 });
 
+/** Numbers below a bound, the same for the same start. */
+function randomSource(start: number): (below: number) => number {
+  let state = start;
+  return (below) => {
+    state = (Math.imul(state, 1_103_515_245) + 12_345) & 0x7fffffff;
+    return (state >> 8) % below;
+  };
+}
+
+/** Clauses in R of two places, P of one and identity. */
+function randomClauses(random: (below: number) => number, term: () => TermRecord): ClauseRecord[] {
+  const atom = (): AtomRecord => {
+    const kind = random(5);
+    if (kind < 2) return ["=", term(), term()];
+    return kind < 4 ? ["is", "R", term(), term()] : ["is", "P", term()];
+  };
+  return Array.from({ length: 4 + random(6) }, () =>
+    Array.from({ length: 1 + random(3) }, () => (random(2) === 0 ? atom() : (["not", atom()] as const))),
+  );
+}
+
+/** Complete ones. */
+const VARIANTS: readonly Strategy[] = [
+  DEFAULT_STRATEGY,
+  strategies.TERSE_STRATEGY,
+  strategies.UNSELECTED_STRATEGY,
+  { ...DEFAULT_STRATEGY, ordering: "path", selection: "lightest" },
+  { ...DEFAULT_STRATEGY, ordering: "none", selection: "fewest-partners", selectsSparingly: false },
+  { ...DEFAULT_STRATEGY, precedence: "frequent", selection: "groundest", byWeight: 1 },
+];
+
+function resultOf(
+  clauses: readonly ClauseRecord[],
+  strategy: Strategy,
+  most: number,
+): EngineOutcome["result"] {
+  const input = clauses.map((clause, place) => ({ clause, formula: 0, place, goal: place === 0 }));
+  const limits = { clauses: most, literals: 1_000_000 };
+  return saturate({ clauses: input, formulas: 1 }, strategy, limits, new Meter(1e9)).result;
+}
+
+describe("random clauses with functions", () => {
+  const seed = 4_711;
+
+  it(`all strategies agree (seed ${seed})`, () => {
+    const random = randomSource(seed);
+    const term = (depth: number): TermRecord => {
+      const kind = random(depth > 1 ? 3 : 6);
+      if (kind < 2) return ["x", "y"][kind]!;
+      if (kind < 4) return ["0.0"];
+      return kind === 4 ? ["0.1", term(depth + 1)] : ["0.2", term(depth + 1), term(depth + 1)];
+    };
+    const found = { refuted: 0, saturated: 0, "gave-up": 0 };
+    for (let round = 0; round < 400; round += 1) {
+      const clauses = randomClauses(random, () => term(0));
+      const results = new Set(VARIANTS.map((strategy) => resultOf(clauses, strategy, 400)));
+      expect(results.has("refuted") && results.has("saturated"), JSON.stringify(clauses)).toBe(false);
+      for (const result of results) found[result] += 1;
+    }
+    expect(found.refuted).toBeGreaterThan(50);
+    expect(found.saturated).toBeGreaterThan(50);
+  });
+});
+
 describe("random clauses over a few constants", () => {
   // Such clauses have a model just if they have one on as many points as there are constants (Bernays & Schönfinkel
   // 1928): all structures are tried.
   const CONSTANTS = ["0.0", "0.1"];
   const seed = 20_261_201;
-
-  function randomSource(start: number): (below: number) => number {
-    let state = start;
-    return (below) => {
-      state = (Math.imul(state, 1_103_515_245) + 12_345) & 0x7fffffff;
-      return (state >> 8) % below;
-    };
-  }
-
-  function randomClauses(random: (below: number) => number): ClauseRecord[] {
-    const term = (): TermRecord => (random(5) < 2 ? ["x", "y"][random(2)]! : [CONSTANTS[random(2)]!]);
-    const atom = (): AtomRecord => {
-      const kind = random(5);
-      if (kind < 2) return ["=", term(), term()];
-      return kind < 4 ? ["is", "R", term(), term()] : ["is", "P", term()];
-    };
-    const count = 4 + random(6);
-    return Array.from({ length: count }, () =>
-      Array.from({ length: 1 + random(3) }, () => (random(2) === 0 ? atom() : (["not", atom()] as const))),
-    );
-  }
 
   /** Whether some structure on up to two points makes all clauses true. */
   function hasModel(clauses: readonly ClauseRecord[]): boolean {
@@ -267,25 +310,15 @@ describe("random clauses over a few constants", () => {
     return false;
   }
 
-  const variants: readonly Strategy[] = [
-    DEFAULT_STRATEGY,
-    strategies.TERSE_STRATEGY,
-    strategies.UNSELECTED_STRATEGY,
-    { ...DEFAULT_STRATEGY, ordering: "path", selection: "lightest" },
-    { ...DEFAULT_STRATEGY, ordering: "none", selection: "fewest-partners", selectsSparingly: false },
-    { ...DEFAULT_STRATEGY, precedence: "frequent", selection: "groundest", byWeight: 1 },
-  ];
-
   it(`agrees with all structures (seed ${seed})`, () => {
     const random = randomSource(seed);
+    const term = (): TermRecord => (random(5) < 2 ? ["x", "y"][random(2)]! : [CONSTANTS[random(2)]!]);
     const found = { refuted: 0, saturated: 0, "gave-up": 0 };
     for (let round = 0; round < 400; round += 1) {
-      const clauses = randomClauses(random);
+      const clauses = randomClauses(random, term);
       const isConsistent = hasModel(clauses);
-      const input = clauses.map((clause, place) => ({ clause, formula: 0, place, goal: place === 0 }));
-      for (const strategy of variants) {
-        const limits = { clauses: 3_000, literals: 1_000_000 };
-        const { result } = saturate({ clauses: input, formulas: 1 }, strategy, limits, new Meter(1e9));
+      for (const strategy of VARIANTS) {
+        const result = resultOf(clauses, strategy, 3_000);
         found[result] += 1;
         if (result !== "gave-up")
           expect(result, JSON.stringify(clauses)).toBe(isConsistent ? "saturated" : "refuted");
