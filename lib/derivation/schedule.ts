@@ -6,7 +6,16 @@
 import type { Formula } from "../logic/formula.ts";
 import { relationsOf, usesIdentity } from "../logic/formula.ts";
 import type { DerivationTask, Engine, Turn } from "./derive.ts";
-import { DEFAULT_STRATEGY, type Strategy } from "./saturation/strategy.ts";
+import {
+  BROAD_STRATEGY,
+  CAREFUL_STRATEGY,
+  DEFAULT_STRATEGY,
+  DIRECT_STRATEGY,
+  GROUND_STRATEGY,
+  type Strategy,
+  SUPPORTED_STRATEGY,
+  TERSE_STRATEGY,
+} from "./saturation/strategy.ts";
 
 /** Which premises a turn looks at; those but `all` give no turn where they are all premises or have been had. */
 export type PremiseChoice =
@@ -47,19 +56,18 @@ function by(strategy: Partial<Strategy> = {}): Engine {
   return { by: "saturation", strategy: { ...DEFAULT_STRATEGY, ...strategy } };
 }
 
-/** Good on nearly everything: functions of the goal and seldom symbols first. */
 const main: Partial<Strategy> = { precedence: "rare", literalWeight: 1, goalFunctionWeight: 1 };
 /** What comes from the negated conclusion counts a third. */
 const goalFirst: Partial<Strategy> = { ...main, goalFactor: 1, otherFactor: 3 };
-/** Terms in a lexicographic path ordering, light literals resolved seldom. */
-const byPath: Partial<Strategy> = {
+/** Nothing but what comes from the negated conclusion. */
+const supported: Partial<Strategy> = {
   ...main,
-  selection: "groundest",
-  ordering: "path",
-  byWeight: 12,
-  literalWeight: 3,
+  selectsSparingly: false,
+  isSupported: true,
+  goalFactor: 1,
+  otherFactor: 1,
 };
-const fewLiterals: Partial<Strategy> = {
+const fewPartners: Partial<Strategy> = {
   selection: "fewest-partners",
   ordering: "path",
   precedence: "frequent",
@@ -69,24 +77,13 @@ const fewLiterals: Partial<Strategy> = {
   goalFactor: 1,
   otherFactor: 1,
 };
-/** Nothing but what comes from the negated conclusion. */
-const supported: Partial<Strategy> = {
-  ...main,
-  selectsSparingly: false,
-  isSupported: true,
-  goalFactor: 1,
-  otherFactor: 1,
-};
 /** Supported, and only short clauses with hardly nested terms: over soon. */
 const small: Partial<Strategy> = {
-  selection: "fewest-partners",
-  ordering: "path",
+  ...fewPartners,
   precedence: "rare",
-  literalWeight: 6,
   functionWeight: 3,
   goalFunctionWeight: 3,
   variableWeight: 2,
-  goalFactor: 1,
   otherFactor: 6,
   isSupported: true,
   mostDepth: 2,
@@ -104,21 +101,17 @@ const moderate: Partial<Strategy> = {
   mostDepth: 4,
   mostLiterals: 6,
 };
-/** Nothing but functions weighs anything: for long clauses about few elements. */
+/** Literals and functions are all that weighs: for long clauses about few elements. */
 const elements: Partial<Strategy> = {
-  selectsSparingly: false,
+  ...moderate,
   ordering: "path",
   precedence: "frequent",
   byAge: 0,
   byWeight: 1,
-  literalWeight: 1,
   relationWeight: 0,
-  functionWeight: 1,
-  goalFunctionWeight: 1,
   variableWeight: 0,
   goalFactor: 1,
   otherFactor: 1,
-  mostDepth: 4,
   mostLiterals: 16,
 };
 
@@ -128,34 +121,41 @@ const withoutIdentity = { ...PLAIN, premises: "without-identity" } as const;
 
 export const TURNS: readonly PlannedTurn[] = [
   { ...PLAIN, name: "as letters", engine: instances, letters: true, clauses: 100 },
-  { ...written, name: "as written, goal first", engine: by(goalFirst), clauses: 60 },
-  { ...PLAIN, name: "small", engine: by(small), clauses: 200 },
-  { ...PLAIN, name: "unfolded", engine: by(main), clauses: 60 },
-  { ...withoutIdentity, name: "without identity, by path", engine: by(byPath), clauses: 60 },
-  { ...withoutIdentity, name: "without identity, supported", engine: by(supported), clauses: 150 },
-  { ...PLAIN, name: "instances", engine: instances, clauses: 150 },
-  { ...PLAIN, name: "unfolded, by path", engine: by(byPath), clauses: 300 },
-  { ...written, name: "as written", engine: by(main), clauses: 400 },
-  { ...PLAIN, name: "related", premises: "related", engine: by(main), clauses: 800 },
-  { ...PLAIN, name: "all premises but one", premises: "all-but-one", engine: by(main), clauses: 100 },
-  { ...named, name: "named, goal first", engine: by(goalFirst), clauses: 300 },
+  { ...PLAIN, name: "supported", engine: by(supported), clauses: 60 },
+  { ...written, name: "as written, terse", engine: by(TERSE_STRATEGY), clauses: 100 },
+  { ...withoutIdentity, name: "without identity, few partners", engine: by(fewPartners), clauses: 100 },
+  { ...withoutIdentity, name: "without identity, broad", engine: by(BROAD_STRATEGY), clauses: 150 },
+  { ...PLAIN, name: "instances", engine: instances, clauses: 120 },
+  { ...PLAIN, name: "supported, shallow", engine: by(SUPPORTED_STRATEGY), clauses: 300 },
+  { ...PLAIN, name: "broad", engine: by(BROAD_STRATEGY), clauses: 80 },
+  { ...written, name: "as written, direct", engine: by(DIRECT_STRATEGY), clauses: 600 },
+  {
+    ...PLAIN,
+    name: "all premises but one",
+    premises: "all-but-one",
+    engine: by(TERSE_STRATEGY),
+    clauses: 80,
+  },
+  { ...PLAIN, name: "related premises", premises: "related", engine: by(goalFirst), clauses: 800 },
+  { ...PLAIN, name: "small", engine: by(small), clauses: 800 },
   { ...PLAIN, name: "instances", engine: instances, clauses: 400 },
-  { ...written, name: "few literals", engine: by(fewLiterals), clauses: 300 },
-  { ...withoutIdentity, name: "without identity", engine: by(main), clauses: 800 },
-  { ...PLAIN, name: "elements", engine: by(elements), clauses: 1_500 },
-  { ...named, name: "instances", engine: instances, clauses: 2_500 },
-  { ...withoutIdentity, name: "without identity, goal first", engine: by(goalFirst), clauses: 3_000 },
+  { ...named, name: "named, goal first", engine: by(goalFirst), clauses: 400 },
+  { ...PLAIN, name: "ground", engine: by(GROUND_STRATEGY), clauses: 700 },
+  { ...PLAIN, name: "careful", engine: by(CAREFUL_STRATEGY), clauses: 800 },
+  { ...named, name: "named, instances", engine: instances, clauses: 1_500 },
+  { ...withoutIdentity, name: "without identity, terse", engine: by(TERSE_STRATEGY), clauses: 2_000 },
 ];
 
 /** Those that come again and again after the list, each time with {@link GROWTH} times as many clauses. */
 export const ENDLESS_TURNS: readonly PlannedTurn[] = [
+  { ...PLAIN, name: "instances", engine: instances, clauses: 3_000 },
+  { ...PLAIN, name: "elements", engine: by(elements), clauses: 13_000 },
+  { ...PLAIN, name: "direct", engine: by(DIRECT_STRATEGY), clauses: 10_000 },
+  { ...PLAIN, name: "ground", engine: by(GROUND_STRATEGY), clauses: 12_000 },
   { ...PLAIN, name: "moderate", engine: by(moderate), clauses: 14_000 },
-  { ...PLAIN, name: "unfolded", engine: by(), clauses: 20_000 },
-  { ...PLAIN, name: "instances", engine: instances, clauses: 6_000 },
-  { ...written, name: "few literals", engine: by(fewLiterals), clauses: 16_000 },
-  { ...PLAIN, name: "goal first", engine: by(goalFirst), clauses: 22_000 },
-  { ...PLAIN, name: "elements", engine: by(elements), clauses: 4_000 },
-  { ...withoutIdentity, name: "without identity", engine: by(main), clauses: 10_000 },
+  { ...written, name: "as written", engine: by(), clauses: 20_000 },
+  { ...withoutIdentity, name: "without identity, terse", engine: by(TERSE_STRATEGY), clauses: 8_000 },
+  { ...PLAIN, name: "careful", engine: by(CAREFUL_STRATEGY), clauses: 16_000 },
 ];
 
 export const GROWTH = 4;
