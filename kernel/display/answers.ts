@@ -8,7 +8,6 @@ import type {
   DualAnswer,
   IndependenceAnswer,
   MinimiseAnswer,
-  ShownDerivation,
 } from "../../lib/inquiry/answer.ts";
 import { DEFAULT_LARGEST_SIZE } from "../../lib/inquiry/work.ts";
 import type { Claim, NamedTheory, Statement } from "../../lib/language/statements.ts";
@@ -18,7 +17,7 @@ import type { MimeBundle } from "../session/evaluator.ts";
 import { type Block, code, type Inline, leadingVerdict, line, note, verdict } from "./blocks.ts";
 import { renderBundle } from "./bundle.ts";
 import { countBlocks } from "./counts.ts";
-import { showDerivation } from "./derivations.ts";
+import { showDerivation, showDerivations } from "./derivations.ts";
 import { numberedStructures } from "./galleries.ts";
 import { sizeOf, structureBlocks } from "./structures.ts";
 import { budgetOf, claimOf, derivedText, endText, pairReason, reportText, summarise } from "./summaries.ts";
@@ -129,7 +128,7 @@ function detailsOf(statement: Statement, answer: Answer): readonly Block[] {
       return [{ kind: "fold", title: "The structure", blocks }];
     }
     return [
-      ...foldDerivations(claim.derivations),
+      ...showDerivations(claim.derivations),
       ...foldRest(claim.structures.map(({ role, structure }) => structureBlocks(role, structure))),
     ];
   }
@@ -169,21 +168,11 @@ function axiomsBlocks(
   const derivations = axioms.flatMap(({ derivation }) => (derivation === null ? [] : [derivation]));
   return [
     table,
-    ...foldDerivations(derivations),
+    ...showDerivations(derivations),
     ...(witnesses.length === 0
       ? []
       : [{ kind: "fold", title: "The structures", blocks: witnesses } as const]),
   ];
-}
-
-/** One derivation open, several each in a fold of its own. */
-function foldDerivations(derivations: readonly ShownDerivation[]): readonly Block[] {
-  if (derivations.length <= 1) return derivations.flatMap(showDerivation);
-  return derivations.map((derivation) => ({
-    kind: "fold",
-    title: `Derivation: ${derivation.role}`,
-    blocks: showDerivation(derivation),
-  }));
 }
 
 function minimalBlocks(answer: MinimiseAnswer): readonly Block[] {
@@ -205,7 +194,7 @@ function minimalBlocks(answer: MinimiseAnswer): readonly Block[] {
       structureBlocks(`of ${labels.join(", ")} only ${labels[place]} fails`, structure),
     ),
   );
-  const blocks: Block[] = [table, ...foldDerivations(derivations)];
+  const blocks: Block[] = [table, ...showDerivations(derivations)];
   if (structures.length > 0) blocks.push({ kind: "fold", title: "The structures", blocks: structures });
   return blocks;
 }
@@ -259,7 +248,7 @@ function compareBlocks(answer: CompareAnswer, statement: Statement): readonly Bl
   });
   const blocks: Block[] = [...inconsistent, table, ...equivalent, ...interruptedNote(answer.interrupted)];
   if (derivations.length > 0)
-    blocks.push({ kind: "fold", title: "The derivations", blocks: derivations.flatMap(showDerivation) });
+    blocks.push({ kind: "fold", title: "The derivations", blocks: showDerivations(derivations) });
   const isOpen = answer.pairs.some(({ verdict: word }) => word === "open");
   if (isOpen) blocks.push(rangeNote(statement));
   if (structures.length > 0) blocks.push({ kind: "fold", title: "The structures", blocks: structures });
@@ -313,7 +302,7 @@ function dualBlocks(answer: DualAnswer, statement: Statement): readonly Block[] 
   if (answer.pairs.some(({ verdict: word }) => word === "open")) blocks.push(rangeNote(statement));
   const derivations = answer.pairs.flatMap((pair) => pair.derivations);
   if (derivations.length > 0)
-    blocks.push({ kind: "fold", title: "The derivations", blocks: derivations.flatMap(showDerivation) });
+    blocks.push({ kind: "fold", title: "The derivations", blocks: showDerivations(derivations) });
   const duals = answer.duals.slice(1).map(({ name: title, theory }) => theoryTable(title, theory));
   blocks.push({ kind: "fold", title: "The duals", blocks: duals });
   const structures = answer.pairs.flatMap(({ left, right, witness }) =>

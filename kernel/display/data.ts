@@ -87,7 +87,7 @@ function claimData(statement: Statement, answer: ClaimAnswer): Data {
   const noneUpTo =
     answer.searches.length === 0 ? 0 : Math.min(...answer.searches.map((search) => search.noneUpTo));
   const kind = { claim: claim?.kind ?? null };
-  const derived = { ...usedIn(answer.derivations), inconsistent: answer.inconsistent };
+  const derived = { ...usedIn(answer.derivations), ...(answer.inconsistent ? { inconsistent: true } : {}) };
   switch (claim?.kind) {
     case "entails":
     case "does-not-entail":

@@ -316,8 +316,8 @@ function minimiseSummary(answer: MinimiseAnswer, budget: number): string {
       ? "no irredundant set of axioms found"
       : `${enumerate(sets.map((set) => labels(set.labels)))} ${sets.length === 1 ? "is" : "are"} irredundant and ${
           sets.length === 1 ? "has" : "have"
-        } all axioms as consequences (checked)`;
-  if (complete) return `${found}; there is no other such set`;
+        } all axioms as consequences${complete ? "" : " (checked)"}`;
+  if (complete) return `${found}; there is no other such set (checked)`;
   const more = open.length === 0 ? "" : `; ${counted(open.length, "set")} open`;
   return `${found}${more}${ended === null ? "" : `; ${endText(ended, budget, null)}`}`;
 }

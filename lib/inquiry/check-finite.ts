@@ -22,7 +22,7 @@ export function checkFinite(theory: Theory, work: Work): FiniteAnswer {
   const question = recordQuestion({ ask: "check-finite", theory }, writer);
   const settler = new Settler(jointSignature([theory]), writer, work);
   const settled = settler.settle(
-    { premises: theory.axioms, conclusions: [], sought: "a model" },
+    { premises: theory.axioms, conclusions: [], from: "", sought: "a model" },
     settler.left,
   );
   const { search, report, structure } = settled;

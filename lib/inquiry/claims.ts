@@ -36,6 +36,7 @@ function askEntailment(
       premises: premises.axioms,
       // The premises are told apart from it by the label: nothing else is called so.
       conclusions: [{ label: "the conclusion", formula: conclusion, named: false }],
+      from: "",
       sought: "a countermodel",
     },
     settler.left,
@@ -116,7 +117,7 @@ function askForModel(
 ): ClaimAnswer {
   const claim = new ClaimWork({ ask, theory }, [theory], [], work);
   const { settler } = claim;
-  const entailment = { premises: theory.axioms, conclusions: [], sought: "a model" };
+  const entailment = { premises: theory.axioms, conclusions: [], from: "", sought: "a model" };
   const settled = settler.settle(entailment, settler.left);
   claim.add(settled, "model");
   const { outcome } = settled;
@@ -204,6 +205,7 @@ class ClaimWork {
     const entailment = {
       premises: from.axioms,
       conclusions: to.axioms,
+      from: `from ${names[0]}`,
       sought: `a model of ${names[0]} that is none of ${names[1]}`,
     };
     const settled =

@@ -26,7 +26,7 @@ export function compareTheories(theories: readonly NamedTheory[], work: Work): C
   const share = () => Math.max(1, Math.floor(settler.left / searches--));
   const inconsistent: { name: string; derivation: ShownDerivation }[] = [];
   for (const { name, theory } of theories) {
-    const entailment = { premises: theory.axioms, conclusions: [], sought: `a model of ${name}` };
+    const entailment = { premises: theory.axioms, conclusions: [], from: "", sought: `a model of ${name}` };
     const [derivation] = settler.settle(entailment, share()).derivations;
     if (derivation !== undefined) inconsistent.push({ name, derivation });
   }
@@ -34,7 +34,10 @@ export function compareTheories(theories: readonly NamedTheory[], work: Work): C
     const budget = share();
     if (to.theory.axioms.length === 0) return null;
     const sought = `a model of ${from.name} that is none of ${to.name}`;
-    return settler.settle({ premises: from.theory.axioms, conclusions: to.theory.axioms, sought }, budget);
+    return settler.settle(
+      { premises: from.theory.axioms, conclusions: to.theory.axioms, from: `from ${from.name}`, sought },
+      budget,
+    );
   };
   const pairs = pairsOf(theories).map(([left, right]): PairAnswer => {
     const first = theories[left]!;
@@ -45,6 +48,7 @@ export function compareTheories(theories: readonly NamedTheory[], work: Work): C
       {
         premises: [...first.theory.axioms, ...second.theory.axioms],
         conclusions: [],
+        from: "",
         sought: "a common model",
       },
       share(),

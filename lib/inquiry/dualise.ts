@@ -37,6 +37,7 @@ export function askDuals(name: string, theory: Theory, work: Work): DualAnswer {
       {
         premises: theories[from]!.axioms,
         conclusions: theories[to]!.axioms,
+        from: `from ${duals[from]!.name}`,
         sought: `a model of ${duals[from]!.name} that is none of ${duals[to]!.name}`,
       },
       Math.max(1, Math.floor(settler.left / searches--)),

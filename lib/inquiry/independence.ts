@@ -27,6 +27,7 @@ export function independenceOf(theory: Theory, settler: Settler): readonly Axiom
       {
         premises: theory.axioms.filter((other) => other !== axiom),
         conclusions: [axiom],
+        from: "from the other axioms",
         sought: `a structure where only ${axiom.label} fails`,
       },
       Math.max(1, Math.floor(settler.left / (theory.axioms.length - place))),

@@ -37,7 +37,18 @@ export function minimise(theory: Theory, work: Work): MinimiseAnswer {
           .map((axiom) => axiom.formula),
         [theory.axioms[place]!.formula],
       );
+  // What shows that there are no other sets: each set that is too weak has such a structure.
+  const complete = ended === null && sets.open.length === 0;
+  const sentences = theory.axioms.map(({ formula }) => formula);
+  if (complete)
+    for (const { mask, structure } of sets.weak)
+      writer.addStructure(
+        structure,
+        placesOf(mask, theory.axioms).map((place) => sentences[place]!),
+        sentences,
+      );
   const verdicts = sets.minimal.map(({ mask }) => placesOf(mask, theory.axioms).join(","));
+  if (complete) verdicts.unshift("complete");
   return {
     question: "minimise",
     verdict: null,
@@ -47,10 +58,10 @@ export function minimise(theory: Theory, work: Work): MinimiseAnswer {
       ({ mask, derivations, witnesses }): MinimalSet => ({
         labels: labelsOf(mask, theory.axioms),
         derivations,
-        witnesses: [...witnesses.values()],
+        witnesses: placesOf(mask, theory.axioms).map((place) => witnesses.get(place)!),
       }),
     ),
-    complete: ended === null && sets.open.length === 0,
+    complete,
     open: sets.open.map((mask) => labelsOf(mask, theory.axioms)),
     ended,
   };
@@ -71,13 +82,19 @@ interface FoundSet {
   readonly witnesses: ReadonlyMap<number, Structure>;
 }
 
+/** `a, b and c` */
+function listLabels(labels: readonly string[]): string {
+  if (labels.length === 0) return "no axioms";
+  return labels.length === 1 ? labels[0]! : `${labels.slice(0, -1).join(", ")} and ${labels.at(-1)}`;
+}
+
 /** What is known of the sets of axioms. Bit i of a mask is axiom i. */
 class Sets {
   readonly minimal: FoundSet[] = [];
   /** Sets of which nothing could be found out. */
   readonly open: number[] = [];
   /** Structures, each with the axioms that hold in it: not all. */
-  readonly #weak: { readonly mask: number; readonly structure: Structure }[] = [];
+  readonly weak: { readonly mask: number; readonly structure: Structure }[] = [];
   /** Sets from which all axioms follow. */
   readonly #strong: number[] = [];
   readonly #axioms: readonly Axiom[];
@@ -120,7 +137,7 @@ class Sets {
 
   /** A structure in which all of the set hold, and not all axioms. */
   #witness(mask: number): Structure | null {
-    return this.#weak.find((weak) => (weak.mask & mask) === mask)?.structure ?? null;
+    return this.weak.find((weak) => (weak.mask & mask) === mask)?.structure ?? null;
   }
 
   /** The derivations of all other axioms from the set; null when it is too weak or open, which is noted. */
@@ -134,6 +151,7 @@ class Sets {
       {
         premises: this.#axioms.filter((_, place) => isIn(place)),
         conclusions,
+        from: `from ${listLabels(labelsOf(mask, this.#axioms))}`,
         sought: "a structure where not all axioms hold",
       },
       Math.max(1, Math.floor(this.#settler.left / SHARE)),
@@ -149,7 +167,7 @@ class Sets {
       (found, { formula }, place) => found | (satisfies(structure, formula, meter) ? 1 << place : 0),
       0,
     );
-    this.#weak.push({ mask, structure });
+    this.weak.push({ mask, structure });
   }
 
   /** Leaves axioms out, the last ones first, until the set is irredundant. */

@@ -21,6 +21,8 @@ import type { Work } from "./work.ts";
 export interface Entailment {
   readonly premises: readonly Axiom[];
   readonly conclusions: readonly Axiom[];
+  /** From what the conclusions are derived, for people, after their labels: "from Order"; empty where that is clear. */
+  readonly from: string;
   /** What a structure against it would be, for people: "a countermodel". */
   readonly sought: string;
 }
@@ -104,7 +106,7 @@ export class Settler {
     if (this.interrupted || premises.length === 0) return null;
     const budget = Math.min(this.left, Math.max(1, Math.floor(this.#work.budget * CONTRADICTION_SHARE)));
     const meter = new Meter(budget, this.#work.isInterrupted);
-    const entailment = { premises, conclusions: [], sought: "a model of the premises" };
+    const entailment = { premises, conclusions: [], from: "", sought: "a model of the premises" };
     const run = new Run(entailment, this.#signature, this.#known, meter, this.#work);
     run.lookForContradiction();
     this.steps += meter.steps;
@@ -171,7 +173,7 @@ class Run {
   readonly #budget: number;
 
   constructor(
-    { premises, conclusions, sought }: Entailment,
+    { premises, conclusions, from, sought }: Entailment,
     signature: Signature,
     structures: readonly Structure[],
     meter: Meter,
@@ -188,7 +190,7 @@ class Run {
     const goals =
       conclusions.length === 0
         ? [{ conclusion: null, label: "a contradiction" }]
-        : open.map(({ label, formula }) => ({ conclusion: formula, label }));
+        : open.map(({ label, formula }) => ({ conclusion: formula, label: `${label} ${from}`.trimEnd() }));
     this.#goals = goals.map(({ conclusion, label }) => {
       const task = { premises: formulas, conclusion };
       return {
