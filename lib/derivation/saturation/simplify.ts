@@ -31,10 +31,10 @@ export class Simplifier {
   simplify(state: DraftState, self: number): DraftState {
     let now = state;
     while (now === "clause" && this.#draft.recordLength < LONGEST_RECORD) {
+      this.#clock.tick(4 * this.#draft.length);
       const next = this.#step(self);
       if (next === null) break;
       now = next;
-      this.#clock.tick(10);
     }
     return now === "clause" && this.#isSubsumed(self) ? "true" : now;
   }

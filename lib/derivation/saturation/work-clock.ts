@@ -2,7 +2,7 @@
 import type { Meter } from "../../logic/meter.ts";
 
 /** Units of work (a unification, a match, a few words scanned) between two looks. */
-const LOOKED_AT_EVERY = 8_192;
+const LOOKED_AT_EVERY = 2_048;
 
 export class WorkClock {
   readonly #meter: Meter;
