@@ -192,10 +192,10 @@ function finiteReason(answer: FiniteAnswer, budget: number): string {
 }
 
 /** What is known of the sizes below that of the model: proofs that the checker accepted, or a search alone. */
-function smallerText({ noModelUpTo, provenUpTo }: FiniteAnswer): string {
+function smallerText({ noModelUpTo, provenUpTo, evidence }: FiniteAnswer): string {
   if (noModelUpTo === 0) return "";
   const none = `; none ${onSizesTo(noModelUpTo)}`;
-  if (provenUpTo >= noModelUpTo) return `${none} (clause proofs, checked)`;
+  if (evidence !== null && provenUpTo >= noModelUpTo) return `${none} (clause proofs, checked)`;
   return provenUpTo === 0
     ? `${none} (complete search)`
     : `${none} (complete search; clause proofs ${onSizesTo(provenUpTo)})`;
@@ -211,7 +211,7 @@ function modelsSummary(answer: ModelsAnswer, budget: number): string {
       : endText(ended, budget, null);
   if (models.length === 0)
     return complete
-      ? `no model on ${points} (${answer.provenNone ? "clause proof, checked" : "complete search"})`
+      ? `no model on ${points} (${answer.provenNone && answer.evidence !== null ? "clause proof, checked" : "complete search"})`
       : `no model found on ${points}; ${end}`;
   const checked = answer.evidence === null ? "" : models.length === 1 ? ", checked" : ", each checked";
   const found = `${counted(models.length, "model")} on ${points} up to isomorphism${checked}`;
@@ -310,14 +310,15 @@ export function pairReason(pair: PairAnswer, names: readonly string[], checked: 
 
 function minimiseSummary(answer: MinimiseAnswer, budget: number): string {
   const { sets, complete, open, ended } = answer;
+  const checked = answer.evidence === null ? "" : " (checked)";
   const labels = (set: readonly string[]) => `{${set.join(", ")}}`;
   const found =
     sets.length === 0
       ? "no irredundant set of axioms found"
       : `${enumerate(sets.map((set) => labels(set.labels)))} ${sets.length === 1 ? "is" : "are"} irredundant and ${
           sets.length === 1 ? "has" : "have"
-        } all axioms as consequences${complete ? "" : " (checked)"}`;
-  if (complete) return `${found}; there is no other such set (checked)`;
+        } all axioms as consequences${complete ? "" : checked}`;
+  if (complete) return `${found}; there is no other such set${checked}`;
   const more = open.length === 0 ? "" : `; ${counted(open.length, "set")} open`;
   return `${found}${more}${ended === null ? "" : `; ${endText(ended, budget, null)}`}`;
 }
