@@ -6,7 +6,7 @@ import { grown } from "./terms.ts";
 
 /**
  * Words before the literals: how many literals; how many variables, as 0, 1, …; state, of the bits below; the key by
- * which it waits. After the literals comes the record of how it came about (`derivation.ts`), up to the next clause.
+ * which it waits. After the literals comes the record of how it came about (`draft.ts`), up to the next clause.
  */
 const HEADER = 4;
 const VARIABLES = 1;

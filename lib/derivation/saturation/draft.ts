@@ -39,7 +39,9 @@ export const Rule = {
 export const RECORD_WORDS: readonly number[] = [2, 2, 5, 4, 8, 3, 6, 2, 5, 4];
 
 /** Literals that a clause may have at all. */
-export const LONGEST_CLAUSE = 120;
+const LONGEST_CLAUSE = 120;
+/** Variables that a clause may have; with those of another one they stay below the numbers of {@link SHIFT}. */
+const MOST_VARIABLES = SHIFT / 2;
 
 /** What the draft has become by the last operation. */
 export type DraftState = "clause" | "true" | "too-large";
@@ -101,6 +103,7 @@ export class Draft {
   /** Takes literals for an input clause. */
   input(number: number, literals: readonly number[], variables: number): DraftState {
     this.#begin(Rule.input, number);
+    if (literals.length > LONGEST_CLAUSE || variables > MOST_VARIABLES) return "too-large";
     this.length = literals.length;
     for (let k = 0; k < this.length; k += 1) this.literals[k] = literals[k]!;
     this.variables = variables;
@@ -126,7 +129,7 @@ export class Draft {
 
   #finish(): DraftState {
     this.variables = this.#substitution.instanceVariables;
-    if (this.variables > SHIFT / 2) return "too-large";
+    if (this.variables > MOST_VARIABLES) return "too-large";
     return this.#tidy();
   }
 

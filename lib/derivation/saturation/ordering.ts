@@ -1,7 +1,7 @@
 /** Orderings of terms and literals that are stable under substitution: they say which inferences are not needed. */
 import { HEADER, IDENTITY, indexOf, SHIFT, type TermBank } from "./terms.ts";
 
-export type Comparison = "greater" | "less" | "equal" | "incomparable";
+type Comparison = "greater" | "less" | "equal" | "incomparable";
 
 /** A literal: twice its atom, plus one if it is negative. */
 export function atomOf(literal: number): number {
@@ -13,8 +13,6 @@ export function isNegative(literal: number): boolean {
 export function literalOf(atom: number, negative: boolean): number {
   return atom * 2 + (negative ? 1 : 0);
 }
-
-const OPPOSITE = { greater: "less", less: "greater", equal: "equal", incomparable: "incomparable" } as const;
 
 export class Ordering {
   readonly #bank: TermBank;
@@ -154,8 +152,4 @@ export class Ordering {
     }
     return decided;
   }
-}
-
-export function opposite(comparison: Comparison): Comparison {
-  return OPPOSITE[comparison];
 }
