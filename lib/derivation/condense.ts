@@ -8,8 +8,10 @@ import type { ClauseRecord, LiteralRecord, TermRecord } from "../evidence/format
 import { atomOf, atomTerms, substituteInClause } from "../logic/records/formulas.ts";
 import { literalText, type Substitution } from "./lines.ts";
 
-/** Attempts to match a literal, for one clause, after which it is left as it is. */
+/** Attempts to match a literal, for one clause, after which what was found is taken. */
 const MOST_ATTEMPTS = 2_000;
+/** Longer clauses are left as they are. */
+const MOST_LITERALS = 40;
 
 /** A clause that is a part of another, and what put for the other's variables makes it that. */
 export interface Condensed {
@@ -37,7 +39,7 @@ export function condense(clause: ClauseRecord): Condensed | null {
       if (matched !== null) extend(place + 1, matched, new Set(image).add(target));
     }
   };
-  extend(0, new Map(), new Set());
+  if (clause.length <= MOST_LITERALS) extend(0, new Map(), new Set());
   if (found === null) return null;
   const terms: Substitution = found;
   const image = new Set(substituteInClause(clause, terms).map(literalText));

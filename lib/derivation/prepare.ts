@@ -94,7 +94,11 @@ export function prepare(task: DerivationTask, preparation: Preparation): Prepare
   if (preparation.miniscope) preparer.miniscope();
   if (preparation.letters) preparer.nameClosed();
   else preparer.nameLarge(preparation.mostClauses);
-  const input = preparer.clauses().map((one) => ({ one, smaller: condense(one.clause) }));
+  const clauses = preparer.clauses();
+  const input = clauses.map((one) => ({
+    one,
+    smaller: clauses.length > MOST_CONDENSED ? null : condense(one.clause),
+  }));
   return {
     task: {
       clauses: input.map(({ one, smaller }) => (smaller === null ? one : { ...one, clause: smaller.clause })),
@@ -107,6 +111,9 @@ export function prepare(task: DerivationTask, preparation: Preparation): Prepare
     isComplete: !preparation.letters && preparation.premises.length === task.premises.length,
   };
 }
+
+/** More clauses than this are left as they are. */
+const MOST_CONDENSED = 400;
 
 /** A definition of a name, and which of its two directions are of use. */
 interface LiveDefinition {
