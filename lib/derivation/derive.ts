@@ -46,8 +46,10 @@ export interface Turn {
   readonly clauses: number;
 }
 
-/** Literals that an engine may keep in memory. */
+/** What saturation may keep in memory, in literals and terms: some 300 MB. */
 const MOST_LITERALS = 8_000_000;
+/** Literals of instances that may be kept, each of which is dearer: some 300 MB. */
+const MOST_INSTANCE_LITERALS = 1_000_000;
 
 /** The clauses for a turn; null when they would be too many. */
 export function prepareTurn(task: DerivationTask, preparation: Preparation): Prepared | null {
@@ -88,5 +90,6 @@ function refute(
 ): EngineOutcome {
   if (engine.by === "saturation")
     return saturate(prepared.task, engine.strategy, { clauses, literals: MOST_LITERALS }, meter);
-  return instantiate(prepared.task, { instances: clauses, literals: MOST_LITERALS }, meter, createSolver);
+  const limits = { instances: clauses, literals: MOST_INSTANCE_LITERALS };
+  return instantiate(prepared.task, limits, meter, createSolver);
 }

@@ -24,12 +24,15 @@ export class DerivationSearch {
   readonly #turns: Iterator<Turn, never>;
   /** The turn that comes next, when one was begun and could not be finished. */
   #unfinished: Turn | null = null;
-  readonly #prepared = new Map<string, PreparedOnce>();
+  /** By preparation; null where there would be too many clauses. */
+  readonly #prepared = new Map<string, PreparedOnce | null>();
   /** By clauses and engine: how many clauses were generated without an answer. */
   readonly #done = new Map<string, number>();
   #outcome: TurnOutcome | null = null;
   /** Turns passed over since one was run. */
   #passedOver = 0;
+  /** Whether some turn met its bound on memory. */
+  #metMemory = false;
 
   constructor(task: DerivationTask, createSolver: CreateSolver) {
     this.#task = task;
@@ -67,14 +70,16 @@ export class DerivationSearch {
     if ((this.#done.get(key) ?? 0) >= turn.clauses) return this.#passOver(meter);
     this.#passedOver = 0;
     const outcome = this.#spend(turn, once.prepared, meter);
-    const isFinished = outcome.result === "gave-up" && outcome.reason === "incomplete";
+    const isFinished = outcome.result === "gave-up" && outcome.reason !== "steps";
     this.#done.set(key, isFinished ? Number.POSITIVE_INFINITY : turn.clauses);
+    if (outcome.result === "gave-up" && outcome.reason === "memory") this.#metMemory = true;
     return outcome;
   }
 
   /** Costs more and more, so that there is an end where every turn has come to nothing. */
   #passOver(meter: Meter): null {
     this.#passedOver += 1;
+    if (this.#passedOver > MOST_PASSED_OVER && this.#metMemory) meter.endForMemory();
     meter.charge(LOOK * this.#passedOver);
     return null;
   }
@@ -102,10 +107,13 @@ export class DerivationSearch {
     const known = this.#prepared.get(key);
     if (known !== undefined) return known;
     const prepared = prepareTurn(this.#task, preparation);
-    if (prepared === null) return null;
+    if (prepared === null) {
+      this.#prepared.set(key, null);
+      return null;
+    }
     const clauses = prepared.task.clauses.map(({ clause, goal }) => [clause, goal]);
     const text = JSON.stringify([prepared.isComplete, clauses]);
-    const same = [...this.#prepared.values()].find((other) => other.text === text);
+    const same = [...this.#prepared.values()].find((other) => other?.text === text);
     const once = same ?? {
       number: this.#prepared.size,
       text,
@@ -119,6 +127,8 @@ export class DerivationSearch {
 
 /** Thousandths of a step for a turn that is passed over. */
 const LOOK = 100;
+/** So many turns after each other passed over, and there is none that could be run. */
+const MOST_PASSED_OVER = 200;
 
 interface PreparedOnce {
   /** The same for turns with the same clauses. */

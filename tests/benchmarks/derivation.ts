@@ -7,7 +7,7 @@
  * clauses for each question (10,000 if not said). The figures that are to hold, of the entailments in the questions:
  * 85 % within 1,000 generated clauses, 93 % within 10,000, 97 % within 100,000, 99 % within 1,000,000; of the claims
  * 99 % in all; checking at most a fiftieth of the time of the search. Times are CPU time of this process and good
- * for the ratios within one run. `--each` prints a line for each entailment, with the turn that found it.
+ * for the ratios within one run. `--each` prints a line for each question.
  */
 import { parseArgs } from "node:util";
 import type { Derivation, DerivationTask } from "../../lib/derivation/derive.ts";

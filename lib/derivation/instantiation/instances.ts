@@ -3,7 +3,7 @@
 import type { AtomRecord, TermRecord } from "../../evidence/format.ts";
 import { atomOf, atomTerms } from "../../logic/records/formulas.ts";
 import { Substitution, shifted } from "../saturation/substitution.ts";
-import { HEADER, IDENTITY, TermBank, variable } from "../saturation/terms.ts";
+import { HEADER, IDENTITY, SHIFT, TermBank, variable } from "../saturation/terms.ts";
 import type { BaseClause } from "./base-clauses.ts";
 
 /** An instance of a base clause, or the clause itself. Its variables are 0, 1, …, each in some literal. */
@@ -19,6 +19,8 @@ export interface Instance {
   /** Symbols and variables in the literals. */
   readonly weight: number;
   readonly isGround: boolean;
+  /** How many variables it has. */
+  readonly variables: number;
 }
 
 /** What becomes of an instance that is made: nothing when it is known, true by itself or too large. */
@@ -74,6 +76,18 @@ export class InstanceMaker {
     return made;
   }
 
+  /** Whether the bindings merely rename the variables of an instance. */
+  isRenamed({ variables }: Instance, isShifted: boolean): boolean {
+    const { substitution } = this;
+    substitution.beginInstance();
+    for (let v = 0; v < variables; v += 1) {
+      // The variables that are left get the numbers 0, 1, … as they are met.
+      const value = substitution.instance(variable(isShifted ? v + SHIFT : v));
+      if (value !== variable(v)) return false;
+    }
+    return true;
+  }
+
   /**
    * An instance under the bindings of the substitution.
    * @param isShifted whether the bindings are for the clause with shifted variables
@@ -111,6 +125,7 @@ export class InstanceMaker {
       return (literal & 1) === 0 ? solverVariable : -solverVariable;
     });
     this.#count += 1;
+    const variables = Math.max(0, ...literals.map((literal) => bank.variables(literal >> 1)));
     return {
       number: this.#count,
       base,
@@ -118,7 +133,8 @@ export class InstanceMaker {
       literals,
       ground,
       weight,
-      isGround: literals.every((literal) => bank.isGround(literal >> 1)),
+      isGround: variables === 0,
+      variables,
     };
   }
 

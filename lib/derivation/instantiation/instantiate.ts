@@ -29,7 +29,7 @@ const MOST_WEIGHT = 120;
 /** Thousandths of a step for an attempt to unify. */
 const ATTEMPT = 4;
 /** … for an instance that is known already or is left out. */
-const KNOWN = 50;
+const KNOWN = 200;
 /** … and for a new one. */
 const STEP = 1000;
 /** Instances that are to take part before the solver is asked again, although its last model is not one any more. */
@@ -239,16 +239,19 @@ class Instantiation {
   /** Makes the instances under which a selected literal is opposite to others. */
   #combine(given: Instance, literal: number): void {
     const { substitution, bank } = this.#maker;
-    for (const partner of [...(this.#index.get(this.#slot(literal) ^ 1) ?? [])]) {
+    for (const partner of this.#index.get(this.#slot(literal) ^ 1) ?? []) {
       if (given.isGround && partner.isGround) continue;
       this.#meter.charge(ATTEMPT);
       const opposite = partner.literals[this.#active.get(partner)!]! >> 1;
       if (substitution.unify(literal >> 1, shifted(bank, opposite))) {
-        const made = [
-          given.isGround ? null : this.#add(this.#maker.instance(given, false)),
-          partner.isGround ? null : this.#add(this.#maker.instance(partner, true)),
-        ];
-        for (const instance of made) if (instance !== null) this.#waiting.add(instance);
+        for (const [instance, isShifted] of [
+          [given, false],
+          [partner, true],
+        ] as const) {
+          if (this.#maker.isRenamed(instance, isShifted)) continue;
+          const made = this.#add(this.#maker.instance(instance, isShifted));
+          if (made !== null) this.#waiting.add(made);
+        }
       }
       substitution.undo(0);
     }
