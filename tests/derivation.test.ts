@@ -202,6 +202,65 @@ describe("preparation", () => {
   });
 });
 
+describe("condensing", () => {
+  const clauseOf = (text: string) => {
+    const { prepared } = runOne(taskOf([text], null), {}, "saturation", 1);
+    return prepared.task.clauses.map(({ clause }) => JSON.stringify(clause));
+  };
+
+  it("makes of a clause the smallest part that is an instance of it", () => {
+    expect(clauseOf("forall x y z (R(x,y) | R(x,z))")).toEqual([JSON.stringify([["is", "R", "x", "y"]])]);
+    expect(clauseOf("forall x y z (R(x,y) | R(y,z) | R(z,z))")).toEqual([
+      JSON.stringify([["is", "R", "z", "z"]]),
+    ]);
+    // Nothing can be put for the variables here that gives a part.
+    const path = "forall x y z (~R(x,y) | ~R(y,z) | R(x,z))";
+    expect(JSON.parse(clauseOf(path)[0]!)).toHaveLength(3);
+  });
+
+  it("is told in the derivation", () => {
+    const task = taskOf(["forall x y z (R(x,y) | R(x,z) | S(x,x))"], "forall x (S(x,x) | exists y R(x,y))");
+    for (const by of ["saturation", "instances"] as const)
+      expect(derivedBy(task, {}, by).premises).toEqual([0]);
+  });
+});
+
+describe("derivations by instances", () => {
+  it("do not decide when a clause was too large to look at", () => {
+    const many = Array.from({ length: 70 }, (_, k) => `R(x,c${k})`).join(" | ");
+    const variables = Array.from({ length: 70 }, (_, k) => `c${k}`).join(" ");
+    const { outcome } = runOne(
+      taskOf([`exists ${variables} forall x (${many})`], null),
+      {},
+      "instances",
+      5_000,
+    );
+    expect(outcome.result).toBe("gave-up");
+  });
+
+  it("go through many learned clauses, of which those that matter are kept", () => {
+    // Five points in four holes, no two in one (common practice).
+    const points = ["a", "b", "c", "d", "e"];
+    const holes = ["A", "B", "C", "D"];
+    const sits = `forall x (${holes.map((hole) => `${hole}(x)`).join(" | ")})`;
+    const apart = holes.map((hole) => `forall x y (${hole}(x) & ${hole}(y) -> x=y)`);
+    const pairs = points.flatMap((x, place) => points.slice(place + 1).map((y) => `${x}!=${y}`));
+    const task = taskOf([sits, ...apart], `~exists ${points.join(" ")} (${pairs.join(" & ")})`);
+    const derivation = derivedBy(task, {}, "instances");
+    expect(derivation.premises).toEqual([0, 1, 2, 3, 4]);
+    expect(derivation.record.lines.length).toBeGreaterThan(10);
+    const { outcome } = runOne(
+      taskOf(
+        [sits, ...apart],
+        `~exists a b c d (${pairs.filter((pair) => !pair.includes("e")).join(" & ")})`,
+      ),
+      {},
+      "instances",
+    );
+    expect(outcome.result).toBe("saturated");
+  });
+});
+
 describe("derivations", () => {
   it("have no lines that repeat others or merely put terms for variables", () => {
     for (const by of ["saturation", "instances"] as const) {

@@ -168,7 +168,7 @@ class Instantiation {
         this.#add(this.#maker.at(first, terms));
       }
     }
-    return this.#hasModel() ? { result: "saturated" } : this.#refute();
+    return this.#hasModel() ? this.#exhausted() : this.#refute();
   }
 
   // The search
@@ -189,10 +189,14 @@ class Instantiation {
         if (this.#count >= this.#limits.instances) return { result: "gave-up", reason: "steps" };
         if (this.#literals >= this.#limits.literals) return { result: "gave-up", reason: "memory" };
       }
-      if (this.#falsified === 0 && this.#waiting.size === 0)
-        return this.#isPartial ? { result: "gave-up", reason: "incomplete" } : { result: "saturated" };
+      if (this.#falsified === 0 && this.#waiting.size === 0) return this.#exhausted();
     }
     return this.#refute();
+  }
+
+  /** The model stands for all instances that there are. */
+  #exhausted(): EngineOutcome {
+    return this.#isPartial ? { result: "gave-up", reason: "incomplete" } : { result: "saturated" };
   }
 
   /** The literal by which an instance takes part: true in the model, ground if there is such a one, light. */
