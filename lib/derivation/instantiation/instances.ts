@@ -38,6 +38,8 @@ export class InstanceMaker {
   /** By variable of the solver: the ground atom. */
   readonly #atoms: number[] = [];
   readonly #grounded = new Map<number, number>();
+  /** By term: the same with shifted variables. */
+  readonly #shifted = new Map<number, number>();
   readonly #known = new Set<string>();
   #count = 0;
 
@@ -76,6 +78,16 @@ export class InstanceMaker {
     return made;
   }
 
+  /** A term with shifted variables. Kept, since terms are deep and take part again and again. */
+  shifted(term: number): number {
+    let known = this.#shifted.get(term);
+    if (known === undefined) {
+      known = shifted(this.bank, term);
+      this.#shifted.set(term, known);
+    }
+    return known;
+  }
+
   /** Whether the bindings merely rename the variables of an instance. */
   isRenamed({ variables }: Instance, isShifted: boolean): boolean {
     const { substitution } = this;
@@ -93,8 +105,8 @@ export class InstanceMaker {
    * @param isShifted whether the bindings are for the clause with shifted variables
    */
   instance({ base, literals, terms }: Instance, isShifted: boolean): MadeInstance {
-    const { substitution, bank } = this;
-    const of = (term: number) => substitution.instance(isShifted ? shifted(bank, term) : term);
+    const { substitution } = this;
+    const of = (term: number) => substitution.instance(isShifted ? this.shifted(term) : term);
     substitution.beginInstance();
     const made: number[] = [];
     for (const literal of literals) {

@@ -11,7 +11,6 @@ import type { ClauseRecord, LiteralRecord, TermRecord, UseRecord } from "../../e
 import { type Meter, WorkEnded } from "../../logic/meter.ts";
 import type { CreateSolver, GroundSolver } from "../ground-solver.ts";
 import type { ClauseTask, EngineOutcome, RefutationStep } from "../refutation.ts";
-import { shifted } from "../saturation/substitution.ts";
 import { type BaseClause, baseClauses, eachFunction } from "./base-clauses.ts";
 import { type Instance, InstanceMaker, type MadeInstance } from "./instances.ts";
 import { replay } from "./replay.ts";
@@ -242,12 +241,12 @@ class Instantiation {
 
   /** Makes the instances under which a selected literal is opposite to others. */
   #combine(given: Instance, literal: number): void {
-    const { substitution, bank } = this.#maker;
+    const { substitution } = this.#maker;
     for (const partner of this.#index.get(this.#slot(literal) ^ 1) ?? []) {
       if (given.isGround && partner.isGround) continue;
       this.#meter.charge(ATTEMPT);
       const opposite = partner.literals[this.#active.get(partner)!]! >> 1;
-      if (substitution.unify(literal >> 1, shifted(bank, opposite))) {
+      if (substitution.unify(literal >> 1, this.#maker.shifted(opposite))) {
         for (const [instance, isShifted] of [
           [given, false],
           [partner, true],
