@@ -63,7 +63,7 @@ const plain: Preparation = {
   premises: [],
   unfold: false,
   miniscope: false,
-  letters: false,
+  letters: "none",
   mostClauses: 32,
 };
 
@@ -166,7 +166,7 @@ describe("preparation", () => {
     const large = (a: string, b: string) =>
       `forall ${a} exists ${b} (R(${a},${b}) <-> (S(${b},${a}) <-> exists c (R(c,${a}) <-> S(c,${b}))))`;
     const task = taskOf([`(${large("x", "y")}) & exists x R(x,x)`, "forall x R(x,x)"], large("u", "v"));
-    const derivation = derivedBy(task, { letters: true }, "instances");
+    const derivation = derivedBy(task, { letters: "alone" }, "instances");
     expect(derivation.premises).toEqual([0]);
     expect(derivation.record.lines.length).toBeLessThanOrEqual(3);
     expect(search(task, 100).steps).toBeLessThan(10);

@@ -4,6 +4,7 @@ import type { Formula } from "../logic/formula.ts";
 import type { Meter } from "../logic/meter.ts";
 import { FormulaTooLarge } from "../logic/records/formulas.ts";
 import { assemble } from "./assemble.ts";
+import { refuteByCases } from "./cases.ts";
 import type { CreateSolver } from "./ground-solver.ts";
 import { instantiate } from "./instantiation/instantiate.ts";
 import { type Preparation, type Prepared, prepare } from "./prepare.ts";
@@ -33,10 +34,12 @@ export type TurnOutcome =
   | { readonly result: "saturated" }
   | { readonly result: "gave-up"; readonly reason: "steps" | "memory" | "incomplete" };
 
-/** What refutes the clauses: saturation by a strategy, or instances of the clauses. */
+/** What refutes the clauses: saturation by a strategy, instances of the clauses, or cases. */
 export type Engine =
   | { readonly by: "saturation"; readonly strategy: Strategy }
-  | { readonly by: "instances" };
+  | { readonly by: "instances" }
+  /** Saturation in each case that closed parts with names leave. */
+  | { readonly by: "cases"; readonly strategy: Strategy };
 
 /** One bounded attempt. */
 export interface Turn {
@@ -90,6 +93,10 @@ function refute(
 ): EngineOutcome {
   if (engine.by === "saturation")
     return saturate(prepared.task, engine.strategy, { clauses, literals: MOST_LITERALS }, meter);
+  if (engine.by === "cases") {
+    const limits = { clauses, literals: MOST_LITERALS };
+    return refuteByCases(prepared.task, engine.strategy, limits, meter, createSolver);
+  }
   const limits = { instances: clauses, literals: MOST_INSTANCE_LITERALS };
   return instantiate(prepared.task, limits, meter, createSolver);
 }

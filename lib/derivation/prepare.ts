@@ -26,8 +26,11 @@ export interface Preparation {
   readonly miniscope: boolean;
   /** Parts of a formula get names when a disjunction in it would become more clauses than this. */
   readonly mostClauses: number;
-  /** Whether closed parts are taken as they are, by names; what is lost are all consequences of what they say. */
-  readonly letters: boolean;
+  /**
+   * Whether closed parts get names: `alone` without looking at what they say, so that all consequences of that are lost;
+   * `defined` with it.
+   */
+  readonly letters: "none" | "alone" | "defined";
 }
 
 /** A formula that clauses may come from, and where it comes from. Formulas go by their places in a list. */
@@ -92,7 +95,7 @@ export function prepare(task: DerivationTask, preparation: Preparation): Prepare
   const preparer = new Preparer(task, preparation);
   if (preparation.unfold) preparer.unfold();
   if (preparation.miniscope) preparer.miniscope();
-  if (preparation.letters) preparer.nameClosed();
+  if (preparation.letters !== "none") preparer.nameClosed(preparation.letters === "defined");
   else preparer.nameLarge(preparation.mostClauses);
   const clauses = preparer.clauses();
   const input = clauses.map((one) => ({
@@ -108,7 +111,7 @@ export function prepare(task: DerivationTask, preparation: Preparation): Prepare
       smaller === null ? null : { from: one.clause, terms: smaller.terms },
     ),
     formulas: preparer.formulas,
-    isComplete: !preparation.letters && preparation.premises.length === task.premises.length,
+    isComplete: preparation.letters !== "alone" && preparation.premises.length === task.premises.length,
   };
 }
 
@@ -194,15 +197,19 @@ class Preparer {
     });
   }
 
-  /** Puts names for closed parts, whose definitions are not looked at. */
-  nameClosed(): void {
+  /** Puts names for closed parts. */
+  nameClosed(isDefined: boolean): void {
     const names = new Map<string, string>();
     const definitions = new Map<string, number>();
     this.#live = this.#live.map((number) => {
       const { formula, goal } = this.formulas[number]!;
       return nameClosedParts(formula, names, this.#freshName).reduce((before, part) => {
-        const definition = definitions.get(part.name) ?? this.#define(part, goal);
-        definitions.set(part.name, definition);
+        let definition = definitions.get(part.name);
+        if (definition === undefined) {
+          definition = this.#define(part, goal);
+          definitions.set(part.name, definition);
+          if (isDefined) this.#definitions.push({ ...part, number: definition });
+        }
         return this.#make(["fold", before, definition, part.result], part.result, goal);
       }, number);
     });

@@ -33,7 +33,7 @@ export interface PlannedTurn {
   readonly premises: PremiseChoice;
   readonly unfold: boolean;
   readonly miniscope: boolean;
-  readonly letters: boolean;
+  readonly letters: "none" | "alone" | "defined";
   readonly mostClauses: number;
   /** Clauses that each of its turns may generate. */
   readonly clauses: number;
@@ -44,7 +44,7 @@ const PLAIN = {
   premises: "all",
   unfold: true,
   miniscope: false,
-  letters: false,
+  letters: "none",
   mostClauses: 32,
 } as const;
 
@@ -58,6 +58,10 @@ function by(strategy: Partial<Strategy> = {}): Engine {
  * Strategies beside those of the engine. They and the list below were chosen by measuring, on tests/data, which turns
  * derive most of what the turns before leave open, for the clauses that they cost (tests/benchmarks/derivation.ts).
  */
+
+function cases(strategy: Strategy): Engine {
+  return { by: "cases", strategy };
+}
 
 const main: Partial<Strategy> = { precedence: "rare", literalWeight: 1, goalFunctionWeight: 1 };
 /** What comes from the negated conclusion counts a third. */
@@ -123,7 +127,7 @@ const written = { ...PLAIN, unfold: false } as const;
 const withoutIdentity = { ...PLAIN, premises: "without-identity" } as const;
 
 export const TURNS: readonly PlannedTurn[] = [
-  { ...PLAIN, name: "as letters", engine: instances, letters: true, clauses: 100 },
+  { ...PLAIN, name: "as letters", engine: instances, letters: "alone", clauses: 100 },
   { ...PLAIN, name: "supported", engine: by(supported), clauses: 60 },
   { ...written, name: "as written, terse", engine: by(TERSE_STRATEGY), clauses: 100 },
   { ...withoutIdentity, name: "without identity, few partners", engine: by(fewPartners), clauses: 100 },
@@ -139,6 +143,7 @@ export const TURNS: readonly PlannedTurn[] = [
     engine: by(TERSE_STRATEGY),
     clauses: 80,
   },
+  { ...PLAIN, name: "cases", engine: cases(TERSE_STRATEGY), letters: "defined", clauses: 600 },
   { ...PLAIN, name: "related premises", premises: "related", engine: by(goalFirst), clauses: 800 },
   { ...PLAIN, name: "small", engine: by(small), clauses: 800 },
   { ...PLAIN, name: "instances", engine: instances, clauses: 400 },
@@ -155,6 +160,7 @@ export const ENDLESS_TURNS: readonly PlannedTurn[] = [
   { ...PLAIN, name: "elements", engine: by(elements), clauses: 13_000 },
   { ...PLAIN, name: "direct", engine: by(DIRECT_STRATEGY), clauses: 10_000 },
   { ...PLAIN, name: "ground", engine: by(GROUND_STRATEGY), clauses: 12_000 },
+  { ...PLAIN, name: "cases", engine: cases(CAREFUL_STRATEGY), letters: "defined", clauses: 6_000 },
   { ...PLAIN, name: "moderate", engine: by(moderate), clauses: 14_000 },
   { ...written, name: "as written", engine: by(), clauses: 20_000 },
   { ...withoutIdentity, name: "without identity, terse", engine: by(TERSE_STRATEGY), clauses: 8_000 },

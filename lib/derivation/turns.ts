@@ -1,6 +1,7 @@
 /** Going through the turns of a search for a derivation, one at a time, so that other searches can go between. */
 import { type Meter, WorkEnded } from "../logic/meter.ts";
 import { MeterShare } from "../logic/share.ts";
+import { hasCases } from "./cases.ts";
 import { type DerivationTask, prepareTurn, runTurn, type Turn, type TurnOutcome } from "./derive.ts";
 import type { CreateSolver } from "./ground-solver.ts";
 import type { Prepared } from "./prepare.ts";
@@ -65,7 +66,7 @@ export class DerivationSearch {
   /** Null when nothing new can come of the turn. */
   #run(turn: Turn, meter: Meter): TurnOutcome | null {
     const once = this.#prepare(turn);
-    if (once === null || (turn.preparation.letters && !once.hasOpposites)) return this.#passOver(meter);
+    if (once === null || !isWorthwhile(turn, once)) return this.#passOver(meter);
     const key = `${once.number} ${JSON.stringify(turn.engine)}`;
     if ((this.#done.get(key) ?? 0) >= turn.clauses) return this.#passOver(meter);
     this.#passedOver = 0;
@@ -137,6 +138,12 @@ interface PreparedOnce {
   readonly prepared: Prepared;
   /** Whether some atom occurs both negated and not. */
   readonly hasOpposites: boolean;
+}
+
+/** Whether letters leave anything to be found. */
+function isWorthwhile({ preparation, engine }: Turn, once: PreparedOnce): boolean {
+  if (engine.by === "cases") return hasCases(once.prepared.task);
+  return preparation.letters === "none" || once.hasOpposites;
 }
 
 function hasOpposites({ task }: Prepared): boolean {

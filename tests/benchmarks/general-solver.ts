@@ -1,0 +1,115 @@
+/**
+ * The collected questions and claims, put to Twoplace and to z3-solver in one run.
+ *
+ *     npx tsx tests/benchmarks/general-solver.ts [--seconds N] [--steps N] [--each]
+ *
+ * Twoplace answers `T ⊨ φ` within its budget of steps (200,000 if not said), its checks included; z3-solver gets the same
+ * question as SMT-LIB, with N seconds (2 if not said). The figures that are to hold: at least 12 % of all questions
+ * more, none left open that z3-solver settles in a second, median time at most a tenth of its. Times are for the ratios
+ * within the run; reading the text is not counted for either.
+ */
+import { parseArgs } from "node:util";
+import { init } from "z3-solver";
+import { askEntails } from "../../lib/inquiry/claims.ts";
+import { DEFAULT_LARGEST_SYMMETRIC_SIZE, unwatchedWork } from "../../lib/inquiry/work.ts";
+import { printSmtLib } from "../../lib/language/smt-lib.ts";
+import { DEFAULT_BUDGET } from "../../lib/logic/meter.ts";
+import { claims, questions, readSentences, theoryOf } from "../support/corpora.ts";
+
+const { values: options } = parseArgs({
+  options: { seconds: { type: "string" }, steps: { type: "string" }, each: { type: "boolean" } },
+});
+const seconds = Number(options.seconds ?? 2);
+const budget = Number(options.steps ?? DEFAULT_BUDGET);
+/** Milliseconds within which z3-solver settles nothing that Twoplace leaves open. */
+const SOON = 1_000;
+
+interface Outcome {
+  readonly verdict: "holds" | "fails" | "open";
+  readonly milliseconds: number;
+}
+
+const { Z3, em } = await init();
+
+async function askZ3(text: string): Promise<Outcome> {
+  const config = Z3.mk_config();
+  const context = Z3.mk_context(config);
+  Z3.del_config(config);
+  const solver = Z3.mk_solver(context);
+  Z3.solver_inc_ref(context, solver);
+  const parameters = Z3.mk_params(context);
+  Z3.params_inc_ref(context, parameters);
+  Z3.params_set_uint(context, parameters, Z3.mk_string_symbol(context, "timeout"), seconds * 1000);
+  Z3.solver_set_params(context, solver, parameters);
+  Z3.solver_from_string(context, solver, text);
+  const start = performance.now();
+  const answer = await Z3.solver_check(context, solver);
+  const milliseconds = performance.now() - start;
+  Z3.params_dec_ref(context, parameters);
+  Z3.solver_dec_ref(context, solver);
+  Z3.del_context(context);
+  return { verdict: answer === -1 ? "holds" : answer === 1 ? "fails" : "open", milliseconds };
+}
+
+interface Row {
+  readonly id: string;
+  readonly expected: string;
+  readonly ours: Outcome;
+  readonly theirs: Outcome;
+}
+
+const entries = [...questions, ...claims];
+const rows: Row[] = [];
+for (const { id, premises, conclusion, expected } of entries) {
+  const [sentence, ...others] = readSentences([conclusion, ...premises]);
+  const theory = theoryOf(others);
+  const start = performance.now();
+  const work = { ...unwatchedWork, budget, symmetricUpTo: DEFAULT_LARGEST_SYMMETRIC_SIZE };
+  const { verdict } = askEntails(theory, sentence!, work);
+  const ours: Outcome = { verdict, milliseconds: performance.now() - start };
+  const theirs = await askZ3(printSmtLib(theory, sentence!));
+  rows.push({ id, expected, ours, theirs });
+  if (options.each)
+    console.log(
+      `${id}: ${expected}; Twoplace ${ours.verdict} ${ours.milliseconds.toFixed(1)} ms; z3-solver ${theirs.verdict} ${theirs.milliseconds.toFixed(1)} ms`,
+    );
+}
+
+const isWrong = ({ verdict }: Outcome, expected: string) =>
+  verdict !== "open" && verdict !== (expected === "only infinite countermodels" ? "fails" : expected);
+const settled = (of: (row: Row) => Outcome, some: readonly Row[] = rows) =>
+  some.filter((row) => of(row).verdict !== "open").length;
+const ours = ({ ours: outcome }: Row) => outcome;
+const theirs = ({ theirs: outcome }: Row) => outcome;
+
+function median(numbers: readonly number[]): number {
+  return [...numbers].sort((a, b) => a - b)[Math.floor(numbers.length / 2)]!;
+}
+
+console.log(`${rows.length} entailments; Twoplace ${budget} steps, z3-solver ${seconds} s each\n`);
+console.log("| | Twoplace | z3-solver |\n| --- | --- | --- |");
+const line = (name: string, some: readonly Row[]) =>
+  console.log(`| ${name} (${some.length}) | ${settled(ours, some)} | ${settled(theirs, some)} |`);
+line("all", rows);
+for (const expected of ["holds", "fails", "only infinite countermodels"])
+  line(
+    expected,
+    rows.filter((row) => row.expected === expected),
+  );
+const wrong = (of: (row: Row) => Outcome) => rows.filter((row) => isWrong(of(row), row.expected));
+console.log(`| wrong | ${wrong(ours).length} | ${wrong(theirs).length} |`);
+const both = rows.filter((row) => ours(row).verdict !== "open" && theirs(row).verdict !== "open");
+const [mine, other] = [ours, theirs].map((of) => median(both.map((row) => of(row).milliseconds)));
+console.log(`| median where both answer | ${mine!.toFixed(2)} ms | ${other!.toFixed(2)} ms |`);
+const more = (100 * (settled(ours) - settled(theirs))) / rows.length;
+console.log(`\n${more.toFixed(1)} % of all more; median time ${(mine! / other!).toFixed(3)} of z3-solver's`);
+const missed = rows.filter(
+  (row) => ours(row).verdict === "open" && theirs(row).verdict !== "open" && theirs(row).milliseconds <= SOON,
+);
+console.log(
+  `left open though z3-solver settles it within ${SOON} ms: ${missed.map(({ id }) => id).join(", ") || "none"}`,
+);
+for (const [name, of] of [["Twoplace", ours] as const, ["z3-solver", theirs] as const])
+  if (wrong(of).length > 0) console.log(`wrong, ${name}: ${wrong(of).map(({ id }) => id)}`);
+em.PThread.terminateAllThreads();
+process.exitCode = wrong(ours).length + missed.length === 0 ? 0 : 1;
