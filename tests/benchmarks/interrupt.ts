@@ -17,6 +17,10 @@ const cells: Readonly<Record<string, string>> = {
     "relation R\nrelation V of 3 places\nrelation W of 3 places\ncheck-finite { ∀x ∀y ∀u (V(x,y,u) ↔ ∀z (Rzu ↔ Rzx ∨ Rzy)); ∀x ∀y ∀u (W(x,y,u) ↔ ∀z (Rzu ↔ Rzx ∧ Rzy)); ∃x ∃y ∃z ∃a ∃b ∃c ∃d ∃e (V(y,z,a) ∧ W(x,a,b) ∧ W(x,y,c) ∧ W(x,z,d) ∧ V(c,d,e) ∧ b ≠ e); ∀x ∀y (∀z (Rzx ↔ Rzy) → x = y) } up to 4 within 20000 steps",
   counting: "count { transitive } up to 6",
   models: "models { symmetric } of size 6",
+  "derivations without an end":
+    "check-finite { transitive; irreflexive; ∀x ∃y Rxy } up to 2 within 400000 steps",
+  "derivations with identity":
+    "check-finite { ∀x ∃y Rxy; ∀x ∀y ∀z (Rxy ∧ Rxz → y = z); ∀x ∀y ∀z (Rxz ∧ Ryz → x = y); ∃x ∀y ¬Ryx } up to 2 within 400000 steps",
   evaluation:
     "define A := points 60 where R is { (1,2) }\nconjecture A ⊨ ∀x ∀y ∀z ∀w (Rxy ∧ Ryz ∧ Rzw → Rxw)",
 };
