@@ -92,7 +92,13 @@ function refute(
   createSolver: CreateSolver,
 ): EngineOutcome {
   if (engine.by === "saturation")
-    return saturate(prepared.task, engine.strategy, { clauses, literals: MOST_LITERALS }, meter);
+    return saturate(
+      prepared.task,
+      engine.strategy,
+      { clauses, literals: MOST_LITERALS },
+      meter,
+      createSolver,
+    );
   if (engine.by === "cases") {
     const limits = { clauses, literals: MOST_LITERALS };
     return refuteByCases(prepared.task, engine.strategy, limits, meter, createSolver);

@@ -17,6 +17,12 @@ const KEY = 3;
 export const DELETED = 1;
 export const ACTIVE = 2;
 export const GOAL = 4;
+/** Some name in the clause is true in the present model of the names: the clause is as well. */
+export const FROZEN = 8;
+/** Superfluous in the present model of the names. */
+export const PARKED = 16;
+/** Clauses with one of these bits take part in nothing. */
+export const HIDDEN = DELETED | FROZEN | PARKED;
 
 export class ClauseStore {
   #words: Int32Array = new Int32Array(1 << 14);
@@ -77,6 +83,10 @@ export class ClauseStore {
   }
   mark(clause: number, bit: number): void {
     this.#words[this.#starts[clause]! + STATE]! |= bit;
+  }
+
+  unmark(clause: number, bit: number): void {
+    this.#words[this.#starts[clause]! + STATE]! &= ~bit;
   }
 
   /** How the clause came about. */

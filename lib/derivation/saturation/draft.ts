@@ -4,12 +4,13 @@
  * of an operation is enough to do it again.
  */
 import type { ClauseStore } from "./clauses.ts";
-import { atomOf, isNegative, literalOf, type Ordering } from "./ordering.ts";
+import { atomOf, comesBefore, isNegative, literalOf, type Ordering } from "./ordering.ts";
+import { type NamedPart, partsOf } from "./splitting.ts";
 import { type Substitution, shifted } from "./substitution.ts";
 import { HEADER, IDENTITY, SHIFT, type TermBank, variable } from "./terms.ts";
 
 /**
- * A record begins with one of the first seven operations and goes on with simplifications. After the operation stand:
+ * A record begins with one of the first eight operations and goes on with simplifications. After the operation stand:
  * literals as their places in the clause, sides of an equation as 0 or 1, and places in an atom in reading order.
  */
 export const Rule = {
@@ -27,16 +28,20 @@ export const Rule = {
   reflect: 5,
   /** clause, literal, side, literal, side: of s = t and s = u, the first becomes t ≠ u */
   equate: 6,
+  /** name, 0 for ¬name ∨ part, or of a ground part 1 for name ∨ ¬part */
+  define: 7,
   /** literal x ≠ t (Bachmair & Ganzinger 1994 call the step equality resolution) */
-  eliminate: 7,
+  eliminate: 8,
   /** literal, place, unit clause, side */
-  rewrite: 8,
+  rewrite: 9,
   /** literal, unit clause, 1 if the sides of an equation are exchanged, else 0 */
-  cut: 9,
+  cut: 10,
+  /** a literal of the part, the literal of its name */
+  name: 11,
 } as const;
 
 /** Words that a record has for each rule, the rule among them. */
-export const RECORD_WORDS: readonly number[] = [2, 2, 5, 4, 8, 3, 6, 2, 5, 4];
+export const RECORD_WORDS: readonly number[] = [2, 2, 5, 4, 8, 3, 6, 3, 2, 5, 4, 3];
 
 /** Literals that a clause may have at all. */
 const LONGEST_CLAUSE = 120;
@@ -106,6 +111,16 @@ export class Draft {
     if (literals.length > LONGEST_CLAUSE || variables > MOST_VARIABLES) return "too-large";
     this.length = literals.length;
     for (let k = 0; k < this.length; k += 1) this.literals[k] = literals[k]!;
+    this.variables = variables;
+    return this.#tidy();
+  }
+
+  /** Takes what it is that a name stands for: either direction of its definition. */
+  define(number: number, { atom, literals, variables }: NamedPart, direction: 0 | 1): DraftState {
+    this.#begin(Rule.define, number, direction);
+    this.literals[0] = literalOf(atom, direction === 0);
+    this.length = literals.length + 1;
+    for (let k = 0; k < literals.length; k += 1) this.literals[k + 1] = literals[k]! ^ direction;
     this.variables = variables;
     return this.#tidy();
   }
@@ -217,6 +232,7 @@ export class Draft {
     this.#note(Rule.rewrite, literal, place, unit, side);
     const old = this.literals[literal]!;
     this.literals[literal] = literalOf(replaced(this.#bank, atomOf(old), place, term), isNegative(old));
+    this.#addNames(unit);
     return this.#tidy();
   }
 
@@ -225,6 +241,27 @@ export class Draft {
     this.#note(Rule.cut, literal, unit, exchanged ? 1 : 0);
     this.length -= 1;
     for (let k = literal; k < this.length; k += 1) this.literals[k] = this.literals[k + 1]!;
+    this.#addNames(unit);
+    return this.#tidy();
+  }
+
+  /** Adds the names of a unit clause, which are all its literals but the first. */
+  #addNames(unit: number): void {
+    for (let k = 1; k < this.#store.length(unit); k += 1)
+      this.literals[this.length++] = this.#store.literal(unit, k);
+  }
+
+  /** Puts a name for a part of which one literal is given. */
+  name(literal: number, name: number): DraftState {
+    this.#note(Rule.name, literal, name);
+    const { places } = partsOf(this.#bank, this.literals, this.length).find((part) =>
+      part.places.includes(literal),
+    )!;
+    let length = 0;
+    for (let k = 0; k < this.length; k += 1)
+      if (!places.includes(k)) this.literals[length++] = this.literals[k]!;
+    this.literals[length] = name;
+    this.length = length + 1;
     return this.#tidy();
   }
 
@@ -280,7 +317,7 @@ export class Draft {
     for (let k = 1; k < length; k += 1) {
       const literal = literals[k]!;
       let place = k;
-      while (place > 0 && this.#comesBefore(literal, literals[place - 1]!)) {
+      while (place > 0 && comesBefore(this.#bank, literal, literals[place - 1]!)) {
         literals[place] = literals[place - 1]!;
         place -= 1;
       }
@@ -295,24 +332,6 @@ export class Draft {
     }
     this.variables = this.#substitution.instanceVariables;
     return true;
-  }
-
-  #comesBefore(left: number, right: number): boolean {
-    const { words } = this.#bank;
-    const a = atomOf(left);
-    const b = atomOf(right);
-    const more = this.#bank.weight(a) - this.#bank.weight(b);
-    if (more !== 0) return more > 0;
-    if (words[a] !== words[b]) return words[a]! < words[b]!;
-    if (isNegative(left) !== isNegative(right)) return isNegative(left);
-    for (let k = 0; k < this.#bank.arities[words[a]!]!; k += 1) {
-      const s = words[a + HEADER + k]!;
-      const t = words[b + HEADER + k]!;
-      const first = s < 0 ? 0x7fffffff : words[s]!;
-      const second = t < 0 ? 0x7fffffff : words[t]!;
-      if (first !== second) return first < second;
-    }
-    return false;
   }
 }
 

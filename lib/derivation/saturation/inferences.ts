@@ -2,7 +2,7 @@
  * The inferences between one clause and all active ones: ordered resolution with selection and factoring, superposition,
  * equality resolution and factoring (Bachmair & Ganzinger 1994).
  */
-import { type ClauseStore, DELETED } from "./clauses.ts";
+import { type ClauseStore, DELETED, HIDDEN } from "./clauses.ts";
 import type { Draft, DraftState } from "./draft.ts";
 import { filterOf, maskOf } from "./filters.ts";
 import { NumberList } from "./lists.ts";
@@ -146,7 +146,7 @@ export class Inferences {
     for (let k = 0; k < list.length; k += 4) {
       if (((list.values[k + 2]! ^ filter) & list.values[k + 3]! & mask) !== 0) continue;
       const other = list.values[k]!;
-      if (this.#store.is(other, DELETED)) continue;
+      if (this.#store.is(other, HIDDEN)) continue;
       const its = list.values[k + 1]!;
       this.#clock.tick(1);
       if (this.#substitution.unify(atom, atomOf(this.#store.literal(other, its))))
@@ -211,7 +211,7 @@ export class Inferences {
         if (list === undefined) continue;
         for (let k = 0; k < list.length; k += 4) {
           const other = list.values[k]!;
-          if (this.#store.is(other, DELETED)) continue;
+          if (this.#store.is(other, HIDDEN)) continue;
           this.#clock.tick(1);
           if (
             this.#substitution.unify(from, list.values[k + 3]!) &&
@@ -236,7 +236,7 @@ export class Inferences {
         if (list === undefined) continue;
         for (let k = 0; k < list.length; k += 4) {
           const other = list.values[k]!;
-          if (this.#store.is(other, DELETED)) continue;
+          if (this.#store.is(other, HIDDEN)) continue;
           // With itself, a clause meets its own equations in the other role already.
           if (other === clause) continue;
           this.#clock.tick(1);
@@ -272,7 +272,7 @@ export class Inferences {
     if (list === undefined) return;
     for (let k = 0; k < list.length; k += 4) {
       const clause = list.values[k]!;
-      if (this.#store.is(clause, DELETED)) continue;
+      if (this.#store.is(clause, HIDDEN)) continue;
       this.#clock.tick(1);
       const fits = this.#substitution.match(side, list.values[k + 3]!);
       this.#substitution.undo(0);

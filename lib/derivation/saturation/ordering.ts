@@ -153,3 +153,22 @@ export class Ordering {
     return decided;
   }
 }
+
+/** An order of literals that depends little on names of variables, the heaviest first. */
+export function comesBefore(bank: TermBank, left: number, right: number): boolean {
+  const { words } = bank;
+  const a = atomOf(left);
+  const b = atomOf(right);
+  const more = bank.weight(a) - bank.weight(b);
+  if (more !== 0) return more > 0;
+  if (words[a] !== words[b]) return words[a]! < words[b]!;
+  if (isNegative(left) !== isNegative(right)) return isNegative(left);
+  for (let k = 0; k < bank.arities[words[a]!]!; k += 1) {
+    const s = words[a + HEADER + k]!;
+    const t = words[b + HEADER + k]!;
+    const first = s < 0 ? 0x7fffffff : words[s]!;
+    const second = t < 0 ? 0x7fffffff : words[t]!;
+    if (first !== second) return first < second;
+  }
+  return false;
+}

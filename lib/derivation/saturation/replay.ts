@@ -3,15 +3,18 @@ import type {
   AtomRecord,
   ClauseRecord,
   LiteralRecord,
+  TermFormulaRecord,
   TermRecord,
   UseRecord,
 } from "../../evidence/format.ts";
-import type { Refutation, RefutationStep } from "../refutation.ts";
+import type { Definition, Refutation, RefutationStep } from "../refutation.ts";
+import type { CaseStep } from "./case-model.ts";
 import type { ClauseStore } from "./clauses.ts";
 import { type Draft, Rule } from "./draft.ts";
 import type { ReadClause } from "./input.ts";
 import { atomOf, isNegative } from "./ordering.ts";
 import { parentsOf } from "./simplify.ts";
+import { canonical, partsOf, type Splitting } from "./splitting.ts";
 import type { Substitution } from "./substitution.ts";
 import { HEADER, IDENTITY, SHIFT, type TermBank, variable } from "./terms.ts";
 
@@ -21,36 +24,50 @@ interface Told {
   readonly names: readonly string[];
 }
 
-/** The refutation whose clause without literals is the last one stored. Uses the draft and the substitution. */
+/**
+ * The refutation whose clause without literals is the last one stored, or the last step of `cases` if that has any. Uses
+ * the draft and the substitution.
+ */
 export function replay(
   bank: TermBank,
   store: ClauseStore,
   draft: Draft,
   substitution: Substitution,
+  splitting: Splitting,
   input: readonly ReadClause[],
+  formulas: number,
+  cases: readonly CaseStep[],
 ): Refutation {
   const needed = new Set<number>();
-  const open = [store.count - 1];
+  const open = cases.length === 0 ? [store.count - 1] : cases.flatMap(({ clauses }) => clauses);
   for (let clause = open.pop(); clause !== undefined; clause = open.pop()) {
     if (needed.has(clause)) continue;
     needed.add(clause);
     open.push(...parentsOf(store.record(clause)));
   }
-  const replayer = new Replayer(bank, store, draft, substitution, input);
+  const replayer = new Replayer(bank, store, draft, substitution, splitting, input, formulas);
   for (const clause of [...needed].sort((a, b) => a - b)) replayer.tell(clause);
-  return { definitions: [], steps: replayer.steps };
+  replayer.tellCases(cases);
+  return { definitions: replayer.definitions, steps: replayer.steps };
 }
 
 class Replayer {
+  readonly definitions: Definition[] = [];
   readonly steps: RefutationStep[] = [];
   readonly #bank: TermBank;
   readonly #store: ClauseStore;
   readonly #draft: Draft;
   readonly #substitution: Substitution;
+  readonly #splitting: Splitting;
   readonly #input: readonly ReadClause[];
+  readonly #formulas: number;
   readonly #told = new Map<number, Told>();
   /** Identity steps by the JSON text of their clauses. */
   readonly #identities = new Map<string, number>();
+  /** By number of a name: its definition's. */
+  readonly #definitions = new Map<number, number>();
+  /** Definition steps by definition and place. */
+  readonly #directions = new Map<string, number>();
   /** The step that the draft is in, and the names of its variables there. */
   #current: Told = { step: -1, names: [] };
 
@@ -59,13 +76,17 @@ class Replayer {
     store: ClauseStore,
     draft: Draft,
     substitution: Substitution,
+    splitting: Splitting,
     input: readonly ReadClause[],
+    formulas: number,
   ) {
     this.#bank = bank;
     this.#store = store;
     this.#draft = draft;
     this.#substitution = substitution;
+    this.#splitting = splitting;
     this.#input = input;
+    this.#formulas = formulas;
   }
 
   /** Adds the steps of a clause whose parents have been told. */
@@ -82,6 +103,20 @@ class Replayer {
     });
     settled.length = this.#draft.variables;
     this.#told.set(clause, { step: this.#current.step, names: settled });
+  }
+
+  /** Adds the steps by which clauses of names, which have been told, contradict each other. */
+  tellCases(cases: readonly CaseStep[]): void {
+    const places: number[] = [];
+    for (const { literals, clauses, steps } of cases) {
+      const uses = [
+        ...clauses.map((clause) => this.#told.get(clause)!.step),
+        ...steps.map((k) => places[k]!),
+      ];
+      const clause = literals.map((literal) => this.#literalRecord(literal));
+      this.steps.push({ from: "inference", clause, uses: uses.map((step): UseRecord => [step, {}]) });
+      places.push(this.steps.length - 1);
+    }
   }
 
   /** The first operation of a record; where the next one begins. */
@@ -124,9 +159,15 @@ class Replayer {
         this.#infer([this.#use(a!, 0), this.#reflexivity(this.#term(term))]);
         return 3;
       }
-      default:
+      case Rule.equate:
         this.#equate(a!, b!, c!, d!, e!);
         return 6;
+      default: {
+        const part = this.#splitting.named[a!]!;
+        draft.define(a!, part, b === 0 ? 0 : 1);
+        this.#current = { step: this.#direction(a!, b!), names: this.#allNames(part.variables) };
+        return 3;
+      }
     }
   }
 
@@ -215,6 +256,10 @@ class Replayer {
       );
       return at + 5;
     }
+    if (record[at] === Rule.name) {
+      this.#name(record[at + 1]!, record[at + 2]!);
+      return at + 3;
+    }
     const unit = record[at + 2]!;
     const exchanged = record[at + 3] === 1;
     const atom = atomOf(target);
@@ -236,6 +281,61 @@ class Replayer {
     draft.cut(record[at + 1]!, unit, exchanged);
     this.#emit(uses, this.#allNames(names.length));
     return at + 4;
+  }
+
+  /**
+   * Puts a name for a part of the draft. If the name did not hold, the part would be false of some elements, which the
+   * definition's clauses have constants for: with them in place of the variables, the clause has only its rest.
+   */
+  #name(literal: number, name: number): void {
+    const draft = this.#draft;
+    const { step, names } = this.#current;
+    const { places } = partsOf(this.#bank, draft.literals, draft.length).find((part) =>
+      part.places.includes(literal),
+    )!;
+    const number = this.#splitting.numberOf(name);
+    const { literals, variables } = this.#splitting.named[number]!;
+    const { variables: order } = canonical(
+      this.#bank,
+      places.map((place) => draft.literals[place]!),
+    );
+    const formula = this.#formulas + this.#definition(number);
+    const image = Object.fromEntries(
+      names.map((own, v): [string, TermRecord] => {
+        const place = order.indexOf(v);
+        return [own, place < 0 ? nameOf(v) : [`${formula}.${place}`]];
+      }),
+    );
+    const directions = isNegative(name)
+      ? [0]
+      : Array.from({ length: variables === 0 ? 1 : literals.length }, (_, k) => k + 1);
+    const uses = directions.map((place): UseRecord => [this.#direction(number, place), {}]);
+    draft.name(literal, name);
+    this.#emit([[step, image], ...uses], this.#allNames(names.length));
+  }
+
+  /** The definition of a name, which is made if there is none. */
+  #definition(number: number): number {
+    const known = this.#definitions.get(number);
+    if (known !== undefined) return known;
+    const { name, literals, variables } = this.#splitting.named[number]!;
+    const records = literals.map((literal) => this.#literalRecord(literal));
+    const disjunction: TermFormulaRecord = records.length === 1 ? records[0]! : ["or", ...records];
+    const body = this.#allNames(variables)
+      .slice(0, variables)
+      .reduceRight<TermFormulaRecord>((inner, variable) => ["forall", variable, inner], disjunction);
+    this.#definitions.set(number, this.definitions.length);
+    return this.definitions.push({ name, parameters: [], body }) - 1;
+  }
+
+  /** A clause of the clause form of a definition: first ¬name ∨ part, then name ∨ ¬literal for each literal. */
+  #direction(number: number, place: number): number {
+    const definition = this.#definition(number);
+    const key = `${definition} ${place}`;
+    const known = this.#directions.get(key);
+    if (known !== undefined) return known;
+    this.#directions.set(key, this.steps.length);
+    return this.steps.push({ from: "definition", definition, place }) - 1;
   }
 
   /** A clause whose variables are matched, as they are bound now. */

@@ -1,9 +1,10 @@
 /** Rewriting with unit equations (Knuth & Bendix 1970), also with those that only some instances orient. */
-import { type ClauseStore, DELETED } from "./clauses.ts";
+import { type ClauseStore, HIDDEN } from "./clauses.ts";
 import { atomOf, isNegative, type Ordering } from "./ordering.ts";
 import { PatternTree } from "./pattern-tree.ts";
 import type { Substitution } from "./substitution.ts";
 import { HEADER, IDENTITY, indexOf, type TermBank } from "./terms.ts";
+import { allowsAll } from "./units.ts";
 
 /** Entries of the table of terms known to have nothing to rewrite at their head. */
 const KNOWN = 1 << 14;
@@ -25,6 +26,7 @@ export class RewriteIndex {
   side = 0;
   term = 0;
   #count = 0;
+  #allows: (unit: number) => boolean = allowsAll;
 
   constructor(bank: TermBank, store: ClauseStore, ordering: Ordering, substitution: Substitution) {
     this.#bank = bank;
@@ -43,6 +45,11 @@ export class RewriteIndex {
     return this.#tree.isEmpty;
   }
 
+  /** Forgets which terms are irreducible: equations take part that did not. */
+  forget(): void {
+    this.#known.fill(0);
+  }
+
   /** Adds a positive unit equation. */
   add(clause: number): void {
     const atom = atomOf(this.#store.literal(clause, 0));
@@ -54,7 +61,7 @@ export class RewriteIndex {
       if (from < 0 || !this.#hasVariablesOf(from, words[atom + HEADER + 1 - side]!)) continue;
       this.#heads[words[from]!] = true;
       this.#tree.add(from, 4 * clause + 2 * side + (compared === "incomparable" ? 0 : 1));
-      this.#known.fill(0);
+      this.forget();
     }
   }
 
@@ -71,8 +78,10 @@ export class RewriteIndex {
    * Looks for something to rewrite in a literal, with any equation but `self`, and tells whether it found it. A side
    * of a positive equation is rewritten at its head only where that makes less than the equation: so clauses that
    * saturation needs are kept.
+   * @param allows whether an equation that has names may be used
    */
-  find(literal: number, self: number): boolean {
+  find(literal: number, self: number, allows: (unit: number) => boolean): boolean {
+    this.#allows = allows;
     const atom = atomOf(literal);
     this.#count = 0;
     const { words } = this.#bank;
@@ -119,7 +128,7 @@ export class RewriteIndex {
   /** Whether an equation's side of which the term asked for is an instance may be used, and what it gives. */
   readonly #accept = (value: number): boolean => {
     const unit = value >> 2;
-    if (this.#store.is(unit, DELETED)) return false;
+    if (this.#store.is(unit, HIDDEN)) return false;
     const side = (value >> 1) & 1;
     const atom = atomOf(this.#store.literal(unit, 0));
     const mark = this.#substitution.mark;
@@ -128,6 +137,7 @@ export class RewriteIndex {
     this.#substitution.undo(mark);
     if ((value & 1) === 0 && this.#ordering.compare(this.#asked, image) !== "greater") return false;
     this.#isIrreducible = false;
+    if (this.#store.length(unit) > 1 && !this.#allows(unit)) return false;
     if (unit === this.#self || !this.#leavesLess(this.#asked, image, this.#other)) return false;
     this.unit = unit;
     this.side = side;

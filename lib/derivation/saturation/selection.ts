@@ -28,12 +28,14 @@ export class Selection {
 
   /**
    * Either one negative literal, which is selected, or all that are maximal in the ordering, positive ones only if no
-   * other one is equal: places of literals, ascending.
+   * other one is equal: places of literals, ascending. Names take no part.
    */
   eligible(clause: number): readonly number[] {
-    const length = this.#store.length(clause);
-    const literals = Array.from({ length }, (_, k) => this.#store.literal(clause, k));
-    if (length <= 1) return literals.map((_, k) => k);
+    const all = Array.from({ length: this.#store.length(clause) }, (_, k) => this.#store.literal(clause, k));
+    // Names come last.
+    const names = all.findIndex((literal) => this.#bank.isName[this.#bank.words[atomOf(literal)]!]);
+    const literals = names >= 0 ? all.slice(0, names) : all;
+    if (literals.length <= 1) return literals.map((_, k) => k);
     if (this.#strategy.selection === "none") return this.#maximal(literals);
     const negative = literals.flatMap((literal, k) => (isNegative(literal) ? [k] : []));
     if (negative.length === 0) return this.#maximal(literals);

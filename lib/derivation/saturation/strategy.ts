@@ -30,6 +30,10 @@ export interface Strategy {
   /** By what the weight is multiplied for clauses that come from the negated conclusion, and for others. */
   readonly goalFactor: number;
   readonly otherFactor: number;
+  /** Whether clauses that fall into parts without common variables are split (`splitting.ts`). */
+  readonly isSplit: boolean;
+  /** In the weight of a clause that holds in a case, for each part whose name says so. */
+  readonly nameWeight: number;
   /** No inferences among premises alone (Wos, Robinson & Carson 1965); never complete here. */
   readonly isSupported: boolean;
   /** Larger clauses are dropped, and then a run never says `saturated`: symbols, depth of terms, literals. */
@@ -58,6 +62,8 @@ export const DEFAULT_STRATEGY: Strategy = {
   variableWeight: 1,
   goalFactor: 2,
   otherFactor: 3,
+  isSplit: false,
+  nameWeight: 2,
   isSupported: false,
   mostWeight: 100,
   mostDepth: 16,

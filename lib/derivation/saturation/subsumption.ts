@@ -1,8 +1,9 @@
 /**
  * Subsumption (Robinson 1965): a clause that has an instance within another one makes that one superfluous. Active
  * clauses of two or more literals stand in one list with a signature each, which rules out nearly all of them at sight.
+ * Names (`splitting.ts`) are not looked at here.
  */
-import { type ClauseStore, DELETED } from "./clauses.ts";
+import { type ClauseStore, DELETED, HIDDEN } from "./clauses.ts";
 import { NumberList } from "./lists.ts";
 import { atomOf, isNegative } from "./ordering.ts";
 import type { Substitution } from "./substitution.ts";
@@ -55,7 +56,7 @@ export class SubsumptionIndex {
       if ((values[k + 1]! & notHeads) !== 0 || (values[k + 2]! & notInner) !== 0) continue;
       if (((sizes - values[k + 3]!) & GUARDS) !== GUARDS) continue;
       const other = values[k]!;
-      if (other !== clause && !this.#store.is(other, DELETED) && this.subsumes(other, clause)) return other;
+      if (other !== clause && !this.#store.is(other, HIDDEN) && this.subsumes(other, clause)) return other;
     }
     this.#clock.tick(length >> 4);
     return -1;
@@ -72,12 +73,12 @@ export class SubsumptionIndex {
       if ((heads & ~values[k + 1]!) !== 0 || (inner & ~values[k + 2]!) !== 0) continue;
       if ((((values[k + 3]! | GUARDS) - sizes) & GUARDS) !== GUARDS) continue;
       const other = values[k]!;
-      if (other !== clause && !this.#store.is(other, DELETED) && this.subsumes(clause, other)) act(other);
+      if (other !== clause && !this.#store.is(other, HIDDEN) && this.subsumes(clause, other)) act(other);
     }
     this.#clock.tick(length >> 4);
   }
 
-  /** Whether different literals of the second clause are an instance of the first. */
+  /** Whether different literals of the second clause are an instance of the first, apart from names. */
   subsumes(general: number, special: number): boolean {
     const mark = this.#substitution.mark;
     this.#tries = 0;
@@ -94,6 +95,8 @@ export class SubsumptionIndex {
     const literal = this.#store.literal(general, from);
     const pattern = atomOf(literal);
     const { words } = this.#bank;
+    // Names come last.
+    if (this.#bank.isName[words[pattern]!]) return true;
     const length = this.#store.length(special);
     for (let k = 0; k < length; k += 1) {
       if (this.#used[k] !== 0) continue;
@@ -130,6 +133,7 @@ export class SubsumptionIndex {
     for (let k = 0; k < this.#store.length(clause); k += 1) {
       const literal = this.#store.literal(clause, k);
       const atom = atomOf(literal);
+      if (this.#bank.isName[words[atom]!]) break;
       const head = words[atom]! * 2 + (literal & 1);
       const isEquation = words[atom] === IDENTITY;
       heads |= 1 << (head & 7);

@@ -36,6 +36,8 @@ export class TermBank {
   readonly names: string[] = ["="];
   readonly arities: number[] = [2];
   readonly isRelation: boolean[] = [true];
+  /** The relations of no places that a run has brought in (`splitting.ts`). */
+  readonly isName: boolean[] = [false];
   /** The terms one after another: {@link HEADER} words, then the arguments. Term 0 is left out. */
   words: Int32Array = new Int32Array(1 << 14);
   /** How many words are in use. */
@@ -54,8 +56,16 @@ export class TermBank {
     this.names.push(name);
     this.arities.push(arity);
     this.isRelation.push(isRelation);
+    this.isName.push(false);
     this.#symbols.set(key, this.names.length - 1);
     return this.names.length - 1;
+  }
+
+  /** A new relation of no places. */
+  addName(name: string): number {
+    const symbol = this.symbol(name, 0, true);
+    this.isName[symbol] = true;
+    return symbol;
   }
 
   /** The term of a symbol and the arguments that stand in `args` from `from` on. */

@@ -1,5 +1,8 @@
-/** The unit clauses kept: which of them generalises an atom, or can be unified with it. */
-import { type ClauseStore, DELETED } from "./clauses.ts";
+/**
+ * The unit clauses kept, which have one literal and perhaps names (`splitting.ts`): which of them generalises an atom, or can be unified
+ * with it.
+ */
+import { type ClauseStore, DELETED, HIDDEN } from "./clauses.ts";
 import { filterOf, maskOf } from "./filters.ts";
 import { NumberList } from "./lists.ts";
 import { atomOf, isNegative } from "./ordering.ts";
@@ -45,23 +48,31 @@ export class UnitIndex {
     this.#trees[isNegative(literal) ? 1 : 0]!.add(atom, clause);
   }
 
-  /** A unit clause, not `self`, of a sign of which the atom is an instance; -1 if there is none. */
-  findGeneral(atom: number, negative: boolean, self: number): number {
+  /**
+   * A unit clause, not `self`, of a sign of which the atom is an instance; -1 if there is none.
+   * @param allows whether one that has names may be used
+   */
+  findGeneral(atom: number, negative: boolean, self: number, allows: (unit: number) => boolean): number {
     const tree = this.#trees[negative ? 1 : 0]!;
     this.exchanged = false;
     if (tree.isEmpty) return -1;
     this.#self = self;
+    this.#allows = allows;
     const found = tree.find(atom, this.#isUsable);
     if (found >= 0 || this.#bank.words[atom] !== IDENTITY) return found;
     this.exchanged = true;
     return tree.findExchanged(atom, this.#isUsable);
   }
   #self = -1;
-  readonly #isUsable = (unit: number) => unit !== this.#self && !this.#store.is(unit, DELETED);
+  #allows: (unit: number) => boolean = allowsAll;
+  readonly #isUsable = (unit: number) =>
+    unit !== this.#self &&
+    !this.#store.is(unit, HIDDEN) &&
+    (this.#store.length(unit) === 1 || this.#allows(unit));
 
   /** A unit clause of a sign whose atom can be unified with a shifted atom; -1 if there is none. No bindings are left. */
   findUnifiable(atom: number, negative: boolean): number {
-    if (this.#bank.isGround(atom)) return this.findGeneral(atom, negative, -1);
+    if (this.#bank.isGround(atom)) return this.findGeneral(atom, negative, -1, allowsAll);
     const head = this.#bank.words[atom]! * 2 + (negative ? 1 : 0);
     if (head >= this.#lists.length) return -1;
     const list = this.#lists[head]!;
@@ -70,7 +81,7 @@ export class UnitIndex {
     const mask = maskOf(filter);
     for (let k = 0; k < list.length; k += 4) {
       if (((filter ^ values[k + 2]!) & mask & values[k + 3]!) !== 0) continue;
-      if (this.#store.is(values[k]!, DELETED)) continue;
+      if (this.#store.is(values[k]!, HIDDEN)) continue;
       const mark = this.#substitution.mark;
       const fits = this.#substitution.unify(atom, values[k + 1]!);
       this.#substitution.undo(mark);
@@ -79,3 +90,6 @@ export class UnitIndex {
     return -1;
   }
 }
+
+/** Allows every unit clause. */
+export const allowsAll = () => true;
