@@ -68,7 +68,7 @@ describe("a cell", () => {
     expect(resultsOf(outcome).map(({ verdict }) => verdict)).toEqual([
       "fails",
       null,
-      "open",
+      "holds",
       "fails",
       "holds",
     ]);

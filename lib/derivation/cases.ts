@@ -77,6 +77,10 @@ class Cases {
     for (const [input, one] of this.#task.clauses.entries()) {
       const guard = one.clause.filter(isLetter);
       for (const literal of guard) this.#literal(literal);
+      if (one.clause.length === 0) {
+        this.#inputStep(input);
+        return this.#refuted();
+      }
       if (guard.length === one.clause.length) this.#give(guard, this.#inputStep(input));
       else
         this.#guarded.push({
@@ -98,13 +102,15 @@ class Cases {
     }
   }
 
-  /** Refutes what the letters of the last model say, and tells the solver; an outcome when that cannot be done. */
+  /** Refutes what the letters of the last model say, and tells the solver; an outcome when nothing is left to do. */
   #refuteCase(clauses: number): EngineOutcome | null {
     const active = this.#guarded.filter(({ guard }) => !guard.some((literal) => this.#isTrue(literal)));
     const task = { clauses: active.map(({ rest }) => rest), formulas: this.#task.formulas };
     const outcome = saturate(task, this.#strategy, { ...this.#limits, clauses }, this.#meter);
     if (outcome.result !== "refuted") return outcome;
     const guard = this.#lift(outcome.refutation, active);
+    // No letter was needed: that is all there is to show.
+    if (guard.length === 0) return this.#refuted();
     this.#give(guard, this.#steps.length - 1);
     return null;
   }
@@ -156,6 +162,10 @@ class Cases {
       ];
       replayed.push(this.#add({ from: "inference", clause: this.#record(clause), uses }));
     }
+    return this.#refuted();
+  }
+
+  #refuted(): EngineOutcome {
     return { result: "refuted", refutation: { definitions: [], steps: this.#steps } };
   }
 

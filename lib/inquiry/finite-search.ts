@@ -105,17 +105,23 @@ export class FiniteSearch {
     }
   }
 
-  /** Searches for symmetric structures on the sizes that are not searched completely. */
-  goBeyond(): void {
-    const largest = Math.max(this.#work.upTo, this.#work.symmetricUpTo);
-    const first = Math.max(this.#noneUpTo + 1, this.#symmetricUpTo ?? 0, LEAST_SYMMETRIC_SIZE);
-    for (let size = first; size <= largest; size += 1) {
-      if (this.#meter.ended !== null || this.#meter.left < 1000 || this.#ended === "interrupted") break;
-      this.#report(size, ", symmetric ones only");
-      if (this.#searchSymmetric(size, this.#meter, STEPS_BEYOND)) return;
-      if (this.#meter.ended === null) this.#symmetricUpTo = size;
-    }
+  /** Searches for symmetric structures on the sizes that are not searched completely, within so many steps. */
+  goBeyond(steps: number): void {
+    const share = new MeterShare(this.#meter, Math.max(1, steps));
+    this.#goBeyond(share);
+    share.settle();
     if (this.#ended === null && this.#meter.ended === "interrupted") this.#ended = "interrupted";
+  }
+
+  #goBeyond(share: MeterShare): void {
+    const largest = Math.max(this.#work.upTo, this.#work.symmetricUpTo);
+    const first = Math.max(this.#noneUpTo + 1, (this.#symmetricUpTo ?? 0) + 1, LEAST_SYMMETRIC_SIZE);
+    for (let size = first; size <= largest; size += 1) {
+      if (share.ended !== null || share.meter.left < 1000 || this.#ended === "interrupted") return;
+      this.#report(size, ", symmetric ones only");
+      if (this.#searchSymmetric(size, share.meter, STEPS_BEYOND)) return;
+      if (share.ended === null) this.#symmetricUpTo = size;
+    }
   }
 
   #searchSize(size: number, meter: Meter): void {
@@ -161,7 +167,7 @@ export function shareOfComplete(work: Work): number {
 export function searchFinite(task: FiniteSearchTask, meter: Meter, work: Work): FiniteSearch {
   const search = new FiniteSearch(task, meter, work);
   search.advance(work.upTo, (meter.left / 1000) * shareOfComplete(work));
-  if (search.found === null) search.goBeyond();
+  if (search.found === null) search.goBeyond(meter.left / 1000);
   return search;
 }
 

@@ -40,8 +40,8 @@ export interface Settled {
 }
 
 type Stage =
-  /** Derivations until so many clauses have been generated for each conclusion. */
-  | { readonly kind: "derive"; readonly generated: number }
+  /** Derivations until so many clauses have been generated for each conclusion, within a part of the budget. */
+  | { readonly kind: "derive"; readonly generated: number; readonly share: number }
   /** Structures on up to so many points, within a part of the budget. */
   | { readonly kind: "structures"; readonly upTo: number; readonly share: number };
 
@@ -50,13 +50,13 @@ type Stage =
  * times as much as those before it. What is left of the budget after them is shared by both searches.
  */
 const STAGES: readonly Stage[] = [
-  { kind: "derive", generated: 150 },
+  { kind: "derive", generated: 150, share: 1 / 8 },
   { kind: "structures", upTo: 3, share: 1 / 20 },
-  { kind: "derive", generated: 1_500 },
+  { kind: "derive", generated: 1_500, share: 1 / 8 },
   { kind: "structures", upTo: 5, share: 1 / 10 },
-  { kind: "derive", generated: 8_000 },
+  { kind: "derive", generated: 8_000, share: 1 / 8 },
   { kind: "structures", upTo: 7, share: 1 / 8 },
-  { kind: "derive", generated: 40_000 },
+  { kind: "derive", generated: 40_000, share: 1 / 4 },
 ];
 
 /** Premises without a model on so many points are looked at for a contradiction, after something was derived from them … */
@@ -238,20 +238,15 @@ class Run {
       this.#tryKnown();
       for (const stage of STAGES) {
         if (this.#isSettled) return;
-        if (stage.kind === "derive") this.#derive(stage.generated, this.#meter.left / 1000);
+        if (stage.kind === "derive") this.#derive(stage.generated, this.#budget * stage.share);
         else this.#searchStructures(stage.upTo, this.#budget * stage.share);
       }
-      // Each search has half of what is left; what one leaves goes to the other.
+      // Each search has half of what is left, if there may be a derivation; what one leaves goes to the other.
       const left = () => this.#meter.left / 1000;
-      if (!this.#isSettled)
-        this.#searchStructures(this.#work.upTo, (left() / 2) * shareOfComplete(this.#work));
-      if (!this.#isSettled && this.#finite.isComplete) this.#finite.goBeyond();
-      this.#keepStructure();
+      this.#searchAllStructures(this.#saturated ? left() : left() / 2);
       const kept = this.#finite.isExhausted ? 1 : 3 / 4;
       if (!this.#isSettled) this.#derive(Number.POSITIVE_INFINITY, left() * kept);
-      if (!this.#isSettled) this.#searchStructures(this.#work.upTo, left() * shareOfComplete(this.#work));
-      if (!this.#isSettled) this.#finite.goBeyond();
-      this.#keepStructure();
+      this.#searchAllStructures(left());
     });
   }
 
@@ -284,6 +279,15 @@ class Run {
 
   #searchStructures(upTo: number, steps: number): void {
     this.#finite.advance(upTo, Math.max(1, steps));
+    this.#keepStructure();
+  }
+
+  /** All sizes asked for, and those beyond. */
+  #searchAllStructures(steps: number): void {
+    if (this.#isSettled) return;
+    const complete = steps * shareOfComplete(this.#work);
+    this.#searchStructures(this.#work.upTo, complete);
+    if (!this.#isSettled) this.#finite.goBeyond(steps - complete);
     this.#keepStructure();
   }
 
