@@ -1,5 +1,6 @@
 /** Saturation: every refutation is laid before the checker, and no verdict is wrong on small and collected questions. */
 import { describe, expect, it } from "vitest";
+import type { CreateSolver } from "../lib/derivation/ground-solver.ts";
 import type { ClauseTask, EngineOutcome } from "../lib/derivation/refutation.ts";
 import { saturate } from "../lib/derivation/saturation/saturate.ts";
 import * as strategies from "../lib/derivation/saturation/strategy.ts";
@@ -10,14 +11,17 @@ import type {
   ClauseRecord,
   FormulaRecord,
   LineRecord,
+  MadeFormula,
   TermRecord,
 } from "../lib/evidence/format.ts";
 import { Meter, WorkEnded } from "../lib/logic/meter.ts";
 import { clauseForm } from "../lib/logic/records/clause-form.ts";
 import { recordFormula } from "../lib/logic/records/formulas.ts";
+import { Solver } from "../lib/structures/sat/solver.ts";
 import { claims, questions, readSentences } from "./support/corpora.ts";
 
 const NAMED: readonly (readonly [string, Strategy])[] = Object.entries(strategies);
+const createSolver: CreateSolver = (onDerived) => new Solver({ observer: { onDerived } });
 const LIMITS = { clauses: 5_000, literals: 1_000_000 };
 
 interface Question {
@@ -49,7 +53,7 @@ function decide(
   limits = LIMITS,
 ): { outcome: EngineOutcome; steps: number } {
   const meter = new Meter(Number.POSITIVE_INFINITY);
-  const outcome = saturate(task, strategy, limits, meter);
+  const outcome = saturate(task, strategy, limits, meter, createSolver);
   if (outcome.result === "refuted") {
     const lines = outcome.refutation.steps.map((step): LineRecord => {
       switch (step.from) {
@@ -60,7 +64,7 @@ function decide(
         case "identity":
           return ["identity", step.clause];
         case "definition":
-          throw new Error("no definitions expected");
+          return ["clause", task.formulas + step.definition, step.place];
         default:
           return ["infer", step.clause, step.uses];
       }
@@ -68,8 +72,11 @@ function decide(
     const hasConclusion = task.clauses.some(({ goal }) => goal);
     const premises = [...sentences.keys()].slice(0, hasConclusion ? -1 : undefined);
     const conclusion = hasConclusion ? premises.length : null;
+    const made = outcome.refutation.definitions.map(
+      ({ name, parameters, body }): MadeFormula => ["define", name, parameters, body],
+    );
     checkDerivation(
-      { fact: "derivation", premises, conclusion, made: [], lines },
+      { fact: "derivation", premises, conclusion, made, lines },
       sentences,
       "refutation",
       new Meter(1_000_000),
@@ -254,6 +261,9 @@ const VARIANTS: readonly Strategy[] = [
   { ...DEFAULT_STRATEGY, ordering: "path", selection: "lightest" },
   { ...DEFAULT_STRATEGY, ordering: "none", selection: "fewest-partners", selectsSparingly: false },
   { ...DEFAULT_STRATEGY, precedence: "frequent", selection: "groundest", byWeight: 1 },
+  { ...DEFAULT_STRATEGY, isSplit: true },
+  { ...strategies.UNSELECTED_STRATEGY, isSplit: true, nameWeight: 0, byWeight: 1 },
+  { ...DEFAULT_STRATEGY, ordering: "none", selection: "groundest", isSplit: true, nameWeight: 5 },
 ];
 
 function resultOf(
@@ -263,7 +273,7 @@ function resultOf(
 ): EngineOutcome["result"] {
   const input = clauses.map((clause, place) => ({ clause, formula: 0, place, goal: place === 0 }));
   const limits = { clauses: most, literals: 1_000_000 };
-  return saturate({ clauses: input, formulas: 1 }, strategy, limits, new Meter(1e9)).result;
+  return saturate({ clauses: input, formulas: 1 }, strategy, limits, new Meter(1e9), createSolver).result;
 }
 
 describe("random clauses with functions", () => {
