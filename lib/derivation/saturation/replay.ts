@@ -12,11 +12,14 @@ import type { CaseStep } from "./case-model.ts";
 import type { ClauseStore } from "./clauses.ts";
 import { type Draft, Rule } from "./draft.ts";
 import type { ReadClause } from "./input.ts";
-import { atomOf, isNegative } from "./ordering.ts";
+import { atomOf, isNegative, literalOf } from "./ordering.ts";
 import { parentsOf } from "./simplify.ts";
 import { canonical, partsOf, type Splitting } from "./splitting.ts";
 import type { Substitution } from "./substitution.ts";
 import { HEADER, IDENTITY, SHIFT, type TermBank, variable } from "./terms.ts";
+
+/** In place of a step: the clause says of a ground literal that it is so if its name, the literal itself, holds. */
+const NO_STEP = -1;
 
 /** A clause of the run in the refutation: its step, and for each variable the name that it has there. */
 interface Told {
@@ -165,7 +168,8 @@ class Replayer {
       default: {
         const part = this.#splitting.named[a!]!;
         draft.define(a!, part, b === 0 ? 0 : 1);
-        this.#current = { step: this.#direction(a!, b!), names: this.#allNames(part.variables) };
+        const step = part.variables === 0 ? NO_STEP : this.#direction(a!, b!);
+        this.#current = { step, names: this.#allNames(part.variables) };
         return 3;
       }
     }
@@ -284,7 +288,7 @@ class Replayer {
   }
 
   /**
-   * Puts a name for a part of the draft. If the name did not hold, the part would be false of some elements, which the
+   * Puts a name for a part of the draft. A ground literal tells what it is by itself, and has no definition. Else, if the name did not hold, the part would be false of some elements, which the
    * definition's clauses have constants for: with them in place of the variables, the clause has only its rest.
    */
   #name(literal: number, name: number): void {
@@ -295,6 +299,10 @@ class Replayer {
     )!;
     const number = this.#splitting.numberOf(name);
     const { literals, variables } = this.#splitting.named[number]!;
+    if (variables === 0) {
+      draft.name(literal, name);
+      return;
+    }
     const { variables: order } = canonical(
       this.#bank,
       places.map((place) => draft.literals[place]!),
@@ -306,10 +314,7 @@ class Replayer {
         return [own, place < 0 ? nameOf(v) : [`${formula}.${place}`]];
       }),
     );
-    const directions = isNegative(name)
-      ? [0]
-      : Array.from({ length: variables === 0 ? 1 : literals.length }, (_, k) => k + 1);
-    const uses = directions.map((place): UseRecord => [this.#direction(number, place), {}]);
+    const uses = literals.map((_, k): UseRecord => [this.#direction(number, k + 1), {}]);
     draft.name(literal, name);
     this.#emit([[step, image], ...uses], this.#allNames(names.length));
   }
@@ -381,7 +386,8 @@ class Replayer {
     }
     const clause: LiteralRecord[] = [];
     for (let k = 0; k < draft.length; k += 1) clause.push(this.#literalRecord(draft.literals[k]!, names));
-    this.steps.push({ from: "inference", clause, uses: all });
+    // A clause that is true anyway adds nothing.
+    this.steps.push({ from: "inference", clause, uses: all.filter(([used]) => used !== NO_STEP) });
     this.#current = { step: this.steps.length - 1, names };
   }
 
@@ -464,6 +470,11 @@ class Replayer {
 
   #literal(atom: number, negative: boolean, names?: readonly string[]): LiteralRecord {
     const symbol = this.#bank.words[atom]!;
+    if (this.#bank.isName[symbol]) {
+      const { variables, literals } =
+        this.#splitting.named[this.#splitting.numberOf(literalOf(atom, negative))]!;
+      if (variables === 0) return this.#literal(atomOf(literals[0]!), negative);
+    }
     const args = this.#arguments(atom, names);
     const record = (
       symbol === IDENTITY ? ["=", ...args] : ["is", this.#bank.names[symbol], ...args]
