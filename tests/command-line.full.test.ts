@@ -69,8 +69,9 @@ describe("eval", () => {
       diagnostics: [],
     });
     expect(results[2]!.data).toMatchObject({
-      pairs: [{ left: "T", right: "{}", verdict: "open", jointlyInconsistent: false }],
+      pairs: [{ left: "T", right: "{}", verdict: "stronger", jointlyInconsistent: false }],
       classes: [["T"], ["{}"]],
+      inconsistent: [],
     });
     for (const { evidence } of results.slice(1))
       expect(checkEvidence(evidence)).toMatchObject({ accepted: true });

@@ -131,9 +131,10 @@ function wordsOf(statement: Statement, { data }: Stored): Words | null {
     case "minimise": {
       const labels = statement.theory.theory.axioms.map(({ label }) => label);
       if (!Array.isArray(data.sets)) return null;
-      return data.sets.map((set: unknown) =>
+      const sets = data.sets.map((set: unknown) =>
         Array.isArray(set) ? set.map((label) => labels.indexOf(label as string)).join(",") : "",
       );
+      return data.complete === true ? ["complete", ...sets] : sets;
     }
     default:
       return null;
