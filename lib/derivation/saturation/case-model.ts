@@ -80,7 +80,7 @@ export class CaseModel {
   add(clause: number, names: readonly number[]): void {
     if (names.length < this.#store.length(clause)) {
       this.#conditional.push(clause);
-      if (names.some((name) => this.#isTrue(name))) this.#store.mark(clause, FROZEN);
+      if (this.#isFrozen(clause)) this.#store.mark(clause, FROZEN);
       return;
     }
     this.#store.mark(clause, DELETED);
@@ -99,7 +99,16 @@ export class CaseModel {
   }
 
   #isTrue(name: number): boolean {
-    return (this.#values[this.#splitting.numberOf(name) + 1] ?? false) !== isNegative(name);
+    return (this.#values[this.#splitting.numberOf(name) + 1] === true) !== isNegative(name);
+  }
+
+  #isFrozen(clause: number): boolean {
+    for (let k = this.#store.length(clause) - 1; k >= 0; k -= 1) {
+      const literal = this.#store.literal(clause, k);
+      if (!this.#bank.isName[this.#bank.words[atomOf(literal)]!]) return false;
+      if (this.#isTrue(literal)) return true;
+    }
+    return false;
   }
 
   /**
@@ -136,7 +145,7 @@ export class CaseModel {
     this.#clock.tick(this.#conditional.length + this.#parked.length);
     this.#conditional = this.#conditional.filter((clause) => !store.is(clause, DELETED));
     for (const clause of this.#conditional) {
-      const isFrozen = this.namesOf(clause).some((name) => this.#isTrue(name));
+      const isFrozen = this.#isFrozen(clause);
       if (isFrozen === store.is(clause, FROZEN)) continue;
       if (isFrozen) store.mark(clause, FROZEN);
       else {

@@ -29,8 +29,8 @@ export class Splitting {
   readonly #taken: ReadonlySet<string>;
   /** Numbers of names by the literals of their parts. */
   readonly #numbers = new Map<string, number>();
-  /** By symbol: the number of the name that it is. */
-  readonly #bySymbol = new Map<number, number>();
+  /** The symbol that the first name is; the others follow. */
+  readonly #firstSymbol: number;
   /** Literals of names for which it has been said what they say. */
   readonly #defined = new Set<number>();
   #lastName = 0;
@@ -39,6 +39,7 @@ export class Splitting {
   constructor(bank: TermBank) {
     this.#bank = bank;
     this.#taken = new Set(bank.names);
+    this.#firstSymbol = bank.names.length;
   }
 
   /** A name as a literal. */
@@ -48,7 +49,7 @@ export class Splitting {
 
   /** The number of the name that a literal of a name is about. */
   numberOf(literal: number): number {
-    return this.#bySymbol.get(this.#bank.words[atomOf(literal)]!)!;
+    return this.#bank.words[atomOf(literal)]! - this.#firstSymbol;
   }
 
   /**
@@ -102,7 +103,6 @@ export class Splitting {
       name = `case${this.#lastName}`;
     } while (this.#taken.has(name));
     const symbol = this.#bank.addName(name);
-    this.#bySymbol.set(symbol, this.named.length);
     this.named.push({ name, atom: this.#bank.make(symbol, NO_ARGUMENTS, 0), literals, variables });
     this.size += literals.length;
   }
