@@ -12,6 +12,7 @@ import {
   DEFAULT_STRATEGY,
   DIRECT_STRATEGY,
   GROUND_STRATEGY,
+  SPLITTING_STRATEGY,
   type Strategy,
   SUPPORTED_STRATEGY,
   TERSE_STRATEGY,
@@ -156,6 +157,7 @@ export const TURNS: readonly PlannedTurn[] = [
 
 /** Those that come again and again after the list, each time with {@link GROWTH} times as many clauses. */
 export const ENDLESS_TURNS: readonly PlannedTurn[] = [
+  { ...PLAIN, name: "splitting", engine: by(SPLITTING_STRATEGY), clauses: 13_500 },
   { ...PLAIN, name: "instances", engine: instances, clauses: 6_000 },
   { ...PLAIN, name: "elements", engine: by(elements), clauses: 13_000 },
   { ...PLAIN, name: "direct", engine: by(DIRECT_STRATEGY), clauses: 10_000 },
