@@ -105,7 +105,7 @@ class Cases {
   /** Refutes what the letters of the last model say, and tells the solver; an outcome when nothing is left to do. */
   #refuteCase(clauses: number): EngineOutcome | null {
     const active = this.#guarded.filter(({ guard }) => !guard.some((literal) => this.#isTrue(literal)));
-    const task = { clauses: active.map(({ rest }) => rest), formulas: this.#task.formulas };
+    const task = { clauses: active.map(inCase), formulas: this.#task.formulas };
     const outcome = saturate(task, this.#strategy, { ...this.#limits, clauses }, this.#meter);
     if (outcome.result !== "refuted") return outcome;
     const guard = this.#lift(outcome.refutation, active);
@@ -214,6 +214,11 @@ class Cases {
   #add(step: RefutationStep): number {
     return this.#steps.push(step) - 1;
   }
+}
+
+/** What is left of a clause in its case. What comes of a letter that is false is what the case is to refute. */
+function inCase({ guard, rest }: Guarded): InputClause {
+  return { ...rest, goal: rest.goal && guard.some((literal) => literal[0] !== "not") };
 }
 
 function isLetter(literal: LiteralRecord): boolean {

@@ -157,12 +157,12 @@ export const TURNS: readonly PlannedTurn[] = [
 
 /** Those that come again and again after the list, each time with {@link GROWTH} times as many clauses. */
 export const ENDLESS_TURNS: readonly PlannedTurn[] = [
+  { ...PLAIN, name: "cases", engine: cases(SUPPORTED_STRATEGY), letters: "defined", clauses: 20_000 },
   { ...PLAIN, name: "splitting", engine: by(SPLITTING_STRATEGY), clauses: 13_500 },
   { ...PLAIN, name: "instances", engine: instances, clauses: 6_000 },
   { ...PLAIN, name: "elements", engine: by(elements), clauses: 13_000 },
   { ...PLAIN, name: "direct", engine: by(DIRECT_STRATEGY), clauses: 10_000 },
   { ...PLAIN, name: "ground", engine: by(GROUND_STRATEGY), clauses: 12_000 },
-  { ...PLAIN, name: "cases", engine: cases(CAREFUL_STRATEGY), letters: "defined", clauses: 6_000 },
   { ...PLAIN, name: "moderate", engine: by(moderate), clauses: 14_000 },
   { ...written, name: "as written", engine: by(), clauses: 20_000 },
   { ...withoutIdentity, name: "without identity, terse", engine: by(TERSE_STRATEGY), clauses: 8_000 },
