@@ -14,6 +14,13 @@ export function literalOf(atom: number, negative: boolean): number {
   return atom * 2 + (negative ? 1 : 0);
 }
 
+/** Terms whose depths come to less are compared anew each time. */
+const REMEMBERED_DEPTH = 6;
+/** Terms of a bank are numbered below this. */
+const PAIR = 2 ** 26;
+/** Comparisons that are remembered at most. */
+const MOST_KNOWN = 100_000;
+
 export class Ordering {
   readonly #bank: TermBank;
   /** By symbol. */
@@ -21,6 +28,8 @@ export class Ordering {
   readonly #byWeight: boolean;
   /** By variable: occurrences on the left less those on the right. */
   readonly #balance = new Int32Array(4 * SHIFT);
+  /** By left · {@link PAIR} + right, for the path ordering: whether the left term is greater. */
+  readonly #known = new Map<number, boolean>();
 
   /**
    * @param precedence by symbol, all different
@@ -133,6 +142,20 @@ export class Ordering {
     if (left < 0 || left === right) return false;
     const bank = this.#bank;
     if (right < 0) return bank.occurs(indexOf(right), left);
+    if (bank.depth(left) + bank.depth(right) < REMEMBERED_DEPTH) return this.#isCompoundGreater(left, right);
+    // Of deep terms the same parts are compared again and again, as often as there are ways to them.
+    const key = left * PAIR + right;
+    let known = this.#known.get(key);
+    if (known === undefined) {
+      known = this.#isCompoundGreater(left, right);
+      if (this.#known.size >= MOST_KNOWN) this.#known.clear();
+      this.#known.set(key, known);
+    }
+    return known;
+  }
+
+  #isCompoundGreater(left: number, right: number): boolean {
+    const bank = this.#bank;
     const a = bank.words[left]!;
     const b = bank.words[right]!;
     for (let k = 0; k < bank.arities[a]!; k += 1) {
