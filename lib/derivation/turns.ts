@@ -1,8 +1,11 @@
 /** Going through the turns of a search for a derivation, one at a time, so that other searches can go between. */
+import type { TermFormulaRecord } from "../evidence/format.ts";
 import { type Meter, WorkEnded } from "../logic/meter.ts";
+import { recordFormula } from "../logic/records/formulas.ts";
 import { MeterShare } from "../logic/share.ts";
 import { hasCases } from "./cases.ts";
 import { type DerivationTask, prepareTurn, runTurn, type Turn, type TurnOutcome } from "./derive.ts";
+import { explicitDefinition } from "./explicit.ts";
 import type { CreateSolver } from "./ground-solver.ts";
 import type { Prepared } from "./prepare.ts";
 import { ENDLESS_TURNS, GROWTH, TURNS, turnsOf } from "./schedule.ts";
@@ -26,6 +29,8 @@ export class DerivationSearch {
   /** The turn that comes next, when one was begun and could not be finished. */
   #unfinished: Turn | null = null;
   /** By preparation; null where there would be too many clauses. */
+  /** Whether there is anything to unfold. */
+  readonly #hasDefinitions: boolean;
   readonly #prepared = new Map<string, PreparedOnce | null>();
   /** By clauses and engine: how many clauses were generated without an answer. */
   readonly #done = new Map<string, number>();
@@ -39,6 +44,9 @@ export class DerivationSearch {
     this.#task = task;
     this.#createSolver = createSolver;
     this.#turns = allTurns(task);
+    this.#hasDefinitions = task.premises.some(
+      (premise) => explicitDefinition(recordFormula(premise) as TermFormulaRecord, 0) !== null,
+    );
   }
 
   /** Whether there is an answer; {@link next} gives it again. */
@@ -104,10 +112,11 @@ export class DerivationSearch {
   }
 
   #prepare({ preparation }: Turn): PreparedOnce | null {
-    const key = JSON.stringify(preparation);
+    const own = { ...preparation, unfold: preparation.unfold && this.#hasDefinitions };
+    const key = JSON.stringify(own);
     const known = this.#prepared.get(key);
     if (known !== undefined) return known;
-    const prepared = prepareTurn(this.#task, preparation);
+    const prepared = prepareTurn(this.#task, own);
     if (prepared === null) {
       this.#prepared.set(key, null);
       return null;

@@ -6,7 +6,7 @@
  * Twoplace answers `T ⊨ φ` within its budget of steps (200,000 if not said), its checks included; z3-solver gets the same
  * question as SMT-LIB, with N seconds (2 if not said). The figures that are to hold: at least 12 % of all questions
  * more, none left open that z3-solver settles in a second, median time at most a tenth of its. Times are for the ratios
- * within the run; reading the text is not counted for either. Every third question is put to both before that, since a
+ * within the run, from the text of the question in the form that each reads. Every third question is put to both before that, since a
  * kernel's code is warm after its first cells, and so is WebAssembly.
  */
 import { parseArgs } from "node:util";
@@ -42,8 +42,8 @@ async function askZ3(text: string): Promise<Outcome> {
   Z3.params_inc_ref(context, parameters);
   Z3.params_set_uint(context, parameters, Z3.mk_string_symbol(context, "timeout"), seconds * 1000);
   Z3.solver_set_params(context, solver, parameters);
-  Z3.solver_from_string(context, solver, text);
   const start = performance.now();
+  Z3.solver_from_string(context, solver, text);
   const answer = await Z3.solver_check(context, solver);
   const milliseconds = performance.now() - start;
   Z3.params_dec_ref(context, parameters);
@@ -68,9 +68,9 @@ async function askBoth(
   { premises, conclusion }: Entry,
   steps: number,
 ): Promise<Pick<Row, "ours" | "theirs">> {
+  const start = performance.now();
   const [sentence, ...others] = readSentences([conclusion, ...premises]);
   const theory = theoryOf(others);
-  const start = performance.now();
   const work = { ...unwatchedWork, budget: steps, symmetricUpTo: DEFAULT_LARGEST_SYMMETRIC_SIZE };
   const { verdict } = askEntails(theory, sentence!, work);
   const milliseconds = performance.now() - start;

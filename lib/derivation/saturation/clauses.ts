@@ -25,7 +25,7 @@ export const PARKED = 16;
 export const HIDDEN = DELETED | FROZEN | PARKED;
 
 export class ClauseStore {
-  #words: Int32Array = new Int32Array(1 << 14);
+  #words: Int32Array = new Int32Array(1 << 12);
   #used = 0;
   /** By clause: where it begins in the words. */
   #starts: Int32Array = new Int32Array(1 << 10);
@@ -33,7 +33,7 @@ export class ClauseStore {
   /** Literals of all clauses. */
   literals = 0;
   /** Duplicates: open addressing; holds one more than a clause, 0 is free. */
-  #table = new Int32Array(1 << 11);
+  #table = new Int32Array(1 << 9);
 
   /** Adds a clause; its number is how many there were before. */
   add(

@@ -7,7 +7,7 @@ import { HEADER, IDENTITY, indexOf, type TermBank } from "./terms.ts";
 import { allowsAll } from "./units.ts";
 
 /** Entries of the table of terms known to have nothing to rewrite at their head. */
-const KNOWN = 1 << 14;
+const KNOWN = 1 << 12;
 
 export class RewriteIndex {
   readonly #bank: TermBank;

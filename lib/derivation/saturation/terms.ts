@@ -39,14 +39,14 @@ export class TermBank {
   /** The relations of no places that a run has brought in (`splitting.ts`). */
   readonly isName: boolean[] = [false];
   /** The terms one after another: {@link HEADER} words, then the arguments. Term 0 is left out. */
-  words: Int32Array = new Int32Array(1 << 14);
+  words: Int32Array = new Int32Array(1 << 12);
   /** How many words are in use. */
   used = HEADER;
   /** How many terms there are. */
   count = 0;
   readonly #symbols = new Map<string, number>();
   /** Open addressing; 0 is free. */
-  #table = new Int32Array(1 << 12);
+  #table = new Int32Array(1 << 10);
 
   /** The symbol with a name and a number of arguments; a new one if there is none. */
   symbol(name: string, arity: number, isRelation: boolean): number {
