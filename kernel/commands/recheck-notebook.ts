@@ -236,8 +236,6 @@ function uncertifiedPart(statement: Statement, { data }: StoredResult): string |
       const isLeast = typeof leastSize === "number" && leastSize - 1 > Number(provenUpTo ?? 0);
       return isLeast ? "that none is smaller is computed, not certified" : null;
     }
-    case "minimise":
-      return data.complete === true ? "that there are no other sets is computed, not certified" : null;
     case "describe":
       return "sizes without a model are computed, not certified";
     default:
