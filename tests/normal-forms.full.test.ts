@@ -4,7 +4,6 @@
  */
 import fc from "fast-check";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
-import { init } from "z3-solver";
 import { Points } from "../lib/carriers/points.ts";
 import type { Literal, Term, TermFormula } from "../lib/logic/clausal.ts";
 import type { Formula, RelationSymbol } from "../lib/logic/formula.ts";
@@ -16,6 +15,7 @@ import { findStructure } from "../lib/structures/search.ts";
 import { claims, infiniteOnly, questions, readSentences } from "./support/corpora.ts";
 import { expectHandled, expectKept } from "./support/kept.ts";
 import { sentences } from "./support/random-formulas.ts";
+import { type Reading, startOracle } from "./support/z3.ts";
 
 const seed = Number(process.env.TWOPLACE_SEED ?? 20261201);
 const options = (numRuns: number) => ({ seed, numRuns, verbose: 1 as const });
@@ -69,35 +69,21 @@ describe("size", () => {
   });
 });
 
-/** What z3 says: 1 satisfiable, -1 unsatisfiable, 0 neither within its limit. */
-type Answer = -1 | 0 | 1;
-let ask: (declarations: string, assertions: readonly string[]) => Promise<Answer>;
+let ask: (declarations: string, assertions: readonly string[]) => Promise<Reading["answer"]>;
 let close: () => void = () => {};
 
 /** A limit on z3's own units of work, so that it ends at the same place each time. */
 const WORK = 200_000;
 
 beforeAll(async () => {
-  const { Z3, em } = await init();
+  const oracle = await startOracle();
   ask = async (declarations, assertions) => {
-    const config = Z3.mk_config();
-    const context = Z3.mk_context(config);
-    Z3.del_config(config);
-    const solver = Z3.mk_solver(context);
-    Z3.solver_inc_ref(context, solver);
-    const parameters = Z3.mk_params(context);
-    Z3.params_inc_ref(context, parameters);
-    Z3.params_set_uint(context, parameters, Z3.mk_string_symbol(context, "rlimit"), WORK);
-    Z3.solver_set_params(context, solver, parameters);
     const text = `${declarations}\n${assertions.map((one) => `(assert ${one})`).join("\n")}`;
-    Z3.solver_from_string(context, solver, text);
-    const answer = (await Z3.solver_check(context, solver)) as Answer;
-    Z3.params_dec_ref(context, parameters);
-    Z3.solver_dec_ref(context, solver);
-    Z3.del_context(context);
+    const { mistake, answer } = await oracle.read(text, { rlimit: WORK }, true);
+    if (mistake !== null) throw new Error(`z3 does not read what was printed: ${mistake}`);
     return answer;
   };
-  close = () => em.PThread.terminateAllThreads();
+  close = oracle.close;
 });
 afterAll(() => close());
 

@@ -4,57 +4,23 @@
  */
 import fc from "fast-check";
 import { afterAll, beforeAll, describe, expect, test } from "vitest";
-import { init } from "z3-solver";
 import { printSmtLib } from "../lib/language/smt-lib.ts";
 import type { RelationSymbol } from "../lib/logic/formula.ts";
 import { claims, readSentences, theoryOf } from "./support/corpora.ts";
 import { sentences } from "./support/random-formulas.ts";
+import { type Reading, startOracle } from "./support/z3.ts";
 
 const SEED = 20_240_704;
 /** A limit on z3's own units of work, so that it ends at the same place each time. */
 const WORK = 100_000;
 
-interface Reading {
-  /** Null when the text was read without a mistake. */
-  readonly mistake: string | null;
-  readonly assertions: number;
-  /** 1 satisfiable, -1 unsatisfiable, 0 neither within the limit; null when nothing was asked. */
-  readonly answer: -1 | 0 | 1 | null;
-}
 let read: (text: string, asks: boolean) => Promise<Reading>;
 let close: () => void = () => {};
 
 beforeAll(async () => {
-  const { Z3, em } = await init();
-  read = async (text, asks) => {
-    const config = Z3.mk_config();
-    const context = Z3.mk_context(config);
-    Z3.del_config(config);
-    const solver = Z3.mk_solver(context);
-    Z3.solver_inc_ref(context, solver);
-    const parameters = Z3.mk_params(context);
-    Z3.params_inc_ref(context, parameters);
-    Z3.params_set_uint(context, parameters, Z3.mk_string_symbol(context, "rlimit"), WORK);
-    Z3.solver_set_params(context, solver, parameters);
-    let mistake: string | null = null;
-    try {
-      Z3.solver_from_string(context, solver, text);
-      const code = Z3.get_error_code(context);
-      if (code !== 0) mistake = Z3.get_error_msg(context, code);
-    } catch (error) {
-      mistake = String(error);
-    }
-    const held = Z3.solver_get_assertions(context, solver);
-    Z3.ast_vector_inc_ref(context, held);
-    const assertions = Z3.ast_vector_size(context, held);
-    Z3.ast_vector_dec_ref(context, held);
-    const answer = asks && mistake === null ? await Z3.solver_check(context, solver) : null;
-    Z3.params_dec_ref(context, parameters);
-    Z3.solver_dec_ref(context, solver);
-    Z3.del_context(context);
-    return { mistake, assertions, answer: answer as Reading["answer"] };
-  };
-  close = () => em.PThread.terminateAllThreads();
+  const oracle = await startOracle();
+  read = (text, asks) => oracle.read(text, { rlimit: WORK }, asks);
+  close = oracle.close;
 });
 
 afterAll(() => close());

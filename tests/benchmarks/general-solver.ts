@@ -10,12 +10,12 @@
  * kernel's code is warm after its first cells, and so is WebAssembly.
  */
 import { parseArgs } from "node:util";
-import { init } from "z3-solver";
 import { askEntails } from "../../lib/inquiry/claims.ts";
 import { DEFAULT_LARGEST_SYMMETRIC_SIZE, unwatchedWork } from "../../lib/inquiry/work.ts";
 import { printSmtLib } from "../../lib/language/smt-lib.ts";
 import { DEFAULT_BUDGET } from "../../lib/logic/meter.ts";
 import { claims, questions, readSentences, theoryOf } from "../support/corpora.ts";
+import { startOracle } from "../support/z3.ts";
 
 const { values: options } = parseArgs({
   options: { seconds: { type: "string" }, steps: { type: "string" }, each: { type: "boolean" } },
@@ -30,25 +30,10 @@ interface Outcome {
   readonly milliseconds: number;
 }
 
-const { Z3, em } = await init();
+const oracle = await startOracle();
 
 async function askZ3(text: string): Promise<Outcome> {
-  const config = Z3.mk_config();
-  const context = Z3.mk_context(config);
-  Z3.del_config(config);
-  const solver = Z3.mk_solver(context);
-  Z3.solver_inc_ref(context, solver);
-  const parameters = Z3.mk_params(context);
-  Z3.params_inc_ref(context, parameters);
-  Z3.params_set_uint(context, parameters, Z3.mk_string_symbol(context, "timeout"), seconds * 1000);
-  Z3.solver_set_params(context, solver, parameters);
-  const start = performance.now();
-  Z3.solver_from_string(context, solver, text);
-  const answer = await Z3.solver_check(context, solver);
-  const milliseconds = performance.now() - start;
-  Z3.params_dec_ref(context, parameters);
-  Z3.solver_dec_ref(context, solver);
-  Z3.del_context(context);
+  const { answer, milliseconds } = await oracle.read(text, { timeout: seconds * 1000 }, true);
   return { verdict: answer === -1 ? "holds" : answer === 1 ? "fails" : "open", milliseconds };
 }
 
@@ -127,5 +112,5 @@ console.log(
 );
 for (const [name, of] of [["Twoplace", ours] as const, ["z3-solver", theirs] as const])
   if (wrong(of).length > 0) console.log(`wrong, ${name}: ${wrong(of).map(({ id }) => id)}`);
-em.PThread.terminateAllThreads();
+oracle.close();
 process.exitCode = wrong(ours).length + missed.length === 0 ? 0 : 1;
