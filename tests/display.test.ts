@@ -2,8 +2,9 @@ import { beforeAll, describe, expect, it } from "vitest";
 import { showAnswer } from "../kernel/display/answers.ts";
 import { dataOf } from "../kernel/display/data.ts";
 import { prepareDrawing } from "../kernel/display/drawing.ts";
+import { drawStrength } from "../kernel/display/strength.ts";
 import type { Structure } from "../lib/carriers/structure.ts";
-import type { Answer, AxiomAnswer } from "../lib/inquiry/answer.ts";
+import type { Answer, AxiomAnswer, CompareAnswer } from "../lib/inquiry/answer.ts";
 import type { Statement } from "../lib/language/statements.ts";
 import { checkBundle } from "./support/bundles.ts";
 import {
@@ -432,6 +433,36 @@ const cases: readonly Case[] = [
 function caseNamed(name: string): Case {
   return cases.find((one) => one.name === name)!;
 }
+
+describe("the order of strength", () => {
+  const three = caseNamed("compare three, one direction derived").answer as CompareAnswer;
+
+  it("is drawn with stronger theories higher, where something is known to entail something", () => {
+    const picture = drawStrength(three)!;
+    expect(picture.alt).toBe("Drawing of 3 theories: A entails C.");
+    expect(picture.caption).toContain("may be open");
+    const height = (name: string) => Number(new RegExp(`y="([\\d.]+)"[^>]*>${name}<`).exec(picture.svg)![1]);
+    expect(height("A")).toBeLessThan(height("C"));
+  });
+
+  it("is closed under what follows, and has equivalent theories at one point", () => {
+    const pair = (left: number, right: number, leftEntailsRight: boolean, rightEntailsLeft: boolean) => ({
+      ...three.pairs[2]!,
+      ...{ left, right, leftEntailsRight, rightEntailsLeft },
+    });
+    const pairs = [pair(0, 1, true, true), pair(1, 2, true, false), pair(2, 3, true, false)];
+    const names = ["A", "B", "C", "D"];
+    const picture = drawStrength({ ...three, names, classes: [["A", "B"], ["C"], ["D"]], pairs })!;
+    expect(picture.alt).toBe("Drawing of 3 theories: A = B entails C and C entails D.");
+    expect(picture.svg).toContain("= B");
+  });
+
+  it("is left out where there is nothing to draw", () => {
+    const none = three.pairs.map((one) => ({ ...one, leftEntailsRight: false, rightEntailsLeft: false }));
+    expect(drawStrength({ ...three, pairs: none })).toBeNull();
+    expect(drawStrength({ ...three, names: ["A", "B"], classes: [["A"], ["B"]] })).toBeNull();
+  });
+});
 
 describe("answers", () => {
   it.each(cases)("$name", ({ statement, answer, summary, data }) => {

@@ -19,6 +19,7 @@ import { renderBundle } from "./bundle.ts";
 import { countBlocks } from "./counts.ts";
 import { showDerivation, showDerivations } from "./derivations.ts";
 import { numberedStructures } from "./galleries.ts";
+import { drawStrength } from "./strength.ts";
 import { sizeOf, structureBlocks } from "./structures.ts";
 import { budgetOf, claimOf, derivedText, endText, pairReason, reportText, summarise } from "./summaries.ts";
 import { counted, onSizesTo } from "./text.ts";
@@ -229,6 +230,8 @@ function compareBlocks(answer: CompareAnswer, statement: Statement): readonly Bl
   const equivalent = classes.map((names) =>
     line("equivalent: ", ...names.flatMap((name, i) => [i === 0 ? "" : ", ", code(name)])),
   );
+  const picture = drawStrength(answer);
+  const diagram = picture === null ? [] : [picture];
   const inconsistent = answer.inconsistent.map(({ name }) =>
     note(code(name), " is inconsistent: everything follows from it."),
   );
@@ -246,7 +249,13 @@ function compareBlocks(answer: CompareAnswer, statement: Statement): readonly Bl
       ...(pair.common === null ? [] : structureBlocks(`model of both ${left} and ${right}`, pair.common)),
     ];
   });
-  const blocks: Block[] = [...inconsistent, table, ...equivalent, ...interruptedNote(answer.interrupted)];
+  const blocks: Block[] = [
+    ...inconsistent,
+    ...diagram,
+    table,
+    ...equivalent,
+    ...interruptedNote(answer.interrupted),
+  ];
   if (derivations.length > 0)
     blocks.push({ kind: "fold", title: "The derivations", blocks: showDerivations(derivations) });
   const isOpen = answer.pairs.some(({ verdict: word }) => word === "open");
