@@ -106,6 +106,20 @@ describe("an interrupt", () => {
   });
 });
 
+describe("reasons", () => {
+  it("say that something stands among the axioms, and not that it follows from none", async () => {
+    const { outcome } = await begin().run(
+      "derive { ∀x Rxx } ⊨ ∀x Rxx\nderive {} ⊨ ∃x x = x\nconjecture { symmetric } is weaker than { symmetric }\nindependence { a: ∀x Rxx; b: ∀x Rxx }",
+    );
+    expect(outcome.results.map(({ summary }) => summary)).toEqual([
+      "holds: the conclusion is one of the premises (checked)",
+      "holds: follows from no axioms at all (checked)",
+      "fails: the axioms of the one are among those of the other (checked)",
+      "0 of 2 axioms independent; a and b redundant (checked)",
+    ]);
+  });
+});
+
 describe("budgets", () => {
   const cell = "check-finite { ∀x ¬Rxx; ∀x ∀y ∀z (Rxy ∧ Ryz → Rxz); ∀x ∃y Rxy } up to 30 within 100 steps";
 

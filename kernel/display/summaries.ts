@@ -82,7 +82,7 @@ function claimReason(statement: Statement, answer: ClaimAnswer, budget: number):
     return `evaluated in ${claim.structure.text}, ${counted(claim.structure.structure.carrier.size, "point")}${checked}`;
   if (answer.inconsistent) return `${inconsistencyText(claim)}${checked}`;
   if (answer.derivations.length > 0 || found === "") {
-    const derived = derivedText(answer.derivations);
+    const derived = answer.derivations.length > 0 ? derivedText(answer.derivations) : memberText(claim);
     return found === "" ? `${derived}${checked}` : `${derived}; ${found}${checked}`;
   }
   return `${found}${checked}${fewerText(answer.searches)}`;
@@ -100,6 +100,13 @@ function inconsistencyText(claim: Claim | null): string {
     default:
       return "the axioms are inconsistent: there is no model at all";
   }
+}
+
+/** What holds without any derivation: what is to follow stands among the axioms, or there is nothing to follow. */
+function memberText(claim: Claim | null): string {
+  return claim?.kind === "entails" || claim?.kind === "does-not-entail"
+    ? "the conclusion is one of the premises"
+    : "the axioms of the one are among those of the other";
 }
 
 /** What was derived, from which axioms: `derived from irr and trans`. */
@@ -263,7 +270,7 @@ function axiomsReason(axioms: readonly AxiomAnswer[], isChecked: boolean): strin
   const parts = [
     `${independent.length} of ${counted(axioms.length, "axiom")} independent${independent.length > 0 ? checked : ""}`,
   ];
-  if (redundant.length > 0) parts.push(`${enumerate(redundant)} redundant`);
+  if (redundant.length > 0) parts.push(`${enumerate(redundant)} redundant${checked}`);
   if (open.length > 0) parts.push(`${enumerate(open)} open`);
   return parts.join("; ");
 }
