@@ -18,7 +18,9 @@ import type { CarrierDescription } from "../logic/structure-definition.ts";
  *   true when quantifiers range over `extensions`; each carrier proves this in its file, with its source;
  * - `extensions(c, r)` is never empty, and lists the same configurations in the same order at every call;
  * - `kindOf(restrict(c, p), [0, 1, …])` is `kindOf(c, p)`;
- * - configurations with the same `key` have the same extensions, kinds and identities.
+ * - configurations with the same `key` for nothing to come have the same kinds and identities;
+ * - two elements of a configuration are the same only if the configuration says so: `same` never depends on what is
+ *   still to come.
  */
 export interface Carrier<Configuration = unknown> {
   readonly description: CarrierDescription;
@@ -45,8 +47,17 @@ export interface Carrier<Configuration = unknown> {
   /** The kind of the tuple of the elements at the given places (repeats allowed), from 0 to `kindCount − 1`. */
   kindOf(configuration: Configuration, places: readonly number[]): number;
 
-  /** A name that two configurations share only if they need not be told apart. */
-  key(configuration: Configuration): string | number;
+  /**
+   * A name that two configurations share only if they need not be told apart with so many quantifiers still to come:
+   * the same extensions are listed for both, up to configurations that need not be told apart with one quantifier less.
+   */
+  key(configuration: Configuration, toCome: number): string | number;
+
+  /**
+   * A bound on how many configurations `extensions` lists for one of so many elements; infinite beyond all use. To be
+   * looked at before they are listed.
+   */
+  mostExtensions(named: number, toCome: number): number;
 
   /**
    * Permutations of the carrier, each its own inverse, under which every structure goes to an isomorphic one, for

@@ -102,6 +102,10 @@ export class Orbits implements Carrier<OrbitsConfiguration> {
     return key <= Number.MAX_SAFE_INTEGER ? key : configuration.points.join();
   }
 
+  mostExtensions(): number {
+    return this.size;
+  }
+
   /** None are listed: what the group leaves is searched quickly as it is. */
   symmetries(): readonly Symmetry[] {
     return [];

@@ -58,6 +58,10 @@ export class Points implements Carrier<PointsConfiguration> {
     return key <= Number.MAX_SAFE_INTEGER ? key : configuration.join();
   }
 
+  mostExtensions(): number {
+    return this.size;
+  }
+
   /**
    * The exchanges of two points, of which every permutation is made; on many points those of neighbours only, since
    * the others would cost more than they save.

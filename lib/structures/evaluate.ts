@@ -57,7 +57,7 @@ export function satisfies(structure: Structure, sentence: Formula, meter: Meter)
 
   function quantified(node: QuantifierPlan, outer: unknown): boolean {
     const configuration = node.places === null ? outer : carrier.restrict(outer, node.places);
-    const key = node.recurs ? carrier.key(configuration) : null;
+    const key = node.recurs ? carrier.key(configuration, node.toCome + 1) : null;
     const known = key === null ? undefined : memory.get(node, key);
     if (known !== undefined) return known;
     const extensions = carrier.extensions(configuration, node.toCome);

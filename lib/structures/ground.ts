@@ -99,7 +99,7 @@ export function ground(
 
   function quantified(node: QuantifierPlan, outer: unknown): Reference {
     const configuration = node.places === null ? outer : carrier.restrict(outer, node.places);
-    const key = node.recurs ? carrier.key(configuration) : null;
+    const key = node.recurs ? carrier.key(configuration, node.toCome + 1) : null;
     const known = key === null ? undefined : memory.get(node, key);
     if (known !== undefined) return known;
     const sign = node.kind === "forall" ? 1 : -1;
