@@ -1,6 +1,6 @@
 /** Structures: a carrier with a table for every relation. */
 import type { RelationSymbol } from "../logic/formula.ts";
-import type { CarrierDescription, StructureDefinition } from "../logic/structure-definition.ts";
+import type { StructureDefinition } from "../logic/structure-definition.ts";
 import type { Carrier } from "./carrier.ts";
 import { Points } from "./points.ts";
 
@@ -15,14 +15,6 @@ export interface Structure {
   readonly carrier: Carrier;
   /** By the name of the relation. */
   readonly tables: ReadonlyMap<string, Table>;
-}
-
-/** Builds the carrier that a description names. */
-export function buildCarrier(description: CarrierDescription): Carrier {
-  switch (description.kind) {
-    case "points":
-      return new Points(description.size);
-  }
 }
 
 /** Builds a structure from what the user wrote; the definition's points and tuple lengths are already checked. */

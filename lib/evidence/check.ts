@@ -4,6 +4,8 @@
  * `lib/logic`.
  */
 
+import { buildCarrier } from "../carriers/build.ts";
+import { countKinds } from "../carriers/listing.ts";
 import { Meter, WorkEnded } from "../logic/meter.ts";
 import { FormulaTooLarge } from "../logic/records/formulas.ts";
 import { checkDerivation } from "./derivation.ts";
@@ -57,6 +59,12 @@ function checkStructure(
   at: string,
   meter: Meter,
 ): void {
+  const carrier = buildCarrier(structure.carrier);
+  for (const [relation, { places, holds: kinds }] of Object.entries(structure.tables)) {
+    const count = countKinds(carrier, places);
+    if (!Number.isFinite(count) || (kinds.at(-1) ?? 0) >= count)
+      reject(`${at}: ${relation} has kinds of tuples that there are not, or that are too many to list`);
+  }
   const isTrue = (index: number) => isTrueIn(structure, sentences[index]!, meter);
   const wrong = holds.find((index) => !isTrue(index));
   if (wrong !== undefined) reject(`${at}: sentence ${wrong} is said to hold in the structure and does not`);

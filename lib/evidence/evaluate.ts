@@ -3,10 +3,10 @@
  * extensions. It shares nothing with the searches' evaluator and remembers nothing, so that it can be read at a
  * glance; it may be slower.
  */
-import type { Carrier } from "../carriers/carrier.ts";
-import { buildCarrier } from "../carriers/structure.ts";
+import { buildCarrier } from "../carriers/build.ts";
+import { listExtensions } from "../carriers/listing.ts";
 import type { Meter } from "../logic/meter.ts";
-import { atomTerms, partsOf } from "../logic/records/formulas.ts";
+import { atomTerms, freeVariables, partsOf } from "../logic/records/formulas.ts";
 import type { FormulaRecord, StructureRecord } from "./format.ts";
 import { reject } from "./read.ts";
 
@@ -19,19 +19,18 @@ type Places = ReadonlyMap<string, number>;
  * @throws Rejected when the structure does not interpret a relation of the sentence
  */
 export function isTrueIn(record: StructureRecord, sentence: FormulaRecord, meter: Meter): boolean {
-  const carrier: Carrier = buildCarrier(record.carrier);
+  const carrier = buildCarrier(record.carrier);
   const tables = new Map(
     Object.entries(record.tables).map(([name, { places, holds }]) => [
       name,
       { places, holds: new Set(holds) },
     ]),
   );
-  return isTrue(sentence, carrier.empty, new Map(), 0);
+  return isTrue(sentence, carrier.empty, new Map());
 
-  /** @param named how many elements the configuration has */
-  function isTrue(formula: FormulaRecord, configuration: unknown, places: Places, named: number): boolean {
+  function isTrue(formula: FormulaRecord, configuration: unknown, places: Places): boolean {
     meter.charge(1);
-    const part = (inner: FormulaRecord) => isTrue(inner, configuration, places, named);
+    const part = (inner: FormulaRecord) => isTrue(inner, configuration, places);
     switch (formula[0]) {
       case "true":
         return true;
@@ -58,9 +57,15 @@ export function isTrueIn(record: StructureRecord, sentence: FormulaRecord, meter
       case "forall":
       case "exists": {
         const [kind, variable, body] = formula;
-        const inner = new Map(places).set(variable, named);
-        const check = (extended: unknown) => isTrue(body, extended, inner, named + 1);
-        const extensions = carrier.extensions(configuration, depthOf(body));
+        // Only elements that are free here matter: the fewer there are, the fewer are the extensions.
+        const free = freeVariables(formula);
+        const own = carrier.restrict(
+          configuration,
+          free.map((name) => places.get(name)!),
+        );
+        const inner = new Map([...free, variable].map((name, place) => [name, place]));
+        const extensions = listExtensions(carrier, own, free.length, depthOf(body), meter);
+        const check = (extended: unknown) => isTrue(body, extended, inner);
         return kind === "forall" ? extensions.every(check) : extensions.some(check);
       }
     }

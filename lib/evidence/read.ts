@@ -3,7 +3,7 @@
  * is not in the format passes: no foreign keys, no missing ones, no sentence with free variables.
  */
 import { type FormulaRecord, freeVariables } from "../logic/records/formulas.ts";
-import { LARGEST_DOMAIN } from "../logic/structure-definition.ts";
+import { GENERIC_CLASSES, LARGEST_DOMAIN, LARGEST_OFFSET, MOST_COLOURS, MOST_COMPONENTS } from "../logic/structure-definition.ts";
 import {
   EVIDENCE_FORMAT,
   EVIDENCE_VERSION,
@@ -106,16 +106,33 @@ const atoms = { is: list([name, name], term), "=": list([name, term, term]) };
 const formula = formulaOf(atoms.is, atoms["="]);
 const clause = listOf(oneOf("0", { ...atoms, not: list([name, oneOf("0", atoms)]) }));
 
+const flag: Shape = (value, at) => {
+  if (typeof value !== "boolean") reject(`${at}: ${show(value)} is neither true nor false`);
+};
+const offset = whole(0, LARGEST_OFFSET);
+const carrier: Shape = (value, at, sentences) => carriers(value, at, sentences);
+const carriers = oneOf("kind", {
+  points: object({ kind: name, size: whole(1, LARGEST_DOMAIN) }),
+  "dense-line": object({ kind: name, colours: whole(1, MOST_COLOURS) }),
+  "integer-line": object({ kind: name, offset }),
+  "half-line": object({ kind: name, offset, ends: offset }),
+  tuples: object({ kind: name, over: carrier, widths: list([whole(0, MOST_COMPONENTS)], whole(0, MOST_COMPONENTS)) }),
+  sum: object({ kind: name, parts: list([carrier, carrier], carrier) }),
+  product: object({ kind: name, outer: carrier, inner: carrier }),
+  generic: oneOf("of", Object.fromEntries(GENERIC_CLASSES.map((of) => [of, object({ kind: name, of: name })]))),
+  "boolean-algebra": object({ kind: name, zero: flag, top: flag }),
+  "dense-tree": object({ kind: name }),
+  forest: object({ kind: name, branching: whole(1, MOST_COMPONENTS), rooted: flag, offset, ends: offset }),
+});
+
 const structure: Shape = (value, at, sentences) => {
-  const carrier = oneOf("kind", { points: object({ kind: name, size: whole(1, LARGEST_DOMAIN) }) });
   object({ carrier, tables: readObject })(value, at, sentences);
   const record = value as StructureRecord;
   for (const [relation, table] of Object.entries(record.tables)) {
     const where = `${at}, table ${relation}`;
     object({ places: whole(1), holds: listOf(number) })(table, where, sentences);
-    const kinds = record.carrier.size ** table.places;
-    if (table.holds.some((kind, place) => kind >= kinds || kind <= (table.holds[place - 1] ?? -1)))
-      reject(`${where}: not kinds here, or not in ascending order`);
+    if (table.holds.some((kind, place) => kind <= (table.holds[place - 1] ?? -1)))
+      reject(`${where}: kinds are not in ascending order`);
   }
 };
 

@@ -70,17 +70,21 @@ export interface ProductDescription {
   readonly inner: CarrierDescription;
 }
 
+export const GENERIC_CLASSES = ["graph", "digraph", "tournament", "partial-order"] as const;
+
 /** The countable structure in which every finite member of the class can be found, and extended in every way. */
 export interface GenericDescription {
   readonly kind: "generic";
-  readonly of: "graph" | "digraph" | "tournament" | "partial-order";
+  readonly of: (typeof GENERIC_CLASSES)[number];
 }
 
-/** The countable Boolean algebra without atoms, with its least and greatest element or without. */
+/**
+ * The countable Boolean algebra without atoms, with its least and greatest element or without; one that has its least
+ * element has its greatest.
+ */
 export interface BooleanAlgebraDescription {
   readonly kind: "boolean-algebra";
   readonly zero: boolean;
-  /** Not without zero being false: only one without its zero may lack its top. */
   readonly top: boolean;
 }
 

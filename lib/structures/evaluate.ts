@@ -1,4 +1,5 @@
 /** Truth of sentences in structures, by walking over the carrier's extensions. */
+import { listExtensions } from "../carriers/listing.ts";
 import type { Structure } from "../carriers/structure.ts";
 import type { Formula } from "../logic/formula.ts";
 import type { Meter } from "../logic/meter.ts";
@@ -60,7 +61,7 @@ export function satisfies(structure: Structure, sentence: Formula, meter: Meter)
     const key = node.recurs ? carrier.key(configuration, node.toCome + 1) : null;
     const known = key === null ? undefined : memory.get(node, key);
     if (known !== undefined) return known;
-    const extensions = carrier.extensions(configuration, node.toCome);
+    const extensions = listExtensions(carrier, configuration, node.named, node.toCome, meter);
     const result =
       node.kind === "forall"
         ? extensions.every((extended) => truth(node.body, extended))

@@ -1,5 +1,6 @@
 /** Grounding: a sentence over a carrier, unfolded to a circuit over the unknown entries of the tables. */
 import type { Carrier } from "../carriers/carrier.ts";
+import { countKinds, listExtensions } from "../carriers/listing.ts";
 import type { Formula, RelationSymbol } from "../logic/formula.ts";
 import type { Meter } from "../logic/meter.ts";
 import { LARGEST_DOMAIN, LARGEST_TABLES } from "../logic/structure-definition.ts";
@@ -22,7 +23,7 @@ export function unknownTables(
   circuit: Circuit,
   meter: Meter,
 ): UnknownTables {
-  const entries = relations.reduce((sum, relation) => sum + carrier.kindCount(relation.places), 0);
+  const entries = relations.reduce((sum, relation) => sum + countKinds(carrier, relation.places), 0);
   if (entries > LARGEST_TABLES || (carrier.size ?? 0) > LARGEST_DOMAIN) meter.endForMemory();
   const tables = new Map<string, Int32Array>();
   for (const relation of relations) {
@@ -105,7 +106,7 @@ export function ground(
     const sign = node.kind === "forall" ? 1 : -1;
     const references: Reference[] = [];
     let result: Reference | null = null;
-    for (const extended of carrier.extensions(configuration, node.toCome)) {
+    for (const extended of listExtensions(carrier, configuration, node.named, node.toCome, meter)) {
       const reference = sign * unfold(node.body, extended);
       if (reference === FALSE) {
         result = sign * FALSE;

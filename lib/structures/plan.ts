@@ -4,6 +4,7 @@
  * quantifiers shares the configuration of the outer one. The walk is shared by evaluation (`evaluate.ts`) and by
  * grounding (`ground.ts`).
  */
+import type { Carrier } from "../carriers/carrier.ts";
 import { type Formula, freeVariables, type RelationSymbol, type Variable } from "../logic/formula.ts";
 
 export interface QuantifierPlan {
@@ -15,6 +16,8 @@ export interface QuantifierPlan {
    * order. The body's configuration has these elements and, last, the new one.
    */
   readonly places: readonly number[] | null;
+  /** How many elements its own configuration has, before the new one. */
+  readonly named: number;
   /** Whether the same configuration can come back, so that the result is worth remembering. */
   readonly recurs: boolean;
   /** How many quantifiers lie inside this one: what a carrier must allow for when it lists extensions. */
@@ -67,9 +70,32 @@ export function planSentence(sentence: Formula): Plan {
         const all = kept.length === scope.length;
         const places = all ? null : kept.map((variable) => scope.indexOf(variable));
         const body = prepare(formula.body, [...kept, formula.variable], recurs || !all);
-        return { kind: formula.kind, id, places, recurs: recurs || !all, toCome: planDepth(body), body };
+        const named = kept.length;
+        return { kind: formula.kind, id, places, named, recurs: recurs || !all, toCome: planDepth(body), body };
       }
     }
+  }
+}
+
+/**
+ * A bound on how many nodes a walk over a carrier visits when it leaves nothing out; infinite beyond all use.
+ */
+export function mostVisits(plan: Plan, carrier: Carrier): number {
+  const visits = (part: Plan) => mostVisits(part, carrier);
+  switch (plan.kind) {
+    case "not":
+      return 1 + visits(plan.body);
+    case "and":
+    case "or":
+      return plan.parts.reduce((sum, part) => sum + visits(part), 1);
+    case "implies":
+    case "iff":
+      return 1 + visits(plan.first) + visits(plan.second);
+    case "forall":
+    case "exists":
+      return 1 + carrier.mostExtensions(plan.named, plan.toCome) * visits(plan.body);
+    default:
+      return 1;
   }
 }
 
