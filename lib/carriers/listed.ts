@@ -61,10 +61,16 @@ export abstract class Listed<Configuration extends object> implements Carrier<Co
     const place = places.length === 2 ? places[0]! * 4096 + places[1]! : places.join();
     let kind = kinds.get(place);
     if (kind === undefined) {
-      kind = this.#kindsOf(places.length).get(this.kindName(this.restrict(configuration, places)));
-      if (kind === undefined) throw new Error(`a kind that listing does not meet: ${this.description.kind}`);
+      kind = this.findKind(configuration, places);
       kinds.set(place, kind);
     }
+    return kind;
+  }
+
+  /** What {@link kindOf} remembers. A carrier that overrides it numbers kinds its own way, in the other two as well. */
+  protected findKind(configuration: Configuration, places: readonly number[]): number {
+    const kind = this.#kindsOf(places.length).get(this.kindName(this.restrict(configuration, places)));
+    if (kind === undefined) throw new Error(`a kind that listing does not meet: ${this.description.kind}`);
     return kind;
   }
 
@@ -72,9 +78,16 @@ export abstract class Listed<Configuration extends object> implements Carrier<Co
   kindExamples(length: number): readonly Configuration[] {
     const examples: Configuration[] = [];
     const seen = new Set<string>();
+    const extended = Array.from({ length }, () => new Set<string>());
     const extend = (configuration: Configuration, left: number): void => {
-      if (left > 0) for (const next of this.extensions(configuration, left - 1)) extend(next, left - 1);
-      else {
+      if (left > 0) {
+        // The extensions of another with the same key are of the same kinds.
+        const key = this.key(configuration, left);
+        const known = extended[left - 1]!;
+        if (known.has(key)) return;
+        known.add(key);
+        for (const next of this.extensions(configuration, left - 1)) extend(next, left - 1);
+      } else {
         const name = this.kindName(configuration);
         if (!seen.has(name)) examples.push(configuration);
         seen.add(name);

@@ -1,0 +1,223 @@
+import type { SumDescription } from "../logic/structure-definition.ts";
+import type { Carrier, Symmetry } from "./carrier.ts";
+import { kindExamplesOf } from "./kind-examples.ts";
+import { Listed } from "./listed.ts";
+
+export interface SumConfiguration {
+  /** The part of each element. */
+  readonly parts: readonly number[];
+  /** For each part, the configuration there of the elements that are in it, in the order of naming. */
+  readonly inside: readonly unknown[];
+}
+
+/**
+ * The elements of several carriers side by side.
+ *
+ * Why the extensions suffice: let two tuples be alike for r elements to come when their elements are in the same parts
+ * and in each part those that are there are alike for r. An element that is added to one is answered in the same part,
+ * by the law of that part; the other parts are alike for r − 1 since they were for r. So r moves in the game of
+ * Ehrenfeucht and Fraïssé are answered, and the listed extensions represent all (Feferman & Vaught 1959).
+ *
+ * Kinds are numbered by the parts of the elements in lexicographic order, then by the kind in the first part, in the
+ * second, and so on.
+ */
+export class Sum extends Listed<SumConfiguration> {
+  readonly description: SumDescription;
+  override readonly size: number | null;
+  readonly empty: SumConfiguration;
+  /** What the elements are elements of. */
+  readonly parts: readonly Carrier[];
+  /** By how many elements are in each part and how many are still to be assigned one: how many kinds there are. */
+  readonly #counts = new Map<string, number>();
+
+  constructor(description: SumDescription, parts: readonly Carrier[]) {
+    super();
+    this.description = description;
+    this.parts = parts;
+    this.size = parts.reduce<number | null>(
+      (sum, { size }) => (sum === null || size === null ? null : sum + size),
+      0,
+    );
+    this.empty = { parts: [], inside: parts.map(({ empty }) => empty) };
+  }
+
+  protected list(configuration: SumConfiguration, toCome: number): readonly SumConfiguration[] {
+    return this.parts.flatMap((carrier, part) => {
+      const parts = [...configuration.parts, part];
+      return carrier
+        .extensions(configuration.inside[part], toCome)
+        .map((extended) => ({ parts, inside: configuration.inside.with(part, extended) }));
+    });
+  }
+
+  restrict({ parts, inside }: SumConfiguration, places: readonly number[]): SumConfiguration {
+    const chosen = placesInside(parts, places, this.parts.length);
+    return {
+      parts: places.map((place) => parts[place]!),
+      inside: this.parts.map((carrier, part) => carrier.restrict(inside[part], chosen[part]!)),
+    };
+  }
+
+  same({ parts, inside }: SumConfiguration, first: number, second: number): boolean {
+    const part = parts[first]!;
+    if (parts[second] !== part) return false;
+    return this.parts[part]!.same(inside[part], placeInside(parts, first), placeInside(parts, second));
+  }
+
+  key({ parts, inside }: SumConfiguration, toCome: number): string {
+    return keyOf(
+      parts,
+      this.parts.map((carrier, part) => carrier.key(inside[part], toCome)),
+    );
+  }
+
+  mostExtensions(named: number, toCome: number): number {
+    return this.parts.reduce((sum, carrier) => sum + carrier.mostExtensions(named, toCome), 0);
+  }
+
+  override kindCount(length: number): number {
+    return this.#count(
+      length,
+      this.parts.map(() => 0),
+    );
+  }
+
+  protected override findKind({ parts, inside }: SumConfiguration, places: readonly number[]): number {
+    const chosen = placesInside(parts, places, this.parts.length);
+    return this.#number(
+      places.map((place) => parts[place]!),
+      this.parts.map((carrier, part) => carrier.kindOf(inside[part], chosen[part]!)),
+    );
+  }
+
+  protected kindName(configuration: SumConfiguration): string {
+    return `${this.findKind(configuration, [...configuration.parts.keys()])}`;
+  }
+
+  override kindExamples(length: number): readonly SumConfiguration[] {
+    const examples: SumConfiguration[] = [];
+    const choose = (parts: readonly number[], inside: readonly unknown[]): void => {
+      if (inside.length === this.parts.length) examples.push({ parts, inside });
+      else {
+        const elements = parts.filter((part) => part === inside.length).length;
+        for (const example of kindExamplesOf(this.parts[inside.length]!, elements))
+          choose(parts, [...inside, example]);
+      }
+    };
+    const extend = (parts: readonly number[]): void => {
+      if (parts.length < length) for (const part of this.parts.keys()) extend([...parts, part]);
+      else choose(parts, []);
+    };
+    extend([]);
+    return examples;
+  }
+
+  /** The exchanges of two parts with the same description. */
+  override symmetries(): readonly Symmetry[] {
+    const descriptions = this.parts.map(({ description }) => JSON.stringify(description));
+    return descriptions.flatMap((description, first) =>
+      descriptions.flatMap((other, second) =>
+        first < second && description === other
+          ? [{ image: (length: number, kind: number) => this.#exchange(length, kind, first, second) }]
+          : [],
+      ),
+    );
+  }
+
+  /** How many kinds there are of tuples that go on for so many elements, when so many before are in each part. */
+  #count(toCome: number, elements: readonly number[]): number {
+    const name = `${toCome};${elements.join()}`;
+    let count = this.#counts.get(name);
+    if (count === undefined) {
+      if (toCome === 0)
+        count = this.parts.reduce(
+          (product, carrier, part) => product * carrier.kindCount(elements[part]!),
+          1,
+        );
+      else {
+        count = 0;
+        for (const part of this.parts.keys()) count += this.#count(toCome - 1, oneMore(elements, part));
+      }
+      this.#counts.set(name, count);
+    }
+    return count;
+  }
+
+  /** The number of a kind, by the parts of the elements and the kind inside each part. */
+  #number(parts: readonly number[], kinds: readonly number[]): number {
+    let number = 0;
+    let elements: readonly number[] = this.parts.map(() => 0);
+    parts.forEach((part, place) => {
+      for (let lesser = 0; lesser < part; lesser += 1)
+        number += this.#count(parts.length - 1 - place, oneMore(elements, lesser));
+      elements = oneMore(elements, part);
+    });
+    let inside = 0;
+    for (const [part, carrier] of this.parts.entries())
+      inside = inside * carrier.kindCount(elements[part]!) + kinds[part]!;
+    return number + inside;
+  }
+
+  /** The kind of the tuple that comes of one of the given kind when two parts are exchanged. */
+  #exchange(length: number, kind: number, first: number, second: number): number {
+    const moved = (part: number) => (part === first ? second : part === second ? first : part);
+    const parts: number[] = [];
+    let rest = kind;
+    let elements: readonly number[] = this.parts.map(() => 0);
+    for (let toCome = length - 1; toCome >= 0; toCome -= 1) {
+      let part = 0;
+      for (; ; part += 1) {
+        const count = this.#count(toCome, oneMore(elements, part));
+        if (rest < count) break;
+        rest -= count;
+      }
+      elements = oneMore(elements, part);
+      parts.push(part);
+    }
+    const kinds: number[] = [];
+    for (let part = this.parts.length - 1; part >= 0; part -= 1) {
+      const count = this.parts[part]!.kindCount(elements[part]!);
+      kinds[part] = rest % count;
+      rest = Math.floor(rest / count);
+    }
+    return this.#number(
+      parts.map(moved),
+      kinds.map((_, part) => kinds[moved(part)]!),
+    );
+  }
+}
+
+/**
+ * The place, among the elements of its own group, of the element at a place.
+ * @param groups the group of each element
+ */
+export function placeInside(groups: readonly number[], place: number): number {
+  let inside = 0;
+  for (let before = 0; before < place; before += 1) if (groups[before] === groups[place]) inside += 1;
+  return inside;
+}
+
+/** For each of so many groups, where among its elements those are that stand at the given places. */
+export function placesInside(
+  groups: readonly number[],
+  places: readonly number[],
+  count: number,
+): readonly (readonly number[])[] {
+  const inside = Array.from({ length: count }, (): number[] => []);
+  for (const place of places) inside[groups[place]!]!.push(placeInside(groups, place));
+  return inside;
+}
+
+/** A name of the groups of the elements and the keys of the groups; no other has the same. */
+export function keyOf(groups: readonly number[], keys: readonly (string | number)[]): string {
+  let key = groups.join();
+  for (const one of keys) {
+    const text = `${one}`;
+    key += `;${text.length};${text}`;
+  }
+  return key;
+}
+
+function oneMore(elements: readonly number[], part: number): readonly number[] {
+  return elements.with(part, elements[part]! + 1);
+}
