@@ -2,6 +2,7 @@
 import {
   and,
   type Formula,
+  falsum,
   iff,
   implies,
   not,
@@ -12,16 +13,16 @@ import {
   verum,
 } from "../logic/formula.ts";
 import { AtomReader } from "./atoms.ts";
+import { ConnectiveReader, type Connectives } from "./connectives.ts";
 import type { Place } from "./diagnostics.ts";
 import { listWords } from "./help.ts";
 import { joined } from "./join.ts";
 import type { Token } from "./lexer.ts";
 import { measureFormula } from "./measure.ts";
 import { readVariables } from "./quantifiers.ts";
-import { MAX_NESTING, quote, type Reader, Unreadable } from "./reader.ts";
+import { MAX_NESTING, quote, type Reader } from "./reader.ts";
 import { declaredIn, findSoleRelation, putRelation } from "./sole-relation.ts";
 import { hintBetweenFormulas, isTermAhead } from "./terms.ts";
-import { signOf } from "./tokens.ts";
 
 export interface FormulaReading {
   readonly formula: Formula;
@@ -123,17 +124,24 @@ export function settleFormula(
   return relation === null ? null : { formula: putRelation(formula, relation), text };
 }
 
-class FormulaReader {
-  readonly #reader: Reader;
+const connectives: Connectives<Formula> = {
+  true: verum,
+  false: falsum,
+  not,
+  and: (parts) => joined(and, parts),
+  or: (parts) => joined(or, parts),
+  implies,
+  iff,
+};
+
+class FormulaReader extends ConnectiveReader<Formula> {
   readonly #atoms: AtomReader;
   /** How many quantifiers around the place bind each variable. */
   readonly #bound = new Map<Variable, number>();
   readonly #free = new Map<Variable, Place>();
-  /** Whether text was passed over, so that what is free cannot be told. */
-  #skipped = false;
 
   constructor(reader: Reader) {
-    this.#reader = reader;
+    super(reader, connectives);
     this.#atoms = new AtomReader(reader, (variable, place) => {
       if ((this.#bound.get(variable) ?? 0) > 0 || this.#free.has(variable)) return;
       this.#free.set(variable, place);
@@ -141,11 +149,11 @@ class FormulaReader {
   }
 
   read(): FormulaReading {
-    const reader = this.#reader;
+    const reader = this.reader;
     const mistakes = reader.diagnostics.length;
     const level = reader.level;
     const first = reader.peek();
-    const formula = this.#biconditional();
+    const formula = this.biconditional();
     reader.level = level;
     const place = { from: first.from, to: reader.last.to };
     const damaged = () => reader.diagnostics.length > mistakes;
@@ -157,140 +165,41 @@ class FormulaReader {
     return {
       formula,
       damaged: damaged(),
-      free: this.#skipped ? new Map() : this.#free,
+      free: this.skipped ? new Map() : this.#free,
       bound: new Set(this.#bound.keys()),
       bare: this.#atoms.bare,
       text: reader.excerpt(first, reader.last),
     };
   }
 
-  // Connectives, from the loosest to the tightest
-
-  #biconditional(): Formula {
-    const left = this.#conditional();
-    return this.#reader.at("iff")
-      ? iff(
-          left,
-          this.#right(() => this.#biconditional()),
-        )
-      : left;
+  protected override isAtomAhead(): boolean {
+    return isTermAhead(this.reader);
   }
 
-  #conditional(): Formula {
-    const left = this.#disjunction();
-    return this.#reader.at("implies")
-      ? implies(
-          left,
-          this.#right(() => this.#conditional()),
-        )
-      : left;
+  protected override checkAfter(): void {
+    const hint = hintBetweenFormulas(this.reader.peek());
+    if (hint !== null) this.reader.failExpected("an operator between formulas", hint);
   }
 
-  #right(read: () => Formula): Formula {
-    const sign = this.#reader.next();
-    this.#reader.crossLine();
-    this.#reader.enter(sign);
-    const formula = read();
-    this.#reader.level -= 1;
-    return formula;
-  }
-
-  #disjunction(): Formula {
-    const first = this.#conjunction();
-    if (!this.#reader.at("or")) return first;
-    const parts = [first];
-    while (this.#reader.accept("or") !== null) {
-      this.#reader.crossLine();
-      parts.push(this.#conjunction());
-    }
-    return joined(or, parts);
-  }
-
-  #conjunction(): Formula {
-    const first = this.#operand();
-    if (!this.#reader.at("and")) return first;
-    const parts = [first];
-    while (this.#reader.accept("and") !== null) {
-      this.#reader.crossLine();
-      parts.push(this.#operand());
-    }
-    return joined(and, parts);
-  }
-
-  #operand(): Formula {
-    const formula = this.#unary();
-    const hint = hintBetweenFormulas(this.#reader.peek());
-    if (hint !== null) this.#reader.failExpected("an operator between formulas", hint);
-    return formula;
-  }
-
-  #unary(): Formula {
-    const reader = this.#reader;
-    const token = reader.peek();
-    if (isTermAhead(reader)) return this.#atoms.readTerm();
+  protected override atom(token: Token, isTerm: boolean): Formula {
+    if (isTerm) return this.#atoms.readTerm();
     switch (token.kind) {
-      case "not": {
-        reader.next();
-        reader.crossLine();
-        reader.enter(token);
-        const body = this.#unary();
-        reader.level -= 1;
-        return not(body);
-      }
       case "forall":
       case "exists":
         return this.#quantified(token.kind);
-      case "true":
-      case "false":
-        reader.next();
-        return { kind: token.kind };
-      case "open":
-        return this.#group();
       case "relation-sign":
         return this.#atoms.readSignFirst(token);
       case "word":
         return this.#atoms.readWord(token);
-      case "open-brace":
-        return reader.failExpected(
-          "a formula",
-          "a theory cannot stand where a formula is meant: use ( ) as brackets",
-        );
       default:
-        return reader.failExpected("a formula", this.#lineHint(token));
+        return this.reader.failExpected("a formula");
     }
-  }
-
-  #lineHint(token: Token): string | null {
-    if (!["and", "or", "implies", "iff"].includes(token.kind) || !token.lineStart) return null;
-    return `end the line before with \`${signOf(token.kind as "and").symbol}\`, or put the formula in brackets: then it goes on`;
-  }
-
-  #group(): Formula {
-    const reader = this.#reader;
-    const mark = reader.mark;
-    const open = reader.next();
-    reader.enter(open);
-    const { level } = reader;
-    return reader.withLines(false, () => {
-      let formula: Formula;
-      try {
-        formula = this.#biconditional();
-        this.#reader.close(open, "an operator or `)`");
-      } catch (error) {
-        if (!(error instanceof Unreadable) || error.beyondBrackets) throw error;
-        this.#skipped = true;
-        if (!reader.skipGroup(mark)) throw error;
-        formula = verum;
-      }
-      reader.level = level - 1;
-      return formula;
-    });
   }
 
   // Quantifiers
 
   #quantified(kind: "forall" | "exists"): Formula {
-    const reader = this.#reader;
+    const reader = this.reader;
     const sign = reader.next();
     reader.crossLine();
     const variables = readVariables(reader, sign);
@@ -298,7 +207,7 @@ class FormulaReader {
     for (const variable of variables) reader.enter(variable);
     const dotted = reader.accept("dot") !== null;
     reader.crossLine();
-    const body = dotted ? this.#biconditional() : this.#unary();
+    const body = dotted ? this.biconditional() : this.unary();
     reader.level -= variables.length;
     for (const { text } of variables) this.#bound.set(text, this.#bound.get(text)! - 1);
     return quantify(
