@@ -4,6 +4,7 @@ import type { DerivationFact, Evidence } from "../evidence/format.ts";
 import type { Formula } from "../logic/formula.ts";
 import type { EndReason } from "../logic/meter.ts";
 import type { Axiom, Theory } from "../logic/theory.ts";
+import type { FinitenessReason } from "./finiteness/search.ts";
 
 /** `derive` and claims. */
 export type ClaimVerdict = "holds" | "fails" | "open";
@@ -49,6 +50,8 @@ export interface Search {
    * nothing; null when they were not, or one was found.
    */
   readonly symmetricUpTo: number | null;
+  /** Infinite carriers that were searched completely without finding one; which shows nothing about other infinite structures. */
+  readonly noneOnCarriers: number;
 }
 
 /** A derivation that an answer rests on, for people to read. */
@@ -60,6 +63,20 @@ export interface ShownDerivation {
   /** Null when the premises contradict each other by themselves. */
   readonly conclusion: Formula | null;
   readonly fact: DerivationFact;
+}
+
+/** Why a theory has no finite model, for people to read. */
+export interface ShownReason {
+  readonly reason: FinitenessReason;
+  /** What the reason asks the theory for, in its order. */
+  readonly obligations: readonly ShownObligation[];
+}
+export interface ShownObligation {
+  /** What it says, for people: "it is transitive there". */
+  readonly role: string;
+  readonly formula: Formula;
+  /** Null when it is an axiom. */
+  readonly derivation: ShownDerivation | null;
 }
 
 /** How the search for a derivation went. */
@@ -97,6 +114,8 @@ export interface ClaimAnswer extends AnswerBase {
   readonly reports: readonly DerivationReport[];
   /** Premises that contradict each other have been derived to: everything follows from them. */
   readonly inconsistent: boolean;
+  /** Why there is no finite model, where the verdict rests on that; else null. */
+  readonly noFinite: ShownReason | null;
   /** For `independent`: each axiom's own verdict; else null. */
   readonly axioms: readonly AxiomAnswer[] | null;
 }
@@ -113,13 +132,16 @@ export interface FiniteAnswer extends AnswerBase {
   readonly verdict: FiniteVerdict;
   /** The size of a smallest model; null while smaller sizes are unsettled or no finite model is known. */
   readonly leastSize: number | null;
-  /** The size of the model that is shown; null when there is none. */
+  /** The size of the model that is shown; null when there is none or it is infinite. */
   readonly modelSize: number | null;
   /** There is no model on 1, …, this many points. */
   readonly noModelUpTo: number;
   /** For 1, …, this many of those sizes the evidence has a clause proof; for the others it is computed. */
   readonly provenUpTo: number;
+  /** A finite model, or where none is known an infinite one; null when none was found. */
   readonly model: Structure | null;
+  /** Why there is no finite model; null when that was not derived. */
+  readonly noFinite: ShownReason | null;
   readonly search: Search;
   /** Of a contradiction; null unless `inconsistent`. */
   readonly derivation: ShownDerivation | null;

@@ -1,33 +1,33 @@
 /** `check-finite T`: has the theory finite models, none, or only infinite ones? */
 import { Meter } from "../logic/meter.ts";
 import { sentencesOf, type Theory } from "../logic/theory.ts";
-import type { FiniteAnswer } from "./answer.ts";
+import type { FiniteAnswer, FiniteVerdict } from "./answer.ts";
 import { certify } from "./certify.ts";
 import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature } from "./finite-search.ts";
 import { proveNoModel } from "./no-model.ts";
 import { recordQuestion } from "./question-record.ts";
-import { Settler } from "./settle.ts";
+import { type Settled, Settler } from "./settle.ts";
 import type { Work } from "./work.ts";
 
 /** The clause proof for one size may cost one part of so many of the budget. */
 const PROOF_SHARE = 8;
 
 /**
- * `finite` with a model, a smallest one where smaller sizes are settled; `inconsistent` with a derivation; `open` with
- * the sizes that have no model.
+ * `finite` with a model, a smallest one where smaller sizes are settled; `inconsistent` with a derivation; `infinite-only`
+ * with an infinite model and a derived reason why there is no finite one; `consistent` with the model alone,
+ * `no-finite-model` with the reason alone; `open` with the sizes that have no model.
  */
 export function checkFinite(theory: Theory, work: Work): FiniteAnswer {
   const writer = new EvidenceWriter();
   const question = recordQuestion({ ask: "check-finite", theory }, writer);
   const settler = new Settler(jointSignature([theory]), writer, work);
   const settled = settler.settle(
-    { premises: theory.axioms, conclusions: [], from: "", sought: "a model" },
+    { premises: theory.axioms, conclusions: [], from: "", sought: "a model", finite: true },
     settler.left,
   );
-  const { search, report, structure } = settled;
-  const verdict =
-    settled.outcome === "refuted" ? "finite" : settled.outcome === "derived" ? "inconsistent" : "open";
+  const { search, report } = settled;
+  const verdict = verdictOf(settled);
   let { steps } = settler;
   let provenUpTo = 0;
   while (verdict === "finite" && provenUpTo < search.noneUpTo && steps < work.budget) {
@@ -48,9 +48,16 @@ export function checkFinite(theory: Theory, work: Work): FiniteAnswer {
     modelSize: search.foundAt,
     noModelUpTo: search.noneUpTo,
     provenUpTo,
-    model: structure,
+    model: settled.structure ?? settled.infinite,
+    noFinite: settled.noFinite,
     search,
     derivation: settled.derivations[0] ?? null,
     report,
   };
+}
+
+function verdictOf({ outcome, infinite, noFinite }: Settled): FiniteVerdict {
+  if (outcome !== "open") return outcome === "refuted" ? "finite" : "inconsistent";
+  if (infinite !== null) return noFinite !== null ? "infinite-only" : "consistent";
+  return noFinite !== null ? "no-finite-model" : "open";
 }

@@ -4,7 +4,7 @@ import type { Formula } from "../logic/formula.ts";
 import { WorkEnded } from "../logic/meter.ts";
 import type { Theory } from "../logic/theory.ts";
 import { satisfies } from "../structures/evaluate.ts";
-import type { ClaimAnswer, ClaimVerdict, ShownDerivation, ShownStructure } from "./answer.ts";
+import type { ClaimAnswer, ClaimVerdict, ShownDerivation, ShownReason, ShownStructure } from "./answer.ts";
 import { certify } from "./certify.ts";
 import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature } from "./finite-search.ts";
@@ -64,8 +64,9 @@ export function askTruth(
     foundAt: null,
     endedAt: null,
     symmetricUpTo: null,
+    noneOnCarriers: 0,
   };
-  const rest = { derivations: [], reports: [], inconsistent: false, axioms: null } as const;
+  const rest = { derivations: [], reports: [], inconsistent: false, noFinite: null, axioms: null } as const;
   try {
     work.report("the truth value");
     const verdict = satisfies(structure, sentence, meter) === (ask === "true-in") ? "holds" : "fails";
@@ -95,33 +96,30 @@ export function askTruth(
 
 /** `T is consistent`: holds when a model is found, fails when a contradiction is derived. */
 export function askConsistent(theory: Theory, work: Work): ClaimAnswer {
-  return askForModel("consistent", "holds", "fails", theory, work);
+  const claim = new ClaimWork({ ask: "consistent", theory }, [theory], [], work);
+  const { outcome } = claim.settleModel(theory, false);
+  return claim.answer(outcome === "open" ? "open" : outcome === "refuted" ? "holds" : "fails");
 }
 
-/** `T is infinite-only`: fails when a finite model is found, or when there is no model at all. */
+/**
+ * `T is infinite-only`: holds when an infinite model is found and a reason why there is no finite one derived; fails when a
+ * finite model is found, or when there is no model at all.
+ */
 export function askInfiniteOnly(theory: Theory, work: Work): ClaimAnswer {
-  return askForModel("infinite-only", "fails", "fails", theory, work);
+  const claim = new ClaimWork({ ask: "infinite-only", theory }, [theory], [], work);
+  const { outcome, infinite, noFinite } = claim.settleModel(theory, true);
+  if (outcome !== "open") return claim.answer("fails");
+  return claim.answer(infinite !== null && noFinite !== null ? "holds" : "open");
 }
 
-/** `T has no finite model`: fails when a finite model is found, holds when a contradiction is derived. */
+/**
+ * `T has no finite model`: holds when a reason for that or a contradiction is derived, fails when a finite model is found.
+ */
 export function askNoFiniteModel(theory: Theory, work: Work): ClaimAnswer {
-  return askForModel("no-finite-model", "fails", "holds", theory, work);
-}
-
-function askForModel(
-  ask: "consistent" | "infinite-only" | "no-finite-model",
-  withModel: ClaimVerdict,
-  withContradiction: ClaimVerdict,
-  theory: Theory,
-  work: Work,
-): ClaimAnswer {
-  const claim = new ClaimWork({ ask, theory }, [theory], [], work);
-  const { settler } = claim;
-  const entailment = { premises: theory.axioms, conclusions: [], from: "", sought: "a model" };
-  const settled = settler.settle(entailment, settler.left);
-  claim.add(settled, "model");
-  const { outcome } = settled;
-  return claim.answer(outcome === "open" ? "open" : outcome === "refuted" ? withModel : withContradiction);
+  const claim = new ClaimWork({ ask: "no-finite-model", theory }, [theory], [], work);
+  const { outcome, noFinite } = claim.settleModel(theory, true);
+  if (outcome === "refuted") return claim.answer("fails");
+  return claim.answer(outcome === "derived" || noFinite !== null ? "holds" : "open");
 }
 
 /**
@@ -174,6 +172,7 @@ class ClaimWork {
   readonly searches: ClaimAnswer["searches"][number][] = [];
   readonly reports: ClaimAnswer["reports"][number][] = [];
   #inconsistent = false;
+  #noFinite: ShownReason | null = null;
   readonly #writer = new EvidenceWriter();
   readonly #question;
   readonly #work: Work;
@@ -184,9 +183,20 @@ class ClaimWork {
     this.settler = new Settler(jointSignature(theories, sentences), this.#writer, work);
   }
 
+  /** Looks for a model, for a contradiction, and where only finite models count, for a reason why there is none. */
+  settleModel({ axioms }: Theory, finite: boolean): Settled {
+    const entailment = { premises: axioms, conclusions: [], from: "", sought: "a model", finite };
+    const settled = this.settler.settle(entailment, this.settler.left);
+    this.add(settled, "model");
+    return settled;
+  }
+
   /** @param role what a structure found is, for people */
   add(settled: Settled, role: string): void {
-    if (settled.structure !== null) this.structures.push({ role, structure: settled.structure });
+    const { structure, infinite } = settled;
+    if (structure !== null) this.structures.push({ role, structure });
+    if (infinite !== null) this.structures.push({ role: `infinite ${role}`, structure: infinite });
+    this.#noFinite ??= settled.noFinite;
     this.derivations.push(...settled.derivations);
     this.searches.push(settled.search);
     this.reports.push(settled.report);
@@ -227,17 +237,20 @@ class ClaimWork {
       derivations: this.derivations,
       reports: this.reports,
       inconsistent: this.#inconsistent,
+      noFinite: this.#noFinite,
       axioms: null,
     };
   }
 
   /** A theory without axioms follows from every theory. */
   #nothingToShow(sought: string): Settled {
-    const search = { sought, noneUpTo: 0, foundAt: null, ended: null, endedAt: null, symmetricUpTo: null };
+    const search = { sought, noneUpTo: 0, foundAt: null, ended: null, endedAt: null, symmetricUpTo: null, noneOnCarriers: 0 };
     const report = { sought: "the axioms", result: "derived", ended: null, generated: 0 } as const;
     return {
       outcome: "derived",
       structure: null,
+      infinite: null,
+      noFinite: null,
       derivations: [],
       inconsistent: false,
       search,

@@ -78,6 +78,7 @@ export class FiniteSearch {
       ended: this.found === null ? this.#ended : null,
       endedAt: this.found === null && this.#ended !== null ? this.#noneUpTo + 1 : null,
       symmetricUpTo: this.found === null ? this.#symmetricUpTo : null,
+      noneOnCarriers: 0,
     };
   }
 

@@ -12,13 +12,20 @@ import { MeterShare } from "../logic/share.ts";
 import type { Axiom, Signature } from "../logic/theory.ts";
 import { satisfiesAll } from "../structures/evaluate.ts";
 import { Solver } from "../structures/sat/solver.ts";
-import type { DerivationReport, Search, ShownDerivation } from "./answer.ts";
+import type { DerivationReport, Search, ShownDerivation, ShownReason } from "./answer.ts";
 import type { EvidenceWriter } from "./evidence-writer.ts";
 import { FiniteSearch, shareOfComplete } from "./finite-search.ts";
+import { FinitenessSearch, type NoFiniteModel } from "./finiteness/search.ts";
+import { InfiniteSearch, ROUNDS } from "./infinite-search.ts";
 import type { Work } from "./work.ts";
 
 /** Whether all conclusions follow from the premises; without conclusions, whether the premises contradict each other. */
 export interface Entailment {
+  /**
+   * Whether the question is about finite models, and there are no conclusions. Then only a finite structure refutes; an
+   * infinite one is looked for besides, and a reason why there is no finite one.
+   */
+  readonly finite?: boolean;
   readonly premises: readonly Axiom[];
   readonly conclusions: readonly Axiom[];
   /** From what the conclusions are derived, for people, after their labels: "from Order"; empty where that is clear. */
@@ -31,6 +38,10 @@ export interface Settled {
   readonly outcome: "derived" | "refuted" | "open";
   /** A model of the premises where some conclusion fails; null unless refuted. */
   readonly structure: Structure | null;
+  /** An infinite model, where the question is about finite ones; null when none was found. */
+  readonly infinite: Structure | null;
+  /** Why there is no finite model, where the question is about finite ones; null when that was not derived. */
+  readonly noFinite: ShownReason | null;
   /** One for each conclusion that is not itself a premise, or one of a contradiction; none unless derived. */
   readonly derivations: readonly ShownDerivation[];
   /** Whether the premises are derived to contradict each other. */
@@ -43,7 +54,11 @@ type Stage =
   /** Derivations until so many clauses have been generated for each conclusion, within a part of the budget. */
   | { readonly kind: "derive"; readonly generated: number; readonly share: number }
   /** Structures on up to so many points, within a part of the budget. */
-  | { readonly kind: "structures"; readonly upTo: number; readonly share: number };
+  | { readonly kind: "structures"; readonly upTo: number; readonly share: number }
+  /** Infinite structures to the end of a round, within a part of the budget. */
+  | { readonly kind: "infinite"; readonly round: number; readonly share: number }
+  /** Where the question is about finite models: reasons why there is none, to the end of a level. */
+  | { readonly kind: "reason"; readonly level: number; readonly share: number };
 
 /**
  * Most that is settled at all is settled by a short derivation or a very small structure; each stage costs at most a few
@@ -52,12 +67,23 @@ type Stage =
 const STAGES: readonly Stage[] = [
   { kind: "derive", generated: 150, share: 1 / 8 },
   { kind: "structures", upTo: 3, share: 1 / 20 },
+  { kind: "infinite", round: 0, share: 1 / 50 },
+  { kind: "reason", level: 0, share: 1 / 50 },
   { kind: "derive", generated: 1_500, share: 1 / 8 },
   { kind: "structures", upTo: 5, share: 1 / 10 },
+  { kind: "infinite", round: 1, share: 1 / 50 },
+  { kind: "reason", level: 1, share: 1 / 50 },
   { kind: "derive", generated: 8_000, share: 1 / 8 },
+  { kind: "infinite", round: 2, share: 1 / 10 },
+  { kind: "reason", level: 2, share: 1 / 10 },
   { kind: "structures", upTo: 7, share: 1 / 8 },
   { kind: "derive", generated: 40_000, share: 1 / 4 },
+  { kind: "infinite", round: 3, share: 1 / 8 },
+  { kind: "reason", level: 3, share: 1 / 8 },
 ];
+
+/** Each structure that was found before is tried within this part of the budget. */
+const KNOWN_SHARE = 1 / 200;
 
 /** Premises without a model on so many points are looked at for a contradiction, after something was derived from them … */
 const CONTRADICTION_POINTS = 3;
@@ -116,26 +142,51 @@ export class Settler {
 
   #record(entailment: Entailment, run: Run): Settled {
     const { premises, conclusions } = entailment;
-    const structure = run.structure;
-    if (structure !== null) {
-      if (!this.#known.includes(structure)) this.#known.push(structure);
+    const { structure, infinite } = run;
+    for (const found of [structure, infinite]) {
+      if (found === null) continue;
+      if (!this.#known.includes(found)) this.#known.push(found);
       const fails = conclusions.length === 0 ? null : formulasOf(conclusions);
-      this.#writer.addStructure(structure, formulasOf(premises), fails);
+      this.#writer.addStructure(found, formulasOf(premises), fails);
     }
-    const derivations = (run.derived ?? []).map(({ task, derivation, label }): ShownDerivation => {
-      const fact = this.#writer.addDerivation(task, derivation);
-      const used = derivation.premises.map((place) => premises[place]!);
-      const conclusion = derivation.usesConclusion ? task.conclusion : null;
-      const role = conclusion === null ? "the premises contradict each other" : label;
-      return { role, premises: used, conclusion, fact };
-    });
+    const derivations = (run.derived ?? []).map(({ task, derivation, label }) =>
+      this.#show(task, derivation, premises, label),
+    );
     return {
       outcome: run.derived !== null ? "derived" : structure !== null ? "refuted" : "open",
       structure,
+      infinite,
+      noFinite: run.noFinite === null ? null : this.#showReason(run.noFinite, premises),
       derivations,
       inconsistent: derivations.some(({ conclusion }) => conclusion === null),
       search: run.search,
       report: run.report,
+    };
+  }
+
+  #show(
+    task: DerivationTask,
+    derivation: Derivation,
+    premises: readonly Axiom[],
+    label: string,
+  ): ShownDerivation {
+    const fact = this.#writer.addDerivation(task, derivation);
+    const used = derivation.premises.map((place) => premises[place]!);
+    const conclusion = derivation.usesConclusion ? task.conclusion : null;
+    const role = conclusion === null ? "the premises contradict each other" : label;
+    return { role, premises: used, conclusion, fact };
+  }
+
+  #showReason({ reason, obligations }: NoFiniteModel, premises: readonly Axiom[]): ShownReason {
+    this.#writer.addNoFiniteModel(formulasOf(premises), reason.record);
+    return {
+      reason,
+      obligations: obligations.map(({ formula, role, derived }) => ({
+        formula,
+        role,
+        derivation:
+          derived === null ? null : this.#show(derived.task, derived.derivation, premises, role),
+      })),
     };
   }
 }
@@ -160,11 +211,17 @@ class Run {
   /** What was derived for all goals; null while some goal is open. */
   derived: readonly Derived[] | null = null;
   structure: Structure | null = null;
+  /** An infinite model, where only a finite one is an answer. */
+  infinite: Structure | null = null;
+  noFinite: NoFiniteModel | null = null;
   /** Whether some goal is shown to have no derivation. */
   #saturated = false;
   #ended: EndReason | null = null;
   readonly #goals: readonly Goal[];
   readonly #finite: FiniteSearch;
+  readonly #infinite: InfiniteSearch;
+  /** Null when the question is not about finite models. */
+  readonly #reasons: FinitenessSearch | null;
   readonly #wanted: readonly Formula[];
   readonly #structures: readonly Structure[];
   readonly #meter: Meter;
@@ -173,7 +230,7 @@ class Run {
   readonly #budget: number;
 
   constructor(
-    { premises, conclusions, from, sought }: Entailment,
+    { premises, conclusions, from, sought, finite = false }: Entailment,
     signature: Signature,
     structures: readonly Structure[],
     meter: Meter,
@@ -208,11 +265,13 @@ class Run {
           : "the axioms";
     this.#wanted = conclusions.length === 0 ? formulas : [...formulas, not(and(...formulasOf(conclusions)))];
     this.#finite = new FiniteSearch({ sought, alternatives: [this.#wanted], signature }, meter, work);
+    this.#infinite = new InfiniteSearch({ sought, sentences: this.#wanted, signature }, meter, work);
+    this.#reasons = finite ? new FinitenessSearch(formulas, signature) : null;
     if (this.#goals.length === 0) this.derived = [];
   }
 
   get search(): Search {
-    return this.#finite.search;
+    return { ...this.#finite.search, noneOnCarriers: this.#infinite.noneOn };
   }
 
   get report(): DerivationReport {
@@ -238,29 +297,53 @@ class Run {
       this.#tryKnown();
       for (const stage of STAGES) {
         if (this.#isSettled) return;
-        if (stage.kind === "derive") this.#derive(stage.generated, this.#budget * stage.share);
-        else this.#searchStructures(stage.upTo, this.#budget * stage.share);
+        this.#do(stage);
       }
-      // Each search has half of what is left, if there may be a derivation; what one leaves goes to the other.
+      // What is left is shared by the searches that may still answer; what one leaves goes to the next.
       const left = () => this.#meter.left / 1000;
-      this.#searchAllStructures(this.#saturated ? left() : left() / 2);
+      if (this.#mayDerive) this.#searchAllStructures(left() / 2);
+      this.#searchInfinite(ROUNDS.length, left() / 4);
+      this.#reason(Number.POSITIVE_INFINITY, left() / 4);
       const kept = this.#finite.isExhausted ? 1 : 3 / 4;
-      if (!this.#isSettled) this.#derive(Number.POSITIVE_INFINITY, left() * kept);
+      this.#derive(Number.POSITIVE_INFINITY, left() * kept);
       this.#searchAllStructures(left());
     });
+  }
+
+  #do(stage: Stage): void {
+    const steps = this.#budget * stage.share;
+    switch (stage.kind) {
+      case "derive":
+        this.#derive(stage.generated, steps);
+        return;
+      case "structures":
+        this.#searchStructures(stage.upTo, steps);
+        return;
+      case "infinite":
+        this.#searchInfinite(stage.round, steps);
+        return;
+      case "reason":
+        this.#reason(stage.level, steps);
+    }
   }
 
   /** A short look for a small model or a contradiction. */
   lookForContradiction(): void {
     this.#guard(() => {
       this.#tryKnown();
-      if (!this.#isSettled) this.#searchStructures(CONTRADICTION_POINTS, this.#budget / 2);
-      if (!this.#isSettled) this.#derive(CONTRADICTION_CLAUSES, this.#budget);
+      this.#searchStructures(CONTRADICTION_POINTS, this.#budget / 2);
+      this.#derive(CONTRADICTION_CLAUSES, this.#budget);
     });
   }
 
   get #isSettled(): boolean {
-    return this.derived !== null || this.structure !== null || this.#meter.ended === "interrupted";
+    if (this.derived !== null || this.structure !== null || this.#meter.ended === "interrupted") return true;
+    return this.infinite !== null && this.noFinite !== null;
+  }
+
+  /** Whether there may be a derivation. */
+  get #mayDerive(): boolean {
+    return !this.#saturated && this.infinite === null;
   }
 
   #guard(work: () => void): void {
@@ -272,32 +355,65 @@ class Run {
     }
   }
 
+  /** Structures found before may do again. Deep sentences on infinite ones are given up early. */
   #tryKnown(): void {
     if (this.derived !== null) return;
-    this.structure = this.#structures.find((one) => satisfiesAll(one, this.#wanted, this.#meter)) ?? null;
+    for (const known of this.#structures) {
+      const share = new MeterShare(this.#meter, Math.max(1, this.#budget * KNOWN_SHARE));
+      try {
+        if (satisfiesAll(known, this.#wanted, share.meter)) this.#keep(known);
+      } catch (problem) {
+        if (!(problem instanceof WorkEnded) || share.ended === "interrupted") throw problem;
+      } finally {
+        share.settle();
+      }
+      if (this.#isSettled) return;
+    }
   }
 
   #searchStructures(upTo: number, steps: number): void {
+    if (this.#isSettled || this.noFinite !== null) return;
     this.#finite.advance(upTo, Math.max(1, steps));
-    this.#keepStructure();
+    if (this.#finite.found !== null) this.#keep(this.#finite.found.structure);
   }
 
   /** All sizes asked for, and those beyond. */
   #searchAllStructures(steps: number): void {
-    if (this.#isSettled) return;
     const complete = steps * shareOfComplete(this.#work);
     this.#searchStructures(this.#work.upTo, complete);
-    if (!this.#isSettled) this.#finite.goBeyond(steps - complete);
-    this.#keepStructure();
+    if (this.#isSettled || this.noFinite !== null) return;
+    this.#finite.goBeyond(steps - complete);
+    if (this.#finite.found !== null) this.#keep(this.#finite.found.structure);
   }
 
-  #keepStructure(): void {
-    this.structure ??= this.#finite.found?.structure ?? null;
+  #searchInfinite(round: number, steps: number): void {
+    if (this.#isSettled || this.infinite !== null) return;
+    this.#infinite.advance(round, steps);
+    if (this.#infinite.found !== null) this.#keep(this.#infinite.found);
+  }
+
+  #keep(structure: Structure): void {
+    if (structure.carrier.size === null && this.#reasons !== null) this.infinite ??= structure;
+    else this.structure ??= structure;
+  }
+
+  /** Reasons why there is no finite model, to the end of a level. */
+  #reason(level: number, steps: number): void {
+    if (this.#reasons === null || this.#isSettled || this.noFinite !== null) return;
+    const share = new MeterShare(this.#meter, Math.max(1, steps));
+    try {
+      this.#work.report(`a reason why there is no finite model: ${this.#reasons.tried} tried`);
+      this.noFinite = this.#reasons.advance(level, share.meter, this.infinite);
+    } catch (problem) {
+      if (!(problem instanceof WorkEnded) || share.ended === "interrupted") throw problem;
+    } finally {
+      share.settle();
+    }
   }
 
   /** Turns of the derivation search, until so many clauses have been generated for each goal. */
   #derive(generated: number, steps: number): void {
-    if (this.#saturated) return;
+    if (this.#isSettled || !this.#mayDerive) return;
     const share = new MeterShare(this.#meter, Math.max(1, steps));
     try {
       for (const goal of this.#goals) {
