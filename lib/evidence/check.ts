@@ -12,6 +12,7 @@ import { checkDerivation } from "./derivation.ts";
 import { digestOf } from "./digest.ts";
 import { isTrueIn } from "./evaluate.ts";
 import type { FormulaRecord, StructureFact } from "./format.ts";
+import { checkNoFiniteModel } from "./no-finite-model.ts";
 import { checkNoModel } from "./no-model.ts";
 import { Rejected, readEvidence, reject } from "./read.ts";
 import { isBorneOut } from "./verdicts.ts";
@@ -37,7 +38,8 @@ export function checkEvidence(
       const at = `fact ${index}`;
       if (fact.fact === "structure") checkStructure(fact, sentences, at, meter);
       else if (fact.fact === "derivation") checkDerivation(fact, sentences, at, meter);
-      else checkNoModel(fact, sentences, at, meter);
+      else if (fact.fact === "no-model") checkNoModel(fact, sentences, at, meter);
+      else checkNoFiniteModel(fact, evidence, at);
     }
     if (!isBorneOut(evidence, meter))
       reject(`the facts do not bear out the verdict ${JSON.stringify(evidence.verdict)}`);

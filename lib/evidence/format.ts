@@ -16,6 +16,7 @@
  */
 
 import type { StructureRecord } from "../carriers/structure-record.ts";
+import type { PrincipleRecord } from "../logic/records/finiteness.ts";
 import type {
   ClauseRecord,
   FormulaRecord,
@@ -24,6 +25,7 @@ import type {
 } from "../logic/records/formulas.ts";
 
 export type * from "../carriers/structure-record.ts";
+export type * from "../logic/records/finiteness.ts";
 export type * from "../logic/records/formulas.ts";
 
 export const EVIDENCE_FORMAT = "twoplace-evidence";
@@ -129,7 +131,17 @@ export interface NoModelFact {
   readonly size: number;
   readonly proof: readonly (readonly number[])[];
 }
-export type Fact = StructureFact | DerivationFact | NoModelFact;
+
+/**
+ * `axioms` have no finite model, by a principle about finite sets. What it asks for, as `lib/logic/records/finiteness.ts`
+ * makes it, is each one of the axioms or has a derivation from some of them among the facts.
+ */
+export interface NoFiniteModelFact {
+  readonly fact: "no-finite-model";
+  readonly axioms: TheoryRecord;
+  readonly principle: PrincipleRecord;
+}
+export type Fact = StructureFact | DerivationFact | NoModelFact | NoFiniteModelFact;
 
 /**
  * The verdict that the facts support: one word; for `independence`, `compare` and `dualise` one word for each axiom

@@ -3,7 +3,13 @@
  * is not in the format passes: no foreign keys, no missing ones, no sentence with free variables.
  */
 import { type FormulaRecord, freeVariables } from "../logic/records/formulas.ts";
-import { GENERIC_CLASSES, LARGEST_DOMAIN, LARGEST_OFFSET, MOST_COLOURS, MOST_COMPONENTS } from "../logic/structure-definition.ts";
+import {
+  GENERIC_CLASSES,
+  LARGEST_DOMAIN,
+  LARGEST_OFFSET,
+  MOST_COLOURS,
+  MOST_COMPONENTS,
+} from "../logic/structure-definition.ts";
 import {
   EVIDENCE_FORMAT,
   EVIDENCE_VERSION,
@@ -81,6 +87,11 @@ const name: Shape = (value, at) => {
   if (typeof value !== "string" || value === "") reject(`${at}: ${show(value)} is not a name`);
 };
 const any: Shape = () => undefined;
+const wordOf =
+  (words: readonly string[]): Shape =>
+  (value, at) => {
+    if (!words.includes(value as string)) reject(`${at}: ${show(value)} is none of ${words.join(", ")}`);
+  };
 const number = whole(0);
 const sentence: Shape = (value, at, sentences) => whole(0, sentences - 1)(value, at, sentences);
 const theory = listOf(sentence);
@@ -116,10 +127,14 @@ const carriers = oneOf("kind", {
   "dense-line": object({ kind: name, colours: whole(1, MOST_COLOURS) }),
   "integer-line": object({ kind: name, offset }),
   "half-line": object({ kind: name, offset, ends: offset }),
-  tuples: object({ kind: name, over: carrier, widths: list([whole(0, MOST_COMPONENTS)], whole(0, MOST_COMPONENTS)) }),
+  tuples: object({
+    kind: name,
+    over: carrier,
+    widths: list([whole(0, MOST_COMPONENTS)], whole(0, MOST_COMPONENTS)),
+  }),
   sum: object({ kind: name, parts: list([carrier, carrier], carrier) }),
   product: object({ kind: name, outer: carrier, inner: carrier }),
-  generic: oneOf("of", Object.fromEntries(GENERIC_CLASSES.map((of) => [of, object({ kind: name, of: name })]))),
+  generic: object({ kind: name, of: wordOf(GENERIC_CLASSES) }),
   "boolean-algebra": object({ kind: name, zero: flag, top: flag }),
   "dense-tree": object({ kind: name }),
   forest: object({ kind: name, branching: whole(1, MOST_COMPONENTS), rooted: flag, offset, ends: offset }),
@@ -155,10 +170,23 @@ const derivation = {
   made: listOf(made),
   lines: listOf(line),
 };
+const withoutTerms = { parameters: listOf(name), given: nullOr(plain), domain: plain, relation: plain };
+const different: Shape = (value, at, sentences) =>
+  (value === "identity" ? any : listOf(list([name, whole(1)])))(value, at, sentences);
+const principle = oneOf("principle", {
+  "endless-order": object({ principle: name, ...withoutTerms }),
+  counting: object({
+    ...{ principle: name, ...withoutTerms, different, successors: number, predecessors: number },
+    spare: nullOr(wordOf(["fewer-predecessors", "more-successors"])),
+  }),
+  pairs: object({ principle: name, ...withoutTerms, different, pairs: number }),
+  comprehension: object({ principle: name, ...withoutTerms, different }),
+});
 const proof = listOf(listOf(whole(-Number.MAX_SAFE_INTEGER)));
 const fact = oneOf("fact", {
   structure: object({ fact: name, structure, holds: theory, fails: nullOr(theory) }),
   derivation: object({ fact: name, ...derivation }),
+  "no-finite-model": object({ fact: name, axioms: theory, principle }),
   "no-model": object({ fact: name, axioms: theory, size: whole(1, LARGEST_DOMAIN), proof }),
 });
 

@@ -1,4 +1,5 @@
 /** Which verdicts checked facts bear out. */
+import { buildCarrier } from "../carriers/build.ts";
 import type { Meter } from "../logic/meter.ts";
 import { isTrueIn } from "./evaluate.ts";
 import type { Evidence, SentenceIndex, TheoryRecord } from "./format.ts";
@@ -82,13 +83,17 @@ export function isBorneOut(evidence: Evidence, meter: Meter): boolean {
     default: {
       const { ask, axioms } = question;
       const models = shown.structures.filter(({ holds }) => shown.contains(holds, axioms));
-      const finite = models.some(({ structure }) => structure.carrier.kind === "points");
+      const consistent = models.length > 0;
+      const finite = models.some(({ structure }) => buildCarrier(structure.carrier).size !== null);
       const inconsistent = shown.derives(axioms, null);
-      if (ask === "consistent") return says({ holds: models.length > 0, fails: inconsistent });
-      if (ask === "check-finite") return says({ finite, inconsistent });
+      const none = shown.excludesFinite(axioms);
       // That there are only infinite models says that there are some.
-      if (ask === "infinite-only") return says({ fails: finite || inconsistent });
-      return says({ holds: inconsistent, fails: finite });
+      const infinite = none && consistent;
+      if (ask === "consistent") return says({ holds: consistent, fails: inconsistent });
+      if (ask === "infinite-only") return says({ holds: infinite, fails: finite || inconsistent });
+      if (ask === "no-finite-model") return says({ holds: none || inconsistent, fails: finite });
+      const words = { "infinite-only": infinite, "no-finite-model": none };
+      return says({ finite, inconsistent, consistent, ...words });
     }
   }
 }
@@ -139,13 +144,20 @@ function areMinimal(axioms: TheoryRecord, verdict: readonly string[], shown: Sho
 class Shown {
   readonly structures;
   readonly #derivations;
+  readonly #finiteness;
   readonly #meter: Meter;
   readonly #members = new WeakMap<TheoryRecord, ReadonlySet<SentenceIndex>>();
 
   constructor({ facts }: Evidence, meter: Meter) {
     this.structures = facts.filter((fact) => fact.fact === "structure");
     this.#derivations = facts.filter((fact) => fact.fact === "derivation");
+    this.#finiteness = facts.filter((fact) => fact.fact === "no-finite-model");
     this.#meter = meter;
+  }
+
+  /** Whether axioms are shown to have no finite model. */
+  excludesFinite(axioms: TheoryRecord): boolean {
+    return this.#finiteness.some((fact) => this.contains(axioms, fact.axioms));
   }
 
   /** Whether a conclusion, or a contradiction, is derived from premises. */

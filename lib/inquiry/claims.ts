@@ -244,7 +244,15 @@ class ClaimWork {
 
   /** A theory without axioms follows from every theory. */
   #nothingToShow(sought: string): Settled {
-    const search = { sought, noneUpTo: 0, foundAt: null, ended: null, endedAt: null, symmetricUpTo: null, noneOnCarriers: 0 };
+    const search = {
+      sought,
+      noneUpTo: 0,
+      foundAt: null,
+      ended: null,
+      endedAt: null,
+      symmetricUpTo: null,
+      noneOnCarriers: 0,
+    };
     const report = { sought: "the axioms", result: "derived", ended: null, generated: 0 } as const;
     return {
       outcome: "derived",

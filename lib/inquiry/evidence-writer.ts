@@ -11,6 +11,7 @@ import {
   type Fact,
   type FormulaRecord,
   type NoModelFact,
+  type PrincipleRecord,
   type QuestionRecord,
   type TheoryRecord,
   type VerdictRecord,
@@ -77,6 +78,11 @@ export class EvidenceWriter {
   /** Adds that the sentences have no model of a size. */
   addNoModel(sentences: readonly Formula[], size: number, proof: NoModelFact["proof"]): void {
     this.#facts.push({ fact: "no-model", axioms: this.theory(sentences), size, proof });
+  }
+
+  /** Adds that the sentences have no finite model; what the principle asks for is derived in facts of their own. */
+  addNoFiniteModel(sentences: readonly Formula[], principle: PrincipleRecord): void {
+    this.#facts.push({ fact: "no-finite-model", axioms: this.theory(sentences), principle });
   }
 
   /** The evidence for a verdict. Number the question's own sentences first, by building its record first. */

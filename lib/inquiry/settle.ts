@@ -184,8 +184,7 @@ export class Settler {
       obligations: obligations.map(({ formula, role, derived }) => ({
         formula,
         role,
-        derivation:
-          derived === null ? null : this.#show(derived.task, derived.derivation, premises, role),
+        derivation: derived === null ? null : this.#show(derived.task, derived.derivation, premises, role),
       })),
     };
   }

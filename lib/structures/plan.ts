@@ -71,7 +71,15 @@ export function planSentence(sentence: Formula): Plan {
         const places = all ? null : kept.map((variable) => scope.indexOf(variable));
         const body = prepare(formula.body, [...kept, formula.variable], recurs || !all);
         const named = kept.length;
-        return { kind: formula.kind, id, places, named, recurs: recurs || !all, toCome: planDepth(body), body };
+        return {
+          kind: formula.kind,
+          id,
+          places,
+          named,
+          recurs: recurs || !all,
+          toCome: planDepth(body),
+          body,
+        };
       }
     }
   }
