@@ -82,9 +82,8 @@ export function halfLineVocabulary(carrier: HalfLine): Vocabulary<HalfLineConfig
         );
       const needed = needsOf(atom).ends;
       if (needed > ends)
-        return complain(
+        return unsettled(
           `this half line tells its first ${ends} numbers apart, and \`${writeAtom(atom)}\` needs the first ${needed}`,
-          null,
         );
       return offsetComplaint(atom, offset);
     },
@@ -258,14 +257,17 @@ function colourComplaint(value: number, colours: number): Complaint | null {
 function offsetComplaint(atom: Comparison, offset: number): Complaint | null {
   const needed = needsOf(atom).offset;
   if (needed <= offset) return null;
-  return complain(
+  return unsettled(
     `this line tells differences up to ${offset} apart, and \`${writeAtom(atom)}\` needs those up to ${needed}`,
-    null,
   );
 }
 
 function complain(message: string, suggestion: string | null): Complaint {
   return { message, suggestion };
+}
+
+function unsettled(message: string): Complaint {
+  return { message, suggestion: null, isUnsettled: true };
 }
 
 function element(variable: string): Element {

@@ -7,6 +7,11 @@ export interface Complaint {
   readonly message: string;
   /** What to write instead; null when nothing comes near. */
   readonly suggestion: string | null;
+  /**
+   * That the atom does say something there, and the kinds of the carrier do not tell whether it is true: its offset or
+   * ends are too small. In a sum an atom that says nothing in one part is false there, and one that is unsettled is not.
+   */
+  readonly isUnsettled?: true;
 }
 
 /**
