@@ -3,23 +3,74 @@ import { boundOf } from "./gaps.ts";
 import { Listed } from "./listed.ts";
 
 /**
- * Elements of a forest that have been named. Its points are the elements in the order of naming; in a rooted one point 0
- * is the root, named or not, and the elements follow.
+ * Elements of a forest that have been named. Its points are the elements in the order of naming; in a rooted forest point
+ * 0 is the root, whether it has been named or not, and the elements follow.
  */
 export interface ForestConfiguration {
   /** How many points. */
   readonly points: number;
   /**
-   * For points i, j at `i · points + j` the steps up from i to the nearest common ancestor of both; −1 where that is
-   * farther than need be known. The steps down from there to j are those up from j.
+   * At `i · points + j`, for points i and j, the steps up from i to the nearest common ancestor of both; −1 where they are
+   * farther apart than need be known. The steps down from there to j are the steps up from j. Below, an element is an
+   * ancestor of itself, and the distance of two is the sum of both numbers.
    */
   readonly up: readonly number[];
 }
 
+/**
+ * The tree in which every element has one parent and k = `branching` children; or, rooted, one in which all elements but
+ * one have a parent. Any two elements have a common ancestor. (A forest of such trees of which at most one has a root
+ * satisfies the same sentences, since what is far apart need not be joined.) With D = `offset`, a kind of pairs
+ * gives the steps up and down between two elements that have a distance of at most D, and whether they have. Rooted, a kind
+ * also gives the depth of an element, its distance from the root, if that is less than `ends`. Kinds of longer tuples
+ * give this for all their elements and pairs.
+ *
+ * Why the extensions suffice: elements that are far apart do not know of each other (Hanf 1965, Gaifman 1982); with
+ * numbers, by the game of Fraïssé 1954 and Ehrenfeucht 1961. Let
+ * - T(0) = D and T(r + 1) = 2 · T(r), so T(r) = 2^r · D;
+ * - S(0) = ends − 1 and S(r + 1) = S(r) + T(r), so S(r) = ends − 1 + (2^r − 1) · D. Without a root, there is no S.
+ *
+ * Join two elements of a tuple if their distance is at most T(r), and an element and the root if its depth is at most
+ * S(r). The tuple falls into components, of which one contains the root. Call two tuples of the same length alike for r
+ * when their components are the same and, within each (the root included), so are the steps up and down between any two.
+ *
+ * 1. Alike for 0 means of the same kind, and then so are all tuples of their elements. Alike for r + 1 is alike for r.
+ * 2. If tuples a and b are alike for r + 1, then for each element x there is a y so that a with x and b with y are alike for r.
+ *    Write T, S for T(r), S(r).
+ *    - First let there be an element of a within T of x, or let x have a depth of at most S. All elements within T of x lie in
+ *      one component C: two of them are within 2T of each other; and if x is within S of the root too, their depth is
+ *      at most S + T, so that C is the component of the root. Let C′ be the same component of b. Where it contains the root
+ *      there is a y that lies to the elements and the root in C′ as x does to those in C; otherwise there is a y that does
+ *      if x is within T of an element of C: both by the lemma below. The elements of b within T of y lie in C′ by the same
+ *      argument, since those of C′ within T of y are in the places of those within T of x. If C contains the root, the
+ *      depths of x and y are equal. If not, x and y lie within T of elements whose depth is more than S + T: both depths are
+ *      more than S. So a with x and b with y are joined in the same way for r; the component of x is part of C and x, that of
+ *      y part of C′ and y, with the same steps; and the others have not changed or have fallen apart in the same way.
+ *    - Otherwise x is a component of its own. There are elements of any depth, so there are some that are as far as one
+ *      likes from all of b and from the root: let y be one of them.
+ * 3. Hence tuples that are alike for r satisfy the same formulas with r quantifiers one inside another, by induction on r.
+ *    It is enough to list one extension for every class of extensions that are alike for r: those of the lemma, once for
+ *    each component, and one far from everything. A configuration has the steps within the components for r + 1, or more.
+ *
+ * Lemma. Let C and C′ be components as above, with the same steps. Call what is an ancestor of an element of C a node. Let x
+ * be within T of an element c of C, or let C contain the root. Let w be the lowest node that is an ancestor of x: h steps
+ * above an element d of C, say. Either x = w, or x lies e > 0 steps below w by way of a child of w that is no node. Then there
+ * is a w′ that lies h steps above the element d′ in the place of d. For if w is not above all of C, w lies on the way from
+ * d to its nearest common ancestor with another element, and w′ on the same way in C′; nor is there anything to show if the
+ * root is in C. Otherwise w is at most T steps above c, and c′ in its place has so many ancestors, since its depth is more
+ * than S(r + 1) = S + T ≥ T − 1; w′ is so many steps above c′. Steps say which nodes are equal and how many children of a
+ * node are nodes, so it is the same number for w and w′; if it is k there is no such x, and if it is less, w′ has a child that
+ * is no node, and e steps below it (any way down will do) there is a y. The steps between x and an element of C are those
+ * between w and that element, with e added on the side of x; the same goes for y. Neither depends on the way down from w, so
+ * a node w that is as near as required and the number e give an extension, and all extensions near C are these.
+ *
+ * T cannot be less for D = 1: that two elements have a distance of 2^r in a line of descent can be said with r quantifiers.
+ * With k = 1 the tree is the integer line with the successor, and rooted it is the half line.
+ */
 export class Forest extends Listed<ForestConfiguration> {
   readonly description: ForestDescription;
   readonly empty: ForestConfiguration;
-  /** Points that are not elements: 1 in a rooted forest. */
+  /** Where in a configuration the elements begin: 1 in a rooted forest, else 0. */
   readonly #first: 0 | 1;
 
   constructor(description: ForestDescription) {
@@ -29,67 +80,66 @@ export class Forest extends Listed<ForestConfiguration> {
     this.empty = description.rooted ? { points: 1, up: [0] } : { points: 0, up: [] };
   }
 
+  /** The steps from one element up to the nearest common ancestor and down to the other; null where that is not known. */
+  steps({ points, up }: ForestConfiguration, from: number, to: number): readonly [number, number] | null {
+    const [i, j] = [from + this.#first, to + this.#first];
+    const steps = up[i * points + j]!;
+    return steps < 0 ? null : [steps, up[j * points + i]!];
+  }
+
+  /** The distance of an element from the root; null where that is not known. */
+  depth({ points, up }: ForestConfiguration, place: number): number | null {
+    const steps = this.#first === 1 ? up[(place + 1) * points]! : -1;
+    return steps < 0 ? null : steps;
+  }
+
   protected list(configuration: ForestConfiguration, toCome: number): readonly ForestConfiguration[] {
     const cut = this.#cut(configuration, toCome + 1);
-    const { points, up } = cut;
-    const { branching } = this.description;
-    const near = this.#near(toCome);
-    const nearRoot = this.#nearRoot(toCome);
     const extensions = new Map<string, ForestConfiguration>();
-    const add = (upFromNew: readonly number[], upToNew: readonly number[]): void => {
-      const longer: number[] = [];
-      for (let i = 0; i < points; i += 1) longer.push(...up.slice(i * points, (i + 1) * points), upToNew[i]!);
-      longer.push(...upFromNew, 0);
-      const extended = this.#cut({ points: points + 1, up: longer }, toCome);
+    const add = (node: Node, deep: number): void => {
+      const extended = this.#cut(extend(cut, node, deep), toCome);
       const name = extended.up.join();
       if (!extensions.has(name)) extensions.set(name, extended);
     };
-    const far = new Array<number>(points).fill(-1);
-
-    for (let i = 0; i < points; i += 1) {
-      // The nodes at or above which point i is, and no point with a smaller number.
-      const component: number[] = [];
-      for (let j = 0; j < points; j += 1) if (up[i * points + j]! >= 0) component.push(j);
-      const highest =
-        component[0] === 0 && this.#first === 1
-          ? up[i * points]!
-          : near + Math.max(...component.map((j) => up[i * points + j]!));
-      for (let height = 0; height <= highest; height += 1) {
-        if (component.some((j) => j < i && height >= up[i * points + j]!)) break;
-        const children = new Set<string>();
-        const upFromNode = far.slice();
-        const upToNode = far.slice();
-        for (const j of component) {
-          const upFrom = up[i * points + j]!;
-          const upTo = up[j * points + i]!;
-          upFromNode[j] = Math.max(0, upFrom - height);
-          upToNode[j] = upTo + Math.max(0, height - upFrom);
-          if (height >= upFrom && upToNode[j]! > 0)
-            children.add(this.#nodeName(cut, component, j, upToNode[j]! - 1));
-        }
-        for (let deep = 0; deep === 0 || children.size < branching; deep += 1) {
-          const steps = (j: number) => deep + upFromNode[j]! + upToNode[j]!;
-          if (!component.some((j) => steps(j) <= (j < this.#first ? nearRoot : near))) break;
-          add(
-            upFromNode.map((steps) => (steps < 0 ? -1 : steps + deep)),
-            upToNode,
-          );
-        }
+    for (const component of componentsOf(cut))
+      for (const node of this.#nodesNear(cut, component, toCome)) {
+        add(node, 0);
+        if (node.children === this.description.branching) continue;
+        for (let deep = 1; this.#isNear(node, component, deep, toCome); deep += 1) add(node, deep);
       }
-    }
-    add(far, far);
+    const none = new Array<number>(cut.points).fill(-1);
+    add({ up: none, upToNode: none, children: 0 }, 0);
     return [...extensions.values()];
   }
 
-  /** A name of the node so many steps up from a point: the first point that is at or above it, and the steps up from there. */
-  #nodeName(
-    { points, up }: ForestConfiguration,
-    component: readonly number[],
-    point: number,
-    height: number,
-  ): string {
-    const first = component.find((j) => height >= up[point * points + j]!)!;
-    return `${first},${height - up[point * points + first]! + up[first * points + point]!}`;
+  /** The nodes of a component that are near enough to one of its points for extensions to be listed. */
+  #nodesNear(configuration: ForestConfiguration, component: readonly number[], toCome: number): Node[] {
+    const { points, up } = configuration;
+    const near: Node[] = [];
+    component.forEach((point, index) => {
+      // The nodes above this point and above none before it. All are those when it is the first and there is no root.
+      const others = component.slice(0, index).map((other) => up[point * points + other]!);
+      const highest =
+        index > 0
+          ? Math.min(...others) - 1
+          : point < this.#first
+            ? 0
+            : this.#near(toCome) + Math.max(...component.map((other) => up[point * points + other]!));
+      for (let height = 0; height <= highest; height += 1) {
+        const node = nodeAbove(configuration, component, point, height);
+        if (this.#isNear(node, component, 0, toCome)) near.push(node);
+      }
+    });
+    return near;
+  }
+
+  /** Whether what lies so many steps below a node, by a way of its own, is near a point of the component. */
+  #isNear({ up, upToNode }: Node, component: readonly number[], deep: number, toCome: number): boolean {
+    return component.some(
+      (point) =>
+        deep + up[point]! + upToNode[point]! <=
+        (point < this.#first ? this.#nearRoot(toCome) : this.#near(toCome)),
+    );
   }
 
   restrict({ points, up }: ForestConfiguration, places: readonly number[]): ForestConfiguration {
@@ -107,24 +157,23 @@ export class Forest extends Listed<ForestConfiguration> {
     return this.#cut(configuration, toCome).up.join();
   }
 
-  protected kindName({ points, up }: ForestConfiguration): string {
-    const { offset, ends } = this.description;
-    const names: string[] = [];
-    for (let i = 0; i < points; i += 1)
-      for (let j = i + 1; j < points; j += 1) {
-        const [from, to] = [up[i * points + j]!, up[j * points + i]!];
-        const known = from >= 0 && from + to <= (i < this.#first ? ends - 1 : offset);
-        names.push(known ? `${from},${to}` : "");
-      }
-    return names.join(";");
+  protected kindName(configuration: ForestConfiguration): string {
+    return this.key(configuration, 0);
   }
 
+  /**
+   * Count the nodes within T of an element, each with the number of ways T − distance + 1 to go down from it. Give each node to
+   * an element that is nearest. The nodes of one element are a connected piece of the tree; at each distance from 1 on
+   * there are at most as many as there are edges out of the piece. The pieces of n elements form a tree, so they have 2n − 2
+   * such edges, and one more upwards: in all n · (T + 1) + (2n − 1) · T(T + 1)/2 ways. Likewise from the root: one node at
+   * distance 0, at most n at others. With one child each, there are 2T + 1 elements within T of one.
+   */
   mostExtensions(named: number, toCome: number): number {
     const near = this.#near(toCome);
     const nearRoot = this.#nearRoot(toCome);
-    if (named === 0) return boundOf(nearRoot + 2);
-    const corner = (steps: number) => ((steps + 1) * (steps + 2)) / 2;
-    return boundOf(1 + named * named * corner(near) + named * corner(nearRoot));
+    if (this.description.branching === 1) return boundOf(1 + named * (2 * near + 1) + nearRoot + 1);
+    const nearElements = named === 0 ? 0 : named * (near + 1) + (2 * named - 1) * below(near);
+    return boundOf(1 + nearElements + nearRoot + 1 + named * below(nearRoot));
   }
 
   /** T(toCome). */
@@ -132,31 +181,99 @@ export class Forest extends Listed<ForestConfiguration> {
     return this.description.offset * 2 ** toCome;
   }
 
-  /** S(toCome). */
+  /** S(toCome); −1 when there is no root, so that nothing is near it. */
   #nearRoot(toCome: number): number {
-    return this.description.rooted
-      ? this.description.ends - 1 + this.description.offset * (2 ** toCome - 1)
-      : -1;
+    const { rooted, ends, offset } = this.description;
+    return rooted ? ends - 1 + offset * (2 ** toCome - 1) : -1;
   }
 
+  /**
+   * The configuration without steps between components for so many quantifiers to come. With none to come, kinds are all
+   * that counts, so it is without steps between any two points that are not joined.
+   */
   #cut(configuration: ForestConfiguration, toCome: number): ForestConfiguration {
     const { points, up } = configuration;
     const near = this.#near(toCome);
     const nearRoot = this.#nearRoot(toCome);
-    const component = Array.from({ length: points }, (_, i) => i);
+    // For each point the least point of its component; with nothing to come, only whether two points are joined.
+    const component = Array.from({ length: points }, (_, point) => point);
+    const cut = up.slice();
+    let changed = false;
+    const separate = (i: number, j: number): void => {
+      if (cut[i * points + j]! >= 0) changed = true;
+      cut[i * points + j] = -1;
+      cut[j * points + i] = -1;
+    };
     for (let i = 0; i < points; i += 1)
       for (let j = i + 1; j < points; j += 1) {
         const from = up[i * points + j]!;
-        if (from < 0 || from + up[j * points + i]! > (i < this.#first ? nearRoot : near)) continue;
-        const [kept, gone] = [component[i]!, component[j]!];
-        if (kept !== gone) for (let m = 0; m < points; m += 1) if (component[m] === gone) component[m] = kept;
+        const joined = from >= 0 && from + up[j * points + i]! <= (i < this.#first ? nearRoot : near);
+        if (toCome === 0) {
+          if (!joined) separate(i, j);
+        } else if (joined && component[i] !== component[j]) {
+          const [kept, gone] = [component[i]!, component[j]!];
+          for (let point = 0; point < points; point += 1)
+            if (component[point] === gone) component[point] = kept;
+        }
       }
-    let changed = false;
-    const cut = up.map((steps, at) => {
-      if (steps < 0 || component[Math.floor(at / points)] === component[at % points]) return steps;
-      changed = true;
-      return -1;
-    });
+    if (toCome > 0)
+      for (let i = 0; i < points; i += 1)
+        for (let j = i + 1; j < points; j += 1) if (component[i] !== component[j]) separate(i, j);
     return changed ? { points, up: cut } : configuration;
   }
+}
+
+/** An ancestor of a point of a component. */
+interface Node {
+  /** For each point of the component the steps up from the node to the nearest common ancestor; −1 for other points. */
+  readonly up: readonly number[];
+  /** The same from the point. */
+  readonly upToNode: readonly number[];
+  /** How many of its children are ancestors of points of the component. */
+  readonly children: number;
+}
+
+function nodeAbove(
+  { points, up }: ForestConfiguration,
+  component: readonly number[],
+  point: number,
+  height: number,
+): Node {
+  const upFromNode = new Array<number>(points).fill(-1);
+  const upToNode = upFromNode.slice();
+  const below: number[] = [];
+  for (const other of component) {
+    const rise = up[point * points + other]!;
+    upFromNode[other] = Math.max(0, rise - height);
+    upToNode[other] = up[other * points + point]! + Math.max(0, height - rise);
+    if (upFromNode[other] === 0 && upToNode[other]! > 0) below.push(other);
+  }
+  // Two points are below the same child when their nearest common ancestor is.
+  const children = below.filter(
+    (other, index) =>
+      !below.slice(0, index).some((before) => up[other * points + before]! < upToNode[other]!),
+  );
+  return { up: upFromNode, upToNode, children: children.length };
+}
+
+/** The configuration with one point more: so many steps below a node, by a way of its own. */
+function extend({ points, up }: ForestConfiguration, node: Node, deep: number): ForestConfiguration {
+  const longer: number[] = [];
+  for (let point = 0; point < points; point += 1)
+    longer.push(...up.slice(point * points, (point + 1) * points), node.upToNode[point]!);
+  longer.push(...node.up.map((steps) => (steps < 0 ? -1 : steps + deep)), 0);
+  return { points: points + 1, up: longer };
+}
+
+/** The points that have steps between them, in ascending order. */
+function componentsOf({ points, up }: ForestConfiguration): readonly (readonly number[])[] {
+  const all = Array.from({ length: points }, (_, point) => point);
+  return all
+    .map((point) => all.filter((other) => up[point * points + other]! >= 0))
+    .filter((component, point) => component[0] === point);
+}
+
+/** Ways down from the nodes at distances from 1 on, one at each: 1 + … + distance. */
+function below(distance: number): number {
+  return (distance * (distance + 1)) / 2;
 }
