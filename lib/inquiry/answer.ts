@@ -52,6 +52,11 @@ export interface Search {
   readonly symmetricUpTo: number | null;
   /** Infinite carriers that were searched completely without finding one; which shows nothing about other infinite structures. */
   readonly noneOnCarriers: number;
+  /**
+   * Where a sentence was too deep to evaluate on an infinite carrier: how many configurations a listing would have taken,
+   * infinite beyond counting. Else null.
+   */
+  readonly configurations: number | null;
 }
 
 /** A derivation that an answer rests on, for people to read. */

@@ -65,6 +65,7 @@ export function askTruth(
     endedAt: null,
     symmetricUpTo: null,
     noneOnCarriers: 0,
+    configurations: null,
   };
   const rest = { derivations: [], reports: [], inconsistent: false, noFinite: null, axioms: null } as const;
   try {
@@ -252,6 +253,7 @@ class ClaimWork {
       endedAt: null,
       symmetricUpTo: null,
       noneOnCarriers: 0,
+      configurations: null,
     };
     const report = { sought: "the axioms", result: "derived", ended: null, generated: 0 } as const;
     return {

@@ -79,6 +79,7 @@ export class FiniteSearch {
       endedAt: this.found === null && this.#ended !== null ? this.#noneUpTo + 1 : null,
       symmetricUpTo: this.found === null ? this.#symmetricUpTo : null,
       noneOnCarriers: 0,
+      configurations: null,
     };
   }
 

@@ -75,6 +75,8 @@ export function searched(rest: Partial<Search> = {}): Search {
     ended: null,
     endedAt: null,
     symmetricUpTo: null,
+    noneOnCarriers: 0,
+    configurations: null,
     ...rest,
   };
 }
@@ -94,6 +96,7 @@ export function claimAnswer(rest: Partial<ClaimAnswer>): ClaimAnswer {
     derivations: [],
     reports: [],
     inconsistent: false,
+    noFinite: null,
     axioms: null,
     ...rest,
   };
