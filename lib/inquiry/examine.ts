@@ -9,19 +9,20 @@ import { type Formula, not, type RelationSymbol } from "../logic/formula.ts";
 import { type FiniteCheck, finiteCheckBound } from "../logic/fragments.ts";
 import { type Meter, WorkEnded } from "../logic/meter.ts";
 import { namedProperties, propertyOf } from "../logic/properties.ts";
-import { sentencesOf, type Theory } from "../logic/theory.ts";
+import { type Signature, sentencesOf, type Theory } from "../logic/theory.ts";
 import { satisfies } from "../structures/evaluate.ts";
 import { Solver } from "../structures/sat/solver.ts";
 import { enumerateStructures } from "../structures/search.ts";
 import { certify } from "./certify.ts";
 import { EvidenceWriter } from "./evidence-writer.ts";
 import { jointSignature, searchFinite } from "./finite-search.ts";
+import { InfiniteSearch } from "./infinite-search.ts";
 import { meterFor, type Work } from "./work.ts";
 
 /** What a search for models of one kind came to. */
 export type ModelSearch =
-  /** A model was found, on so many points; there may be smaller ones. */
-  | { readonly kind: "found"; readonly size: number }
+  /** A model was found, on so many points, or an infinite one where that is null; there may be smaller ones. */
+  | { readonly kind: "found"; readonly size: number | null }
   /** It is derived that there is none. */
   | { readonly kind: "derived" }
   /**
@@ -53,6 +54,9 @@ export interface Findings {
 const LISTED_SIZES = 3;
 /** Models that are listed of each of those sizes. */
 const LISTED_MODELS = 60;
+/** Infinite models are looked for to the end of this round, within so many steps. */
+const INFINITE_ROUND = 1;
+const INFINITE_STEPS = 500;
 /** A derivation of a property is given up when so many clauses have been generated. */
 const DERIVATION_CLAUSES = 100;
 
@@ -101,7 +105,7 @@ class Examiner {
     this.#work = work;
   }
 
-  /** Lists small models, for every property to be tried on. */
+  /** Lists small models, or finds an infinite one where there are none, for every property to be tried on. */
   listModels(): void {
     for (let size = 1; size <= LISTED_SIZES; size += 1) {
       const task = { carrier: new Points(size), sentences: this.#sentences, relations: this.#relations };
@@ -112,6 +116,9 @@ class Examiner {
         return listed < LISTED_MODELS;
       });
     }
+    if (this.#models.length > 0) return;
+    const infinite = this.#findInfinite(this.#sentences, jointSignature([this.#theory]));
+    if (infinite !== null) this.#models.push({ structure: infinite, shows: [] });
   }
 
   /** @throws WorkEnded */
@@ -119,7 +126,7 @@ class Examiner {
     for (const model of this.#models)
       if (satisfies(model.structure, sentence, this.#meter)) {
         model.shows.push(sentence);
-        return { kind: "found", size: model.structure.carrier.size! };
+        return { kind: "found", size: model.structure.carrier.size };
       }
     if (this.#derive(not(sentence))) return { kind: "derived" };
     const sentences = [...this.#sentences, sentence];
@@ -131,11 +138,23 @@ class Examiner {
     if (found !== null) {
       const { structure } = found;
       this.#models.push({ structure, shows: [sentence] });
-      return { kind: "found", size: structure.carrier.size! };
+      return { kind: "found", size: structure.carrier.size };
+    }
+    const infinite = this.#findInfinite(sentences, signature);
+    if (infinite !== null) {
+      this.#models.push({ structure: infinite, shows: [sentence] });
+      return { kind: "found", size: null };
     }
     if (this.#meter.ended !== null) throw new WorkEnded(this.#meter.ended);
     const decided = bound !== null && search.noneUpTo >= bound.points ? bound : null;
     return { kind: "none", upTo: search.noneUpTo, decided };
+  }
+
+  /** An infinite structure that a short search meets. */
+  #findInfinite(sentences: readonly Formula[], signature: Signature): Structure | null {
+    const search = new InfiniteSearch({ sought: "a model", sentences, signature }, this.#meter, this.#work);
+    search.advance(INFINITE_ROUND, INFINITE_STEPS);
+    return search.found;
   }
 
   /** Whether a short search derives a sentence from the theory. */

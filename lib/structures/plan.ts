@@ -107,6 +107,26 @@ export function mostVisits(plan: Plan, carrier: Carrier): number {
   }
 }
 
+/** A bound on how many configurations such a walk lists; infinite beyond all use. */
+export function mostListed(plan: Plan, carrier: Carrier): number {
+  const listed = (part: Plan) => mostListed(part, carrier);
+  switch (plan.kind) {
+    case "not":
+      return listed(plan.body);
+    case "and":
+    case "or":
+      return plan.parts.reduce((sum, part) => sum + listed(part), 0);
+    case "implies":
+    case "iff":
+      return listed(plan.first) + listed(plan.second);
+    case "forall":
+    case "exists":
+      return carrier.mostExtensions(plan.named, plan.toCome) * (1 + listed(plan.body));
+    default:
+      return 0;
+  }
+}
+
 function planDepth(plan: Plan): number {
   switch (plan.kind) {
     case "not":
