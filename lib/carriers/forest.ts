@@ -19,9 +19,9 @@ export interface ForestConfiguration {
 
 /**
  * The tree in which every element has one parent and k = `branching` children; or, rooted, one in which all elements but
- * one have a parent. Any two elements have a common ancestor. (A forest of such trees of which at most one has a root
- * satisfies the same sentences, since what is far apart need not be joined.) With D = `offset`, a kind of pairs
- * gives the steps up and down between two elements that have a distance of at most D, and whether they have. Rooted, a kind
+ * one have a parent. Any two elements have a common ancestor. (With further trees without a root beside it the same
+ * sentences would hold: no finite number of quantifiers tells another tree from a place far away.) With D = `offset`, a
+ * kind of pairs gives the steps up and down between two elements that have a distance of at most D, and whether they have. Rooted, a kind
  * also gives the depth of an element, its distance from the root, if that is less than `ends`. Kinds of longer tuples
  * give this for all their elements and pairs.
  *
