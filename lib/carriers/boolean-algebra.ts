@@ -38,7 +38,7 @@ export interface BooleanConfiguration {
  * - Other cells are elements, or zero.
  *
  * It does not matter how many quantifiers are still to come. The same argument, with x in one algebra and y in another,
- * shows that each of the three is unique up to isomorphism (Koppelberg 1989, corollary 5.16, for the first).
+ * shows that each of the three is unique up to isomorphism (Koppelberg 1989, for the first).
  */
 export class BooleanAlgebra extends Listed<BooleanConfiguration> {
   readonly description: BooleanAlgebraDescription;

@@ -11,10 +11,21 @@ import { termsOf } from "../../logic/carrier-formulas.ts";
 import type { CarrierAtom, ElementTerm, GenericDescription } from "../../logic/structure-definition.ts";
 import type { BooleanAlgebra, BooleanConfiguration } from "../boolean-algebra.ts";
 import { BOTH, between, EQUAL, FORTH, type Generic, type GenericConfiguration } from "../generic.ts";
+import {
+  apply,
+  type Comparison,
+  compare,
+  complain,
+  type Element,
+  element,
+  firstComplaint,
+  number,
+  type Operation,
+  pairsOf,
+  writeComparison,
+  writeTerm,
+} from "./terms.ts";
 import type { Complaint, Vocabulary } from "./vocabulary.ts";
-
-type Comparison = CarrierAtom & { readonly kind: "compare" };
-type Operation = ElementTerm & { readonly kind: "apply" };
 
 /** What each class is called, and the name of its relation; null where it is written `<`. */
 const CLASSES: Readonly<
@@ -32,6 +43,8 @@ const ALGEBRA = "a Boolean algebra";
 /** How many terms each operation of a Boolean algebra takes. */
 const OPERANDS = { meet: 2, join: 2, co: 1, parent: null } as const;
 
+const WHERE_DEFINED = { meet: "a tree or a Boolean algebra", join: ALGEBRA, co: ALGEBRA, parent: "a forest" };
+
 /** The vocabulary of the generic graph, digraph, tournament or partial order. */
 export function genericVocabulary(carrier: Generic): Vocabulary<GenericConfiguration> {
   const { name, relation } = CLASSES[carrier.description.of];
@@ -39,7 +52,7 @@ export function genericVocabulary(carrier: Generic): Vocabulary<GenericConfigura
   return {
     complaint(atom) {
       if (atom.kind === "label") return labelComplaint(atom.name, name, example);
-      const wrong = firstComplaint(termsOf(atom), (term) => plainComplaint(term, name, example));
+      const wrong = firstComplaint(atom, (term) => plainComplaint(term, name, example));
       if (wrong !== null) return wrong;
       if (atom.kind === "holds") return relationComplaint(atom, name, relation);
       if (atom.relation === "=" || relation === null) return null;
@@ -76,7 +89,7 @@ export function booleanAlgebraVocabulary(carrier: BooleanAlgebra): Vocabulary<Bo
     complaint(atom) {
       if (atom.kind === "label") return labelComplaint(atom.name, ALGEBRA, "x ≤ y");
       if (atom.kind === "holds") return relationComplaint(atom, ALGEBRA, null);
-      const wrong = firstComplaint(termsOf(atom), algebraComplaint);
+      const wrong = firstComplaint(atom, algebraComplaint);
       if (wrong !== null) return wrong;
       if (termsOf(atom).some(hasElement)) return null;
       return complain(`\`${writeComparison(atom)}\` says nothing of an element`, "`x = 0`, of an element");
@@ -101,8 +114,8 @@ export function booleanAlgebraVocabulary(carrier: BooleanAlgebra): Vocabulary<Bo
       const pairs = pairsOf(elements).flatMap(([x, y]) => [
         ...ordersOf(x, y),
         compare(x, "=", y),
-        compare(apply("meet", [x, y]), "=", number(0)),
-        ...(top ? [compare(apply("join", [x, y]), "=", number(1))] : []),
+        compare(apply("meet", x, y), "=", number(0)),
+        ...(top ? [compare(apply("join", x, y), "=", number(1))] : []),
       ]);
       const larger = subsetsOf(elements).filter((some) => some.length > 2);
       return [...extremes, ...pairs, ...larger.flatMap((some) => cellsOf(some, top))];
@@ -135,7 +148,7 @@ function cellsOf(elements: readonly ElementTerm[], top: boolean): CarrierAtom[] 
   return subsetsOf(elements).flatMap((inside) => {
     const outside = elements.filter((other) => !inside.includes(other));
     const together = (name: "meet" | "join", some: readonly ElementTerm[]) =>
-      some.reduce((all, next) => apply(name, [all, next]));
+      some.reduce((all, next) => apply(name, all, next));
     if (inside.length === 0) return top ? [compare(together("join", outside), "=", number(1))] : [];
     const left = together("meet", inside);
     return outside.length === 0
@@ -163,7 +176,7 @@ function plainComplaint(term: ElementTerm, where: string, example: string): Comp
     case "apply":
       return complain(
         `\`${term.name}\` says nothing in ${where}`,
-        term.name === "parent" ? "a forest, where elements have parents" : `${ALGEBRA}, where it is defined`,
+        `${WHERE_DEFINED[term.name]}, where it is defined`,
       );
   }
 }
@@ -178,7 +191,10 @@ function algebraComplaint(term: ElementTerm): Complaint | null {
     case "shift":
       return complain(`${ALGEBRA} has no steps from an element to the next`, "`join(x, y)`");
     case "apply":
-      return operationComplaint(term) ?? firstComplaint(term.args, algebraComplaint);
+      return (
+        operationComplaint(term) ??
+        term.args.reduce<Complaint | null>((found, part) => found ?? algebraComplaint(part), null)
+      );
   }
 }
 
@@ -194,10 +210,7 @@ function operationComplaint({ name, args }: Operation): Complaint | null {
   );
 }
 
-function pathComplaint(
-  { variable, path }: ElementTerm & { readonly kind: "element" },
-  where: string,
-): Complaint | null {
+function pathComplaint({ variable, path }: Element, where: string): Complaint | null {
   if (path.length === 0) return null;
   return complain(`the elements of ${where} have no components`, `\`${variable}\` itself`);
 }
@@ -230,21 +243,6 @@ function labelComplaint(name: "colour" | "copy" | "part", where: string, example
   return complain(`${where} has no ${plural}`, `\`${example}\``);
 }
 
-function firstComplaint(
-  terms: readonly ElementTerm[],
-  complaint: (term: ElementTerm) => Complaint | null,
-): Complaint | null {
-  for (const term of terms) {
-    const found = complaint(term);
-    if (found !== null) return found;
-  }
-  return null;
-}
-
-function complain(message: string, suggestion: string): Complaint {
-  return { message, suggestion };
-}
-
 function hasElement(term: ElementTerm): boolean {
   return term.kind === "element" || (term.kind === "apply" && term.args.some(hasElement));
 }
@@ -259,47 +257,10 @@ function asComparison(atom: CarrierAtom): Comparison {
   return atom;
 }
 
-function element(variable: string): ElementTerm {
-  return { kind: "element", variable, path: [] };
-}
-
-function number(value: number): ElementTerm {
-  return { kind: "number", value };
-}
-
-function apply(name: Operation["name"], args: readonly ElementTerm[]): ElementTerm {
-  return { kind: "apply", name, args };
-}
-
-function compare(left: ElementTerm, relation: Comparison["relation"], right: ElementTerm): CarrierAtom {
-  return { kind: "compare", relation, left, right };
-}
-
 function ordersOf(x: ElementTerm, y: ElementTerm): CarrierAtom[] {
   return [compare(x, "<", y), compare(y, "<", x), compare(x, "≤", y), compare(y, "≤", x)];
 }
 
-function pairsOf<Member>(members: readonly Member[]): (readonly [Member, Member])[] {
-  return members.flatMap((x, i) => members.slice(i + 1).map((y) => [x, y] as const));
-}
-
-function writeComparison({ left, relation, right }: Comparison): string {
-  return `${writeTerm(left)} ${relation} ${writeTerm(right)}`;
-}
-
 function writeTerms(name: string, args: readonly ElementTerm[]): string {
   return `${name}(${args.map(writeTerm).join(", ")})`;
-}
-
-function writeTerm(term: ElementTerm): string {
-  switch (term.kind) {
-    case "element":
-      return [term.variable, ...term.path].join(".");
-    case "number":
-      return String(term.value);
-    case "shift":
-      return `${writeTerm(term.of)} ${term.by < 0 ? "-" : "+"} ${Math.abs(term.by)}`;
-    case "apply":
-      return writeTerms(term.name, term.args);
-  }
 }
