@@ -18,7 +18,7 @@ import {
   inlineVerdict,
 } from "../kernel/display/inline.ts";
 import { sourceOf, structureData } from "../kernel/display/structures.ts";
-import { buildStructure } from "../lib/carriers/structure.ts";
+import { buildStructure } from "../lib/carriers/defined.ts";
 import { parseCell } from "../lib/language/parser.ts";
 import { emptyScope, type NamedTheory, type Scope, type Statement } from "../lib/language/statements.ts";
 import { MAX_AXIOMS } from "../lib/language/theories.ts";

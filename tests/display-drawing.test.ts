@@ -12,7 +12,8 @@ import {
   matrixOf,
   orderKind,
 } from "../kernel/display/order.ts";
-import { buildStructure, type Structure } from "../lib/carriers/structure.ts";
+import { buildStructure } from "../lib/carriers/defined.ts";
+import type { Structure } from "../lib/carriers/structure.ts";
 import type { RelationSymbol } from "../lib/logic/formula.ts";
 import { readMarkup } from "./support/markup.ts";
 

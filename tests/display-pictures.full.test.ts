@@ -1,7 +1,7 @@
 /** Pictures of all relations on 4 points: nothing in them overlaps. */
 import { beforeAll, expect, it } from "vitest";
 import { drawStructure, prepareDrawing } from "../kernel/display/drawing.ts";
-import { buildStructure } from "../lib/carriers/structure.ts";
+import { buildStructure } from "../lib/carriers/defined.ts";
 import { findOverlaps } from "./support/picture-geometry.ts";
 import { relationsUpToIsomorphism } from "./support/small-relations.ts";
 

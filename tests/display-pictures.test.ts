@@ -15,7 +15,8 @@ import {
   matrixOf,
   orderKind,
 } from "../kernel/display/order.ts";
-import { buildStructure, type Structure } from "../lib/carriers/structure.ts";
+import { buildStructure } from "../lib/carriers/defined.ts";
+import type { Structure } from "../lib/carriers/structure.ts";
 import { readMarkup } from "./support/markup.ts";
 import { findOverlaps } from "./support/picture-geometry.ts";
 import { type Pairs, relationsUpToIsomorphism } from "./support/small-relations.ts";

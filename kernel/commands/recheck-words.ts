@@ -2,6 +2,8 @@
  * What a stored result says in its verdict and data, held against its evidence. Only what evidence can bear out is
  * looked at; sizes and counts that a complete search has settled without evidence are remarked on.
  */
+
+import { buildCarrier } from "../../lib/carriers/build.ts";
 import type {
   Evidence,
   Fact,
@@ -275,6 +277,7 @@ function settles(fact: Fact, word: unknown, axiom: number, others: TheoryRecord)
         (fact.conclusion === null || fact.conclusion === axiom)
       );
     case "no-model":
+    case "no-finite-model":
       return false;
   }
 }
@@ -286,7 +289,7 @@ function findOtherSizes({ data }: Stored, { facts }: Evidence): string | null {
   const structures = structuresIn(facts);
   for (const key of SIZES) {
     const size = data[key] ?? null;
-    if (size !== null && !structures.some(({ carrier }) => carrier.size === size))
+    if (size !== null && !structures.some((structure) => pointsOf(structure) === size))
       return `a structure on ${String(size)} points is stored, and the evidence has none of that size`;
   }
   const proven = facts.flatMap((fact) => (fact.fact === "no-model" ? [fact.size] : []));
@@ -302,14 +305,25 @@ function structuresIn(facts: readonly Fact[]): readonly StructureRecord[] {
   return facts.flatMap((fact) => (fact.fact === "structure" ? [fact.structure] : []));
 }
 
+/** How many elements; null when there are infinitely many. */
+function pointsOf({ carrier }: StructureRecord): number | null {
+  return buildCarrier(carrier).size;
+}
+
+function sizeText(structure: StructureRecord): string {
+  const size = pointsOf(structure);
+  return size === null ? "infinitely many" : String(size);
+}
+
 function findOtherModels(models: unknown, size: number, { facts }: Evidence): string | null {
   const structures = structuresIn(facts);
   if (!isListOfObjects(models)) return DAMAGED;
   if (models.length !== structures.length)
     return `${models.length} models are stored, and the evidence has ${structures.length}`;
-  for (const [place, { carrier, tables }] of structures.entries()) {
-    if (carrier.size !== size)
-      return `the evidence has a model on ${carrier.size} points, where ${size} were asked for`;
+  for (const [place, structure] of structures.entries()) {
+    const { carrier, tables } = structure;
+    if (carrier.kind !== "points" || carrier.size !== size)
+      return `the evidence has a model on ${sizeText(structure)} points, where ${size} were asked for`;
     const relations = models[place] as Readonly<Record<string, unknown>>;
     const isSame =
       Object.keys(relations).length === Object.keys(tables).length &&
@@ -332,17 +346,23 @@ function tupleOf(kind: number, places: number, size: number): readonly number[] 
 }
 
 function findForeignSize(upTo: number, { facts }: Evidence): string | null {
-  const larger = structuresIn(facts).find(({ carrier }) => carrier.size > upTo);
+  const larger = structuresIn(facts).find(
+    (structure) => (pointsOf(structure) ?? Number.POSITIVE_INFINITY) > upTo,
+  );
   return larger === undefined
     ? null
-    : `the evidence has a model on ${larger.carrier.size} points, where up to ${upTo} were asked for`;
+    : `the evidence has a model on ${sizeText(larger)} points, where up to ${upTo} were asked for`;
 }
 
+interface StoredSearch {
+  readonly size?: unknown;
+  readonly infinite?: unknown;
+}
 interface StoredFinding {
   readonly property?: unknown;
   readonly status?: unknown;
-  readonly modelWith?: { readonly size?: unknown } | null;
-  readonly modelWithout?: { readonly size?: unknown } | null;
+  readonly modelWith?: StoredSearch | null;
+  readonly modelWithout?: StoredSearch | null;
 }
 
 /** What `describe` has found out about named properties. */
@@ -356,9 +376,11 @@ function findOtherFindings(
   for (const { property, status, modelWith, modelWithout } of properties as readonly StoredFinding[]) {
     const sentence = sentenceOfProperty(String(property), theory);
     if (sentence === null) return `${quoted(property)} is no property of a relation of the theory`;
-    const shows = (wanted: Formula, size: unknown) =>
-      size === null || size === undefined || hasModel(evidence, wanted, size);
-    if (!shows(sentence, modelWith?.size) || !shows(not(sentence), modelWithout?.size))
+    const shows = (wanted: Formula, search: StoredSearch | null | undefined) => {
+      if (search?.infinite === true) return hasModel(evidence, wanted, null);
+      return search?.size == null || hasModel(evidence, wanted, search.size);
+    };
+    if (!shows(sentence, modelWith) || !shows(not(sentence), modelWithout))
       return `no structure of the evidence shows what is stored of ${quoted(property)}`;
     const derived = status === "follows" ? not(not(sentence)) : status === "excluded" ? not(sentence) : null;
     if (derived !== null && !hasDerivation(evidence, derived))
@@ -380,10 +402,11 @@ function indexOf({ sentences }: Evidence, formula: Formula): number {
   return sentences.findIndex((sentence: FormulaRecord) => JSON.stringify(sentence) === text);
 }
 
+/** @param size null for an infinite one */
 function hasModel(evidence: Evidence, formula: Formula, size: unknown): boolean {
   const index = indexOf(evidence, formula);
   return evidence.facts.some(
-    (fact) => fact.fact === "structure" && fact.structure.carrier.size === size && fact.holds.includes(index),
+    (fact) => fact.fact === "structure" && pointsOf(fact.structure) === size && fact.holds.includes(index),
   );
 }
 

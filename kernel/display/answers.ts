@@ -20,7 +20,7 @@ import { countBlocks } from "./counts.ts";
 import { showDerivation, showDerivations } from "./derivations.ts";
 import { numberedStructures } from "./galleries.ts";
 import { drawStrength } from "./strength.ts";
-import { sizeOf, structureBlocks } from "./structures.ts";
+import { domainOf, structureBlocks } from "./structures.ts";
 import { budgetOf, claimOf, derivedText, endText, pairReason, reportText, summarise } from "./summaries.ts";
 import { counted, onSizesTo } from "./text.ts";
 import { theoryTable } from "./theories.ts";
@@ -201,7 +201,7 @@ function minimalBlocks(answer: MinimiseAnswer): readonly Block[] {
 }
 
 function axiomReason(axiom: AxiomAnswer, checked: string, share: number): string {
-  if (axiom.witness !== null) return `fails alone on ${sizeOf(axiom.witness)}${checked}`;
+  if (axiom.witness !== null) return `fails alone on ${domainOf(axiom.witness)}${checked}`;
   const { search, derivation } = axiom;
   if (derivation !== null) return `${derivedText([derivation])}${checked}`;
   if (axiom.verdict === "redundant") return `the same as another axiom${checked}`;
@@ -269,7 +269,7 @@ function commonText(
   common: CompareAnswer["pairs"][number]["common"],
   checked: string,
 ): string {
-  if (common !== null) return `a common model on ${sizeOf(common)}${checked}`;
+  if (common !== null) return `a common model on ${domainOf(common)}${checked}`;
   return isInconsistent === true ? `no common model${checked}` : "no common model found";
 }
 
@@ -302,7 +302,7 @@ function dualBlocks(answer: DualAnswer, statement: Statement): readonly Block[] 
           ? word === "open"
             ? "no structure found that tells them apart"
             : `each follows from the other${checked}`
-          : `a model of ${name(witness.modelOf)} on ${sizeOf(witness.structure)} is none of ${name(witness.modelOf === left ? right : left)}${checked}`,
+          : `a model of ${name(witness.modelOf)} on ${domainOf(witness.structure)} is none of ${name(witness.modelOf === left ? right : left)}${checked}`,
       ],
     ]),
     look: "prose",

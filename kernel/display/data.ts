@@ -1,6 +1,6 @@
 /** The `data` of `eval --json`: what a program wants to know of an answer. The README lists the keys. */
 
-import { buildStructure } from "../../lib/carriers/structure.ts";
+import { buildStructure } from "../../lib/carriers/defined.ts";
 import type { Answer, ClaimAnswer, ShownDerivation } from "../../lib/inquiry/answer.ts";
 import type { Findings } from "../../lib/inquiry/examine.ts";
 import { printFormula } from "../../lib/language/printer.ts";

@@ -1,5 +1,5 @@
 /** What is shown for statements that ask nothing: declarations, definitions and descriptions. */
-import { buildStructure } from "../../lib/carriers/structure.ts";
+import { buildStructure } from "../../lib/carriers/defined.ts";
 import type { Findings } from "../../lib/inquiry/examine.ts";
 import type { Definition, DescribeSubject, Statement } from "../../lib/language/statements.ts";
 import { depthOf, type Formula, relationsOf, usesIdentity, variablesOf } from "../../lib/logic/formula.ts";
@@ -9,7 +9,7 @@ import type { Shown } from "./answers.ts";
 import { type Block, code, formulaOf, type Inline, line } from "./blocks.ts";
 import { renderBundle } from "./bundle.ts";
 import { findingBlocks } from "./findings.ts";
-import { structureBlocks } from "./structures.ts";
+import { domainOfDefinition, structureBlocks } from "./structures.ts";
 import { counted, enumerate } from "./text.ts";
 import {
   FOLDED_AXIOMS,
@@ -45,7 +45,7 @@ function definitionText(definition: Definition): string {
     case "theory":
       return `a theory of ${counted(definition.theory.axioms.length, "axiom")}`;
     case "structure":
-      return `a structure on ${counted(definition.structure.carrier.size, "point")}`;
+      return `a structure on ${domainOfDefinition(definition.structure)}`;
     case "formula":
       return definition.parameters.length === 0
         ? "a sentence"
@@ -89,7 +89,7 @@ export function describeSubject(
     }
     case "structure": {
       const { text, structure } = subject.structure;
-      const summary = `${text}: a structure on ${counted(structure.carrier.size, "point")}`;
+      const summary = `${text}: a structure on ${domainOfDefinition(structure)}`;
       const relations = structure.relations.map(({ relation }) => relationText(relation)).join(", ");
       return {
         summary,

@@ -42,7 +42,12 @@ export function findingsData({ properties }: Findings): readonly Readonly<Record
 function searchData(search: ModelSearch): Readonly<Record<string, unknown>> {
   if (search.kind === "derived") return { size: null, noneUpTo: null, decided: true };
   return search.kind === "found"
-    ? { size: search.size, noneUpTo: null, decided: false }
+    ? {
+        size: search.size,
+        ...(search.size === null ? { infinite: true } : {}),
+        noneUpTo: null,
+        decided: false,
+      }
     : { size: null, noneUpTo: search.upTo, decided: search.decided !== null };
 }
 
@@ -98,7 +103,9 @@ function sized(
 ): readonly Inline[] {
   return properties.flatMap((finding, index): Inline[] => {
     const { having, lacking } = finding;
-    const sizes = [having, lacking].flatMap((search) => (search.kind === "found" ? [search.size] : []));
+    const sizes = [having, lacking].flatMap((search) =>
+      search.kind === "found" ? [search.size ?? "infinite"] : [],
+    );
     return [index === 0 ? "" : ", ", nameOf(finding), ` (${sizes.join(";\u00a0")})`];
   });
 }

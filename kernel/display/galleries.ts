@@ -2,7 +2,7 @@
 import type { Structure } from "../../lib/carriers/structure.ts";
 import { type Block, code, type Inline, line } from "./blocks.ts";
 import { drawGallery } from "./drawing.ts";
-import { sizeOf, sourceOf, structureBlocks } from "./structures.ts";
+import { domainOf, sourceOf, structureBlocks } from "./structures.ts";
 import { counted } from "./text.ts";
 
 /** So few structures are shown one by one, each with its tables. */
@@ -72,5 +72,5 @@ function listOf(noun: string, rows: readonly Row[]): Block {
 
 function listed(structure: Structure): readonly Inline[] {
   const source = sourceOf(structure);
-  return [source === null ? `${sizeOf(structure)}; too many tuples to list` : code(source)];
+  return [source === null ? `${domainOf(structure)}; too many tuples to list` : code(source)];
 }

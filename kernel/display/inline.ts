@@ -1,5 +1,5 @@
 /** Short values for the middle of sentences: a verdict, a count, a formula, and what a name stands for. */
-import { buildStructure } from "../../lib/carriers/structure.ts";
+import { buildStructure } from "../../lib/carriers/defined.ts";
 import { printAxiomSet } from "../../lib/language/printer.ts";
 import type { Formula } from "../../lib/logic/formula.ts";
 import type { StructureDefinition } from "../../lib/logic/structure-definition.ts";
@@ -7,7 +7,7 @@ import type { Theory } from "../../lib/logic/theory.ts";
 import type { MimeBundle } from "../session/evaluator.ts";
 import { code, formulaOf } from "./blocks.ts";
 import { showInline } from "./bundle.ts";
-import { sizeOf, sourceOf } from "./structures.ts";
+import { domainOf, sourceOf } from "./structures.ts";
 import { grouped } from "./text.ts";
 
 /** The word alone. */
@@ -44,5 +44,5 @@ export function inlineTheory(theory: Theory): MimeBundle {
 export function inlineStructure(definition: StructureDefinition): MimeBundle {
   const structure = buildStructure(definition);
   const source = sourceOf(structure);
-  return showInline(source === null ? `a structure on ${sizeOf(structure)}` : code(source));
+  return showInline(source === null ? `a structure on ${domainOf(structure)}` : code(source));
 }

@@ -1,40 +1,33 @@
-/** Structures as tables, lists, pictures and cell text. */
-import { Points } from "../../lib/carriers/points.ts";
-import { type Structure, tuplesOf } from "../../lib/carriers/structure.ts";
-import { type Block, code, line, type TableBlock } from "./blocks.ts";
-import { drawStructure } from "./drawing.ts";
-import { differencesOf, matrixOf } from "./order.ts";
+/**
+ * Structures as they are shown. What depends on the kind of structure is decided here: points are shown by tables and
+ * lists of tuples, infinite structures by their definition and a sample.
+ */
+import { buildCarrier } from "../../lib/carriers/build.ts";
+import type { Structure } from "../../lib/carriers/structure.ts";
+import type { StructureDefinition } from "../../lib/logic/structure-definition.ts";
+import type { Block } from "./blocks.ts";
+import { carrierWords, definitionText } from "./definition-text.ts";
+import { isOnPoints, onPoints, pointsBlocks, pointsData, pointsSource } from "./finite-structures.ts";
+import { definedBlocks } from "./infinite.ts";
 import { counted } from "./text.ts";
 
-/** Structures with more points get lists of tuples instead of tables of 0 and 1. */
-const TABLE_POINTS = 20;
+/** What a structure lives on, as it is said after `on`: `3 points`, `the rational line`. */
+export function domainOf({ carrier }: Structure): string {
+  return carrier.size === null ? carrierWords(carrier.description) : counted(carrier.size, "point");
+}
 
-/** From this many points on it is said when a relation depends on differences alone. */
-const ROTATION_POINTS = 5;
-
-/** Relations with more tuples are given by their number. */
-const LISTED_TUPLES = 400;
-
-/** Cell text longer than this is folded. */
-const SHORT_SOURCE = 160;
-
-/** How many elements: `3 points`. */
-export function sizeOf(structure: Structure): string {
-  return counted(pointsOf(structure).size, "point");
+/** As {@link domainOf}, for a structure that has not been built. */
+export function domainOfDefinition({ carrier }: StructureDefinition): string {
+  const size = carrier.kind === "points" ? carrier.size : buildCarrier(carrier).size;
+  return size === null ? carrierWords(carrier) : counted(size, "point");
 }
 
 /**
- * The structure as the cell language writes it, so that it can be copied into a `define`; null when it has too many
- * tuples to be of use there.
+ * The structure as the cell language writes it, so that it can be copied into a `define`; null when it is too long to be
+ * of use there.
  */
 export function sourceOf(structure: Structure): string | null {
-  const { size } = pointsOf(structure);
-  const relations: string[] = [];
-  for (const { relation, holds } of structure.tables.values()) {
-    if (countOf(holds) > LISTED_TUPLES) return null;
-    relations.push(`${relation.name} is ${setOf(structure, relation.name)}`);
-  }
-  return `points ${size}${relations.length === 0 ? "" : ` where ${relations.join(" and ")}`}`;
+  return isOnPoints(structure) ? pointsSource(structure) : definitionText(structure);
 }
 
 /**
@@ -42,74 +35,20 @@ export function sourceOf(structure: Structure): string | null {
  * @param role what it is an example of, as a noun phrase: `countermodel`
  */
 export function structureBlocks(role: string, structure: Structure): readonly Block[] {
-  const source = sourceOf(structure);
-  const isShort = source !== null && source.length <= SHORT_SOURCE;
-  const first = isShort ? line(`${role}: `, code(source)) : line(`${role}: ${sizeOf(structure)}`);
-  const views: Block[] = [];
-  const lists: Block[] = rotationLines(structure);
-  for (const { relation, holds } of structure.tables.values()) {
-    if (relation.places === 2 && pointsOf(structure).size <= TABLE_POINTS)
-      views.push(matrixTable(structure, relation.name));
-    else if (!isShort) {
-      const count = countOf(holds);
-      if (count > LISTED_TUPLES) lists.push(line(`${relation.name}: ${counted(count, "tuple")}, not listed`));
-      else lists.push(line(`${relation.name} = ${setOf(structure, relation.name)}`));
-    }
-  }
-  const picture = drawStructure(structure);
-  if (picture !== null) views.push(picture);
-  const blocks: Block[] = [first, ...lists];
-  if (views.length > 0) blocks.push({ kind: "beside", blocks: views });
-  if (source !== null && !isShort)
-    blocks.push({ kind: "fold", title: "as cell text", blocks: [{ kind: "source", text: source }] });
-  return [{ kind: "group", blocks }];
+  if (isOnPoints(structure)) return pointsBlocks(role, structure);
+  const numbered = onPoints(structure);
+  if (numbered === null) return definedBlocks(role, structure);
+  return [...definedBlocks(role, structure), ...pointsBlocks("the same on points", numbered)];
 }
 
-/** Relations that look the same from every point of a round: on many points that says more than their pairs. */
-function rotationLines(structure: Structure): Block[] {
-  const { size } = pointsOf(structure);
-  if (size < ROTATION_POINTS) return [];
-  return [...structure.tables.values()].flatMap(({ relation }) => {
-    if (relation.places !== 2) return [];
-    const differences = differencesOf(matrixOf(size, tuplesOf(structure, relation.name)));
-    if (differences === null || differences.length === 0 || differences.length === size) return [];
-    const list = differences.length === 1 ? `is ${differences[0]}` : `is one of ${differences.join(", ")}`;
-    return [line(`${relation.name} holds of (x, y) exactly when y − x modulo ${size} ${list}`)];
-  });
-}
-
-/** Rows for the first place, columns for the second; 1 where the relation holds. */
-function matrixTable(structure: Structure, name: string): TableBlock {
-  const { size } = pointsOf(structure);
-  const matrix = matrixOf(size, tuplesOf(structure, name));
-  return {
-    kind: "table",
-    caption: null,
-    head: [name, ...matrix.map((_, point) => String(point + 1))],
-    rows: matrix.map((row, point) => [[String(point + 1)], ...row.map((holds) => [holds ? "1" : "0"])]),
-    look: "matrix",
-  };
-}
-
-/** For `eval --json`: the size, and for each relation its tuples of points counted from 1. */
+/**
+ * For `eval --json`: the size, null for an infinite one, and for each relation its tuples of points counted from 1; for
+ * an infinite structure its definition instead.
+ */
 export function structureData(structure: Structure): Readonly<Record<string, unknown>> {
-  const relations: Record<string, unknown> = {};
-  for (const name of structure.tables.keys()) relations[name] = tuplesOf(structure, name);
-  return { size: pointsOf(structure).size, relations };
-}
-
-function setOf(structure: Structure, relation: string): string {
-  const tuples = tuplesOf(structure, relation).map((tuple) => `(${tuple.join(",")})`);
-  return tuples.length === 0 ? "{}" : `{ ${tuples.join(", ")} }`;
-}
-
-function countOf(holds: Uint8Array): number {
-  let count = 0;
-  for (const value of holds) count += value;
-  return count;
-}
-
-function pointsOf(structure: Structure): Points {
-  if (structure.carrier instanceof Points) return structure.carrier;
-  throw new TypeError(`no way to show a structure on ${structure.carrier.description.kind}`);
+  const { size } = structure.carrier;
+  const numbered = onPoints(structure);
+  return numbered === null
+    ? { size, definition: definitionText(structure) }
+    : { size, relations: pointsData(numbered) };
 }

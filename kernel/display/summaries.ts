@@ -22,7 +22,7 @@ import type {
 } from "../../lib/inquiry/answer.ts";
 import type { Claim, Statement } from "../../lib/language/statements.ts";
 import { DEFAULT_BUDGET, type EndReason } from "../../lib/logic/meter.ts";
-import { sizeOf } from "./structures.ts";
+import { domainOf, domainOfDefinition } from "./structures.ts";
 import { counted, enumerate, grouped, onSizesTo, withArticle } from "./text.ts";
 
 /** The budget that a statement was run with, in steps. */
@@ -66,7 +66,7 @@ function claimReason(statement: Statement, answer: ClaimAnswer, budget: number):
   if (claim?.kind === "independent" && answer.axioms !== null)
     return axiomsReason(answer.axioms, answer.evidence !== null);
   const found = enumerate(
-    answer.structures.map(({ role, structure }) => `${withArticle(role)} on ${sizeOf(structure)}`),
+    answer.structures.map(({ role, structure }) => `${withArticle(role)} on ${domainOf(structure)}`),
   );
   if (answer.verdict === "open") {
     const open = answer.searches.flatMap((search, place) => {
@@ -79,7 +79,7 @@ function claimReason(statement: Statement, answer: ClaimAnswer, budget: number):
     return reasons.length === 0 ? `${stepsText(answer.steps, budget)} spent` : reasons.join("; ");
   }
   if (claim?.kind === "true-in" || claim?.kind === "false-in")
-    return `evaluated in ${claim.structure.text}, ${counted(claim.structure.structure.carrier.size, "point")}${checked}`;
+    return `evaluated in ${claim.structure.text}, ${domainOfDefinition(claim.structure.structure)}${checked}`;
   if (answer.inconsistent) return `${inconsistencyText(claim)}${checked}`;
   if (answer.derivations.length > 0 || found === "") {
     const derived = answer.derivations.length > 0 ? derivedText(answer.derivations) : memberText(claim);
@@ -297,10 +297,10 @@ export function pairReason(pair: PairAnswer, names: readonly string[], checked: 
   const [left, right] = [names[pair.left]!, names[pair.right]!];
   const found: string[] = [];
   if (pair.leftOnly !== null)
-    found.push(`a model of ${left} on ${sizeOf(pair.leftOnly)} is none of ${right}${checked}`);
+    found.push(`a model of ${left} on ${domainOf(pair.leftOnly)} is none of ${right}${checked}`);
   else if (pair.leftEntailsRight) found.push(`${left} entails ${right}${checked}`);
   if (pair.rightOnly !== null)
-    found.push(`a model of ${right} on ${sizeOf(pair.rightOnly)} is none of ${left}${checked}`);
+    found.push(`a model of ${right} on ${domainOf(pair.rightOnly)} is none of ${left}${checked}`);
   else if (pair.rightEntailsLeft) found.push(`${right} entails ${left}${checked}`);
   if (
     pair.verdict === "open" ||

@@ -1,5 +1,5 @@
 /** From a statement to the answer of the question that it asks. */
-import { buildStructure } from "../../lib/carriers/structure.ts";
+import { buildStructure } from "../../lib/carriers/defined.ts";
 import type { Answer, ClaimAnswer } from "../../lib/inquiry/answer.ts";
 import { checkFinite } from "../../lib/inquiry/check-finite.ts";
 import {

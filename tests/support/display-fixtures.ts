@@ -1,4 +1,5 @@
-import { buildStructure, type Structure } from "../../lib/carriers/structure.ts";
+import { buildStructure } from "../../lib/carriers/defined.ts";
+import type { Structure } from "../../lib/carriers/structure.ts";
 import { EVIDENCE_FORMAT, EVIDENCE_VERSION, type Evidence } from "../../lib/evidence/format.ts";
 import type { ClaimAnswer, DerivationReport, Search } from "../../lib/inquiry/answer.ts";
 import type { Claim, NamedTheory, Statement, StatementKind } from "../../lib/language/statements.ts";
