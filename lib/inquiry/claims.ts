@@ -4,6 +4,7 @@ import type { Formula } from "../logic/formula.ts";
 import { WorkEnded } from "../logic/meter.ts";
 import type { Theory } from "../logic/theory.ts";
 import { satisfies } from "../structures/evaluate.ts";
+import { mostListed, planSentence } from "../structures/plan.ts";
 import type { ClaimAnswer, ClaimVerdict, ShownDerivation, ShownReason, ShownStructure } from "./answer.ts";
 import { certify } from "./certify.ts";
 import { EvidenceWriter } from "./evidence-writer.ts";
@@ -89,10 +90,15 @@ export function askTruth(
       steps: meter.steps,
       evidence: null,
       structures: [],
-      searches: [{ ...search, ended: problem.reason }],
+      searches: [{ ...search, ended: problem.reason, configurations: listedIn(structure, sentence) }],
       ...rest,
     };
   }
+}
+
+/** How many configurations a walk through a sentence may list; null on a finite structure. */
+function listedIn({ carrier }: Structure, sentence: Formula): number | null {
+  return carrier.size === null ? mostListed(planSentence(sentence), carrier) : null;
 }
 
 /** `T is consistent`: holds when a model is found, fails when a contradiction is derived. */

@@ -156,7 +156,9 @@ export class Settler {
       outcome: run.derived !== null ? "derived" : structure !== null ? "refuted" : "open",
       structure,
       infinite,
-      noFinite: run.noFinite === null ? null : this.#showReason(run.noFinite, premises),
+      // From premises that contradict each other everything follows: that is all there is to show.
+      noFinite:
+        run.noFinite === null || run.derived !== null ? null : this.#showReason(run.noFinite, premises),
       derivations,
       inconsistent: derivations.some(({ conclusion }) => conclusion === null),
       search: run.search,
@@ -403,6 +405,11 @@ class Run {
     try {
       this.#work.report(`a reason why there is no finite model: ${this.#reasons.tried} tried`);
       this.noFinite = this.#reasons.advance(level, share.meter, this.infinite);
+      const contradiction = this.noFinite?.obligations.find(
+        ({ derived }) => derived?.derivation.usesConclusion === false,
+      );
+      if (contradiction?.derived != null)
+        this.derived = [{ ...contradiction.derived, label: "a contradiction" }];
     } catch (problem) {
       if (!(problem instanceof WorkEnded) || share.ended === "interrupted") throw problem;
     } finally {

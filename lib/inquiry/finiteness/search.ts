@@ -24,6 +24,7 @@ export interface ShownObligation {
   /** What it says, for people: "it is transitive there". */
   readonly role: string;
   /** Null when the very same sentence is an axiom. */
+  readonly spent?: number;
   readonly derived: { readonly task: DerivationTask; readonly derivation: Derivation } | null;
 }
 
@@ -128,11 +129,8 @@ export class FinitenessSearch {
     return {
       reason,
       obligations: obligations.map(({ formula, role }, place) => {
-        const { derivation } = goals[place]!;
-        return {
-          formula,
-          role,
-          derived: derivation === null ? null : { task: this.#task(formula), derivation },
+        const { derivation, spent } = goals[place]!;
+        return { formula, role, spent, derived: derivation === null ? null : { task: this.#task(formula), derivation },
         };
       }),
     };
