@@ -157,7 +157,7 @@ export function miniscopeFormula(
 }
 
 /** The conjunction or disjunction, flat, without ⊤ and ⊥. */
-function junction(kind: "and" | "or", parts: readonly TermFormulaRecord[]): TermFormulaRecord {
+export function junction(kind: "and" | "or", parts: readonly TermFormulaRecord[]): TermFormulaRecord {
   const [neutral, absorbing] = kind === "and" ? (["true", "false"] as const) : (["false", "true"] as const);
   const flat = parts.flatMap((part) =>
     part[0] === kind ? partsOf(part) : part[0] === neutral ? [] : [part],

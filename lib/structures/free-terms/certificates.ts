@@ -1,0 +1,107 @@
+/** The search for certificates of sentences about free terms, of growing size. */
+import type { CertificateRecord, TermsRecord } from "../../carriers/free-terms.ts";
+import { type Claim, FreeTerms } from "../../carriers/free-terms-check.ts";
+import {
+  type FormulaRecord,
+  freeVariables,
+  type Growth,
+  partsOf,
+  type TermFormulaRecord,
+  type TermRecord,
+} from "../../logic/records/formulas.ts";
+
+/** What it costs to tell the constructors of a parameter apart, as many as the symbols of a term. */
+const COST_OF_CASES = 3;
+
+/** Certificates for one structure. */
+export class CertificateSearch {
+  readonly #terms: FreeTerms;
+  readonly #constructors: readonly (readonly [string, number])[];
+  readonly #growth: Growth;
+
+  /** @param growth counts all parts of formulas that are looked at */
+  constructor(record: TermsRecord, growth: Growth) {
+    this.#terms = new FreeTerms(record, growth);
+    this.#constructors = Object.entries(record.constructors).map(([name, { length }]) => [name, length]);
+    this.#growth = growth;
+  }
+
+  /**
+   * A certificate for the sentence.
+   * @param size how many symbols its terms may have together, counting cases as some
+   */
+  find(sentence: FormulaRecord, size: number): CertificateRecord | null {
+    if (!this.#terms.interprets(sentence)) return null;
+    return this.#refute(this.#terms.negation(sentence), size);
+  }
+
+  #refute(claim: Claim, left: number): CertificateRecord | null {
+    const { formula } = claim;
+    if (formula[0] === "false") return [];
+    const parameters = [...freeVariables(formula)].sort((a, b) => Number(a) - Number(b));
+    if (!hasForall(formula)) {
+      if (this.#terms.isRefuted(claim)) return [];
+    } else {
+      for (const [size, terms] of this.#termsOf(parameters, left).entries()) {
+        for (const term of terms) {
+          const rest = this.#refute(this.#terms.instances(claim, [term])!, left - size);
+          if (rest !== null) return [["instances", term], ...rest];
+        }
+      }
+    }
+    if (left < COST_OF_CASES) return null;
+    for (const parameter of parameters) {
+      for (const kind of ["cases", "induction"] as const) {
+        const branches = this.#branches(claim, parameter, kind === "induction", left - COST_OF_CASES);
+        if (branches !== null) return [[kind, parameter, branches]];
+      }
+    }
+    return null;
+  }
+
+  #branches(
+    claim: Claim,
+    parameter: string,
+    isInductive: boolean,
+    left: number,
+  ): Readonly<Record<string, CertificateRecord>> | null {
+    const found: [string, CertificateRecord][] = [];
+    for (const [symbol, branch] of this.#terms.branches(claim, parameter, isInductive)!) {
+      const steps = this.#refute(branch, left);
+      if (steps === null) return null;
+      found.push([symbol, steps]);
+    }
+    return Object.fromEntries(found);
+  }
+
+  /** By their number of symbols, the terms with the parameters that have at most so many. */
+  #termsOf(parameters: readonly string[], most: number): readonly (readonly TermRecord[])[] {
+    const bySize: TermRecord[][] = [[]];
+    for (let size = 1; size <= most; size += 1) {
+      const terms: TermRecord[] = size === 1 ? [...parameters] : [];
+      for (const [symbol, places] of this.#constructors)
+        for (const args of listsOf(bySize, places, size - 1)) terms.push([symbol, ...args]);
+      this.#growth.add(terms.length);
+      bySize.push(terms);
+    }
+    return bySize;
+  }
+}
+
+/** The lists of so many terms that have so many symbols together. */
+function listsOf(
+  bySize: readonly (readonly TermRecord[])[],
+  count: number,
+  size: number,
+): readonly (readonly TermRecord[])[] {
+  if (count === 0) return size === 0 ? [[]] : [];
+  const lists: TermRecord[][] = [];
+  for (let first = 1; first <= size - (count - 1); first += 1)
+    for (const rest of listsOf(bySize, count - 1, size - first))
+      for (const term of bySize[first] ?? []) lists.push([term, ...rest]);
+  return lists;
+}
+
+function hasForall(formula: TermFormulaRecord): boolean {
+  return formula[0] === "forall" || partsOf(formula).some(hasForall);
+}
