@@ -55,6 +55,7 @@ export class Tuples extends Listed<TuplesConfiguration> {
       let bases: readonly unknown[] = [base];
       for (let left = width - 1; left >= 0; left -= 1)
         bases = bases.flatMap((one) => this.over.extensions(one, toCome * this.#widest + left));
+      if (width > 1) bases = this.#withoutAlike(bases, toCome * this.#widest);
       return bases.map((extended) => ({ tags: longer, base: extended }));
     });
   }
@@ -127,6 +128,17 @@ export class Tuples extends Listed<TuplesConfiguration> {
   /** Where the coordinates of an element are in the configuration of all: it, and as many more as it is wide. */
   coordinatesOf({ tags }: TuplesConfiguration, place: number): readonly number[] {
     return this.#coordinates(tags, [place]);
+  }
+
+  /** The first of each class of configurations of coordinates that need not be told apart. */
+  #withoutAlike(bases: readonly unknown[], toCome: number): readonly unknown[] {
+    const seen = new Set<string | number>();
+    return bases.filter((base) => {
+      const key = this.over.key(base, toCome);
+      if (seen.has(key)) return false;
+      seen.add(key);
+      return true;
+    });
   }
 
   #start(tags: readonly number[], place: number): number {

@@ -1,0 +1,116 @@
+/** Structures on carriers made of others, for tests: descriptions, definitions in short, what they define. */
+import { buildCarrier } from "../../lib/carriers/build.ts";
+import type { Carrier } from "../../lib/carriers/carrier.ts";
+import { kindExamplesOf } from "../../lib/carriers/kind-examples.ts";
+import type { Structure, Table } from "../../lib/carriers/structure.ts";
+import { vocabularyOf } from "../../lib/carriers/vocabulary/of.ts";
+import { parseFormula } from "../../lib/language/parser.ts";
+import { emptyScope } from "../../lib/language/statements.ts";
+import { allOf, anyOf, isTrueOf, notOf } from "../../lib/logic/carrier-formulas.ts";
+import type { Formula, RelationSymbol } from "../../lib/logic/formula.ts";
+import { Meter } from "../../lib/logic/meter.ts";
+import type {
+  CarrierAtom,
+  CarrierDescription,
+  CarrierFormula,
+  DefinedRelation,
+  ElementTerm,
+} from "../../lib/logic/structure-definition.ts";
+import { satisfies } from "../../lib/structures/evaluate.ts";
+
+export const R: RelationSymbol = { name: "R", places: 2, infix: false };
+
+export const rationals: CarrierDescription = { kind: "dense-line", colours: 1 };
+export function integers(offset = 0): CarrierDescription {
+  return { kind: "integer-line", offset };
+}
+export function naturals(offset = 0, ends = 0): CarrierDescription {
+  return { kind: "half-line", offset, ends };
+}
+export function points(size: number): CarrierDescription {
+  return { kind: "points", size };
+}
+export function tuples(over: CarrierDescription, ...widths: readonly number[]): CarrierDescription {
+  return { kind: "tuples", over, widths };
+}
+export function sum(...parts: readonly CarrierDescription[]): CarrierDescription {
+  return { kind: "sum", parts };
+}
+export function product(outer: CarrierDescription, inner: CarrierDescription): CarrierDescription {
+  return { kind: "product", outer, inner };
+}
+
+/** `x`, `x.1`, `x.outer.2`, …, a number, or one of these and steps: `x.1 + 2`. */
+export function term(text: string): ElementTerm {
+  const [head, by] = text.split(" + ");
+  if (by !== undefined) return { kind: "shift", of: term(head!), by: Number(by) };
+  if (/^\d+$/.test(text)) return { kind: "number", value: Number(text) };
+  const [variable, ...steps] = text.split(".");
+  const path = steps.map((step) => (step === "outer" || step === "inner" ? step : Number(step)));
+  return { kind: "element", variable: variable!, path };
+}
+
+/** `x.1 < y.1`, `part(x) = 2`. */
+export function atom(text: string): CarrierAtom {
+  const label = /^(colour|copy|part)\((.*)\) = (\d+)$/.exec(text);
+  if (label !== null)
+    return {
+      kind: "label",
+      name: label[1] as "colour" | "copy" | "part",
+      of: term(label[2]!),
+      value: Number(label[3]),
+    };
+  const [left, relation, right] = text.split(/ (=|<|≤) /);
+  return {
+    kind: "compare",
+    relation: relation as "=" | "<" | "≤",
+    left: term(left!),
+    right: term(right!),
+  };
+}
+
+/** Disjunctions of conjunctions of atoms and their negations: `part(x) = 1 & x < y | ~x.1 = y.1`. */
+export function formula(text: string): CarrierFormula {
+  const literal = (one: string) => (one.startsWith("~") ? notOf(atom(one.slice(1))) : atom(one));
+  return anyOf(text.split(" | ").map((part) => allOf(part.split(" & ").map(literal))));
+}
+
+/** The relation of x and y that a formula, as above, defines. */
+export function definition(text: string, relation = R): DefinedRelation {
+  return { relation, variables: ["x", "y", "z"].slice(0, relation.places), formula: formula(text) };
+}
+
+/** The structure in which relations are as defined. */
+export function structureOf(
+  description: CarrierDescription,
+  ...relations: readonly DefinedRelation[]
+): Structure {
+  const carrier = buildCarrier(description);
+  const vocabulary = vocabularyOf(carrier);
+  const tables = new Map<string, Table>();
+  for (const { relation, variables, formula: defining } of relations) {
+    const holds = kindExamplesOf(carrier, relation.places).map((example) =>
+      isTrueOf(defining, (one) => {
+        const complaint = vocabulary.complaint(one);
+        if (complaint !== null) throw new Error(complaint.message);
+        return vocabulary.holds(one, example, (variable) => variables.indexOf(variable));
+      }),
+    );
+    tables.set(relation.name, { relation, holds: Uint8Array.from(holds, Number) });
+  }
+  return { carrier, tables };
+}
+
+/** The sentence that a text of the language says. */
+export function sentence(text: string, ...relations: readonly RelationSymbol[]): Formula {
+  const read = parseFormula(text, { ...emptyScope, declared: relations.length === 0 ? [R] : relations });
+  if (!("formula" in read)) throw new Error(read.diagnostics[0]!.message);
+  return read.formula;
+}
+
+/** Whether a sentence, or the text of one, is true in a structure. */
+export function isTrue(structure: Structure, said: Formula | string): boolean {
+  return satisfies(structure, typeof said === "string" ? sentence(said) : said, new Meter(1e9, () => false));
+}
+
+export type AnyCarrier = Carrier<unknown>;
