@@ -1,13 +1,13 @@
 /**
- * Finite samples of homogeneous structures, built another way than the carriers list them, and truth in the whole structure
- * by looking at a sample alone.
+ * Finite samples of homogeneous structures, built another way than the carriers list them, and truth in the whole
+ * structure by looking at a sample alone.
  *
- * A sample has stages S₁ ⊆ S₂ ⊆ …, such that every element of the whole structure stands to any elements of S₁, …, Sᵢ, one from
- * each, just as some element of Sᵢ₊₁ does. Then the quantifier at depth i may range over Sᵢ: by induction from the inside, a formula
- * with i − 1 free elements is true in the whole structure if and only if it comes out true so, since in a homogeneous
- * structure elements that stand to these elements alike satisfy the same formulas with them.
+ * A sample has stages S₁ ⊆ S₂ ⊆ …, such that every element of the whole structure stands to any elements of S₁, …, Sᵢ, one
+ * from each, just as some element of Sᵢ₊₁ does. Then the quantifier at depth i may range over Sᵢ: by induction from the
+ * inside, a formula about elements of S₁, …, Sᵢ₋₁ is true in the whole structure if and only if it comes out true so,
+ * since in a homogeneous structure two elements that stand to others alike satisfy the same formulas with them. So one
+ * element for each way to stand to the others is enough, too.
  */
-
 import type { Formula } from "../../lib/logic/formula.ts";
 import type { GenericDescription } from "../../lib/logic/structure-definition.ts";
 
@@ -20,43 +20,70 @@ export interface Sample<Element> {
 /** For each relation, the signatures of the tuples at which it holds. */
 export type SignatureTables = ReadonlyMap<string, ReadonlySet<string>>;
 
+/** What a quantifier ranges over, by the elements that those around it have chosen, from the outermost. */
+export type Range<Element> = (chosen: readonly Element[]) => readonly Element[];
+
+/** The whole stage. */
+export function stageOf<Element>({ stages }: Sample<Element>): Range<Element> {
+  return (chosen) => stages[chosen.length]!;
+}
+
+/** Of the stage, one element for each way in which its elements stand to those chosen. */
+export function representativesOf<Element>({ stages, signature }: Sample<Element>): Range<Element> {
+  const known = new Map<string, readonly Element[]>();
+  return (chosen) => {
+    const key = chosen.join();
+    let elements = known.get(key);
+    if (elements === undefined) {
+      const bySignature = new Map<string, Element>();
+      for (const element of stages[chosen.length]!) {
+        const name = signature([...chosen, element]);
+        if (!bySignature.has(name)) bySignature.set(name, element);
+      }
+      elements = [...bySignature.values()];
+      known.set(key, elements);
+    }
+    return elements;
+  };
+}
+
 /** Truth of a sentence that has at most as many quantifiers one inside another as there are stages. */
 export function isTrueByStages<Element>(
   formula: Formula,
   sample: Sample<Element>,
   tables: SignatureTables,
-  values: ReadonlyMap<string, Element> = new Map(),
-  depth = 0,
+  range: Range<Element> = stageOf(sample),
 ): boolean {
-  const isTrue = (part: Formula) => isTrueByStages(part, sample, tables, values, depth);
-  const elementAt = (variable: string) => values.get(variable)!;
-  switch (formula.kind) {
-    case "true":
-      return true;
-    case "false":
-      return false;
-    case "atom":
-      return tables.get(formula.relation.name)!.has(sample.signature(formula.args.map(elementAt)));
-    case "equal":
-      return elementAt(formula.left) === elementAt(formula.right);
-    case "not":
-      return !isTrue(formula.body);
-    case "and":
-      return formula.parts.every(isTrue);
-    case "or":
-      return formula.parts.some(isTrue);
-    case "implies":
-      return !isTrue(formula.left) || isTrue(formula.right);
-    case "iff":
-      return isTrue(formula.left) === isTrue(formula.right);
-    case "forall":
-    case "exists": {
-      const check = (element: Element) => {
-        const inner = new Map(values).set(formula.variable, element);
-        return isTrueByStages(formula.body, sample, tables, inner, depth + 1);
-      };
-      const stage = sample.stages[depth]!;
-      return formula.kind === "forall" ? stage.every(check) : stage.some(check);
+  return isTrue(formula, new Map(), []);
+
+  function isTrue(part: Formula, values: ReadonlyMap<string, Element>, chosen: readonly Element[]): boolean {
+    const inner = (smaller: Formula) => isTrue(smaller, values, chosen);
+    const elementAt = (variable: string) => values.get(variable)!;
+    switch (part.kind) {
+      case "true":
+        return true;
+      case "false":
+        return false;
+      case "atom":
+        return tables.get(part.relation.name)!.has(sample.signature(part.args.map(elementAt)));
+      case "equal":
+        return elementAt(part.left) === elementAt(part.right);
+      case "not":
+        return !inner(part.body);
+      case "and":
+        return part.parts.every(inner);
+      case "or":
+        return part.parts.some(inner);
+      case "implies":
+        return !inner(part.left) || inner(part.right);
+      case "iff":
+        return inner(part.left) === inner(part.right);
+      case "forall":
+      case "exists": {
+        const check = (element: Element) =>
+          isTrue(part.body, new Map(values).set(part.variable, element), [...chosen, element]);
+        return part.kind === "forall" ? range(chosen).every(check) : range(chosen).some(check);
+      }
     }
   }
 }
@@ -123,10 +150,10 @@ export function digitSample(
 }
 
 /**
- * A partial order that grows by one element after another, for elements that are named and every choice of which of
- * them are to be below the new one and which above it, where that is possible: everything below the former is below the new one,
- * everything above the latter above it, and that must make neither more of them comparable to it nor something below that is
- * not below something above.
+ * A partial order that grows by one element after another: for elements that are there and every choice of which of them
+ * are to be below the new one and which above it, where that is possible. Everything below the former is below the new
+ * one, everything above the latter is above it; that must make no more of them comparable to it, and whatever is below it
+ * must be below whatever is above it.
  */
 export function orderSample(
   stages: number,
@@ -172,15 +199,17 @@ export function orderSample(
   return sample;
 }
 
-/** Atoms of the finest dyadic algebra of a sample: intervals of [0, 1), as the bits of a number. */
+/** The atoms of the finest dyadic algebra of a sample: intervals of [0, 1), as the bits of a number. */
 const FINEST = 4;
 const BITS = 2 ** FINEST;
 
 /**
- * Unions of dyadic intervals of [0, 1); Sᵢ has those of intervals of length 2^−i, fewer when there is no zero (not the empty
- * one) and no top (only those that end before 1: they are closed under union and under difference, each has a larger one, and nothing is
- * larger than all). An element of the whole meets each cell of x₁ ∈ S₁, …, xᵢ ∈ Sᵢ in nothing, all, or a proper part; the cells are unions of
- * intervals of length 2^−i, so halves of these make a proper part, and without top one that ends before 1.
+ * Unions of dyadic intervals of [0, 1), at most four in a tuple; a signature has bit m set when cell m is not empty.
+ *
+ * Sᵢ has those of intervals of length 2^−i; without zero not the empty one, and without top only those that end before
+ * 1: unions and differences of these end before 1 too, each has a larger one, and none is larger than all. An element of
+ * the whole meets each cell of x₁ ∈ S₁, …, xᵢ ∈ Sᵢ in nothing, all, or a proper part; the cells are unions of intervals of
+ * length 2^−i, so that halves of these make a proper part, and without top one that ends before 1.
  */
 export function dyadicSample(zero: boolean, top: boolean, stages: number): Sample<number> {
   if (stages > FINEST) throw new RangeError(`${stages} stages`);
@@ -197,10 +226,13 @@ export function dyadicSample(zero: boolean, top: boolean, stages: number): Sampl
   return {
     stages: all,
     signature(tuple) {
-      const cells = new Set<number>();
-      for (let bit = 0; bit < BITS; bit += 1)
-        cells.add(tuple.reduce((cell, element, place) => cell + ((element >>> bit) & 1) * 2 ** place, 0));
-      return `${tuple.length}:${[...cells].sort((a, b) => a - b)}`;
+      let nonempty = 0;
+      for (let bit = 0; bit < BITS; bit += 1) {
+        let cell = 0;
+        for (let place = 0; place < tuple.length; place += 1) cell |= ((tuple[place]! >>> bit) & 1) << place;
+        nonempty |= 1 << cell;
+      }
+      return `${tuple.length}:${nonempty}`;
     },
   };
 }
