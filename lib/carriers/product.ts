@@ -1,8 +1,8 @@
 import type { ProductDescription } from "../logic/structure-definition.ts";
 import type { Carrier } from "./carrier.ts";
+import { keyOf, placeInside, placesInside } from "./groups.ts";
 import { kindExamplesOf } from "./kind-examples.ts";
 import { Listed } from "./listed.ts";
-import { keyOf, placeInside, placesInside } from "./sum.ts";
 
 export interface ProductConfiguration {
   /** The copy of each element: copies are numbered from 0 in the order in which they are first met. */
@@ -95,7 +95,7 @@ export class Product extends Listed<ProductConfiguration> {
   }
 
   mostExtensions(named: number, toCome: number): number {
-    // Most when each named element is in a copy of its own for the new ones, and all are in one for the old.
+    // New ones in a copy that is new, and in each old copy, of which there are as many as elements at most.
     const inNew = this.outer.mostExtensions(named, toCome) * this.inner.mostExtensions(0, toCome);
     return named === 0 ? inNew : inNew + named * this.inner.mostExtensions(named, toCome);
   }

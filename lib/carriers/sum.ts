@@ -1,6 +1,8 @@
 import type { SumDescription } from "../logic/structure-definition.ts";
 import type { Carrier, Symmetry } from "./carrier.ts";
+import { exchanged, keyOf, pairsWithSame, placeInside, placesInside } from "./groups.ts";
 import { kindExamplesOf } from "./kind-examples.ts";
+import { KindSymmetry } from "./kind-symmetry.ts";
 import { Listed } from "./listed.ts";
 
 export interface SumConfiguration {
@@ -83,11 +85,19 @@ export class Sum extends Listed<SumConfiguration> {
   }
 
   protected override findKind({ parts, inside }: SumConfiguration, places: readonly number[]): number {
+    let before = 0;
+    let elements: readonly number[] = this.parts.map(() => 0);
+    places.forEach((place, index) => {
+      const part = parts[place]!;
+      for (let lesser = 0; lesser < part; lesser += 1)
+        before += this.#count(places.length - 1 - index, oneMore(elements, lesser));
+      elements = oneMore(elements, part);
+    });
     const chosen = placesInside(parts, places, this.parts.length);
-    return this.#number(
-      places.map((place) => parts[place]!),
-      this.parts.map((carrier, part) => carrier.kindOf(inside[part], chosen[part]!)),
-    );
+    let kind = 0;
+    for (const [part, carrier] of this.parts.entries())
+      kind = kind * carrier.kindCount(elements[part]!) + carrier.kindOf(inside[part], chosen[part]!);
+    return before + kind;
   }
 
   protected kindName(configuration: SumConfiguration): string {
@@ -115,12 +125,12 @@ export class Sum extends Listed<SumConfiguration> {
   /** The exchanges of two parts with the same description. */
   override symmetries(): readonly Symmetry[] {
     const descriptions = this.parts.map(({ description }) => JSON.stringify(description));
-    return descriptions.flatMap((description, first) =>
-      descriptions.flatMap((other, second) =>
-        first < second && description === other
-          ? [{ image: (length: number, kind: number) => this.#exchange(length, kind, first, second) }]
-          : [],
-      ),
+    return pairsWithSame(descriptions).map(
+      ([first, second]) =>
+        new KindSymmetry<SumConfiguration>(this, ({ parts, inside }) => ({
+          parts: parts.map((part) => exchanged(part, first, second)),
+          inside: inside.with(first, inside[second]).with(second, inside[first]),
+        })),
     );
   }
 
@@ -142,80 +152,6 @@ export class Sum extends Listed<SumConfiguration> {
     }
     return count;
   }
-
-  /** The number of a kind, by the parts of the elements and the kind inside each part. */
-  #number(parts: readonly number[], kinds: readonly number[]): number {
-    let number = 0;
-    let elements: readonly number[] = this.parts.map(() => 0);
-    parts.forEach((part, place) => {
-      for (let lesser = 0; lesser < part; lesser += 1)
-        number += this.#count(parts.length - 1 - place, oneMore(elements, lesser));
-      elements = oneMore(elements, part);
-    });
-    let inside = 0;
-    for (const [part, carrier] of this.parts.entries())
-      inside = inside * carrier.kindCount(elements[part]!) + kinds[part]!;
-    return number + inside;
-  }
-
-  /** The kind of the tuple that comes of one of the given kind when two parts are exchanged. */
-  #exchange(length: number, kind: number, first: number, second: number): number {
-    const moved = (part: number) => (part === first ? second : part === second ? first : part);
-    const parts: number[] = [];
-    let rest = kind;
-    let elements: readonly number[] = this.parts.map(() => 0);
-    for (let toCome = length - 1; toCome >= 0; toCome -= 1) {
-      let part = 0;
-      for (; ; part += 1) {
-        const count = this.#count(toCome, oneMore(elements, part));
-        if (rest < count) break;
-        rest -= count;
-      }
-      elements = oneMore(elements, part);
-      parts.push(part);
-    }
-    const kinds: number[] = [];
-    for (let part = this.parts.length - 1; part >= 0; part -= 1) {
-      const count = this.parts[part]!.kindCount(elements[part]!);
-      kinds[part] = rest % count;
-      rest = Math.floor(rest / count);
-    }
-    return this.#number(
-      parts.map(moved),
-      kinds.map((_, part) => kinds[moved(part)]!),
-    );
-  }
-}
-
-/**
- * The place, among the elements of its own group, of the element at a place.
- * @param groups the group of each element
- */
-export function placeInside(groups: readonly number[], place: number): number {
-  let inside = 0;
-  for (let before = 0; before < place; before += 1) if (groups[before] === groups[place]) inside += 1;
-  return inside;
-}
-
-/** For each of so many groups, where among its elements those are that stand at the given places. */
-export function placesInside(
-  groups: readonly number[],
-  places: readonly number[],
-  count: number,
-): readonly (readonly number[])[] {
-  const inside = Array.from({ length: count }, (): number[] => []);
-  for (const place of places) inside[groups[place]!]!.push(placeInside(groups, place));
-  return inside;
-}
-
-/** A name of the groups of the elements and the keys of the groups; no other has the same. */
-export function keyOf(groups: readonly number[], keys: readonly (string | number)[]): string {
-  let key = groups.join();
-  for (const one of keys) {
-    const text = `${one}`;
-    key += `;${text.length};${text}`;
-  }
-  return key;
 }
 
 function oneMore(elements: readonly number[], part: number): readonly number[] {

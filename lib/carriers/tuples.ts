@@ -1,6 +1,8 @@
 import type { TuplesDescription } from "../logic/structure-definition.ts";
 import type { Carrier, Symmetry } from "./carrier.ts";
+import { exchanged, pairsWithSame } from "./groups.ts";
 import { kindExamplesOf } from "./kind-examples.ts";
+import { KindSymmetry } from "./kind-symmetry.ts";
 import { Listed } from "./listed.ts";
 
 export interface TuplesConfiguration {
@@ -116,12 +118,12 @@ export class Tuples extends Listed<TuplesConfiguration> {
 
   /** The exchanges of two tags of the same width. */
   override symmetries(): readonly Symmetry[] {
-    return this.#widths.flatMap((width, first) =>
-      this.#widths.flatMap((other, second) =>
-        first < second && width === other
-          ? [{ image: (length: number, kind: number) => this.#exchange(length, kind, first, second) }]
-          : [],
-      ),
+    return pairsWithSame(this.#widths).map(
+      ([first, second]) =>
+        new KindSymmetry<TuplesConfiguration>(this, ({ tags, base }) => ({
+          tags: tags.map((tag) => exchanged(tag, first, second)),
+          base,
+        })),
     );
   }
 
@@ -181,23 +183,5 @@ export class Tuples extends Listed<TuplesConfiguration> {
       coordinates += this.#widths[tag]!;
     });
     return before;
-  }
-
-  /** The kind of the tuple that comes of one of the given kind when two tags of the same width are exchanged. */
-  #exchange(length: number, kind: number, first: number, second: number): number {
-    const tags: number[] = [];
-    let rest = kind;
-    let coordinates = 0;
-    for (let toCome = length - 1; toCome >= 0; toCome -= 1) {
-      let tag = 0;
-      for (; ; tag += 1) {
-        const count = this.#count(toCome, coordinates + this.#widths[tag]!);
-        if (rest < count) break;
-        rest -= count;
-      }
-      coordinates += this.#widths[tag]!;
-      tags.push(tag === first ? second : tag === second ? first : tag);
-    }
-    return this.#kindsBefore(tags) + rest;
   }
 }

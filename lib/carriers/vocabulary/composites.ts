@@ -7,19 +7,20 @@
  * To the vocabulary of the component a component is a variable: `x.1` is the variable with that name. So its complaints
  * read as the user wrote them.
  */
-import { mapTerms, termsOf } from "../../logic/carrier-formulas.ts";
+import { elementsOf, mapElements, type NamedElement } from "../../logic/carrier-formulas.ts";
 import type { CarrierAtom, ElementTerm } from "../../logic/structure-definition.ts";
 import type { Carrier } from "../carrier.ts";
+import { placeInside } from "../groups.ts";
 import type { Product, ProductConfiguration } from "../product.ts";
-import { placeInside, Sum, type SumConfiguration } from "../sum.ts";
+import { Sum, type SumConfiguration } from "../sum.ts";
 import type { Tuples, TuplesConfiguration } from "../tuples.ts";
+import { type Comparison, compare, complain, element, pairsOf } from "./terms.ts";
 import type { Complaint, Vocabulary } from "./vocabulary.ts";
 
 /** The vocabulary of any carrier; handed in because it knows those here. */
 type VocabularyOf = (carrier: Carrier) => Vocabulary<unknown>;
-type Element = ElementTerm & { readonly kind: "element" };
 /** The beginning of a path. */
-type Step = Element["path"][number];
+type Step = NamedElement["path"][number];
 
 /** The vocabulary of tagged tuples. */
 export function tuplesVocabulary(carrier: Tuples, of: VocabularyOf): Vocabulary<TuplesConfiguration> {
@@ -35,19 +36,19 @@ export function tuplesVocabulary(carrier: Tuples, of: VocabularyOf): Vocabulary<
       if (isIdentity(atom)) return null;
       const elements = elementsOf(atom);
       if (elements.length === 0) return nothingSaid;
-      for (const element of elements) {
-        const [step] = element.path;
+      for (const { variable, path } of elements) {
+        const [step] = path;
         if (widest === 0)
           return complain("the elements here are single points, which have no coordinates", "`=` and copies");
         if (step === undefined)
           return complain(
-            `\`${element.variable}\` is a tuple here, and this says something of its coordinates only`,
-            `\`${element.variable}.1\``,
+            `\`${variable}\` is a tuple here, and this says something of its coordinates only`,
+            `\`${variable}.1\``,
           );
         if (typeof step !== "number" || !Number.isInteger(step) || step < 1 || step > widest)
           return complain(
             `the tuples here have ${widest === 1 ? "one coordinate, 1" : `the coordinates 1 to ${widest}`}, and no \`${step}\``,
-            `\`${element.variable}.1\``,
+            `\`${variable}.1\``,
           );
       }
       return within.complaint(inComponents(atom).atom);
@@ -217,26 +218,6 @@ function nameOf(variable: string, step: Step): string {
   return `${variable}.${step}`;
 }
 
-function elementsOf(atom: CarrierAtom): readonly Element[] {
-  const within = (term: ElementTerm): readonly Element[] => {
-    if (term.kind === "element") return [term];
-    if (term.kind === "number") return [];
-    return term.kind === "shift" ? within(term.of) : term.args.flatMap(within);
-  };
-  return termsOf(atom).flatMap(within);
-}
-
-function mapElements(atom: CarrierAtom, change: (element: Element) => Element): CarrierAtom {
-  const within = (term: ElementTerm): ElementTerm => {
-    if (term.kind === "element") return change(term);
-    if (term.kind === "number") return term;
-    return term.kind === "shift"
-      ? { ...term, of: within(term.of) }
-      : { ...term, args: term.args.map(within) };
-  };
-  return mapTerms(atom, within);
-}
-
 /** Whether an atom says in which copy or part an element, not a component of one, is. */
 function isLabel(atom: CarrierAtom, name: "copy" | "part"): atom is CarrierAtom & { readonly kind: "label" } {
   return (
@@ -245,7 +226,7 @@ function isLabel(atom: CarrierAtom, name: "copy" | "part"): atom is CarrierAtom 
 }
 
 /** Whether an atom says that two elements are the same, not components of them. */
-function isIdentity(atom: CarrierAtom): atom is CarrierAtom & { readonly kind: "compare" } {
+function isIdentity(atom: CarrierAtom): atom is Comparison {
   return (
     atom.kind === "compare" &&
     atom.relation === "=" &&
@@ -255,7 +236,7 @@ function isIdentity(atom: CarrierAtom): atom is CarrierAtom & { readonly kind: "
 
 function areSame<Configuration>(
   carrier: Carrier<Configuration>,
-  { left, right }: CarrierAtom & { readonly kind: "compare" },
+  { left, right }: Comparison,
   configuration: Configuration,
   place: (variable: string) => number,
 ): boolean {
@@ -282,37 +263,17 @@ function partNumber(carrier: Carrier, configuration: unknown, place: number): nu
 }
 
 function identities(variables: readonly string[]): readonly CarrierAtom[] {
-  return variables.flatMap((left, place) =>
-    variables.slice(place + 1).map(
-      (right): CarrierAtom => ({
-        kind: "compare",
-        relation: "=",
-        left: { kind: "element", variable: left, path: [] },
-        right: { kind: "element", variable: right, path: [] },
-      }),
-    ),
-  );
+  return pairsOf(variables).map(([x, y]) => compare(element(x), "=", element(y)));
 }
 
 function labels(variables: readonly string[], name: "copy" | "part", count: number): readonly CarrierAtom[] {
+  const values = Array.from({ length: count }, (_, index) => index + 1);
   return variables.flatMap((variable) =>
-    Array.from(
-      { length: count },
-      (_, index): CarrierAtom => ({
-        kind: "label",
-        name,
-        of: { kind: "element", variable, path: [] },
-        value: index + 1,
-      }),
-    ),
+    values.map((value): CarrierAtom => ({ kind: "label", name, of: element(variable), value })),
   );
 }
 
 function rangeComplaint(plural: "copies" | "parts", value: number, count: number): Complaint | null {
   if (Number.isInteger(value) && value >= 1 && value <= count) return null;
   return complain(`there are the ${plural} 1 to ${count} here, and no ${value}`, null);
-}
-
-function complain(message: string, suggestion: string | null): Complaint {
-  return { message, suggestion };
 }

@@ -3,8 +3,9 @@
  * `x = 2`, `x < y` and `y = x + 1` are said of them as of numbers. A sum that is no point is less than or greater than some.
  */
 import { termsOf } from "../../logic/carrier-formulas.ts";
-import type { CarrierAtom, ElementTerm } from "../../logic/structure-definition.ts";
+import type { ElementTerm } from "../../logic/structure-definition.ts";
 import type { Points, PointsConfiguration } from "../points.ts";
+import { compare, complain, element, firstComplaint, number, pairsOf } from "./terms.ts";
 import type { Complaint, Vocabulary } from "./vocabulary.ts";
 
 /** The vocabulary of a finite domain. */
@@ -17,7 +18,7 @@ export function pointsVocabulary(carrier: Points): Vocabulary<PointsConfiguratio
       const terms = termsOf(atom);
       if (terms.every((term) => numberIn(term)))
         return complain("this says nothing of a point", "a comparison with a point, as in `x = 1`");
-      return terms.map((term) => termComplaint(term, size)).find((one) => one !== null) ?? null;
+      return firstComplaint(atom, (term) => termComplaint(term, size));
     },
     holds(atom, configuration, place) {
       if (atom.kind !== "compare") throw new Error(`${atom.name} on points`);
@@ -32,25 +33,12 @@ export function pointsVocabulary(carrier: Points): Vocabulary<PointsConfiguratio
       return atom.relation === "<" ? left < right : left <= right;
     },
     atoms(variables) {
-      const element = (variable: string): ElementTerm => ({ kind: "element", variable, path: [] });
-      const compare = (relation: "=" | "<", left: ElementTerm, right: ElementTerm): CarrierAtom => ({
-        kind: "compare",
-        relation,
-        left,
-        right,
-      });
-      const pairs = variables.flatMap((x, place) => variables.slice(place + 1).map((y) => [x, y] as const));
+      const pairs = pairsOf(variables.map(element));
+      const numbers = Array.from({ length: size === 1 ? 0 : size }, (_, point) => number(point + 1));
       return [
-        ...pairs.map(([x, y]) => compare("=", element(x), element(y))),
-        ...variables.flatMap((x) =>
-          Array.from({ length: size === 1 ? 0 : size }, (_, point) =>
-            compare("=", element(x), { kind: "number", value: point + 1 }),
-          ),
-        ),
-        ...pairs.flatMap(([x, y]) => [
-          compare("<", element(x), element(y)),
-          compare("<", element(y), element(x)),
-        ]),
+        ...pairs.map(([x, y]) => compare(x, "=", y)),
+        ...variables.flatMap((x) => numbers.map((value) => compare(element(x), "=", value))),
+        ...pairs.flatMap(([x, y]) => [compare(x, "<", y), compare(y, "<", x)]),
       ];
     },
   };
@@ -80,8 +68,4 @@ function termComplaint(term: ElementTerm, size: number): Complaint | null {
     case "apply":
       return complain(`\`${term.name}\` says nothing of points`, null);
   }
-}
-
-function complain(message: string, suggestion: string | null): Complaint {
-  return { message, suggestion };
 }
