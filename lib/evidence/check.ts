@@ -5,13 +5,15 @@
  */
 
 import { buildCarrier } from "../carriers/build.ts";
+import { readCertificate } from "../carriers/free-terms.ts";
+import { checkCertificate } from "../carriers/free-terms-check.ts";
 import { countKinds } from "../carriers/listing.ts";
 import { Meter, WorkEnded } from "../logic/meter.ts";
 import { FormulaTooLarge } from "../logic/records/formulas.ts";
 import { checkDerivation } from "./derivation.ts";
 import { digestOf } from "./digest.ts";
 import { isTrueIn } from "./evaluate.ts";
-import type { FormulaRecord, StructureFact } from "./format.ts";
+import type { FormulaRecord, StructureFact, TermsFact } from "./format.ts";
 import { checkNoFiniteModel } from "./no-finite-model.ts";
 import { checkNoModel } from "./no-model.ts";
 import { Rejected, readEvidence, reject } from "./read.ts";
@@ -37,6 +39,7 @@ export function checkEvidence(
     for (const [index, fact] of facts.entries()) {
       const at = `fact ${index}`;
       if (fact.fact === "structure") checkStructure(fact, sentences, at, meter);
+      else if (fact.fact === "terms") checkTerms(fact, sentences, at, meter);
       else if (fact.fact === "derivation") checkDerivation(fact, sentences, at, meter);
       else if (fact.fact === "no-model") checkNoModel(fact, sentences, at, meter);
       else checkNoFiniteModel(fact, evidence, at);
@@ -72,4 +75,23 @@ function checkStructure(
   if (wrong !== undefined) reject(`${at}: sentence ${wrong} is said to hold in the structure and does not`);
   if (fails?.every(isTrue))
     reject(`${at}: sentences ${fails.join(", ")} are said to fail in the structure and all hold`);
+}
+
+function checkTerms(
+  { terms, holds, fails, certificates }: TermsFact,
+  sentences: readonly FormulaRecord[],
+  at: string,
+  meter: Meter,
+): void {
+  const shown = holds.map((index) => sentences[index]!);
+  if (fails !== null) {
+    const all = fails.map((index) => sentences[index]!);
+    shown.push(["not", all.length === 1 ? all[0]! : ["and", ...all]]);
+  }
+  if (certificates.length !== shown.length) reject(`${at}: there must be ${shown.length} certificates`);
+  for (const [place, sentence] of shown.entries()) {
+    const certificate = readCertificate(certificates[place], terms);
+    if (certificate === null || !checkCertificate(terms, sentence, certificate, meter))
+      reject(`${at}: certificate ${place} does not show that its sentence is true`);
+  }
 }

@@ -12,9 +12,11 @@
  * | `verdict`   | the verdict that the facts below support                                                         |
  * | `facts`     | what was established, each with the structure or the derivation that shows it                    |
  *
- * Formulas are as in `lib/logic/records/formulas.ts`, structures as in `lib/carriers/structure-record.ts`.
+ * Formulas are as in `lib/logic/records/formulas.ts`, structures as in `lib/carriers/structure-record.ts` and
+ * `lib/carriers/free-terms.ts`, principles as in `lib/logic/records/finiteness.ts`.
  */
 
+import type { CertificateRecord, TermsRecord } from "../carriers/free-terms.ts";
 import type { StructureRecord } from "../carriers/structure-record.ts";
 import type { PrincipleRecord } from "../logic/records/finiteness.ts";
 import type {
@@ -24,6 +26,7 @@ import type {
   TermRecord,
 } from "../logic/records/formulas.ts";
 
+export type * from "../carriers/free-terms.ts";
 export type * from "../carriers/structure-record.ts";
 export type * from "../logic/records/finiteness.ts";
 export type * from "../logic/records/formulas.ts";
@@ -75,6 +78,18 @@ export interface StructureFact {
   readonly holds: TheoryRecord;
   /** Null when nothing is said to fail. */
   readonly fails: TheoryRecord | null;
+}
+
+/**
+ * What a structure of free terms shows, in the same words. For each sentence of `holds`, in order, there is a certificate;
+ * and where some of `fails` are said to be false, one more, of the negation of their conjunction.
+ */
+export interface TermsFact {
+  readonly fact: "terms";
+  readonly terms: TermsRecord;
+  readonly holds: TheoryRecord;
+  readonly fails: TheoryRecord | null;
+  readonly certificates: readonly CertificateRecord[];
 }
 
 /**
@@ -141,7 +156,7 @@ export interface NoFiniteModelFact {
   readonly axioms: TheoryRecord;
   readonly principle: PrincipleRecord;
 }
-export type Fact = StructureFact | DerivationFact | NoModelFact | NoFiniteModelFact;
+export type Fact = StructureFact | TermsFact | DerivationFact | NoModelFact | NoFiniteModelFact;
 
 /**
  * The verdict that the facts support: one word; for `independence`, `compare` and `dualise` one word for each axiom

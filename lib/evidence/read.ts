@@ -2,6 +2,7 @@
  * Reading evidence: from JSON of unknown origin to typed records, or a refusal that names the place. Nothing that
  * is not in the format passes: no foreign keys, no missing ones, no sentence with free variables.
  */
+import { readTerms } from "../carriers/free-terms.ts";
 import { type FormulaRecord, freeVariables } from "../logic/records/formulas.ts";
 import {
   GENERIC_CLASSES,
@@ -151,7 +152,11 @@ const structure: Shape = (value, at, sentences) => {
   }
 };
 
-const terms: Shape = (value, at, sentences) =>
+/** Certificates are looked at when the fact is checked: what they may be depends on the terms. */
+const terms: Shape = (value, at) => {
+  if (readTerms(value) === null) reject(`${at} does not define a structure of free terms`);
+};
+const substitution: Shape = (value, at, sentences) =>
   listOf(term)(Object.values(readObject(value, at)), at, sentences);
 const made = oneOf("0", {
   define: list([name, name, listOf(name), formula]),
@@ -162,7 +167,7 @@ const made = oneOf("0", {
 const line = oneOf("0", {
   clause: list([name, number, number]),
   identity: list([name, clause]),
-  infer: list([name, clause, listOf(list([number, terms]))]),
+  infer: list([name, clause, listOf(list([number, substitution]))]),
 });
 const derivation = {
   premises: theory,
@@ -185,6 +190,7 @@ const principle = oneOf("principle", {
 const proof = listOf(listOf(whole(-Number.MAX_SAFE_INTEGER)));
 const fact = oneOf("fact", {
   structure: object({ fact: name, structure, holds: theory, fails: nullOr(theory) }),
+  terms: object({ fact: name, terms, holds: theory, fails: nullOr(theory), certificates: listOf(any) }),
   derivation: object({ fact: name, ...derivation }),
   "no-finite-model": object({ fact: name, axioms: theory, principle }),
   "no-model": object({ fact: name, axioms: theory, size: whole(1, LARGEST_DOMAIN), proof }),

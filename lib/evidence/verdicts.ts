@@ -84,7 +84,9 @@ export function isBorneOut(evidence: Evidence, meter: Meter): boolean {
       const { ask, axioms } = question;
       const models = shown.structures.filter(({ holds }) => shown.contains(holds, axioms));
       const consistent = models.length > 0;
-      const finite = models.some(({ structure }) => buildCarrier(structure.carrier).size !== null);
+      const finite = models.some(
+        (fact) => fact.fact === "structure" && buildCarrier(fact.structure.carrier).size !== null,
+      );
       const inconsistent = shown.derives(axioms, null);
       const none = shown.excludesFinite(axioms);
       // That there are only infinite models says that there are some.
@@ -149,7 +151,7 @@ class Shown {
   readonly #members = new WeakMap<TheoryRecord, ReadonlySet<SentenceIndex>>();
 
   constructor({ facts }: Evidence, meter: Meter) {
-    this.structures = facts.filter((fact) => fact.fact === "structure");
+    this.structures = facts.filter((fact) => fact.fact === "structure" || fact.fact === "terms");
     this.#derivations = facts.filter((fact) => fact.fact === "derivation");
     this.#finiteness = facts.filter((fact) => fact.fact === "no-finite-model");
     this.#meter = meter;

@@ -1,4 +1,5 @@
 /** Answers to questions: a verdict of a closed list, what it rests on, and what was tried. */
+import type { AnyStructure } from "../carriers/any-structure.ts";
 import type { Structure } from "../carriers/structure.ts";
 import type { DerivationFact, Evidence } from "../evidence/format.ts";
 import type { Formula } from "../logic/formula.ts";
@@ -129,7 +130,7 @@ export interface ClaimAnswer extends AnswerBase {
 export interface ShownStructure {
   /** What it shows, for people, as a noun phrase: "countermodel", "model of Order in which irr fails". */
   readonly role: string;
-  readonly structure: Structure;
+  readonly structure: AnyStructure;
 }
 
 export interface FiniteAnswer extends AnswerBase {
@@ -144,7 +145,7 @@ export interface FiniteAnswer extends AnswerBase {
   /** For 1, …, this many of those sizes the evidence has a clause proof; for the others it is computed. */
   readonly provenUpTo: number;
   /** A finite model, or where none is known an infinite one; null when none was found. */
-  readonly model: Structure | null;
+  readonly model: AnyStructure | null;
   /** Why there is no finite model; null when that was not derived. */
   readonly noFinite: ShownReason | null;
   readonly search: Search;
@@ -194,7 +195,7 @@ export interface AxiomAnswer {
   readonly label: string;
   readonly verdict: IndependenceVerdict;
   /** A structure where all axioms but this one hold; null unless independent. */
-  readonly witness: Structure | null;
+  readonly witness: AnyStructure | null;
   /** Of the axiom from the others; null unless redundant. */
   readonly derivation: ShownDerivation | null;
   readonly search: Search;
@@ -213,12 +214,12 @@ export interface PairAnswer {
   readonly right: number;
   readonly verdict: CompareVerdict;
   /** A model of the left theory that is none of the right one; null when none is known. */
-  readonly leftOnly: Structure | null;
+  readonly leftOnly: AnyStructure | null;
   /** A model of the right theory that is none of the left one; null when none is known. */
-  readonly rightOnly: Structure | null;
+  readonly rightOnly: AnyStructure | null;
   /** False when a common model is known, true when it is derived that there is none, else null. */
   readonly jointlyInconsistent: boolean | null;
-  readonly common: Structure | null;
+  readonly common: AnyStructure | null;
   /** Whether all axioms of the right theory are derived from the left one. */
   readonly leftEntailsRight: boolean;
   readonly rightEntailsLeft: boolean;
@@ -254,7 +255,7 @@ export interface DualPair {
   readonly right: number;
   readonly verdict: DualVerdict;
   /** A model of one and not the other, and which of the two it is a model of; null when none is known. */
-  readonly witness: { readonly structure: Structure; readonly modelOf: number } | null;
+  readonly witness: { readonly structure: AnyStructure; readonly modelOf: number } | null;
   /** Of each from the other; none unless equivalent. */
   readonly derivations: readonly ShownDerivation[];
 }
@@ -265,7 +266,7 @@ export interface MinimalSet {
   /** Of the axioms that are left out. */
   readonly derivations: readonly ShownDerivation[];
   /** For each label, a structure where it alone of the set fails. */
-  readonly witnesses: readonly Structure[];
+  readonly witnesses: readonly AnyStructure[];
 }
 
 export interface MinimiseAnswer extends AnswerBase {

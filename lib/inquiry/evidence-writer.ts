@@ -1,5 +1,5 @@
 /** Collecting the evidence of one question while it is worked on. */
-import type { Structure } from "../carriers/structure.ts";
+import { type AnyStructure, isOfTerms } from "../carriers/any-structure.ts";
 import { recordStructure } from "../carriers/structure-record.ts";
 import type { Derivation, DerivationTask } from "../derivation/derive.ts";
 import { digestOf } from "../evidence/digest.ts";
@@ -52,14 +52,14 @@ export class EvidenceWriter {
     return sentences.map((sentence) => this.sentence(sentence));
   }
 
-  /** Adds what a structure shows: all of `holds` true, and at least one of `fails` false unless it is null. */
-  addStructure(structure: Structure, holds: readonly Formula[], fails: readonly Formula[] | null): void {
-    this.#facts.push({
-      fact: "structure",
-      structure: recordStructure(structure),
-      holds: this.theory(holds),
-      fails: fails === null ? null : this.theory(fails),
-    });
+  /**
+   * Adds what a structure shows: all of `holds` true, and at least one of `fails` false unless it is null. One of free
+   * terms was found for these sentences, the negated conjunction of `fails` last.
+   */
+  addStructure(structure: AnyStructure, holds: readonly Formula[], fails: readonly Formula[] | null): void {
+    const says = { holds: this.theory(holds), fails: fails === null ? null : this.theory(fails) };
+    if (isOfTerms(structure)) this.#facts.push({ fact: "terms", ...structure, ...says });
+    else this.#facts.push({ fact: "structure", structure: recordStructure(structure), ...says });
   }
 
   /** Adds a derivation of a task, with the premises that it uses. */

@@ -1,6 +1,8 @@
 /** `minimise T`: the irredundant sets of axioms from which all others follow. */
+import { isOfTerms } from "../carriers/any-structure.ts";
 import type { Structure } from "../carriers/structure.ts";
-import { type EndReason, Meter } from "../logic/meter.ts";
+import type { Formula } from "../logic/formula.ts";
+import { type EndReason, Meter, WorkEnded } from "../logic/meter.ts";
 import type { Axiom, Theory } from "../logic/theory.ts";
 import { satisfies } from "../structures/evaluate.ts";
 import type { MinimalSet, MinimiseAnswer, ShownDerivation } from "./answer.ts";
@@ -15,6 +17,9 @@ import type { Work } from "./work.ts";
 const SHARE = 10;
 /** … and none is begun with fewer steps than this. */
 const LEAST_STEPS = 20;
+
+/** Steps for one axiom in an infinite structure. */
+const STEPS_ON_INFINITE = 200;
 
 /**
  * Goes through the sets of axioms, as bit masks, largest first (after Liffiton, Previti, Malik & Marques-Silva 2016): one
@@ -153,21 +158,34 @@ class Sets {
         conclusions,
         from: `from ${listLabels(labelsOf(mask, this.#axioms))}`,
         sought: "a structure where not all axioms hold",
+        decides: true,
       },
       Math.max(1, Math.floor(this.#settler.left / SHARE)),
     );
-    if (settled.structure !== null) this.#note(settled.structure);
+    const { structure } = settled;
+    if (structure !== null && !isOfTerms(structure)) this.#note(structure, mask);
     else if (settled.outcome === "open") this.open.push(mask);
     return settled.outcome === "derived" ? settled.derivations : null;
   }
 
-  #note(structure: Structure): void {
-    const meter = new Meter(Number.POSITIVE_INFINITY, this.#work.isInterrupted);
-    const mask = this.#axioms.reduce(
-      (found, { formula }, place) => found | (satisfies(structure, formula, meter) ? 1 << place : 0),
-      0,
-    );
+  /** @param known axioms that hold in the structure */
+  #note(structure: Structure, known: number): void {
+    let mask = known;
+    for (const [place, { formula }] of this.#axioms.entries())
+      if ((known & (1 << place)) === 0 && this.#holds(structure, formula)) mask |= 1 << place;
     this.weak.push({ mask, structure });
+  }
+
+  /** Whether a sentence is seen to hold. Deep ones on an infinite structure are given up early. */
+  #holds(structure: Structure, sentence: Formula): boolean {
+    const steps = structure.carrier.size === null ? STEPS_ON_INFINITE : Number.POSITIVE_INFINITY;
+    const meter = new Meter(steps, this.#work.isInterrupted);
+    try {
+      return satisfies(structure, sentence, meter);
+    } catch (problem) {
+      if (!(problem instanceof WorkEnded) || meter.ended === "interrupted") throw problem;
+      return false;
+    }
   }
 
   /** Leaves axioms out, the last ones first, until the set is irredundant. */

@@ -2,15 +2,17 @@
  * Settling whether sentences follow from others: the search for derivations and the search for structures, in turns
  * from a fixed list. The first to answer decides.
  */
+import { type AnyStructure, isOfTerms, sizeOf } from "../carriers/any-structure.ts";
 import type { Structure } from "../carriers/structure.ts";
 import type { Derivation, DerivationTask } from "../derivation/derive.ts";
 import { DerivationSearch } from "../derivation/turns.ts";
-import { and, type Formula, not } from "../logic/formula.ts";
+import { type Formula, not } from "../logic/formula.ts";
 import { type EndReason, Meter, WorkEnded } from "../logic/meter.ts";
 import { recordFormula } from "../logic/records/formulas.ts";
 import { MeterShare } from "../logic/share.ts";
 import type { Axiom, Signature } from "../logic/theory.ts";
 import { satisfiesAll } from "../structures/evaluate.ts";
+import { findFreeTerms } from "../structures/free-terms/find.ts";
 import { Solver } from "../structures/sat/solver.ts";
 import type { DerivationReport, Search, ShownDerivation, ShownReason } from "./answer.ts";
 import type { EvidenceWriter } from "./evidence-writer.ts";
@@ -26,6 +28,8 @@ export interface Entailment {
    * infinite one is looked for besides, and a reason why there is no finite one.
    */
   readonly finite?: boolean;
+  /** Whether a structure is to decide other sentences too: then none of free terms is looked for. */
+  readonly decides?: boolean;
   readonly premises: readonly Axiom[];
   readonly conclusions: readonly Axiom[];
   /** From what the conclusions are derived, for people, after their labels: "from Order"; empty where that is clear. */
@@ -37,9 +41,9 @@ export interface Entailment {
 export interface Settled {
   readonly outcome: "derived" | "refuted" | "open";
   /** A model of the premises where some conclusion fails; null unless refuted. */
-  readonly structure: Structure | null;
+  readonly structure: AnyStructure | null;
   /** An infinite model, where the question is about finite ones; null when none was found. */
-  readonly infinite: Structure | null;
+  readonly infinite: AnyStructure | null;
   /** Why there is no finite model, where the question is about finite ones; null when that was not derived. */
   readonly noFinite: ShownReason | null;
   /** One for each conclusion that is not itself a premise, or one of a contradiction; none unless derived. */
@@ -57,6 +61,8 @@ type Stage =
   | { readonly kind: "structures"; readonly upTo: number; readonly share: number }
   /** Infinite structures to the end of a round, within a part of the budget. */
   | { readonly kind: "infinite"; readonly round: number; readonly share: number }
+  /** Structures of free terms, within a part of the budget. */
+  | { readonly kind: "terms"; readonly share: number }
   /** Where the question is about finite models: reasons why there is none, to the end of a level. */
   | { readonly kind: "reason"; readonly level: number; readonly share: number };
 
@@ -74,6 +80,7 @@ const STAGES: readonly Stage[] = [
   { kind: "infinite", round: 1, share: 1 / 50 },
   { kind: "reason", level: 1, share: 1 / 50 },
   { kind: "derive", generated: 8_000, share: 1 / 8 },
+  { kind: "terms", share: 1 / 40 },
   { kind: "infinite", round: 2, share: 1 / 10 },
   { kind: "reason", level: 2, share: 1 / 10 },
   { kind: "structures", upTo: 7, share: 1 / 8 },
@@ -145,7 +152,8 @@ export class Settler {
     const { structure, infinite } = run;
     for (const found of [structure, infinite]) {
       if (found === null) continue;
-      if (!this.#known.includes(found)) this.#known.push(found);
+      // Free terms do not decide other sentences.
+      if (!isOfTerms(found) && !this.#known.includes(found)) this.#known.push(found);
       const fails = conclusions.length === 0 ? null : formulasOf(conclusions);
       this.#writer.addStructure(found, formulasOf(premises), fails);
     }
@@ -211,9 +219,9 @@ interface Goal {
 class Run {
   /** What was derived for all goals; null while some goal is open. */
   derived: readonly Derived[] | null = null;
-  structure: Structure | null = null;
+  structure: AnyStructure | null = null;
   /** An infinite model, where only a finite one is an answer. */
-  infinite: Structure | null = null;
+  infinite: AnyStructure | null = null;
   noFinite: NoFiniteModel | null = null;
   /** Whether some goal is shown to have no derivation. */
   #saturated = false;
@@ -228,10 +236,14 @@ class Run {
   readonly #meter: Meter;
   readonly #work: Work;
   readonly #sought: string;
+  /** What a structure would be, for people. */
+  readonly #what: string;
+  readonly #decides: boolean;
+  readonly #signature: Signature;
   readonly #budget: number;
 
   constructor(
-    { premises, conclusions, from, sought, finite = false }: Entailment,
+    { premises, conclusions, from, sought, finite = false, decides = false }: Entailment,
     signature: Signature,
     structures: readonly Structure[],
     meter: Meter,
@@ -240,6 +252,9 @@ class Run {
     this.#structures = structures;
     this.#meter = meter;
     this.#work = work;
+    this.#what = sought;
+    this.#decides = decides;
+    this.#signature = signature;
     this.#budget = meter.left / 1000;
     const formulas = formulasOf(premises);
     // As evidence sees it: the very same sentence, names of variables included.
@@ -264,7 +279,7 @@ class Run {
         : conclusions.length === 1
           ? "the conclusion"
           : "the axioms";
-    this.#wanted = conclusions.length === 0 ? formulas : [...formulas, not(and(...formulasOf(conclusions)))];
+    this.#wanted = conclusions.length === 0 ? formulas : [...formulas, not(all(formulasOf(conclusions)))];
     this.#finite = new FiniteSearch({ sought, alternatives: [this.#wanted], signature }, meter, work);
     this.#infinite = new InfiniteSearch({ sought, sentences: this.#wanted, signature }, meter, work);
     this.#reasons = finite ? new FinitenessSearch(formulas, signature) : null;
@@ -323,6 +338,9 @@ class Run {
       case "infinite":
         this.#searchInfinite(stage.round, steps);
         return;
+      case "terms":
+        this.#searchTerms(steps);
+        return;
       case "reason":
         this.#reason(stage.level, steps);
     }
@@ -340,6 +358,11 @@ class Run {
   get #isSettled(): boolean {
     if (this.derived !== null || this.structure !== null || this.#meter.ended === "interrupted") return true;
     return this.infinite !== null && this.noFinite !== null;
+  }
+
+  /** An infinite model in which every sentence can be evaluated. */
+  get #model(): Structure | null {
+    return this.infinite === null || isOfTerms(this.infinite) ? null : this.infinite;
   }
 
   /** Whether there may be a derivation. */
@@ -393,8 +416,22 @@ class Run {
     if (this.#infinite.found !== null) this.#keep(this.#infinite.found);
   }
 
-  #keep(structure: Structure): void {
-    if (structure.carrier.size === null && this.#reasons !== null) this.infinite ??= structure;
+  #searchTerms(steps: number): void {
+    if (this.#decides || this.#isSettled || this.infinite !== null) return;
+    this.#work.report(`${this.#what} of free terms`);
+    const share = new MeterShare(this.#meter, Math.max(1, steps));
+    try {
+      const found = findFreeTerms(this.#wanted, this.#signature.relations, share.meter);
+      if (found !== null) this.#keep({ terms: found.record, certificates: found.certificates });
+    } catch (problem) {
+      if (!(problem instanceof WorkEnded) || share.ended === "interrupted") throw problem;
+    } finally {
+      share.settle();
+    }
+  }
+
+  #keep(structure: AnyStructure): void {
+    if (sizeOf(structure) === null && this.#reasons !== null) this.infinite ??= structure;
     else this.structure ??= structure;
   }
 
@@ -404,7 +441,7 @@ class Run {
     const share = new MeterShare(this.#meter, Math.max(1, steps));
     try {
       this.#work.report(`a reason why there is no finite model: ${this.#reasons.tried} tried`);
-      this.noFinite = this.#reasons.advance(level, share.meter, this.infinite);
+      this.noFinite = this.#reasons.advance(level, share.meter, this.#model);
       const contradiction = this.noFinite?.obligations.find(
         ({ derived }) => derived?.derivation.usesConclusion === false,
       );
@@ -452,6 +489,11 @@ class Run {
         label,
       }));
   }
+}
+
+/** The conjunction of some formulas, nothing in them flattened: as the checker makes it. */
+function all(formulas: readonly Formula[]): Formula {
+  return formulas.length === 1 ? formulas[0]! : { kind: "and", parts: formulas };
 }
 
 function textOf(formula: Formula): string {
