@@ -1,6 +1,5 @@
 /** Structures: a carrier with a table for every relation. */
 import type { RelationSymbol } from "../logic/formula.ts";
-import type { StructureDefinition } from "../logic/structure-definition.ts";
 import type { Carrier } from "./carrier.ts";
 import { Points } from "./points.ts";
 
@@ -15,18 +14,6 @@ export interface Structure {
   readonly carrier: Carrier;
   /** By the name of the relation. */
   readonly tables: ReadonlyMap<string, Table>;
-}
-
-/** Builds a structure from what the user wrote; the definition's points and tuple lengths are already checked. */
-export function buildStructure(definition: StructureDefinition): Structure {
-  const carrier = new Points(definition.carrier.size);
-  const tables = new Map<string, Table>();
-  for (const { relation, tuples } of definition.relations) {
-    const holds = new Uint8Array(carrier.kindCount(relation.places));
-    for (const tuple of tuples) holds[carrier.kindOfTuple(tuple)] = 1;
-    tables.set(relation.name, { relation, holds });
-  }
-  return { carrier, tables };
 }
 
 /** The tuples at which a relation holds in a structure on points, counted from 1, in ascending order. */

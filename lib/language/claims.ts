@@ -13,6 +13,7 @@ import type { Claim, NamedSentence, NamedStructure, NamedTheory } from "./statem
 import { isStructureAhead, readStructure } from "./structures.ts";
 import { reportInexpressible } from "./terms.ts";
 import { readTheory } from "./theories.ts";
+import { callForm } from "./wording.ts";
 
 const FORMS = claimForms.map(({ form }) => `\`${form}\``).join(", ");
 
@@ -123,7 +124,9 @@ function readTruth(reader: Reader, structure: NamedStructure | null, subject: Pl
       given === undefined
         ? `the structure ${quote(structure.text)} does not say where ${quote(relation.name)} holds`
         : `${quote(relation.name)} has ${given.relation.places} places in the structure ${quote(structure.text)}, and ${relation.places} in the sentence`,
-      `add \`${relation.name} is { … }\` to the structure`,
+      structure.structure.carrier.kind === "points"
+        ? `add \`${relation.name} is { … }\` to the structure`
+        : `add \`${callForm(relation.name, relation.places)} iff …\` to the structure`,
     );
     return null;
   }

@@ -2,6 +2,7 @@
 import type { Formula, RelationSymbol } from "../logic/formula.ts";
 import { findProperty, type NamedProperty, propertyOf } from "../logic/properties.ts";
 import type { Theory } from "../logic/theory.ts";
+import { describeCarrier } from "./carrier-words.ts";
 import type { Place } from "./diagnostics.ts";
 import { claimForms, helpOf, listWords, normalFormHelp, optionHelp } from "./help.ts";
 import { findInexpressible, type Inexpressible } from "./inexpressible.ts";
@@ -143,8 +144,7 @@ function inspectDefinition(definition: Definition, place: Place): Inspection {
       return { kind: "definition", name, signature: name, meaning, definition, ...place };
     }
     case "structure": {
-      const { size } = definition.structure.carrier;
-      const meaning = `A structure on ${size} ${size === 1 ? "point" : "points"}.`;
+      const meaning = `A structure on ${describeCarrier(definition.structure.carrier)}.`;
       return { kind: "definition", name, signature: name, meaning, definition, ...place };
     }
     case "formula": {

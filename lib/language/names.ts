@@ -1,5 +1,6 @@
 /** The names that text can use while a cell is being read. */
 import type { RelationSymbol } from "../logic/formula.ts";
+import { SIMPLE_CARRIERS } from "./carrier-help.ts";
 import { laterStatements, statementHelp } from "./help.ts";
 import { isSignWord } from "./lexer.ts";
 import { nearestName } from "./nearest.ts";
@@ -16,7 +17,8 @@ export type Named =
   | { readonly kind: "structure"; readonly definition: Definition & { kind: "structure" } }
   | { readonly kind: "damaged"; readonly as: NameKind | null };
 
-const keptWords = new Set([
+const keptWords: ReadonlySet<string> = new Set([
+  ...SIMPLE_CARRIERS,
   ...keywords.map((keyword) => keyword.word),
   ...statementHelp.map((help) => help.word),
   ...laterStatements,

@@ -1,63 +1,93 @@
-/** Structures written out: `points 3 where R is { (1,2), (2,3) } and S is { (1,1) }`. */
+/**
+ * Structures written out: `points 3 where R is { (1,2), (2,3) } and S is { (1,1) }`, and on infinite domains
+ * `dense-line where Rxy iff x < y`.
+ */
+import { listTuples } from "../carriers/defined.ts";
 import type { RelationSymbol } from "../logic/formula.ts";
 import {
-  LARGEST_DOMAIN,
   LARGEST_TABLES,
-  type RelationDefinition,
+  type ListedRelation,
   type StructureDefinition,
 } from "../logic/structure-definition.ts";
+import { isCarrierAhead, isWord, readCarrier } from "./carriers.ts";
 import type { Token } from "./lexer.ts";
 import { readWhole } from "./numbers.ts";
 import { quote, type Reader, Unreadable } from "./reader.ts";
 import type { NamedStructure } from "./statements.ts";
-import { countOf, kindText } from "./wording.ts";
+import {
+  acceptSeparator,
+  DefinitionReader,
+  isDefinitionAhead,
+  resolveRelation,
+} from "./structure-definitions.ts";
+import { countOf } from "./wording.ts";
 
 /** Whether a structure expression comes next. */
 export function isStructureAhead(reader: Reader): boolean {
+  if (isCarrierAhead(reader)) return true;
   const token = reader.peek();
   if (token.kind !== "word") return false;
-  if (token.text === "points") return true;
   const named = reader.names.find(token.text);
   return named?.kind === "structure" || (named?.kind === "damaged" && named.as === "structure");
 }
 
 /** Reads the name of a structure or one written out; null after a mistake. */
 export function readStructure(reader: Reader): NamedStructure | null {
-  const first = reader.next();
-  if (first.text !== "points") {
+  const first = reader.peek();
+  if (!isCarrierAhead(reader)) {
+    reader.next();
     const named = reader.names.find(first.text);
     return named?.kind === "structure" ? { text: first.text, structure: named.definition.structure } : null;
   }
-  const mistakes = reader.diagnostics.length;
-  const size = readWhole(reader, "how many points there are", LARGEST_DOMAIN);
-  const relations = reader.acceptWord("where") === null ? [] : readRelations(reader, size);
-  if (reader.diagnostics.length > mistakes || size === null) return null;
-  const structure: StructureDefinition = { carrier: { kind: "points", size }, relations };
-  return { text: reader.excerpt(first, reader.last), structure };
+  const structure = readWritten(reader);
+  return structure === null ? null : { text: reader.excerpt(first, reader.last), structure };
 }
 
-function readRelations(reader: Reader, size: number | null): readonly RelationDefinition[] {
-  const found: RelationDefinition[] = [];
+function readWritten(reader: Reader): StructureDefinition | null {
+  const mistakes = reader.diagnostics.length;
+  const isPoints = isWord(reader.peek(), "points");
+  const carrier = readCarrier(reader);
+  // A product of points and others begins with points as well.
+  const isListed = carrier === null ? isPoints : carrier.description.kind === "points";
+  const size = carrier?.description.kind === "points" ? carrier.description.size : null;
   const seen = new Set<string>();
-  reader.crossLine();
-  for (;;) {
-    const name = readRelationName(reader);
-    if (seen.has(name.token.text))
-      reader.report(
-        "relation-twice",
-        name.token,
-        `the tuples of ${quote(name.token.text)} are given twice`,
-        "put them into one list",
-      );
-    seen.add(name.token.text);
-    checkTable(reader, name, size);
-    reader.expectWord("is", `write \`${name.token.text} is { … }\``);
+  const tables: ListedRelation[] = [];
+  const definitions = new DefinitionReader(reader, carrier, seen);
+  if (isWord(reader.peek(), "where")) {
+    reader.next();
     reader.crossLine();
-    const tuples = readTuples(reader, name.token.text, name.relation, size);
-    if (name.relation !== null) found.push({ relation: name.relation, tuples });
-    if (reader.accept("and") === null && reader.accept("comma") === null) return found;
-    reader.crossLine();
+    do {
+      if (!isListed || isDefinitionAhead(reader)) definitions.read();
+      else {
+        const table = readTable(reader, size, seen);
+        if (table !== null) tables.push(table);
+      }
+    } while (acceptSeparator(reader));
   }
+  const defined = definitions.finish();
+  if (defined === null || reader.diagnostics.length > mistakes) return null;
+  const { carrier: fitted, relations } = defined;
+  return fitted.kind === "points"
+    ? { carrier: fitted, relations: [...tables, ...relations.map((one) => listTuples(fitted, one))] }
+    : { carrier: fitted, relations };
+}
+
+/** Reads `R is { (1,2) }`. */
+function readTable(reader: Reader, size: number | null, seen: Set<string>): ListedRelation | null {
+  const name = readRelationName(reader);
+  if (seen.has(name.token.text))
+    reader.report(
+      "relation-twice",
+      name.token,
+      `the tuples of ${quote(name.token.text)} are given twice`,
+      "put them into one list",
+    );
+  seen.add(name.token.text);
+  checkTable(reader, name, size);
+  reader.expectWord("is", `write \`${name.token.text} is { … }\``);
+  reader.crossLine();
+  const tuples = readTuples(reader, name.token.text, name.relation, size);
+  return name.relation === null ? null : { relation: name.relation, tuples };
 }
 
 interface RelationName {
@@ -69,28 +99,8 @@ interface RelationName {
 function readRelationName(reader: Reader): RelationName {
   const token = reader.peek();
   if (token.kind !== "word" && token.kind !== "relation-sign") reader.failExpected("the name of a relation");
-  const named = reader.names.find(token.text);
   reader.next();
-  if (named?.kind === "relation") return { token, relation: named.relation };
-  if (named?.kind === "damaged") return { token, relation: null };
-  if (named !== null)
-    reader.report(
-      "wrong-kind",
-      token,
-      `${quote(token.text)} is ${kindText(named.kind)}, where a relation is expected`,
-    );
-  else {
-    const near = reader.names.nearest(token.text, ["relation"]);
-    reader.report(
-      "unknown-name",
-      token,
-      `there is no relation ${quote(token.text)}`,
-      near !== null
-        ? `write \`${near}\``
-        : `declare it: \`relation ${token.text}${token.kind === "word" ? "" : " infix"}\``,
-    );
-  }
-  return { token, relation: null };
+  return { token, relation: resolveRelation(reader, token, token.text) };
 }
 
 function checkTable(reader: Reader, { token, relation }: RelationName, size: number | null): void {

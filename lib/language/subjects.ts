@@ -1,4 +1,5 @@
 /** Which kind of expression comes next, where several may. */
+import { isCarrierAhead } from "./carriers.ts";
 import { isSmtLib, type Token } from "./lexer.ts";
 import { isKeptWord, isVariable } from "./names.ts";
 import { isPropertyWord } from "./property-atoms.ts";
@@ -11,6 +12,7 @@ const THEORY_WORDS = new Set(["replacing", "is", "has"]);
 
 /** Tells the kind by the first tokens, without reading them. */
 export function expressionAhead(reader: Reader): ExpressionKind {
+  if (isCarrierAhead(reader)) return "structure";
   let at = 0;
   while (reader.peekAfter(at).kind === "open") at += 1;
   const token = reader.peekAfter(at);
@@ -21,7 +23,6 @@ export function expressionAhead(reader: Reader): ExpressionKind {
   if (token.kind === "word" && isPropertyWord(token.text) && reader.names.find(token.text) === null)
     return "formula";
   if (token.kind !== "word" || token.group) return token.group ? kindOfName(reader, token, at) : "formula";
-  if (token.text === "points") return "structure";
   if ((token.text === "converse" || token.text === "complement") && after.kind === "open") return "theory";
   return kindOfName(reader, token, at);
 }

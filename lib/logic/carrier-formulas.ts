@@ -1,6 +1,9 @@
 /** Formulas about elements of a carrier: building them, going through them, their truth. */
 import type { CarrierAtom, CarrierFormula, ElementTerm } from "./structure-definition.ts";
 
+/** An element by its variable, or a component of it. */
+export type NamedElement = ElementTerm & { readonly kind: "element" };
+
 /** The negation; `¬¬φ` is kept as written. */
 export function notOf(body: CarrierFormula): CarrierFormula {
   return { kind: "not", body };
@@ -77,4 +80,26 @@ export function isTrueOf(formula: CarrierFormula, holds: (atom: CarrierAtom) => 
     default:
       return holds(formula);
   }
+}
+
+/** The elements that occur in an atom, each occurrence by itself, in the order written. */
+export function elementsOf(atom: CarrierAtom): readonly NamedElement[] {
+  const within = (term: ElementTerm): readonly NamedElement[] => {
+    if (term.kind === "element") return [term];
+    if (term.kind === "number") return [];
+    return term.kind === "shift" ? within(term.of) : term.args.flatMap(within);
+  };
+  return termsOf(atom).flatMap(within);
+}
+
+/** The atom with each element that occurs in it replaced. */
+export function mapElements(atom: CarrierAtom, change: (element: NamedElement) => ElementTerm): CarrierAtom {
+  const within = (term: ElementTerm): ElementTerm => {
+    if (term.kind === "element") return change(term);
+    if (term.kind === "number") return term;
+    return term.kind === "shift"
+      ? { ...term, of: within(term.of) }
+      : { ...term, args: term.args.map(within) };
+  };
+  return mapTerms(atom, within);
 }

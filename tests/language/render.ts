@@ -1,4 +1,5 @@
 /** Statements and mistakes as lines of text, for the cases. */
+import { printStructureDefinition } from "../../lib/language/carrier-printing.ts";
 import type { Diagnostic } from "../../lib/language/diagnostics.ts";
 import { printAxiomSet, printFormula } from "../../lib/language/printer.ts";
 import type {
@@ -13,7 +14,7 @@ import type {
   Statement,
 } from "../../lib/language/statements.ts";
 import type { RelationSymbol } from "../../lib/logic/formula.ts";
-import type { StructureDefinition } from "../../lib/logic/structure-definition.ts";
+import type { CarrierDescription, StructureDefinition } from "../../lib/logic/structure-definition.ts";
 
 /** One line for each statement, or for each mistake. */
 export function renderCell({ statements, diagnostics }: ParsedCell): readonly string[] {
@@ -78,12 +79,19 @@ function definition(bound: Definition): string {
   }
 }
 
-function structureText({ carrier, relations }: StructureDefinition): string {
-  const tables = relations.map(
-    (table) =>
-      `${table.relation.name} is {${table.tuples.map((tuple) => ` (${tuple.join(",")})`).join("")} }`,
+function structureText(structure: StructureDefinition): string {
+  const bounds = boundsOf(structure.carrier);
+  return `${printStructureDefinition(structure, "ascii")}${bounds === "" ? "" : ` with ${bounds}`}`;
+}
+
+/** The bounds that were chosen for a carrier, which are not printed. */
+function boundsOf(description: CarrierDescription): string {
+  const text = JSON.stringify(description, (key, value) =>
+    typeof value === "object" || key === "offset" || key === "ends" ? value : undefined,
   );
-  return `points ${carrier.size}${tables.length === 0 ? "" : ` where ${tables.join(" and ")}`}`;
+  return [...text.matchAll(/"(offset|ends)":([0-9]+)/g)]
+    .map(([, key, value]) => `${key} ${value}`)
+    .join(", ");
 }
 
 /** The expression as written, then what it stands for. */
