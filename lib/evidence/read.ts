@@ -179,9 +179,16 @@ const withoutTerms = { parameters: listOf(name), given: nullOr(plain), domain: p
 const different: Shape = (value, at, sentences) =>
   (value === "identity" ? any : listOf(list([name, whole(1)])))(value, at, sentences);
 const principle = oneOf("principle", {
-  "endless-order": object({ principle: name, ...withoutTerms }),
+  "endless-order": object({ principle: name, ...withoutTerms, everywhere: flag }),
   counting: object({
-    ...{ principle: name, ...withoutTerms, different, successors: number, predecessors: number },
+    ...{
+      principle: name,
+      ...withoutTerms,
+      different,
+      successors: number,
+      predecessors: number,
+      everywhere: flag,
+    },
     spare: nullOr(wordOf(["fewer-predecessors", "more-successors"])),
   }),
   pairs: object({ principle: name, ...withoutTerms, different, pairs: number }),
