@@ -165,16 +165,14 @@ export function between({ codes }: GenericConfiguration, first: number, second: 
 
 /**
  * Whether, in a partial order, the next element can stand to a new one as the code says, when those before stand to it as
- * the row says: whether any three have a transitive order.
+ * the row says: whether each of them, the next and the new one are in a transitive order. The same elements have the same
+ * codes.
  */
 function isTransitive(configuration: GenericConfiguration, row: readonly number[], code: number): boolean {
   const place = row.length;
   for (let other = 0; other < place; other += 1) {
     const before = row[other]!;
     switch (between(configuration, other, place)) {
-      case EQUAL:
-        if (before !== code) return false;
-        break;
       case FORTH:
         if ((code === FORTH && before !== FORTH) || (before === BACK && code !== BACK)) return false;
         break;
