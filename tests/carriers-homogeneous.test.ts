@@ -85,7 +85,7 @@ describe.each(cases)("$name: what is listed", (which) => {
           carrier.key(carrier.restrict(otherConfiguration, places), 1) === carrier.key(restricted, 1),
         ).toBe(isAlike);
       }),
-      options(400),
+      options(250),
     );
   });
 
@@ -160,9 +160,10 @@ describe(`random sentences of depth 4 (seed ${seed})`, () => {
 });
 
 /**
- * On q points, an arc from x to y when y − x is a square modulo q. A finite graph or tournament in which every two points can be
- * extended in every way satisfies the same sentences of depth 3 as the generic one. By Blass, Exoo and Harary (1981) it can in the
- * Paley graph when q > 16; for tournaments the same sums of characters tell it (Graham and Spencer 1971). Looked at here as well.
+ * On q points, an arc from x to y when y − x is a square modulo q. A finite graph or tournament in which every two points
+ * can be extended in every way satisfies the same sentences of depth 3 as the generic one. In the Paley graph they can when
+ * q > 16 (Blass, Exoo and Harary 1981); for tournaments the same sums of characters say so (Graham and Spencer 1971).
+ * It is looked at here as well.
  */
 describe.each([
   { name: "graph", q: 29 },

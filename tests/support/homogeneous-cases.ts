@@ -108,7 +108,7 @@ export function tablesFor(
   return { structure: { carrier, tables } as Structure, signatures };
 }
 
-/** Bits that choose tables: entry k of a relation is the bit k modulo 31 of the number that it gets, so that every run differs. */
+/** Tables chosen by bits: the entry of kind k is bit k modulo 31 of the number for the relation. */
 export function randomTables(
   which: Case,
   relations: readonly RelationSymbol[],

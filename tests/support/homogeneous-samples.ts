@@ -99,7 +99,7 @@ export function tuplesOf<Element>(sample: Sample<Element>, length: number): (rea
 /** Whether there is an arc (for a graph an edge, for an order a <) from one element to another. */
 type Arc<Element> = (from: Element, to: Element) => boolean;
 
-/** For j = 1, 2, … and i < j: `=` when the elements are the same, else 1 for an arc from that at i to that at j, 2 for one back. */
+/** For j = 1, 2, … and i < j: `=` for the same element, else 1 for an arc from that at i to that at j, plus 2 for one back. */
 function signatureOf<Element>(arc: Arc<Element>, tuple: readonly Element[]): string {
   let signature = `${tuple.length}:`;
   for (let j = 1; j < tuple.length; j += 1)
