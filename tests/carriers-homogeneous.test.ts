@@ -1,7 +1,8 @@
 /**
  * Generic graphs, digraphs, tournaments, partial orders and atomless Boolean algebras, against samples that are built
  * another way (`support/homogeneous-samples.ts`): what is listed is what is there, and sentences are true where they are
- * true by the sample. Then what is known of these structures; each source stands beside its check.
+ * true by the sample. Then what is known of these structures; each source stands beside its check, named
+ * from memory.
  */
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
