@@ -269,6 +269,7 @@ function findOtherAxioms(statement: Asking, { data }: Stored, { question, facts 
 function settles(fact: Fact, word: unknown, axiom: number, others: TheoryRecord): boolean {
   switch (fact.fact) {
     case "structure":
+    case "terms":
       return word === "independent" && contains(fact.holds, others) && fact.fails?.includes(axiom) === true;
     case "derivation":
       return (

@@ -6,6 +6,7 @@ import type {
   ClaimAnswer,
   CompareAnswer,
   DualAnswer,
+  FiniteAnswer,
   IndependenceAnswer,
   MinimiseAnswer,
 } from "../../lib/inquiry/answer.ts";
@@ -19,9 +20,19 @@ import { renderBundle } from "./bundle.ts";
 import { countBlocks } from "./counts.ts";
 import { showDerivation, showDerivations } from "./derivations.ts";
 import { numberedStructures } from "./galleries.ts";
+import { reasonBlocks } from "./reasons.ts";
 import { drawStrength } from "./strength.ts";
 import { domainOf, structureBlocks } from "./structures.ts";
-import { budgetOf, claimOf, derivedText, endText, pairReason, reportText, summarise } from "./summaries.ts";
+import {
+  axiomsAsked,
+  budgetOf,
+  claimOf,
+  derivedText,
+  endText,
+  pairReason,
+  reportText,
+  summarise,
+} from "./summaries.ts";
 import { counted, onSizesTo } from "./text.ts";
 import { theoryTable } from "./theories.ts";
 
@@ -106,6 +117,7 @@ function detailsOf(statement: Statement, answer: Answer): readonly Block[] {
       return [
         ...(answer.derivation === null ? [] : showDerivation(answer.derivation)),
         ...(answer.model === null ? [] : structureBlocks("model", answer.model)),
+        ...noFiniteBlocks(answer),
       ];
     case "models":
       return numberedStructures("model", answer.models);
@@ -120,6 +132,9 @@ function detailsOf(statement: Statement, answer: Answer): readonly Block[] {
     case "dualise":
       return dualBlocks(answer, statement);
   }
+  function noFiniteBlocks({ noFinite }: ClaimAnswer | FiniteAnswer): readonly Block[] {
+    return noFinite === null ? [] : reasonBlocks(noFinite, axiomsAsked(statement));
+  }
   function claimBlocks(claim: ClaimAnswer): readonly Block[] {
     if (claim.axioms !== null) return axiomsBlocks(claim, claim.axioms, statement);
     const kind = claimOf(statement)?.kind;
@@ -130,6 +145,7 @@ function detailsOf(statement: Statement, answer: Answer): readonly Block[] {
     }
     return [
       ...showDerivations(claim.derivations),
+      ...noFiniteBlocks(claim),
       ...foldRest(claim.structures.map(({ role, structure }) => structureBlocks(role, structure))),
     ];
   }

@@ -4,11 +4,23 @@
  */
 import type { Term, TermFormula } from "../../lib/logic/clausal.ts";
 
+/** Mathematics that is no formula of the language: `n²`, `φ(x, y)`. */
+export interface Maths {
+  readonly kind: "math";
+  readonly text: string;
+  readonly latex: string;
+}
+
 /** A piece of a line or of a table's cell. A bare string is prose. */
 export type Inline =
   | string
   | { readonly kind: "formula"; readonly formula: TermFormula }
   | { readonly kind: "term"; readonly term: Term }
+  /** A relation by its name alone. */
+  | { readonly kind: "relation"; readonly name: string }
+  | Maths
+  /** What a paragraph begins with. */
+  | { readonly kind: "strong"; readonly text: string }
   /** What the user wrote or named. */
   | { readonly kind: "code"; readonly text: string }
   /** A word of the closed lists of verdicts; one that leads a line is set off from what follows. */
@@ -46,6 +58,8 @@ export interface GalleryBlock {
 
 export type Block =
   | { readonly kind: "line"; readonly parts: readonly Inline[] }
+  /** Sentences that are read as a whole. */
+  | { readonly kind: "paragraph"; readonly parts: readonly Inline[] }
   /** A remark that qualifies what stands above it. */
   | { readonly kind: "note"; readonly parts: readonly Inline[] }
   /** Text of a cell, to be copied; plain text and LaTeX have it too. */
@@ -88,4 +102,33 @@ export function formulaOf(formula: TermFormula): Inline {
 
 export function termOf(term: Term): Inline {
   return { kind: "term", term };
+}
+
+export function mathOf(text: string, latex: string): Maths {
+  return { kind: "math", text, latex };
+}
+
+export function strong(text: string): Inline {
+  return { kind: "strong", text };
+}
+
+/** Prose with pieces in it, as a template: words`Let ${x} be such.` */
+export function words(
+  strings: TemplateStringsArray,
+  ...pieces: readonly (Inline | readonly Inline[])[]
+): readonly Inline[] {
+  return strings.flatMap((text, index): readonly Inline[] => {
+    const piece = pieces[index];
+    const before = text === "" ? [] : [text];
+    if (piece === undefined) return before;
+    return Array.isArray(piece) ? [...before, ...(piece as readonly Inline[])] : [...before, piece as Inline];
+  });
+}
+
+/** `a`, `a and b`, `a, b and c`. */
+export function enumerated(items: readonly Inline[]): readonly Inline[] {
+  return items.flatMap((item, index): readonly Inline[] => {
+    if (index === 0) return [item];
+    return [index === items.length - 1 ? " and " : ", ", item];
+  });
 }

@@ -1,7 +1,8 @@
 /** The `data` of `eval --json`: what a program wants to know of an answer. The README lists the keys. */
 
+import { sizeOf } from "../../lib/carriers/any-structure.ts";
 import { buildStructure } from "../../lib/carriers/defined.ts";
-import type { Answer, ClaimAnswer, ShownDerivation } from "../../lib/inquiry/answer.ts";
+import type { Answer, ClaimAnswer, FiniteAnswer, ShownDerivation } from "../../lib/inquiry/answer.ts";
 import type { Findings } from "../../lib/inquiry/examine.ts";
 import { printFormula } from "../../lib/language/printer.ts";
 import type { Definition, DescribeSubject, Statement } from "../../lib/language/statements.ts";
@@ -17,7 +18,8 @@ import { describeSyntax } from "../../lib/logic/fragments.ts";
 import { sentencesOf, type Theory, theoryDepth, theorySignature } from "../../lib/logic/theory.ts";
 import { countData } from "./counts.ts";
 import { findingsData } from "./findings.ts";
-import { structureData } from "./structures.ts";
+import { reasonData } from "./reasons.ts";
+import { infiniteData, structureData } from "./structures.ts";
 import { claimOf } from "./summaries.ts";
 import { prefixOf, syntaxData } from "./theories.ts";
 
@@ -40,6 +42,8 @@ export function dataOf(statement: Statement, answer: Answer | null, findings: Fi
         modelSize: answer.modelSize,
         noModelUpTo: answer.noModelUpTo,
         provenUpTo: answer.provenUpTo,
+        ...infiniteData(answer.model),
+        ...reasonOf(answer),
         ...usedIn(answer.derivation === null ? [] : [answer.derivation]),
       };
     case "models":
@@ -82,12 +86,18 @@ export function dataOf(statement: Statement, answer: Answer | null, findings: Fi
 
 function claimData(statement: Statement, answer: ClaimAnswer): Data {
   const claim = claimOf(statement);
-  const size = answer.structures[0]?.structure.carrier.size ?? null;
+  const found = answer.structures[0]?.structure ?? null;
+  const size = found === null ? null : sizeOf(found);
   // Where several searches were made, only what all of them finished is free of what was sought.
   const noneUpTo =
     answer.searches.length === 0 ? 0 : Math.min(...answer.searches.map((search) => search.noneUpTo));
   const kind = { claim: claim?.kind ?? null };
-  const derived = { ...usedIn(answer.derivations), ...(answer.inconsistent ? { inconsistent: true } : {}) };
+  const derived = {
+    ...infiniteData(found),
+    ...reasonOf(answer),
+    ...usedIn(answer.derivations),
+    ...(answer.inconsistent ? { inconsistent: true } : {}),
+  };
   switch (claim?.kind) {
     case "entails":
     case "does-not-entail":
@@ -107,6 +117,11 @@ function claimData(statement: Statement, answer: ClaimAnswer): Data {
     default:
       return kind;
   }
+}
+
+/** Why there is no finite model; nothing where that was not derived. */
+function reasonOf({ noFinite }: ClaimAnswer | FiniteAnswer): Data {
+  return noFinite === null ? {} : { reason: reasonData(noFinite) };
 }
 
 /** The axioms that derivations use, by label; nothing where nothing was derived. */

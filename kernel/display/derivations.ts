@@ -1,6 +1,6 @@
 /** Derivations as they are shown: line, sentence, because. */
 import type { ShownDerivation } from "../../lib/inquiry/answer.ts";
-import { type Block, formulaOf, type Inline, note, type TableBlock, termOf } from "./blocks.ts";
+import { type Block, enumerated, formulaOf, type Inline, note, type TableBlock, termOf } from "./blocks.ts";
 import {
   type Citation,
   type Inference,
@@ -127,7 +127,7 @@ function introducedParts(introduced: readonly Introduction[]): readonly Inline[]
   for (const isPromised of [true, false]) {
     const found = constants.filter(({ variable }) => (variable !== null) === isPromised);
     if (found.length === 0) continue;
-    const names = listed(found.map(({ term }) => termOf(term)));
+    const names = enumerated(found.map(({ term }) => termOf(term)));
     const variables = found.flatMap(({ variable }) => variable ?? []);
     const sought = isPromised && new Set(variables).size === variables.length ? variables : null;
     clauses.push([
@@ -138,12 +138,12 @@ function introducedParts(introduced: readonly Introduction[]): readonly Inline[]
         ? []
         : sought === null
           ? ["elements"]
-          : [sought.length === 1 ? `${articleOf(sought[0]!)} ` : "", ...listed(sought.map(termOf))]),
+          : [sought.length === 1 ? `${articleOf(sought[0]!)} ` : "", ...enumerated(sought.map(termOf))]),
     ]);
   }
   for (const { term, parameters, variable } of introduced) {
     if (parameters.length === 0) continue;
-    const scope: readonly Inline[] = ["for all ", ...listed(parameters.map(termOf))];
+    const scope: readonly Inline[] = ["for all ", ...enumerated(parameters.map(termOf))];
     clauses.push([
       ...(parameters.length === 1 ? ["for each ", termOf(parameters[0]!)] : scope),
       " let ",
@@ -157,12 +157,4 @@ function introducedParts(introduced: readonly Introduction[]): readonly Inline[]
 /** The article of a letter as it is spoken: an x, a y. */
 function articleOf(letter: string): string {
   return /^[aefhilmnorsx]/.test(letter) ? "an" : "a";
-}
-
-/** `a`, `a and b`, `a, b and c`. */
-function listed(items: readonly Inline[]): readonly Inline[] {
-  return items.flatMap((item, index): Inline[] => {
-    if (index === 0) return [item];
-    return [index === items.length - 1 ? " and " : ", ", item];
-  });
 }

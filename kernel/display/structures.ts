@@ -1,19 +1,22 @@
 /**
  * Structures as they are shown. What depends on the kind of structure is decided here: points are shown by tables and
- * lists of tuples, infinite structures by their definition and a sample.
+ * lists of tuples, structures on infinite carriers by their definition and a sample, free terms by their recursion.
  */
+import { type AnyStructure, isOfTerms, sizeOf } from "../../lib/carriers/any-structure.ts";
 import { buildCarrier } from "../../lib/carriers/build.ts";
-import type { Structure } from "../../lib/carriers/structure.ts";
 import type { StructureDefinition } from "../../lib/logic/structure-definition.ts";
 import type { Block } from "./blocks.ts";
 import { carrierWords, definitionText } from "./definition-text.ts";
 import { isOnPoints, onPoints, pointsBlocks, pointsData, pointsSource } from "./finite-structures.ts";
 import { definedBlocks } from "./infinite.ts";
+import { termsBlocks, termsData, termsWords } from "./term-structures.ts";
 import { counted } from "./text.ts";
 
 /** What a structure lives on, as it is said after `on`: `3 points`, `the rational line`. */
-export function domainOf({ carrier }: Structure): string {
-  return carrier.size === null ? carrierWords(carrier.description) : counted(carrier.size, "point");
+export function domainOf(structure: AnyStructure): string {
+  if (isOfTerms(structure)) return termsWords(structure);
+  const { size, description } = structure.carrier;
+  return size === null ? carrierWords(description) : counted(size, "point");
 }
 
 /** As {@link domainOf}, for a structure that has not been built. */
@@ -24,9 +27,10 @@ export function domainOfDefinition({ carrier }: StructureDefinition): string {
 
 /**
  * The structure as the cell language writes it, so that it can be copied into a `define`; null when it is too long to be
- * of use there.
+ * of use there, or the language cannot write it.
  */
-export function sourceOf(structure: Structure): string | null {
+export function sourceOf(structure: AnyStructure): string | null {
+  if (isOfTerms(structure)) return null;
   return isOnPoints(structure) ? pointsSource(structure) : definitionText(structure);
 }
 
@@ -34,7 +38,8 @@ export function sourceOf(structure: Structure): string | null {
  * All that is shown of a structure.
  * @param role what it is an example of, as a noun phrase: `countermodel`
  */
-export function structureBlocks(role: string, structure: Structure): readonly Block[] {
+export function structureBlocks(role: string, structure: AnyStructure): readonly Block[] {
+  if (isOfTerms(structure)) return termsBlocks(role, structure);
   if (isOnPoints(structure)) return pointsBlocks(role, structure);
   const numbered = onPoints(structure);
   if (numbered === null) return definedBlocks(role, structure);
@@ -42,13 +47,20 @@ export function structureBlocks(role: string, structure: Structure): readonly Bl
 }
 
 /**
- * For `eval --json`: the size, null for an infinite one, and for each relation its tuples of points counted from 1; for
- * an infinite structure its definition instead.
+ * For `eval --json`: the size, null for an infinite one, and for each relation its tuples of points counted from 1; where
+ * these are too many or infinitely many, the definition instead.
  */
-export function structureData(structure: Structure): Readonly<Record<string, unknown>> {
-  const { size } = structure.carrier;
+export function structureData(structure: AnyStructure): Readonly<Record<string, unknown>> {
+  const size = sizeOf(structure);
+  if (isOfTerms(structure)) return { size, ...termsData(structure) };
   const numbered = onPoints(structure);
   return numbered === null
     ? { size, definition: definitionText(structure) }
     : { size, relations: pointsData(numbered) };
+}
+
+/** For `eval --json`, beside the size of a structure that was found: what it is, where the size does not say it. */
+export function infiniteData(structure: AnyStructure | null): Readonly<Record<string, unknown>> {
+  if (structure === null || sizeOf(structure) !== null) return {};
+  return { infiniteModel: sourceOf(structure) ?? domainOf(structure) };
 }

@@ -3,6 +3,8 @@
  * search finished are named as such, an ended budget is named with the size it ended at, and `(checked)` stands only
  * where the checker accepted the evidence.
  */
+
+import { sizeOf } from "../../lib/carriers/any-structure.ts";
 import type {
   Answer,
   AxiomAnswer,
@@ -20,8 +22,12 @@ import type {
   Search,
   ShownDerivation,
 } from "../../lib/inquiry/answer.ts";
+import { CARRIERS } from "../../lib/inquiry/carrier-list.ts";
 import type { Claim, Statement } from "../../lib/language/statements.ts";
+import { depthOf } from "../../lib/logic/formula.ts";
 import { DEFAULT_BUDGET, type EndReason } from "../../lib/logic/meter.ts";
+import type { Axiom } from "../../lib/logic/theory.ts";
+import { reasonSource } from "./reasons.ts";
 import { domainOf, domainOfDefinition } from "./structures.ts";
 import { counted, enumerate, grouped, onSizesTo, withArticle } from "./text.ts";
 
@@ -36,7 +42,7 @@ export function summarise(statement: Statement, answer: Answer): string {
     case "claim":
       return `${answer.verdict}: ${claimReason(statement, answer, budget)}`;
     case "check-finite":
-      return `${answer.verdict}: ${finiteReason(answer, budget)}`;
+      return `${answer.verdict}: ${finiteReason(statement, answer, budget)}`;
     case "models":
       return modelsSummary(answer, budget);
     case "count":
@@ -69,23 +75,63 @@ function claimReason(statement: Statement, answer: ClaimAnswer, budget: number):
     answer.structures.map(({ role, structure }) => `${withArticle(role)} on ${domainOf(structure)}`),
   );
   if (answer.verdict === "open") {
+    const [deep] = answer.searches.flatMap(({ configurations }) => configurations ?? []);
+    if (deep !== undefined && (claim?.kind === "true-in" || claim?.kind === "false-in"))
+      return depthReason(claim, deep, answer.searches[0]!, budget);
     const open = answer.searches.flatMap((search, place) => {
       const report = answer.reports[place];
       return search.foundAt !== null || report?.result === "derived"
         ? []
         : [openText(search, report ?? null, budget, answer.steps)];
     });
-    const reasons = [...(found === "" ? [] : [`${found}${checked}`]), ...open];
+    const noFinite =
+      answer.noFinite === null ? [] : [`no finite model, ${noFiniteSource(statement, answer)}`];
+    const reasons = [...(found === "" ? [] : [`${found}${checked}`]), ...noFinite, ...open];
     return reasons.length === 0 ? `${stepsText(answer.steps, budget)} spent` : reasons.join("; ");
   }
   if (claim?.kind === "true-in" || claim?.kind === "false-in")
     return `evaluated in ${claim.structure.text}, ${domainOfDefinition(claim.structure.structure)}${checked}`;
   if (answer.inconsistent) return `${inconsistencyText(claim)}${checked}`;
+  if (answer.noFinite !== null) {
+    const reason = noFiniteSource(statement, answer);
+    return found === ""
+      ? `no finite model, ${reason}${checked}`
+      : `${found}; no finite one, ${reason}${checked}`;
+  }
   if (answer.derivations.length > 0 || found === "") {
     const derived = answer.derivations.length > 0 ? derivedText(answer.derivations) : memberText(claim);
     return found === "" ? `${derived}${checked}` : `${derived}; ${found}${checked}`;
   }
-  return `${found}${checked}${fewerText(answer.searches)}`;
+  return `${found}${checked}${fewerText(answer)}`;
+}
+
+/** Configurations of which more are told by a power of ten alone. */
+const MOST_TOLD = 1e15;
+
+/** Why a sentence about an infinite structure was not decided. */
+function depthReason(
+  claim: Claim & { readonly kind: "true-in" | "false-in" },
+  configurations: number,
+  { ended }: Search,
+  budget: number,
+): string {
+  const count =
+    configurations > MOST_TOLD ? "more than 10^15 configurations" : counted(configurations, "configuration");
+  const depth = depthOf(claim.sentence.formula);
+  const end = ended === "budget" || ended === "interrupted" ? `; ${endText(ended, budget, null)}` : "";
+  return `a sentence of depth ${depth} is too deep for ${domainOfDefinition(claim.structure.structure)}: to list all cases would take up to ${count}${end}`;
+}
+
+/** What the reason that there is no finite model rests on: `by irr and trans`. */
+function noFiniteSource(statement: Statement, { noFinite }: ClaimAnswer | FiniteAnswer): string {
+  return reasonSource(noFinite!, axiomsAsked(statement));
+}
+
+/** The axioms of the theory that a question about finite models asks about. */
+export function axiomsAsked(statement: Statement): readonly Axiom[] {
+  if (statement.kind === "check-finite") return statement.theory.theory.axioms;
+  const claim = claimOf(statement);
+  return claim !== null && "theory" in claim ? claim.theory.theory.axioms : [];
 }
 
 /** What an inconsistent theory means for a claim. */
@@ -130,11 +176,12 @@ export function reportText(report: DerivationReport | null): string {
 }
 
 /** That the structure found is a smallest one, where the search went through all smaller sizes; else how far it went. */
-function fewerText(searches: readonly Search[]): string {
+function fewerText({ searches, structures }: ClaimAnswer): string {
   const [search] = searches;
-  if (searches.length !== 1 || search === undefined || search.foundAt === null || search.foundAt === 1)
-    return "";
-  if (search.noneUpTo === search.foundAt - 1) return "; none on fewer (complete search)";
+  if (searches.length !== 1 || search === undefined || search.foundAt === 1) return "";
+  if (search.foundAt === null && structures.every(({ structure }) => sizeOf(structure) !== null)) return "";
+  if (search.foundAt !== null && search.noneUpTo === search.foundAt - 1)
+    return "; none on fewer (complete search)";
   return search.noneUpTo > 0 ? `; none ${onSizesTo(search.noneUpTo)} (complete search)` : "";
 }
 
@@ -144,12 +191,20 @@ export function searchText(search: Search, budget: number, steps: number): strin
     search.symmetricUpTo === null
       ? ""
       : `; none met among symmetric ones up to ${grouped(search.symmetricUpTo)}`;
-  const none =
+  const finite =
     search.noneUpTo > 0 ? `no ${bare(search.sought)} ${onSizesTo(search.noneUpTo)}${symmetric}` : "";
+  const none = [finite, carriersText(search, finite === "")].filter(Boolean).join("; ");
   if (search.ended === null)
     return none === "" ? `no size was searched for ${search.sought}` : `${none}; ${stepsText(steps, budget)}`;
   const end = endText(search.ended, budget, search.endedAt);
   return none === "" ? `looking for ${search.sought}, ${end}` : `${none}; ${end}`;
+}
+
+/** How many infinite carriers have no such structure: `none on 12 of 57 infinite carriers`. */
+function carriersText({ sought, noneOnCarriers }: Search, isFirst = false): string {
+  if (noneOnCarriers === 0) return "";
+  const none = isFirst ? `no ${bare(sought)}` : "none";
+  return `${none} on ${noneOnCarriers} of ${counted(CARRIERS.length, "infinite carrier")}`;
 }
 
 /** Why work ended, and at which size. */
@@ -174,28 +229,35 @@ function bare(sought: string): string {
   return sought.replace(/^an? /, "");
 }
 
-function finiteReason(answer: FiniteAnswer, budget: number): string {
+function finiteReason(statement: Statement, answer: FiniteAnswer, budget: number): string {
   const checked = answer.evidence === null ? "" : " (checked)";
+  const { search, report, model, steps } = answer;
+  const found = model === null ? "a model" : `a model on ${domainOf(model)}`;
   switch (answer.verdict) {
     case "finite": {
-      const size = answer.modelSize ?? answer.leastSize ?? 0;
       if (answer.leastSize === 1) return `a model on 1 point${checked}`;
       if (answer.leastSize !== null)
         return `a smallest model has ${counted(answer.leastSize, "point")}${checked}${smallerText(answer)}`;
-      const none = smallerText(answer);
-      return `a model on ${counted(size, "point")}${checked}${none}; whether it is a smallest one is open`;
+      return `${found}${checked}${smallerText(answer)}; whether it is a smallest one is open`;
     }
     case "infinite-only":
-      return `an infinite model, and no finite one${checked}`;
+      return `${found}; no finite one, ${noFiniteSource(statement, answer)}${checked}`;
     case "inconsistent":
       return `${answer.derivation === null ? "no model" : `a contradiction, ${derivedText([answer.derivation])}`}${checked}`;
-    case "no-finite-model":
-      return `no finite model${checked}; consistency is open`;
+    case "no-finite-model": {
+      const tried = [reportText(report), carriersText(search, true), endOf(search, budget, steps)];
+      return `no finite model, ${noFiniteSource(statement, answer)}${checked}; whether there is an infinite one is open: ${tried.filter(Boolean).join("; ")}`;
+    }
     case "consistent":
-      return `an infinite model${checked}; finite ones are open`;
+      return `${found}${checked}; whether there is a finite one is open: ${searchText({ ...search, noneOnCarriers: 0 }, budget, steps)}`;
     case "open":
-      return openText(answer.search, answer.report, budget, answer.steps);
+      return openText(search, report, budget, steps);
   }
+}
+
+/** What work there was, where it ended. */
+function endOf({ ended }: Search, budget: number, steps: number): string {
+  return ended === null ? stepsText(steps, budget) : endText(ended, budget, null);
 }
 
 /** What is known of the sizes below that of the model: proofs that the checker accepted, or a search alone. */

@@ -39,6 +39,12 @@ function pieceToHtml(piece: Inline): string {
       return `<span>${escapeHtml(printFormula(piece.formula, "unicode"))}</span>`;
     case "term":
       return `<span>${escapeHtml(printTerm(piece.term, "unicode"))}</span>`;
+    case "relation":
+      return `<span>${escapeHtml(piece.name)}</span>`;
+    case "math":
+      return `<span style="white-space:nowrap">${escapeHtml(piece.text)}</span>`;
+    case "strong":
+      return `<strong>${escapeHtml(piece.text)}</strong>`;
     case "code":
       return `<code>${escapeHtml(piece.text)}</code>`;
     case "verdict": {
@@ -56,6 +62,8 @@ function blockToHtml(block: Block): string {
   switch (block.kind) {
     case "line":
       return `<p style="margin:4px 0">${inlineToHtml(block.parts)}</p>`;
+    case "paragraph":
+      return `<p style="margin:10px 0 4px 0;max-width:46em">${heldPieces(block.parts)}</p>`;
     case "note":
       return `<p style="margin:4px 0;font-style:italic">${inlineToHtml(block.parts)}</p>`;
     case "source":
@@ -106,8 +114,12 @@ const VALUE_WIDTH = 20;
 
 /** A cell of a derivation: browsers would break short formulas before they make the table wider. */
 function derivationCell(cell: readonly Inline[], isLast: boolean): string {
-  const width = isLast ? VALUE_WIDTH : SENTENCE_WIDTH;
-  return cell
+  return heldPieces(cell, isLast ? VALUE_WIDTH : SENTENCE_WIDTH);
+}
+
+/** Prose in which no line ends inside a short formula. */
+function heldPieces(parts: readonly Inline[], width = VALUE_WIDTH): string {
+  return parts
     .map((piece) => {
       const isShort = typeof piece !== "string" && displayWidth(inlineToText([piece])) <= width;
       return isShort ? `<span style="white-space:nowrap">${pieceToHtml(piece)}</span>` : pieceToHtml(piece);

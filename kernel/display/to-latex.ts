@@ -97,6 +97,12 @@ function pieceToLatex(piece: Inline): string {
       return `$${printFormula(piece.formula, "latex")}$`;
     case "term":
       return `$${printTerm(piece.term, "latex")}$`;
+    case "relation":
+      return relationToLatex(piece.name);
+    case "math":
+      return `$${piece.latex}$`;
+    case "strong":
+      return `\\textbf{${escapeLatex(piece.text)}}`;
     case "code":
       return `\\texttt{${escapeLatex(piece.text)}}`;
     case "verdict":
@@ -104,9 +110,17 @@ function pieceToLatex(piece: Inline): string {
   }
 }
 
+/** A relation by its name: in mathematics a letter or a sign, else text in italics. */
+export function relationToLatex(name: string): string {
+  if (/^\p{L}$/u.test(name)) return `$${name}$`;
+  return /^\p{L}/u.test(name) ? `\\textit{${escapeLatex(name)}}` : escapeLatex(name);
+}
+
 function blockToLatex(block: Block): string {
   switch (block.kind) {
     case "line":
+      return `\\noindent ${inlineToLatex(block.parts)}`;
+    case "paragraph":
       return `\\noindent ${inlineToLatex(block.parts)}`;
     case "note":
       return `\\noindent\\emph{${inlineToLatex(block.parts)}}`;

@@ -14,6 +14,12 @@ function pieceToMarkdown(piece: Inline): string {
       return `$${printFormula(piece.formula, "latex")}$`;
     case "term":
       return `$${printTerm(piece.term, "latex")}$`;
+    case "relation":
+      return /^[A-Za-z]$/.test(piece.name) ? `$${piece.name}$` : escapeMarkdown(piece.name);
+    case "math":
+      return `$${piece.latex}$`;
+    case "strong":
+      return `**${escapeMarkdown(piece.text)}**`;
     case "code":
       return codeSpan(visible(piece.text));
     case "verdict":

@@ -21,7 +21,11 @@ function pieceToText(piece: Inline): string {
       return printFormula(piece.formula, "unicode");
     case "term":
       return printTerm(piece.term, "unicode");
+    case "relation":
+      return visible(piece.name);
     case "code":
+    case "math":
+    case "strong":
       return visible(piece.text);
     case "verdict":
       return piece.leads ? `${piece.word}: ` : piece.word;
@@ -32,6 +36,8 @@ function blockToText(block: Block): string {
   switch (block.kind) {
     case "line":
       return lineToText(block.parts);
+    case "paragraph":
+      return `\n${wrap(unbroken(block.parts), WIDTH).join("\n").replaceAll(HELD, " ")}`;
     case "note":
       return wrap(`(${inlineToText(block.parts)})`, WIDTH).join("\n");
     case "source":
