@@ -41,7 +41,7 @@ import { junction, negationNormalForm } from "../logic/records/made-formulas.ts"
 import { type CertificateRecord, DEEPEST_TERMS, isTerm, type TermsRecord } from "./free-terms.ts";
 
 /** Parts of formulas that are made in following one certificate at most. */
-const MOST_PARTS = 2_000_000;
+const MOST_PARTS = 1_000_000;
 
 /** Atoms that are taken to be true or false, by their JSON text. */
 type Known = ReadonlyMap<string, LiteralRecord>;
@@ -77,6 +77,7 @@ export function checkCertificate(
     function follows(start: Claim, steps: CertificateRecord): boolean {
       let claim = start;
       for (const step of steps) {
+        if (claim.formula[0] === "false") return true;
         if (step[0] !== "instances") {
           const branches = terms.branches(claim, step[1], step[0] === "induction");
           return branches?.every(([symbol, branch]) => follows(branch, step[2][symbol]!)) ?? false;
@@ -268,7 +269,7 @@ export class FreeTerms {
       for (let place = 1; place < left.length; place += 1) {
         const some = this.#equations(left[place]!, right[place]!, depth + 1);
         if (some === null) return null;
-        all.push(...some);
+        for (const one of some) all.push(one);
       }
       return all;
     }

@@ -59,6 +59,8 @@ export type CertificateStep =
   | readonly ["instances", ...TermRecord[]]
   | readonly ["cases" | "induction", string, Readonly<Record<string, CertificateRecord>>];
 
+/** Constructors, arguments and places beyond which a record is refused. */
+const MOST_NAMES = 100;
 /** Levels of formulas, terms and certificates beyond which they are refused. */
 export const DEEPEST_TERMS = 200;
 
@@ -73,8 +75,8 @@ export function readTerms(value: unknown): TermsRecord | null {
   const { constructors, relations } = value;
   if (!isObject(constructors) || !isObject(relations)) return null;
   const args = Object.values(constructors);
-  if (!args.every(areNames) || !args.some((one) => one.length === 0) || args.every((one) => one.length === 0))
-    return null;
+  if (args.length > MOST_NAMES || !args.every(areNames)) return null;
+  if (!args.some((one) => one.length === 0) || !args.some((one) => one.length > 0)) return null;
   const record = value as unknown as TermsRecord;
   for (const relation of Object.values(relations)) {
     if (!isObject(relation, "on", "others", "cases")) return null;
@@ -171,6 +173,7 @@ function isObject(value: unknown, ...keys: readonly string[]): value is Record<s
 function areNames(value: unknown): value is readonly string[] {
   return (
     Array.isArray(value) &&
+    value.length <= MOST_NAMES &&
     value.every((name) => typeof name === "string" && name !== "") &&
     new Set(value).size === value.length
   );

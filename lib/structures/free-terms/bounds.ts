@@ -17,7 +17,7 @@ import {
   type TermRecord,
   withParts,
 } from "../../logic/records/formulas.ts";
-import { negationNormalForm } from "../../logic/records/made-formulas.ts";
+import { junction, negationNormalForm } from "../../logic/records/made-formulas.ts";
 
 /** Where a relation must hold, or may hold at most, of elements and the value of a constructor. */
 export interface Bound {
@@ -138,11 +138,11 @@ function boundsOf(
           if (typeof term === "string" && !names.has(term)) names.set(term, others[place]!);
           else conditions.push(["=", others[place]!, term]);
         });
-      const rest = junctionOf("or", parts.toSpliced(index, 1));
+      const rest = junction("or", parts.toSpliced(index, 1));
       const isLower = part[0] === "is";
       const said: TermFormulaRecord = isLower
-        ? junctionOf("and", [...conditions, negationNormalForm(rest, false, growth)])
-        : junctionOf("or", [...conditions.map((one): TermFormulaRecord => ["not", one]), rest]);
+        ? junction("and", [...conditions, negationNormalForm(rest, false, growth)])
+        : junction("or", [...conditions.map((one): TermFormulaRecord => ["not", one]), rest]);
       // Something is said of all values of another variable: that is no definition.
       if (freeVariables(said).some((variable) => !names.has(variable) && !others.includes(variable)))
         continue;
@@ -151,12 +151,6 @@ function boundsOf(
     }
   }
   return [];
-}
-
-/** The conjunction or disjunction as it reads best. */
-export function junctionOf(kind: "and" | "or", parts: readonly TermFormulaRecord[]): TermFormulaRecord {
-  if (parts.length > 1) return [kind, ...parts];
-  return parts[0] ?? [kind === "and" ? "true" : "false"];
 }
 
 /** One constructor in place of all of which the same is said, if anything is. */

@@ -11,17 +11,19 @@ import {
   termFunctions,
   withParts,
 } from "../../logic/records/formulas.ts";
-import { type Bound, junctionOf, othersOf, renameConstructors, type Wanted } from "./bounds.ts";
+import { junction } from "../../logic/records/made-formulas.ts";
+import { type Bound, othersOf, renameConstructors, type Wanted } from "./bounds.ts";
 
 /** Constructors that may be left out, all sets of which are tried. */
 const MOST_OPTIONAL = 4;
 
 /**
  * Where a relation holds of a constructor's values: where it must by the lower bounds, or where it may by the upper ones.
- * Where nothing is said, `lowest` is nowhere, `highest` everywhere, and `itself` at the value itself alone.
+ * Where nothing is said, `lowest` is nowhere, `highest` everywhere, `itself` at the value itself alone, `others`
+ * everywhere but there.
  */
-type Manner = "lowest" | "highest" | "itself";
-const MANNERS: readonly Manner[] = ["lowest", "highest", "itself"];
+type Manner = "lowest" | "highest" | "itself" | "others";
+const MANNERS: readonly Manner[] = ["lowest", "highest", "itself", "others"];
 
 /** Candidates, those with few constructors first. */
 export function* candidates(
@@ -30,12 +32,15 @@ export function* candidates(
   growth: Growth,
 ): Generator<TermsRecord> {
   const places = choices(relations.map((relation) => placesOfRecursion(relation, wanted)));
+  const seen = new Set<string>();
   const manners = choices(relations.map(({ places: count }) => (count > 1 ? MANNERS : MANNERS.slice(0, 2))));
   for (const constructors of constructorSets(wanted)) {
     for (const on of places) {
       for (const manner of manners) {
         const record = readTerms(recordOf(constructors, relations, on, manner, growth));
-        if (record !== null) yield record;
+        const text = JSON.stringify(record);
+        if (record !== null && !seen.has(text)) yield record;
+        seen.add(text);
       }
     }
   }
@@ -166,14 +171,15 @@ function caseOf(
   others: readonly string[],
 ): TermFormulaRecord {
   if (bounds.length === 0) {
-    if (manner !== "itself") return [manner === "lowest" ? "false" : "true"];
-    return junctionOf(
+    if (manner === "lowest" || manner === "highest") return [manner === "lowest" ? "false" : "true"];
+    const itself = junction(
       "and",
       others.map((other) => ["=", other, value]),
     );
+    return manner === "itself" ? itself : ["not", itself];
   }
-  const side = manner === "highest" ? "upper" : "lower";
+  const side = manner === "highest" || manner === "others" ? "upper" : "lower";
   const said = bounds.filter((bound) => bound.side === side).map(({ formula }) => formula);
   const different = new Map(said.map((formula) => [JSON.stringify(formula), formula]));
-  return junctionOf(side === "lower" ? "or" : "and", [...different.values()]);
+  return junction(side === "lower" ? "or" : "and", [...different.values()]);
 }

@@ -2,16 +2,22 @@
 import type { CertificateRecord, TermsRecord } from "../../carriers/free-terms.ts";
 import { type Claim, FreeTerms } from "../../carriers/free-terms-check.ts";
 import {
+  atomTerms,
   type FormulaRecord,
   freeVariables,
   type Growth,
   partsOf,
   type TermFormulaRecord,
   type TermRecord,
+  termVariables,
+  visitAtoms,
 } from "../../logic/records/formulas.ts";
 
 /** What it costs to tell the constructors of a parameter apart, as many as the symbols of a term. */
 const COST_OF_CASES = 3;
+
+/** Instances that are tried at once. */
+const MOST_INSTANCES = 12;
 
 /** Certificates for one structure. */
 export class CertificateSearch {
@@ -39,9 +45,11 @@ export class CertificateSearch {
     const { formula } = claim;
     if (formula[0] === "false") return [];
     const parameters = [...freeVariables(formula)].sort((a, b) => Number(a) - Number(b));
-    if (!hasForall(formula)) {
+    if (!hasQuantifier(formula)) {
       if (this.#terms.isRefuted(claim)) return [];
     } else {
+      const atOnce = this.#refuteAtOnce(claim, parameters);
+      if (atOnce !== null) return atOnce;
       for (const [size, terms] of this.#termsOf(parameters, left).entries()) {
         for (const term of terms) {
           const rest = this.#refute(this.#terms.instances(claim, [term])!, left - size);
@@ -57,6 +65,28 @@ export class CertificateSearch {
       }
     }
     return null;
+  }
+
+  /** When the first ∀ is innermost: its instances at all parameters, constants and terms that occur, as many as needed. */
+  #refuteAtOnce(claim: Claim, parameters: readonly string[]): CertificateRecord | null {
+    const inner = firstForall(claim.formula);
+    if (inner === null || hasQuantifier(inner[2])) return null;
+    const found = new Map<string, TermRecord>(parameters.map((name) => [name, name]));
+    const add = (term: TermRecord) => {
+      if (found.size < MOST_INSTANCES && termVariables(term).every((name) => parameters.includes(name)))
+        found.set(JSON.stringify(term), term);
+    };
+    for (const [symbol, places] of this.#constructors) if (places === 0) add([symbol]);
+    visitAtoms(claim.formula, this.#growth, (atom) => atomTerms(atom).forEach(add));
+    const refutes = (terms: readonly TermRecord[]) =>
+      this.#terms.isRefuted(this.#terms.instances(claim, terms)!);
+    let terms: readonly TermRecord[] = [...found.values()];
+    if (!refutes(terms)) return null;
+    for (const term of [...terms].reverse()) {
+      const fewer = terms.filter((other) => other !== term);
+      if (refutes(fewer)) terms = fewer;
+    }
+    return [["instances", ...terms]];
   }
 
   #branches(
@@ -102,6 +132,18 @@ function listsOf(
   return lists;
 }
 
-function hasForall(formula: TermFormulaRecord): boolean {
-  return formula[0] === "forall" || partsOf(formula).some(hasForall);
+/** The first ∀ outside of other quantifiers. */
+function firstForall(
+  formula: TermFormulaRecord,
+): readonly ["forall" | "exists", string, TermFormulaRecord] | null {
+  if (formula[0] === "forall" || formula[0] === "exists") return formula;
+  for (const part of partsOf(formula)) {
+    const found = firstForall(part);
+    if (found !== null) return found;
+  }
+  return null;
+}
+
+function hasQuantifier(formula: TermFormulaRecord): boolean {
+  return formula[0] === "forall" || formula[0] === "exists" || partsOf(formula).some(hasQuantifier);
 }
