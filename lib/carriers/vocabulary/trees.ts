@@ -95,7 +95,7 @@ export function forestVocabulary(carrier: Forest): Vocabulary<ForestConfiguratio
               // With one child each, a common ancestor is one of the two.
               if (branching === 1 && back > 0 && forth > 0) continue;
               atoms.push(
-                forth > 0
+                forth > 0 || back === 0
                   ? compare(ancestor(x, forth), "=", ancestor(y, back))
                   : compare(ancestor(y, back), "=", x),
               );
@@ -132,7 +132,10 @@ interface Climb {
   readonly steps: number;
 }
 
-/** That one element has the depth n is told by the kind when n < ends; that two climbs meet, when together they are no longer than the offset. */
+/**
+ * Kinds tell whether an element has the depth n when n < ends, and whether two climbs meet when together they are no longer
+ * than the offset.
+ */
 function needsOf({ left, right }: Comparison): { readonly offset: number; readonly ends: number } {
   const nothing = { offset: 0, ends: 0 };
   const [first, second] = [left, right].map((term) => (isClimb(term) ? climbOf(term) : null));
@@ -148,16 +151,13 @@ function needsOf({ left, right }: Comparison): { readonly offset: number; readon
 
 function boundsComplaint(atom: Comparison, offset: number, ends: number): Complaint | null {
   const needed = needsOf(atom);
-  if (needed.offset > offset)
-    return complain(
-      `this forest tells elements apart that are at most ${stepsOf(offset)} from each other, and \`${writeComparison(atom)}\` needs ${stepsOf(needed.offset)}`,
-      null,
-    );
-  if (needed.ends > ends)
-    return complain(
-      `this forest tells elements apart that are less than ${stepsOf(ends)} from the root, and \`${writeComparison(atom)}\` needs ${stepsOf(needed.ends)}`,
-      null,
-    );
+  const unsettled = (told: string, needs: number): Complaint => ({
+    message: `this forest tells elements apart that are ${told}, and \`${writeComparison(atom)}\` needs ${stepsOf(needs)}`,
+    suggestion: null,
+    isUnsettled: true,
+  });
+  if (needed.offset > offset) return unsettled(`at most ${stepsOf(offset)} from each other`, needed.offset);
+  if (needed.ends > ends) return unsettled(`less than ${stepsOf(ends)} from the root`, needed.ends);
   return null;
 }
 
