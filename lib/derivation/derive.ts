@@ -5,6 +5,7 @@ import type { Meter } from "../logic/meter.ts";
 import { FormulaTooLarge } from "../logic/records/formulas.ts";
 import { assemble } from "./assemble.ts";
 import { refuteByCases } from "./cases.ts";
+import { complementOutcome, complementTask } from "./complement.ts";
 import type { CreateSolver } from "./ground-solver.ts";
 import { instantiate } from "./instantiation/instantiate.ts";
 import { type Preparation, type Prepared, prepare } from "./prepare.ts";
@@ -36,7 +37,12 @@ export type TurnOutcome =
 
 /** What refutes the clauses: saturation by a strategy, instances of the clauses, or cases. */
 export type Engine =
-  | { readonly by: "saturation"; readonly strategy: Strategy }
+  | {
+      readonly by: "saturation";
+      readonly strategy: Strategy;
+      /** Whether it goes through complements of all relations (`complement.ts`); not where the strategy splits. */
+      readonly complemented?: true;
+    }
   | { readonly by: "instances" }
   /** Saturation in each case that closed parts with names leave. */
   | { readonly by: "cases"; readonly strategy: Strategy };
@@ -91,14 +97,12 @@ function refute(
   meter: Meter,
   createSolver: CreateSolver,
 ): EngineOutcome {
-  if (engine.by === "saturation")
-    return saturate(
-      prepared.task,
-      engine.strategy,
-      { clauses, literals: MOST_LITERALS },
-      meter,
-      createSolver,
-    );
+  if (engine.by === "saturation") {
+    const { strategy, complemented = false } = engine;
+    const task = complemented ? complementTask(prepared.task) : prepared.task;
+    const outcome = saturate(task, strategy, { clauses, literals: MOST_LITERALS }, meter, createSolver);
+    return complemented ? complementOutcome(outcome) : outcome;
+  }
   if (engine.by === "cases") {
     const limits = { clauses, literals: MOST_LITERALS };
     return refuteByCases(prepared.task, engine.strategy, limits, meter, createSolver);

@@ -8,7 +8,7 @@ import { type DerivationTask, prepareTurn, runTurn, type Turn, type TurnOutcome 
 import { explicitDefinition } from "./explicit.ts";
 import type { CreateSolver } from "./ground-solver.ts";
 import type { Prepared } from "./prepare.ts";
-import { ENDLESS_TURNS, GROWTH, TURNS, turnsOf } from "./schedule.ts";
+import { ENDLESS_TURNS, GROWTH, type PlannedTurn, TURNS, turnsOf } from "./schedule.ts";
 
 export type { CreateSolver } from "./ground-solver.ts";
 export { TURNS } from "./schedule.ts";
@@ -40,10 +40,11 @@ export class DerivationSearch {
   /** Whether some turn met its bound on memory. */
   #metMemory = false;
 
-  constructor(task: DerivationTask, createSolver: CreateSolver) {
+  /** @param first the turns to begin with, before those that come again and again */
+  constructor(task: DerivationTask, createSolver: CreateSolver, first: readonly PlannedTurn[] = TURNS) {
     this.#task = task;
     this.#createSolver = createSolver;
-    this.#turns = allTurns(task);
+    this.#turns = allTurns(task, first);
     this.#hasDefinitions = task.premises.some(
       (premise) => explicitDefinition(recordFormula(premise) as TermFormulaRecord, 0) !== null,
     );
@@ -162,8 +163,8 @@ function hasOpposites({ task }: Prepared): boolean {
   );
 }
 
-function* allTurns(task: DerivationTask): Generator<Turn, never> {
-  for (const plan of TURNS) yield* turnsOf(plan, task);
+function* allTurns(task: DerivationTask, first: readonly PlannedTurn[]): Generator<Turn, never> {
+  for (const plan of first) yield* turnsOf(plan, task);
   for (let factor = 1; ; factor *= GROWTH)
     for (const plan of ENDLESS_TURNS) yield* turnsOf({ ...plan, clauses: plan.clauses * factor }, task);
 }

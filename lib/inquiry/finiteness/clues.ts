@@ -1,6 +1,6 @@
 /**
- * What axioms show about where a reason may be found: which relations they give partners in, which steps they make
- * from elements to others, and which elements they say exist. Only the order of trying depends on it, and what is tried.
+ * What axioms show about where a reason may be found: which elements they say exist, which steps they make from elements
+ * to others, and which relations they give partners in. What is tried, and in which order, depends on it, and nothing else.
  */
 import {
   type Atom,
@@ -15,13 +15,11 @@ import {
   type Variable,
   variablesOf,
 } from "../../logic/formula.ts";
-import { toSimpleNegationForm } from "../../logic/normal-forms/prepare.ts";
-import { FormTooLarge } from "../../logic/normal-forms/result.ts";
-import { StepRecorder } from "../../logic/normal-forms/steps.ts";
 import type { Witness } from "./reason.ts";
 
-/** ∀ `from` (`guard` → ∃ `to` `body`), as an axiom says. */
+/** ∀ `from` (`guard` → ∃ `to` `body`), as an axiom says; perhaps of the elements of a witness. */
 export interface Step {
+  readonly witness: Witness | null;
   readonly from: readonly Variable[];
   readonly guard: Formula;
   readonly to: Variable;
@@ -32,11 +30,11 @@ export interface Clues {
   readonly steps: readonly Step[];
   readonly witnesses: readonly Witness[];
   /**
-   * By relation, sign and two of its places, as {@link partnerKey} writes them: how often an axiom says that for an
-   * element at the first there is one at the second.
+   * By relation, sign and two of its places, as {@link partnerKey} writes them: how often axioms say that for an element
+   * at the first place there is one at the second.
    */
   readonly partners: ReadonlyMap<string, number>;
-  /** Whether some axiom says that something exists. If none does, one element by itself is a model, or there is none. */
+  /** Whether some axiom says that something exists. If none does, any one element of a model is a model by itself. */
   readonly hasExistence: boolean;
 }
 
@@ -49,35 +47,16 @@ export function partnerKey(
   return `${isPositive ? "+" : "-"}${name} ${first} ${second}`;
 }
 
-/** Parts of a negation normal form that is looked at; axioms that would have more give no clues. */
-const MOST_PARTS = 5_000;
-const LIMITS = { parts: MOST_PARTS, levels: 1_000 };
+/** Parts of one axiom that are looked at; the others give no clues. */
+const MOST_PARTS = 2_000;
 
 export function cluesOf(axioms: readonly Formula[]): Clues {
   const collector = new Collector();
-  for (const axiom of axioms) {
-    const normal = simpleForm(axiom);
-    if (normal === null) {
-      collector.hasExistence = true;
-      continue;
-    }
-    collector.witnessesOf(normal, axiom);
-    collector.walk(normal, [], []);
-    collector.look(normal, []);
-  }
+  for (const axiom of axioms) collector.collect(axiom);
   return collector;
 }
 
-function simpleForm(formula: Formula): Formula | null {
-  try {
-    return toSimpleNegationForm(formula, LIMITS, new StepRecorder(false));
-  } catch (problem) {
-    if (problem instanceof FormTooLarge) return null;
-    throw problem;
-  }
-}
-
-/** The negation, without double ones. */
+/** The negation, with ¬ moved inside as far as no part is doubled. */
 export function negated(formula: Formula): Formula {
   switch (formula.kind) {
     case "not":
@@ -86,6 +65,8 @@ export function negated(formula: Formula): Formula {
       return or(...formula.parts.map(negated));
     case "or":
       return and(...formula.parts.map(negated));
+    case "implies":
+      return and(formula.left, negated(formula.right));
     case "forall":
       return { kind: "exists", variable: formula.variable, body: negated(formula.body) };
     case "exists":
@@ -95,94 +76,119 @@ export function negated(formula: Formula): Formula {
   }
 }
 
+/** Where a part of an axiom stands. */
+interface Place {
+  readonly isPositive: boolean;
+  readonly witness: Witness | null;
+  /** Variables in scope, innermost first, and whether they are for elements that are said to exist. */
+  readonly scope: readonly { readonly variable: Variable; readonly isSome: boolean }[];
+  /** The part is said to hold if all of these do. */
+  readonly guard: readonly Formula[];
+}
+
 class Collector implements Clues {
   readonly steps: Step[] = [];
   readonly witnesses: Witness[] = [];
   readonly partners = new Map<string, number>();
   hasExistence = false;
+  #left = 0;
 
-  /** Outer ∃ of a formula, also where they stand in a conjunction. */
-  witnessesOf(normal: Formula, written: Formula): void {
-    if (normal.kind === "and") for (const part of normal.parts) this.witnessesOf(part, part);
-    if (normal.kind !== "exists") return;
-    // As it is written, so that what exists is an axiom as it stands.
-    let body: Formula = written.kind === "exists" ? written : normal;
-    const names: Variable[] = [];
-    const renaming = new Map<Variable, Variable>();
-    let inner: Formula = body;
-    while (inner.kind === "exists") {
-      if (renaming.has(inner.variable)) return;
-      const name = parameterName(inner.variable, new Set([...names, ...variablesOf(written)]));
-      names.push(name);
-      renaming.set(inner.variable, name);
-      inner = inner.body;
-    }
-    body = substitute(inner, renaming);
-    this.witnesses.push({ parameters: names, given: body });
+  collect(axiom: Formula): void {
+    this.#left = MOST_PARTS;
+    this.#walk(axiom, { isPositive: true, witness: null, scope: [], guard: [] });
   }
 
-  /** Collects steps. */
-  walk(formula: Formula, from: readonly Variable[], guard: readonly Formula[]): void {
-    switch (formula.kind) {
-      case "forall":
-        this.walk(formula.body, [...from, formula.variable], guard);
-        return;
-      case "and":
-        for (const part of formula.parts) this.walk(part, from, guard);
-        return;
-      case "or":
-        for (const part of formula.parts) {
-          const others = formula.parts.filter((other) => other !== part);
-          this.walk(part, from, [...guard, ...others.map(negated)]);
-        }
-        return;
-      case "exists": {
-        const { variable: to, body } = formula;
-        const distinct = [...new Set(from)].filter((one) => one !== to);
-        this.steps.push({ from: distinct, guard: and(...guard), to, body });
-        // Of two ∃ next to each other, each may be the step.
-        if (body.kind === "exists" && body.variable !== to)
-          this.steps.push({
-            from: distinct.filter((one) => one !== body.variable),
-            guard: and(...guard),
-            to: body.variable,
-            body: exists(to, body.body),
-          });
-        return;
-      }
-      default:
+  #walk(formula: Formula, place: Place): void {
+    this.#left -= 1;
+    if (this.#left < 0) {
+      this.hasExistence = true;
+      return;
     }
-  }
-
-  /** Collects partners. */
-  look(formula: Formula, scope: readonly { readonly variable: Variable; readonly isSome: boolean }[]): void {
+    const { isPositive, guard } = place;
+    const signed = (part: Formula, sign: boolean) => (sign ? part : negated(part));
+    /** A part of a conjunction. */
+    const walk = (part: Formula, sign = isPositive) => this.#walk(part, { ...place, isPositive: sign });
+    /** A part of a disjunction, the others being false. */
+    const walkBeside = (part: Formula, sign: boolean, others: readonly Formula[]) =>
+      this.#walk(part, { ...place, isPositive: sign, guard: [...guard, ...others] });
     switch (formula.kind) {
-      case "forall":
-      case "exists": {
-        const isSome = formula.kind === "exists";
-        if (isSome) this.hasExistence = true;
-        this.look(formula.body, [{ variable: formula.variable, isSome }, ...scope]);
-        return;
-      }
-      case "and":
-      case "or":
-        for (const part of formula.parts) this.look(part, scope);
+      case "atom":
+        this.#see(formula, place);
         return;
       case "not":
-        if (formula.body.kind === "atom") this.#partners(formula.body, false, scope);
+        walk(formula.body, !isPositive);
         return;
-      case "atom":
-        this.#partners(formula, true, scope);
+      case "and":
+      case "or":
+        for (const part of formula.parts)
+          if ((formula.kind === "and") === isPositive) walk(part);
+          else
+            walkBeside(
+              part,
+              isPositive,
+              formula.parts.flatMap((other) => (other === part ? [] : [signed(other, !isPositive)])),
+            );
+        return;
+      case "implies":
+        if (!isPositive) {
+          walk(formula.left, true);
+          walk(formula.right, false);
+          return;
+        }
+        walkBeside(formula.right, true, [formula.left]);
+        walkBeside(formula.left, false, [negated(formula.right)]);
+        return;
+      case "iff": {
+        const { left, right } = formula;
+        for (const [one, other] of [
+          [left, right],
+          [right, left],
+        ] as const)
+          for (const sign of [true, false]) walkBeside(one, sign, [signed(other, isPositive === sign)]);
+        return;
+      }
+      case "forall":
+      case "exists":
+        this.#walkQuantified(formula, place);
         return;
       default:
     }
   }
 
-  #partners(
-    { relation, args }: Atom,
-    isPositive: boolean,
-    scope: readonly { readonly variable: Variable; readonly isSome: boolean }[],
-  ): void {
+  #walkQuantified(formula: Formula & { kind: "forall" | "exists" }, place: Place): void {
+    const { isPositive, scope, guard, witness } = place;
+    const isSome = (formula.kind === "exists") === isPositive;
+    if (isSome) {
+      this.hasExistence = true;
+      if (scope.length === 0 && guard.length === 0 && witness === null) {
+        const found = witnessOf(isPositive ? formula : negated(formula));
+        this.witnesses.push(found);
+        this.#walk(found.given, { ...place, isPositive: true, witness: found });
+        return;
+      }
+      if (scope.every((one) => !one.isSome)) this.#addSteps(isPositive ? formula : negated(formula), place);
+    }
+    this.#walk(formula.body, { ...place, scope: [{ variable: formula.variable, isSome }, ...scope] });
+  }
+
+  #addSteps(formula: Formula, { witness, scope, guard }: Place): void {
+    if (formula.kind !== "exists") return;
+    const { variable: to, body } = formula;
+    const outer = [...new Set(scope.map(({ variable }) => variable))].reverse();
+    const add = (one: Variable, rest: Formula) =>
+      this.steps.push({
+        witness,
+        from: outer.filter((other) => other !== one),
+        guard: and(...guard),
+        to: one,
+        body: rest,
+      });
+    add(to, body);
+    // Of two ∃ next to each other, each may be the step.
+    if (body.kind === "exists" && body.variable !== to) add(body.variable, exists(to, body.body));
+  }
+
+  #see({ relation, args }: Atom, { isPositive, scope }: Place): void {
     const bound = args.map((arg) => scope.findIndex(({ variable }) => variable === arg));
     for (const [second, inner] of bound.entries()) {
       if (inner < 0 || !scope[inner]!.isSome) continue;
@@ -195,12 +201,23 @@ class Collector implements Clues {
   }
 }
 
-/** Variables that elements and inner quantifiers of principles are called by. */
-const KEPT = new Set(["x", "y", "z", "w", "u", "v"]);
+/** What outer ∃ say. Names that parameters can have are kept, so that the axiom itself says that there are such elements. */
+function witnessOf(axiom: Formula): Witness {
+  const taken = new Set(variablesOf(axiom));
+  const renaming = new Map<Variable, Variable>();
+  let inner = axiom;
+  while (inner.kind === "exists" && !renaming.has(inner.variable)) {
+    const name = parameterName(inner.variable, taken);
+    taken.add(name);
+    renaming.set(inner.variable, name);
+    inner = inner.body;
+  }
+  return { parameters: [...renaming.values()], given: substitute(inner, renaming) };
+}
 
-/** The same name if it can be a parameter's, else a new one. */
+/** The same name if principles do not use it themselves, else a new one. */
 function parameterName(like: Variable, taken: ReadonlySet<Variable>): Variable {
-  if (!KEPT.has(like) && !/^[xyzwuv]/.test(like)) return like;
+  if (!/^[u-z]/.test(like)) return like;
   for (const letter of "abcdefghijklmnopqrst") if (!taken.has(letter)) return letter;
   return freshVariable("a", taken);
 }

@@ -1,6 +1,6 @@
 /**
- * Formulas φ(x, y) and δ(x) of which reasons are made: relations of the signature and their parts, what axioms say in
- * their steps, and what can be put together of these.
+ * Formulas φ(x, y) and δ(x) of which reasons are made: relations of the signature, what axioms say in their steps, and what can
+ * be put together of these.
  */
 import {
   and,
@@ -12,27 +12,30 @@ import {
   freeVariables,
   iff,
   implies,
+  mapParts,
   not,
   or,
   type RelationSymbol,
   substitute,
   type Variable,
   variablesOf,
+  verum,
 } from "../../logic/formula.ts";
 import type { Signature } from "../../logic/theory.ts";
 import { type Clues, negated, partnerKey, type Step } from "./clues.ts";
 import type { Witness } from "./reason.ts";
 
-/** A formula in x and y; when it has parameters too, with the witness that they come from. */
-export interface BinaryPart {
+/** A formula φ in x and y or δ in x, and in the parameters of a witness. */
+export interface Part {
   readonly formula: Formula;
   readonly witness: Witness | null;
 }
-/** A formula in x. */
-export interface UnaryPart {
-  readonly formula: Formula;
-  readonly witness: Witness | null;
-}
+
+/** Variables beside x and y. */
+const OTHERS = ["z", "w", "u", "v", "z1", "w1", "u1", "v1"];
+
+/** Relations with more places are left out. */
+const MOST_PLACES = 5;
 
 /** The formula with other elements for x and y. */
 export function at(formula: Formula, x: Variable, y: Variable = "y"): Formula {
@@ -54,161 +57,195 @@ export function strict(formula: Formula): Formula {
   return and(formula, negated(converse(formula)));
 }
 
-/** What y is related to, x is, and x is to something more. */
+/** φ(x, y) for different x and y. */
+export function unequal(formula: Formula): Formula {
+  return and(formula, not(equal("x", "y")));
+}
+
+/** x is related to all that y is, and to more. Whatever φ is, this is a strict order. */
 export function strictlyContains(formula: Formula): Formula {
   const [ofX, ofY] = [at(formula, "x", "z"), at(formula, "y", "z")];
   return and(forall("z", implies(ofY, ofX)), exists("z", and(ofX, negated(ofY))));
 }
 
-/** Everything that y is related to, x is. */
-export function contains(formula: Formula): Formula {
-  return forall("z", implies(at(formula, "y", "z"), at(formula, "x", "z")));
-}
-
-/** Whether two elements are the same, in identity or, where there is none, for the relations of the signature. */
-export function sameness({ relations, identity }: Signature, one: Variable, other: Variable): Formula {
-  if (identity) return equal(one, other);
-  return and(
-    ...relations.flatMap((relation) =>
-      Array.from({ length: relation.places }, (_, place) => {
-        const names = OTHERS.filter((name) => name !== one && name !== other).slice(0, relation.places - 1);
-        const holds = (element: Variable) => atom(relation, ...names.toSpliced(place, 0, element));
-        return forall(names, iff(holds(one), holds(other)));
-      }),
-    ),
-  );
-}
-
-const OTHERS = ["z", "w", "u", "v", "z1", "w1", "u1", "v1", "z2", "w2", "u2", "v2"];
-
-/** y is related to x and to nothing else. */
+/** x is related to y, and nothing else is. */
 export function privately(formula: Formula, signature: Signature): Formula {
   return and(formula, forall("z", implies(at(formula, "z", "y"), sameness(signature, "z", "x"))));
 }
 
-/** By the way of a z between. */
-export function composed(first: Formula, second: Formula, between: Formula | null = null): Formula {
-  const way = [at(first, "x", "z"), at(second, "z", "y")];
-  return exists("z", and(...(between === null ? [] : [at(between, "z")]), ...way));
-}
-
-/** Literals φ(x, y) of one relation, those first of which axioms say that there is a y for x. */
-export function basesOf({ relations }: Signature, clues: Clues): readonly Formula[] {
-  const found = relations.flatMap((relation) => [true, false].flatMap((sign) => literalsOf(relation, sign)));
-  return found
-    .map((base, place) => ({ ...base, place, partners: clues.partners.get(base.key) ?? 0 }))
-    .sort((a, b) => b.partners - a.partners || a.place - b.place)
-    .map(({ formula }) => formula);
-}
-
-function literalsOf(relation: RelationSymbol, sign: boolean) {
-  const found: { readonly formula: Formula; readonly key: string }[] = [];
-  const signed = (formula: Formula) => (sign ? formula : not(formula));
-  for (let first = 0; first < relation.places; first += 1)
-    for (let second = 0; second < relation.places; second += 1) {
-      if (first === second) continue;
-      const key = partnerKey(relation, sign, first, second);
-      if (relation.places === 2) {
-        const args = first === 0 ? ["x", "y"] : ["y", "x"];
-        found.push({ formula: signed(atom(relation, ...args)), key });
-        continue;
-      }
-      if (relation.places > MOST_PLACES) continue;
-      const names = OTHERS.slice(0, relation.places - 2);
-      const rest = (name: (place: number) => Variable) => {
-        let place = 0;
-        const args = Array.from({ length: relation.places }, (_, i) =>
-          i === first ? "x" : i === second ? "y" : name(place++),
-        );
-        return atom(relation, ...args);
-      };
-      const open = rest((place) => names[place]!);
-      found.push(
-        { formula: exists(names, signed(open)), key },
-        { formula: signed(rest(() => "x")), key },
-        { formula: signed(rest(() => "y")), key },
+/** Whether two elements are the same by identity or, where there is none, for the relations of the signature. */
+function sameness({ relations, identity }: Signature, one: Variable, other: Variable): Formula {
+  if (identity) return equal(one, other);
+  return and(
+    ...relations.flatMap((relation) => {
+      const others = OTHERS.filter((name) => name !== one && name !== other).slice(0, relation.places - 1);
+      const holds = (element: Variable, place: number) =>
+        atom(relation, ...others.toSpliced(place, 0, element));
+      return Array.from({ length: relation.places }, (_, place) =>
+        forall(others, iff(holds(one, place), holds(other, place))),
       );
-    }
-  return found;
+    }),
+  );
 }
 
-/** Relations with more places are left out. */
-const MOST_PLACES = 5;
-
-/** What is made of one step of an axiom: φ, and the domain on which the axiom says that it has successors. */
-export interface StepParts {
-  readonly relation: Formula;
-  /** Null for everything. */
-  readonly domain: Formula | null;
+/** By way of a z, which may have to be in a part of the elements. */
+export function composed(first: Formula, second: Formula, between: Formula = verum): Formula {
+  const way = [at(first, "x", "z"), at(second, "z", "y")];
+  return exists("z", between.kind === "true" ? and(...way) : and(at(between, "z"), ...way));
 }
 
-export function stepParts({ from, guard, to, body }: Step): readonly StepParts[] {
-  const found: StepParts[] = [];
+/** φ(x, y) that is one literal, and how often axioms say that there is such a y for an x. */
+export interface Base extends Part {
+  readonly partners: number;
+}
+
+/**
+ * Literals of one relation, those that axioms speak of most first. Of relations with more than two places, two are x
+ * and y; at the others there is anything, x, y, or one element, whichever it is.
+ */
+export function basesOf({ relations }: Signature, clues: Clues): readonly Base[] {
+  const found = relations
+    .filter(({ places }) => places >= 2 && places <= MOST_PLACES)
+    .flatMap((relation) =>
+      [true, false].flatMap((isPositive) =>
+        pairsOf(relation.places).flatMap(([first, second]) => {
+          const partners = clues.partners.get(partnerKey(relation, isPositive, first, second)) ?? 0;
+          return literalsOf(relation, first, second, isPositive).map((part) => ({ ...part, partners }));
+        }),
+      ),
+    );
+  return found.sort((a, b) => b.partners - a.partners);
+}
+
+function literalsOf(
+  relation: RelationSymbol,
+  first: number,
+  second: number,
+  isPositive: boolean,
+): readonly Part[] {
+  const literal = (others: (place: number) => Variable) => {
+    const args = Array.from({ length: relation.places }, (_, place) =>
+      place === first ? "x" : place === second ? "y" : others(place),
+    );
+    return isPositive ? atom(relation, ...args) : not(atom(relation, ...args));
+  };
+  if (relation.places === 2) return [{ formula: literal(() => "x"), witness: null }];
+  const names = OTHERS.slice(0, relation.places);
+  const rest = names.filter((_, place) => place !== first && place !== second);
+  return [
+    {
+      formula: exists(
+        rest,
+        literal((place) => names[place]!),
+      ),
+      witness: null,
+    },
+    { formula: literal(() => "x"), witness: null },
+    { formula: literal(() => "y"), witness: null },
+    { formula: literal(() => "a"), witness: { parameters: ["a"], given: verum } },
+  ];
+}
+
+function pairsOf(places: number): readonly (readonly [number, number])[] {
+  const all = [...Array(places).keys()];
+  return all.flatMap((first) =>
+    all.flatMap((second) => (first === second ? [] : [[first, second] as const])),
+  );
+}
+
+/** φ that a step of an axiom leads along, and δ from which it starts; null for everything. */
+export interface StepPart {
+  readonly relation: Part;
+  readonly domain: Part | null;
+}
+
+/** From each start of a step: the other elements that it depends on are the same, or any, or some that are kept. */
+export function stepPartsOf({ witness, from, guard, to, body }: Step): readonly StepPart[] {
+  const found: StepPart[] = [];
+  const add = (relation: Formula, domain: Formula, own: Witness | null = witness) => {
+    const allowed = ["x", "y", ...(own?.parameters ?? [])];
+    const free = freeVariables(relation);
+    if (!free.includes("x") || !free.includes("y") || free.some((one) => !allowed.includes(one))) return;
+    const isWhole = !freeVariables(domain).includes("x");
+    found.push({
+      relation: { formula: tidy(relation), witness: own },
+      domain: isWhole ? null : { formula: tidy(domain), witness: own },
+    });
+  };
   for (const start of from) {
     const others = from.filter((one) => one !== start);
-    // All others the same as the start, or any.
-    const merged = new Map<Variable, Variable>([
-      ...from.map((one): [Variable, Variable] => [one, "x"]),
-      [to, "y"],
-    ]);
+    const merged = new Map(from.map((one) => [one, "x"])).set(to, "y");
     add(substitute(body, merged), substitute(guard, merged));
     if (others.length === 0 || others.length > 2) continue;
-    const renaming = new Map<Variable, Variable>([[start, "x"], [to, "y"], ...renamed(others)]);
-    const names = others.map((one) => renaming.get(one)!);
-    const [own, condition] = [substitute(body, renaming), substitute(guard, renaming)];
-    add(exists(names, and(condition, own)), exists(names, condition));
+    const taken = new Set([...variablesOf(body), ...variablesOf(guard), ...(witness?.parameters ?? [])]);
+    const name = (names: readonly string[]) => names.filter((one) => !taken.has(one)).slice(0, others.length);
+    for (const names of [name(OTHERS), name(PARAMETERS)]) {
+      const renaming = new Map(others.map((one, place) => [one, names[place]!])).set(start, "x").set(to, "y");
+      const [relation, domain] = [substitute(body, renaming), substitute(guard, renaming)];
+      if (names[0] === "z") add(exists(names, and(domain, relation)), exists(names, domain));
+      else if (witness === null && freeVariables(domain).length > names.length)
+        add(relation, domain, { parameters: names, given: exists("x", domain) });
+    }
   }
   return found;
-
-  function renamed(others: readonly Variable[]): [Variable, Variable][] {
-    const taken = new Set([...variablesOf(body), ...variablesOf(guard)]);
-    const free = OTHERS.filter((name) => !taken.has(name));
-    return others.map((one, place) => [one, free[place]!]);
-  }
-
-  function add(relation: Formula, domain: Formula): void {
-    const free = freeVariables(relation);
-    if (free.includes("x") && free.includes("y") && free.length === 2)
-      found.push({ relation, domain: freeVariables(domain).length === 0 ? null : domain });
-  }
 }
 
-/** Parts of the elements, by one relation or what elements say of themselves. */
-export function selfParts({ relations }: Signature): readonly Formula[] {
-  return relations.flatMap((relation) => {
-    const own = atom(relation, ...Array.from({ length: relation.places }, () => "x"));
-    return relation.places <= 2 ? [own, not(own)] : [];
-  });
+const PARAMETERS = [..."abcdefgh"];
+
+/** Without repeated parts, which come of two variables being made one. */
+function tidy(formula: Formula): Formula {
+  const inner = mapParts(formula, tidy);
+  if (inner.kind !== "and" && inner.kind !== "or") return inner;
+  const parts = [...new Map(inner.parts.map((part) => [JSON.stringify(part), part])).values()];
+  return (inner.kind === "and" ? and : or)(...parts);
 }
 
-/** Elements without loops through which a relation is transitive: x is such that what is related to y is to x. */
-export function transitiveParts(base: Formula): readonly Formula[] {
+/** Parts of the elements by what is said of an element alone. */
+export function selfPartsOf({ relations }: Signature): readonly Formula[] {
+  return relations
+    .filter(({ places }) => places <= 2)
+    .flatMap((relation) => {
+      const own = atom(relation, ...(relation.places === 1 ? ["x"] : ["x", "x"]));
+      return [own, not(own)];
+    });
+}
+
+/** Elements without loops through which a relation is transitive, backwards and forwards. */
+export function transitivePartsOf(base: Formula): readonly Formula[] {
   const through = (relation: Formula) =>
     forall(["y", "z"], implies(and(at(relation, "z", "y"), at(relation, "y", "x")), at(relation, "z", "x")));
   const own = negated(at(base, "x", "x"));
   return [and(own, through(base)), and(own, through(converse(base)))];
 }
 
-/** Parts of the elements around a witness. */
-export function witnessParts(
+/** Parts of the elements around those of a witness. */
+export function witnessPartsOf(
   bases: readonly Formula[],
   witness: Witness,
   identity: boolean,
-): readonly UnaryPart[] {
-  const found: Formula[] = [];
-  for (const parameter of witness.parameters) {
-    for (const base of bases) {
+): readonly Part[] {
+  const { parameters } = witness;
+  const around = parameters.flatMap((parameter) =>
+    bases.flatMap((base) => {
       const [before, after] = [at(base, "x", parameter), at(base, parameter, "x")];
-      found.push(before, and(before, negated(after)));
-    }
-    if (identity) {
-      found.push(not(equal("x", parameter)));
-      for (const base of bases) found.push(or(equal("x", parameter), at(base, "x", parameter)));
-    }
-  }
-  if (witness.parameters.length >= 2)
-    for (const base of bases)
-      for (const [one, other] of [witness.parameters, [...witness.parameters].reverse()])
-        found.push(and(at(base, one!, "x"), at(base, "x", other!)));
-  return found.map((formula) => ({ formula, witness }));
+      return [before, after, and(before, negated(after)), and(after, negated(before))];
+    }),
+  );
+  const others = identity ? parameters.map((parameter) => not(equal("x", parameter))) : [];
+  const withIt = identity
+    ? parameters.flatMap((parameter) =>
+        bases.flatMap((base) =>
+          [at(base, "x", parameter), at(base, parameter, "x")].map((part) => or(equal("x", parameter), part)),
+        ),
+      )
+    : [];
+  const between =
+    parameters.length < 2
+      ? []
+      : bases.flatMap((base) =>
+          [parameters, parameters.toReversed()].map(([one, other]) =>
+            and(at(base, one!, "x"), at(base, "x", other!)),
+          ),
+        );
+  return [...around, ...others, ...withIt, ...between].map((formula) => ({ formula, witness }));
 }

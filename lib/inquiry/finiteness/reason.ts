@@ -14,6 +14,7 @@ import {
 } from "../../logic/formula.ts";
 import {
   type CountingRecord,
+  type EndlessOrderRecord,
   obligationsOf,
   type PairsRecord,
   type PrincipleRecord,
@@ -49,12 +50,14 @@ export type ObligationKind =
   | "spare"
   | "values";
 
+export type Different = CountingRecord["different"];
+
 /** What sets principles apart, and what they have besides their formulas. */
 export type PrincipleShape =
-  | { readonly principle: "endless-order" }
-  | Pick<CountingRecord, "principle" | "successors" | "predecessors" | "spare" | "different">
+  | Pick<EndlessOrderRecord, "principle" | "everywhere">
+  | Pick<CountingRecord, "principle" | "successors" | "predecessors" | "spare" | "everywhere" | "different">
   | Pick<PairsRecord, "principle" | "pairs" | "different">
-  | { readonly principle: "comprehension"; readonly different: PairsRecord["different"] };
+  | { readonly principle: "comprehension"; readonly different: Different };
 
 /** The formulas of a principle. */
 export interface ReasonParts {
@@ -105,7 +108,8 @@ export function obligationsFor(
 }
 
 function kindsOf(record: PrincipleRecord): readonly ObligationKind[] {
-  const parameters: readonly ObligationKind[] = record.given === null ? [] : ["parameters"];
+  const parameters: readonly ObligationKind[] =
+    record.given === null || record.given[0] === "true" ? [] : ["parameters"];
   const isEverywhere = record.domain[0] === "true";
   const size: readonly ObligationKind[] = isEverywhere ? [] : ["size"];
   switch (record.principle) {

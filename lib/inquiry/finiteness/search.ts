@@ -7,10 +7,12 @@ import { type Meter, WorkEnded } from "../../logic/meter.ts";
 import { recordFormula } from "../../logic/records/formulas.ts";
 import type { Signature } from "../../logic/theory.ts";
 import { Solver } from "../../structures/sat/solver.ts";
-import { type Candidate, candidatesOf, type Tier } from "./candidates.ts";
+import { Candidates, everywhere } from "./candidates.ts";
 import { cluesOf } from "./clues.ts";
 import { isTrueIn } from "./filter.ts";
 import { type FinitenessReason, type Obligation, type ObligationKind, obligationsFor } from "./reason.ts";
+
+import { LONG, MIDDLE, OBLIGATION_TURNS, SHORT } from "./turns.ts";
 
 export type { FinitenessReason } from "./reason.ts";
 
@@ -28,21 +30,55 @@ export interface ShownObligation {
   readonly derived: { readonly task: DerivationTask; readonly derivation: Derivation } | null;
 }
 
+type Segment = "likely" | "parts" | "inclusions" | "special" | "unlikely" | "restricted" | "rare";
+
+/** One kind of reasons, each obligation with so many clauses. */
 interface Pass {
   readonly level: number;
-  readonly tiers: Tier;
+  readonly segment: Segment;
   readonly clauses: number;
 }
 
 const PASSES: readonly Pass[] = [
-  { level: 0, tiers: 0, clauses: 60 },
-  { level: 1, tiers: 1, clauses: 60 },
-  { level: 1, tiers: 0, clauses: 300 },
-  { level: 2, tiers: 2, clauses: 300 },
-  { level: 3, tiers: 1, clauses: 1_000 },
-  { level: 4, tiers: 3, clauses: 2_000 },
-  { level: 5, tiers: 3, clauses: 20_000 },
+  { level: 0, segment: "likely", clauses: SHORT },
+  { level: 0, segment: "parts", clauses: SHORT },
+  { level: 1, segment: "special", clauses: SHORT },
+  { level: 1, segment: "likely", clauses: MIDDLE },
+  { level: 1, segment: "parts", clauses: MIDDLE },
+  { level: 2, segment: "special", clauses: LONG },
+  { level: 2, segment: "inclusions", clauses: SHORT },
+  { level: 2, segment: "unlikely", clauses: SHORT },
+  { level: 2, segment: "likely", clauses: LONG },
+  { level: 2, segment: "parts", clauses: LONG },
+  { level: 3, segment: "unlikely", clauses: MIDDLE },
+  { level: 3, segment: "restricted", clauses: SHORT },
+  { level: 3, segment: "rare", clauses: LONG },
+  { level: 3, segment: "likely", clauses: 1_000 },
+  { level: 3, segment: "special", clauses: 1_000 },
+  { level: 3, segment: "parts", clauses: 1_000 },
+  { level: 3, segment: "inclusions", clauses: LONG },
+  { level: 3, segment: "unlikely", clauses: LONG },
+  { level: 4, segment: "restricted", clauses: LONG },
+  { level: 4, segment: "likely", clauses: 3_000 },
+  { level: 4, segment: "special", clauses: 3_000 },
+  { level: 4, segment: "parts", clauses: 2_000 },
+  { level: 4, segment: "unlikely", clauses: 1_000 },
+  { level: 4, segment: "rare", clauses: 2_000 },
+  { level: 5, segment: "likely", clauses: 20_000 },
+  { level: 5, segment: "special", clauses: 20_000 },
+  { level: 5, segment: "parts", clauses: 20_000 },
+  { level: 5, segment: "inclusions", clauses: 20_000 },
+  { level: 5, segment: "unlikely", clauses: 20_000 },
+  { level: 5, segment: "restricted", clauses: 20_000 },
+  { level: 5, segment: "rare", clauses: 20_000 },
 ];
+
+interface Attempt {
+  readonly reason: FinitenessReason;
+  readonly clauses: number;
+  /** Whether only what is asked of the relation is to be derived. */
+  readonly isPartial: boolean;
+}
 
 /** An obligation of some reasons. */
 interface Goal {
@@ -60,18 +96,19 @@ interface Goal {
 export class FinitenessSearch {
   /** Reasons tried. */
   tried = 0;
+  costs: Record<string, { steps: number; n: number }> = {};
+  segment = "";
   readonly #axioms: readonly Formula[];
   readonly #symbols: ReadonlyMap<string, RelationSymbol>;
   readonly #signature: Signature;
   readonly #goals = new Map<string, Goal>();
   readonly #known: ReadonlySet<string>;
-  #candidates: readonly Candidate[] | null = null;
+  #candidates: Candidates | null = null;
   #pass = 0;
-  #next = 0;
+  #attempts: Generator<Attempt> | null = null;
+  #attempt: Attempt | null = null;
   /** The search that was begun and could not be finished. */
   #unfinished: { readonly goal: Goal; readonly search: DerivationSearch } | null = null;
-  readonly #obligations = new Map<FinitenessReason, readonly Obligation[] | null>();
-
   constructor(axioms: readonly Formula[], signature: Signature) {
     this.#axioms = axioms;
     this.#signature = signature;
@@ -84,65 +121,103 @@ export class FinitenessSearch {
   }
 
   advance(level: number, meter: Meter, model: Structure | null): NoFiniteModel | null {
-    this.#candidates ??= this.#list();
-    for (
-      ;
-      this.#pass < PASSES.length && PASSES[this.#pass]!.level <= level;
-      this.#pass += 1, this.#next = 0
-    ) {
-      const pass = PASSES[this.#pass]!;
-      for (; this.#next < this.#candidates.length; this.#next += 1) {
-        const candidate = this.#candidates[this.#next]!;
-        if (candidate.tier > pass.tiers) continue;
-        this.tried += 1;
-        const found = this.#try(candidate, pass, meter, model);
+    for (; this.#pass < PASSES.length && PASSES[this.#pass]!.level <= level; this.#pass += 1) {
+      this.#attempts ??= this.#attemptsOf(PASSES[this.#pass]!);
+      for (;;) {
+        this.#attempt ??= this.#attempts.next().value ?? null;
+        if (this.#attempt === null) break;
+        const before = meter.left;
+        const found = this.#try(this.#attempt, meter, model);
+        const c = (this.costs[`${this.#pass} ${this.segment}`] ??= { steps: 0, n: 0 });
+        c.steps += (before - meter.left) / 1000;
+        c.n++;
         if (found !== null) return found;
+        this.#attempt = null;
+        this.tried += 1;
       }
+      this.#attempts = null;
     }
     return null;
   }
 
-  #list(): readonly Candidate[] {
-    const clues = cluesOf(this.#axioms);
-    return clues.hasExistence ? candidatesOf(this.#signature, clues) : [];
+  *#attemptsOf(pass: Pass): Generator<Attempt, undefined> {
+    if (this.#candidates === null) {
+      const clues = cluesOf(this.#axioms);
+      if (!clues.hasExistence) return;
+      this.#candidates = new Candidates(this.#signature, clues);
+    }
+    const candidates = this.#candidates;
+    const { clauses } = pass;
+    this.segment = pass.segment;
+    switch (pass.segment) {
+      case "likely":
+      case "unlikely":
+      case "rare":
+        for (const family of candidates[pass.segment])
+          yield { reason: everywhere(family), clauses, isPartial: false };
+        return;
+      case "special":
+        for (const reason of candidates.special) yield { reason, clauses, isPartial: false };
+        return;
+      case "restricted":
+        for (const reason of candidates.restricted()) yield { reason, clauses, isPartial: false };
+        return;
+      case "parts":
+      case "inclusions": {
+        const lists =
+          pass.segment === "parts" ? candidates.alternatives : candidates.inclusions.map((one) => [one]);
+        for (const families of lists)
+          for (const family of families) {
+            const reason = everywhere(family);
+            yield { reason, clauses, isPartial: true };
+            if (!this.#isAsAsked(reason)) continue;
+            for (const part of candidates.onParts(family)) yield { reason: part, clauses, isPartial: false };
+            break;
+          }
+      }
+    }
   }
 
-  #try(
-    { reason, wider }: Candidate,
-    pass: Pass,
-    meter: Meter,
-    model: Structure | null,
-  ): NoFiniteModel | null {
+  #isAsAsked(reason: FinitenessReason): boolean {
+    const obligations = this.#obligationsOf(reason) ?? [];
+    return obligations.every(({ kind, formula }) => {
+      if (!OF_RELATION.has(kind)) return true;
+      const goal = this.#goal(formula);
+      return goal.isAxiom || goal.derivation !== null;
+    });
+  }
+
+  #try({ reason, clauses, isPartial }: Attempt, meter: Meter, model: Structure | null): NoFiniteModel | null {
     meter.charge(100);
-    if (wider !== null && pass.clauses <= 1_000) {
-      const own = this.#obligationsOf(wider)?.filter(({ kind }) => OF_RELATION.has(kind)) ?? [];
-      if (!own.every(({ formula }) => this.#derive(this.#goal(formula), pass.clauses, meter, null)))
-        return null;
-    }
     const obligations = this.#obligationsOf(reason);
     if (obligations === null) return null;
     const goals = obligations.map(({ formula }) => this.#goal(formula));
+    if (isPartial) {
+      obligations.every(
+        ({ kind }, place) => !OF_RELATION.has(kind) || this.#derive(goals[place]!, clauses, meter, model),
+      );
+      return null;
+    }
     if (goals.some((goal) => goal.isRefuted)) return null;
     if (model !== null && !goals.every((goal) => this.#passes(goal, meter, model))) return null;
     const order = [...goals.keys()].sort((a, b) => RANK[obligations[a]!.kind] - RANK[obligations[b]!.kind]);
-    if (!order.every((place) => this.#derive(goals[place]!, pass.clauses, meter, model))) return null;
+    if (!order.every((place) => this.#derive(goals[place]!, clauses, meter, model))) return null;
     return {
       reason,
       obligations: obligations.map(({ formula, role }, place) => {
         const { derivation, spent } = goals[place]!;
-        return { formula, role, spent, derived: derivation === null ? null : { task: this.#task(formula), derivation },
+        return {
+          formula,
+          role,
+          spent,
+          derived: derivation === null ? null : { task: this.#task(formula), derivation },
         };
       }),
     };
   }
 
   #obligationsOf(reason: FinitenessReason): readonly Obligation[] | null {
-    let known = this.#obligations.get(reason);
-    if (known === undefined) {
-      known = obligationsFor(reason, this.#symbols);
-      this.#obligations.set(reason, known);
-    }
-    return known;
+    return obligationsFor(reason, this.#symbols);
   }
 
   #goal(formula: Formula): Goal {
@@ -182,6 +257,7 @@ export class FinitenessSearch {
     search ??= new DerivationSearch(
       this.#task(goal.formula),
       (onDerived) => new Solver({ observer: { onDerived } }),
+      OBLIGATION_TURNS,
     );
     this.#unfinished = { goal, search };
     while (search.generated < clauses) {

@@ -50,13 +50,15 @@ interface Counted extends Common {
 }
 
 /**
- * D is not empty; no x in D has φ(x, x); φ is transitive on D; every x in D has a successor.
+ * D is not empty; φ is irreflexive and transitive on D; every x in D has a successor.
  *
  * Proof that M is not finite: let x₀ be in D, and x₁, x₂, … each a successor of the one before. If D is finite, xᵢ = xⱼ for
  * some i < j. By transitivity φ(xᵢ, xⱼ), against φ being irreflexive.
  */
 export interface EndlessOrderRecord extends Common {
   readonly principle: "endless-order";
+  /** Whether φ is to be irreflexive and transitive on all elements and not only on D. */
+  readonly everywhere: boolean;
 }
 
 /**
@@ -74,6 +76,8 @@ export interface CountingRecord extends Counted {
   readonly successors: number;
   /** j, from 1 to k. */
   readonly predecessors: number;
+  /** Whether there are to be at most j predecessors in all and not only in D, for all elements y. */
+  readonly everywhere: boolean;
   /** What tips the balance; null just if j < k. */
   readonly spare: "fewer-predecessors" | "more-successors" | null;
 }
@@ -186,9 +190,14 @@ class Obligations {
     const { parameters, given } = this.#principle;
     const conditions = this.#conditions();
     if (given === null) return conditions;
+    const isAnything = given[0] === "true";
+    // What does not speak of the parameters is true whatever they are.
+    const isAbout = (condition: FormulaRecord) => freeVariables(condition).length > 0;
     return [
-      exists(parameters, given),
-      ...conditions.map((condition) => forall(parameters, implies([given], condition))),
+      ...(isAnything ? [] : [exists(parameters, given)]),
+      ...conditions.map((condition) =>
+        isAbout(condition) ? forall(parameters, implies(isAnything ? [] : [given], condition)) : condition,
+      ),
     ];
   }
 
@@ -198,13 +207,13 @@ class Obligations {
       case "endless-order":
         return [
           ...this.#sizeAtLeast(1),
-          this.#irreflexive(),
-          ...this.#transitive(),
+          this.#irreflexive(principle.everywhere),
+          ...this.#transitive(principle.everywhere),
           this.#everySuccessors(1),
         ];
       case "counting": {
         const { successors: k, predecessors: j, spare } = principle;
-        const balance = [this.#everySuccessors(k), this.#everyPredecessors(j)];
+        const balance = [this.#everySuccessors(k), this.#everyPredecessors(j, principle.everywhere)];
         if (spare === null) return [...this.#sizeAtLeast(1), ...balance];
         return [
           ...balance,
@@ -229,15 +238,15 @@ class Obligations {
     return parts.length === 0 ? [] : [exists(elements, and(parts))];
   }
 
-  #irreflexive(): FormulaRecord {
+  #irreflexive(everywhere: boolean): FormulaRecord {
     const [x] = this.#names(1) as [string];
-    return forall([x], deny([...this.#inside([x]), this.#related(x, x)]));
+    return forall([x], deny([...this.#inside([x], everywhere), this.#related(x, x)]));
   }
 
   /** One sentence for each part of the conclusion. */
-  #transitive(): readonly FormulaRecord[] {
+  #transitive(everywhere: boolean): readonly FormulaRecord[] {
     const [x, y, z] = this.#names(3) as [string, string, string];
-    const given = [...this.#inside([x, y, z]), this.#related(x, y), this.#related(y, z)];
+    const given = [...this.#inside([x, y, z], everywhere), this.#related(x, y), this.#related(y, z)];
     const conclusion = this.#related(x, z);
     const parts = conclusion[0] === "and" ? partsOf(conclusion) : [conclusion];
     return parts.map((part) => forall([x, y, z], implies(given, part)));
@@ -254,10 +263,10 @@ class Obligations {
     return exists([x, ...others], and([...this.#inside([x]), ...this.#successors(x, others)]));
   }
 
-  #everyPredecessors(most: number): FormulaRecord {
+  #everyPredecessors(most: number, everywhere: boolean): FormulaRecord {
     const elements = this.#names(most + 2);
     const [y, others] = [elements.at(-1)!, elements.slice(0, -1)];
-    const given = [...this.#inside([y]), ...this.#predecessors(others, y)];
+    const given = [...this.#inside([y], everywhere), ...this.#predecessors(others, y, everywhere)];
     return forall([...others, y], implies(given, this.#someSame(others.map((one) => [one]))));
   }
 
@@ -301,9 +310,9 @@ class Obligations {
     ];
   }
 
-  /** That elements of D are predecessors of y. */
-  #predecessors(elements: readonly string[], y: string): readonly FormulaRecord[] {
-    return [...this.#inside(elements), ...elements.map((one) => this.#related(one, y))];
+  /** That elements, of D unless they may be any, have φ to y. */
+  #predecessors(elements: readonly string[], y: string, everywhere = false): readonly FormulaRecord[] {
+    return [...this.#inside(elements, everywhere), ...elements.map((one) => this.#related(one, y))];
   }
 
   #allDifferent(elements: readonly string[]): readonly FormulaRecord[] {
@@ -336,10 +345,10 @@ class Obligations {
     });
   }
 
-  /** That elements are in D; nothing where all are. */
-  #inside(elements: readonly string[]): readonly FormulaRecord[] {
+  /** That elements are in D; nothing where all are, or where they may be any. */
+  #inside(elements: readonly string[], everywhere = false): readonly FormulaRecord[] {
     const { domain } = this.#principle;
-    if (domain[0] === "true") return [];
+    if (everywhere || domain[0] === "true") return [];
     return elements.map((element) => substitute(domain, new Map([[X, element]]), this.#growth));
   }
 
