@@ -24,27 +24,29 @@ export interface TreeConfiguration {
  *     every element there are infinitely many branches.
  * A kind of tuples is the isomorphism type of the finite tree with meets that the tuple spans.
  *
- * There is such an order, and up to isomorphism one: it is the limit of the class of finite trees with meets in the
- * sense of Fraïssé 1954; trees of this kind were classified by Droste 1985 ("Structure of partially ordered sets with
- * transitive automorphism groups"). What is used here is proved here, from (1) to (3).
+ * There is such an order: its elements are ways that start on a line of rational heights, turn off at finitely many rising
+ * heights into one of countably many branches, and stop at a height above the last turn; x ≤ y if x is where y passes. It is
+ * the limit, in the sense of Fraïssé 1954, of the class of finite trees with meets, so up to isomorphism the only one that is
+ * countable; Droste 1985 ("Structure of partially ordered sets with transitive automorphism groups") classified trees of this
+ * sort. What is needed here is proved here, from (1) to (3).
  *
  * Why the extensions suffice. Let N be a finite set of elements that has the meet of any two of its elements, and a any
  * element. If N is empty, N ∪ {a} is one node. Otherwise let b be the greatest of the elements a ∧ v with v ∈ N: they lie
  * below a, so they form a chain.
  *
- * 1. b lies below some v ∈ N, and the elements of N that are not below b have meets with b in N ∪ {b}. For let v be the
- *    least element of N with b ≤ v; there is a least one, since N has meets. If b = v, b is a node. Otherwise, if v has a
- *    next node p below it, then p < b, since both are below v and b ≤ p would contradict the choice of v: so b lies on the
- *    edge from p to v, or below the least node. For w ∈ N the meet b ∧ w is b if w ≥ v; otherwise w ∧ v is a node less
- *    than v, so at most p, so less than b, and b ∧ w = w ∧ v.
+ * 1. b is a node, or lies on an edge or below the least node; and N ∪ {b} has meets. For the nodes at or above b are some, and
+ *    with two of them their meet is one; so there is a least one, v. If b ≠ v and v has a next node p below it, then p and b,
+ *    both below v, are comparable, and p < b by the choice of v: b lies on the edge from p to v. For w ∈ N the meet b ∧ w is b
+ *    if w ≥ v; otherwise w ∧ v is a node less than v, so at most p, so less than b, and b ∧ w = w ∧ v.
  * 2. If b < a, then a ∧ w = b ∧ w for every w ∈ N ∪ {b}: by the choice of b, a ∧ w ≤ b for w ∈ N, so a ∧ w ≤ b ∧ w, and the
  *    other way round since b ≤ a; and a ∧ b = b. So a is a leaf in a branch at b in which there is no node.
  *
- * Hence N ∪ {a, b} is closed under meets, and as a tree it is N with one of these changes: for each node v, a is v; a lies
- * on the edge below v (for the least node: anywhere below it); a is a leaf in a new branch at v; or a is a leaf in a new
- * branch at a new node on the edge below v. Each of these four occurs: by (2) every edge has an element on it and there
- * is one below the least node, and by (3), with the elements of N greater than b for y₁, …, yₙ, every element b of the tree
- * has a leaf in a new branch. Which of them it is depends only on the tree N, not on how it lies in the order.
+ * Hence N ∪ {a, b} has meets, and as a tree it is N with one of these changes: for each node v, a is v; a lies on the
+ * edge below v (for the least node: anywhere below it); a is a leaf in a new branch at v; or a is a leaf in a new branch at
+ * a new node on the edge below v. Each of these four occurs. By (2) every edge has an element on it and there is one below
+ * the least node. By (3), with the elements of N greater than b for y₁, …, yₙ, every b has an a > b with a ∧ w = b for those
+ * w; for others a ∧ w ≤ b, since both lie below a and w is not above b; so a is a leaf as in 2. Which of the four are there
+ * depends only on the tree N, not on how it lies in the order.
  *
  * So if two tuples span isomorphic trees, for every a there is an a′ so that the tuples with a and with a′ span
  * isomorphic trees, and the other way round. By induction on formulas they satisfy the same ones, whatever their depth

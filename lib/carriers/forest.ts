@@ -21,9 +21,9 @@ export interface ForestConfiguration {
  * The tree in which every element has one parent and k = `branching` children; or, rooted, one in which all elements but
  * one have a parent. Any two elements have a common ancestor. (With further trees without a root beside it the same
  * sentences would hold: no finite number of quantifiers tells another tree from a place far away.) With D = `offset`, a
- * kind of pairs gives the steps up and down between two elements that have a distance of at most D, and whether they have. Rooted, a kind
- * also gives the depth of an element, its distance from the root, if that is less than `ends`. Kinds of longer tuples
- * give this for all their elements and pairs.
+ * kind of pairs gives the steps up and down between two elements that have a distance of at most D, and whether they have.
+ * Rooted, a kind also gives the depth of an element, its distance from the root, if that is less than `ends`. Kinds of longer
+ * tuples give this for all their elements and pairs.
  *
  * Why the extensions suffice: elements that are far apart do not know of each other (Hanf 1965, Gaifman 1982); with
  * numbers, by the game of Fraïssé 1954 and Ehrenfeucht 1961. Let
@@ -49,8 +49,9 @@ export interface ForestConfiguration {
  *    - Otherwise x is a component of its own. There are elements of any depth, so there are some that are as far as one
  *      likes from all of b and from the root: let y be one of them.
  * 3. Hence tuples that are alike for r satisfy the same formulas with r quantifiers one inside another, by induction on r.
- *    It is enough to list one extension for every class of extensions that are alike for r: those of the lemma, once for
- *    each component, and one far from everything. A configuration has the steps within the components for r + 1, or more.
+ *    It is enough to list one extension for every class of extensions that are alike for r: those of the lemma for each
+ *    component, and one far from everything. The steps within the components are all that this takes; with nothing to come,
+ *    those between elements that are joined, since kinds give no others.
  *
  * Lemma. Let C and C′ be components as above, with the same steps. Call what is an ancestor of an element of C a node. Let x
  * be within T of an element c of C, or let C contain the root. Let w be the lowest node that is an ancestor of x: h steps

@@ -129,7 +129,10 @@ export type CarrierDescription =
  */
 export type ElementTerm =
   | { readonly kind: "element"; readonly variable: string; readonly path: readonly (number | "outer" | "inner")[] }
-  /** A number of the half line or the integer line; the zero and the one of a Boolean algebra. */
+  /**
+   * A number of the half line or the integer line; the zero and the one of a Boolean algebra; in a rooted forest an
+   * element so many steps from the root (of which there may be several: `x = 1` says that x is one).
+   */
   | { readonly kind: "number"; readonly value: number }
   /** So many steps further along an integer line or half line; to the left when negative. */
   | { readonly kind: "shift"; readonly of: ElementTerm; readonly by: number }

@@ -60,7 +60,8 @@ export function denseTreeVocabulary(_carrier: DenseTree): Vocabulary<TreeConfigu
 
 /** The vocabulary of a forest. */
 export function forestVocabulary(carrier: Forest): Vocabulary<ForestConfiguration> {
-  const { branching, rooted, offset, ends } = carrier.description;
+  const { branching, rooted, offset } = carrier.description;
+  const ends = rooted ? carrier.description.ends : 0;
   return {
     complaint(atom) {
       if (atom.kind !== "compare") return wrongAtom(atom, "a forest", "parent(y) = x");
