@@ -31,6 +31,7 @@ describe("cells of a megabyte that are read", () => {
     ["a wide disjunction in ASCII", `define A := forall x y. ${repeat("R(x,y) | ")}R(x,x)`, 1],
     ["many definitions", manyDefinitions(5000), 5000],
     ["many joins", `define A := {}${repeat(" + {}")}`, 1],
+    ["a wide definition on a carrier", `define A := dense-line where Rxy iff ${repeat("x < y ∧ ")}x < y`, 1],
     ["many tuples", `define A := points 3 where R is {${repeat("(1,2),")}(1,2)}`, 1],
     ["a comment", `#${repeat("x")}\ndescribe R`, 1],
     ["blank lines", `${repeat("\n")}describe R`, 1],
@@ -52,11 +53,19 @@ describe("cells of a megabyte that are refused", () => {
     ["an argument list without end", `define A := ∀x R(${repeat("x,")}`, ["missing-bracket"]],
     ["comparisons in a row", `define A := ∀x x${repeat(" = x")}`, ["chained"]],
     ["joins of unnamed axioms", `define A := {⊤}${repeat(" + {∀x Rxx}")}`, ["theory-too-large"]],
+    ["coordinates without end", `define A := tuples of ${repeat("1, ")}1 over half-line`, ["size-too-large"]],
+    ["steps without end", `define A := half-line where Rxy iff y = x${repeat(" + 1")}`, ["size-too-large"]],
+    [
+      "colours compared without end",
+      `define A := dense-line in 100 colours where Rxy iff ${"colour(x) < colour(y) or ".repeat(1_000)}⊤`,
+      ["cell-too-large"],
+    ],
   ])("%s", (_, cell, codes) => {
     expect(codesOf(cell)).toEqual(codes);
   });
 
   test.each([
+    ["a relation defined again and again", `define A := dense-line where ${repeat("Rxy iff ⊤, ")}Rxy iff ⊥`],
     ["lines that are no statements", repeat("foo\n")],
     ["unknown names", `define A := ${repeat("Quux ∧ ")}⊤`],
     ["groups that do not close", `describe ${repeat("\\mathit{")}`],
@@ -130,6 +139,26 @@ describe("nesting", () => {
     expect(codesOf(`describe ${"converse(".repeat(10_000)}{}`)).toEqual(["nested-too-deep"]);
   });
 
+  const structures: readonly [string, (depth: number) => string][] = [
+    ["carriers in brackets", (depth) => `${"(".repeat(depth)}dense-line${")".repeat(depth)}`],
+    [
+      "carriers in carriers",
+      (depth) => `${"points 1 at each point of (".repeat(depth)}half-line${")".repeat(depth)}`,
+    ],
+    ["formulas", (depth) => `dense-line where Rxy iff ${"(".repeat(depth)}x < y${")".repeat(depth)}`],
+    ["negations", (depth) => `dense-line where Rxy iff ${"¬".repeat(depth)}x < y`],
+    [
+      "parents",
+      (depth) =>
+        `tree with 1 child where Rxy iff ${"parent(".repeat(depth)}x${")".repeat(depth)} = ${"parent(".repeat(depth)}y${")".repeat(depth)}`,
+    ],
+  ];
+
+  test.each(structures)("of structures: %s", (_, shape) => {
+    expect(codesOf(`describe ${shape(10_000)}`)).toEqual(["nested-too-deep"]);
+    expect(codesOf(`claim ${shape(40)} ⊨ ∀x x = x`)).toEqual([]);
+  });
+
   test("definitions cannot nest more deeply than text", () => {
     const chain = Array.from({ length: 600 }, (_, i) => `define A${i + 1} := ¬A${i}`).join("\n");
     expect(codesOf(`define A0 := ∀x Rxx\n${chain}`)).toEqual(["nested-too-deep"]);
@@ -179,6 +208,26 @@ describe("any text", () => {
       "R ∘ R",
       "T ⊨",
     ],
+    ...[
+      "dense-line",
+      "half-line",
+      "tuples (a, b) over",
+      "2 copies of",
+      "sum of",
+      "at each point of",
+      "in 2 colours",
+    ],
+    ...[
+      "generic graph",
+      "tree with 2 children",
+      "where Rxy iff",
+      "iff",
+      "x.1",
+      "x.a",
+      "colour(x) = 1",
+      "parent(x)",
+    ],
+    ...["x-1", "x + 1 = y", "x < y", "meet(x,", "without zero", "part(x)", "R is {"],
     ...["smt-lib {", "(assert", "|", "(declare-sort U 0)"],
     ...["R", "S", "T", "Rxy", "x", "y", "x1'", "Foo", "before", "1", "2", "0", "2.5", "(x,y)", "T.a", "a:"],
     ...[

@@ -182,8 +182,33 @@ describe("completion", () => {
     ["define New := conv‸", ["converse"]],
     ["define New := { irr: fora‸", ["forall"]],
     ["define New := Order + {\n  irr: Abo‸", ["Above"]],
-    ["define Pair := points 2 ‸", ["where"]],
+    ["define Pair := points 2 ‸", ["at each point of", "where"]],
     ["define Pair := points 2 where ‸", ["R"]],
+    ["define Pair := points 2 where R ‸", ["is", "iff"]],
+    ["define Line := dense‸", ["dense-line", "dense-tree", "dense-linear-order-without-endpoints"]],
+    ["define Line := dense-line ‸", ["in", "at each point of", "where"]],
+    ["define Line := dense-line in 2 ‸", ["colours"]],
+    ["define Line := dense-line in 2 colours ‸", ["at each point of", "where"]],
+    ["define Line := dense-line where ‸", ["R"]],
+    ["define Line := dense-line where Rxy ‸", ["iff"]],
+    ["define Line := dense-line in 2 colours where Rxy iff ‸", ["colour", "not", "true", "false"]],
+    ["define Line := dense-line where Rxy iff x < y ‸", ["and", "or"]],
+    ["define Line := dense-line where Rxy iff x < y, ‸", ["R"]],
+    ["claim dense-line where Rxy iff x < y ‸", ["and", "or", "⊨", "⊭"]],
+    ["claim dense-line where Rxy iff x < y ⊨ tota‸", ["total-order", "total-preorder"]],
+    ["define G := generic ‸", ["graph", "digraph", "tournament", "partial-order"]],
+    ["define G := generic graph where Rxy iff ad‸", ["adjacent"]],
+    ["define B := boolean-algebra ‸", ["without zero", "without zero and top", "at each point of", "where"]],
+    ["define F := rooted ‸", ["tree with"]],
+    ["define F := rooted tree with 2 ‸", ["children"]],
+    ["define F := tree with 2 children where Rxy iff pa‸", ["parent"]],
+    ["define D := 2 ‸", ["copies of"]],
+    ["define D := 2 copies of half‸", ["half-line"]],
+    ["define T := tuples (from, until) ‸", ["over"]],
+    ["define T := tuples (start, end) over half-line where Rxy iff x.‸", ["start", "end"]],
+    ["define L := integer-line at ‸", ["each point of"]],
+    ["define L := integer-line at each point of dense-line where Rxy iff x.‸", ["outer", "inner"]],
+    ["define W := sum of half-line and po‸", ["points"]],
     ["define New := { a: ∀x Rxx }\ncheck-finite N‸", ["New"]],
     ["claim Order ⊨ trans‸", ["transitive"]],
     ["claim Order ⊨ left-eu‸", ["left-euclidean"]],
@@ -236,12 +261,40 @@ describe("inspection", () => {
     ["define T := { acy‸clic }", "keyword", "acyclic", "acyclic(R) up to n"],
     ["claim Order ⊨ R ‸∘ R ⊆ R", "symbol", "∘", "∘  o  \\circ"],
     ["claim Order ⊨ R⁻¹‸ = R", "symbol", "⁻¹", "⁻¹  inv  ^-1  ^{-1}"],
+    [
+      "define Q := dense-li‸ne where Rxy iff x < y",
+      "keyword",
+      "dense-line",
+      "dense-line, dense-line in 2 colours",
+    ],
+    ["define Q := dense-line where Rxy if‸f x < y", "keyword", "iff", "iff"],
+    ["define G := gen‸eric graph", "keyword", "generic", "generic graph"],
+    ["define G := generic parti‸al-order", "keyword", "partial-order", "generic partial-order"],
+    ["define F := rooted tr‸ee with 2 children", "keyword", "tree", "rooted tree with 2 children"],
+    ["define D := 2 copies of half-line where Rxy iff co‸py(x) = 1", "keyword", "copy", "copy(x) = 1"],
+    [
+      "define L := half-line at ea‸ch point of dense-line",
+      "keyword",
+      "each",
+      "integer-line at each point of dense-line",
+    ],
+    [
+      "define L := half-line at each point of dense-line where Rxy iff x.out‸er < y.outer",
+      "keyword",
+      "outer",
+      "x.outer",
+    ],
     ["normalise ∀x Rxx to Sko‸lem", "keyword", "Skolem", "normalise φ to Skolem form"],
     ["normali‸se ∀x Rxx to Skolem", "statement", "normalise", "normalise φ to prenex form with steps"],
     ["relation ≺‸ infix", "relation", "≺", "x ≺ y"],
   ])("of %s", (text, kind, name, signature) => {
     expect(found(text)).toMatchObject({ kind, name, signature });
     expect(found(text)!.meaning).toMatch(/\.$/);
+  });
+
+  test("of a structure says what it is on", () => {
+    const text = "define Q := dense-line in 2 colours where Rxy iff x < y\ndescribe Q‸";
+    expect(found(text)!.meaning).toBe("A structure on the rational line in two colours, each of them dense.");
   });
 
   test("is null where there is nothing to say", () => {

@@ -13,18 +13,24 @@ import { Points } from "./points.ts";
 import type { Structure, Table } from "./structure.ts";
 import { vocabularyOf } from "./vocabulary/of.ts";
 
+const built = new WeakMap<StructureDefinition, Structure>();
+
 /**
- * Builds a structure from what the user wrote. Points, lengths of tuples, atoms and sizes of tables have been checked where
+ * Builds a structure from what the user wrote, once for each definition. Points, lengths of tuples, atoms and sizes of tables have been checked where
  * it was read.
  */
 export function buildStructure(definition: StructureDefinition): Structure {
+  const known = built.get(definition);
+  if (known !== undefined) return known;
   const carrier = buildCarrier(definition.carrier);
   const tables = new Map<string, Table>();
   for (const defined of definition.relations) {
     const holds = "tuples" in defined ? listedTable(carrier, defined) : definedTable(carrier, defined);
     tables.set(defined.relation.name, { relation: defined.relation, holds });
   }
-  return { carrier, tables };
+  const structure = { carrier, tables };
+  built.set(definition, structure);
+  return structure;
 }
 
 function listedTable(carrier: Carrier, { relation, tuples }: ListedRelation): Uint8Array {

@@ -270,24 +270,22 @@ export class CarrierFormulaReader extends ConnectiveReader<CarrierFormula> {
       this.#note(atom, place, mistakes);
       return atom;
     };
-    const values = upTo(left.values);
     if (typeof right === "number") {
       // A number that is not there is said as it stands, for the complaint.
       const isThere = relation !== "=" && right >= 1 && right <= left.values;
       const parts = isThere
-        ? values.filter((value) => holds(value, right)).map((value) => said(left, value))
+        ? upTo(left.values)
+            .filter((value) => holds(value, right))
+            .map((value) => said(left, value))
         : [said(left, right)];
       return negated ? notOf(anyOf(parts)) : anyOf(parts);
     }
-    const pairs = values.flatMap((one) =>
-      upTo(right.values)
-        .filter((other) => holds(one, other))
-        .map((other) => allOf([said(left, one), said(right, other)])),
+    reader.charge(left.values * right.values, place);
+    const lefts = upTo(Math.max(1, left.values)).map((value) => said(left, value));
+    const rights = upTo(Math.max(1, right.values)).map((value) => said(right, value));
+    const pairs = lefts.flatMap((one, index) =>
+      rights.filter((_, other) => holds(index + 1, other + 1)).map((other) => allOf([one, other])),
     );
-    if (pairs.length === 0) {
-      said(left, 1);
-      said(right, 1);
-    }
     return negated ? notOf(anyOf(pairs)) : anyOf(pairs);
   }
 

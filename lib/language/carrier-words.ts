@@ -51,9 +51,12 @@ export function describeCarrier(description: CarrierDescription, signs = false):
     case "tuples":
       return describeTuples(description, of);
     case "sum":
-      return `the sum of ${listWords(description.parts.map(of))}`;
-    case "product":
-      return `${of(description.inner)}, a copy at each point of ${of(description.outer)}`;
+      return `${listWords(description.parts.map(of))} side by side`;
+    case "product": {
+      const { inner, outer } = description;
+      if (inner.kind === "points") return `${of(inner)} at each point of ${of(outer)}`;
+      return `${of(inner)}, a copy at each point of ${of(outer)}`;
+    }
   }
 }
 
@@ -65,7 +68,8 @@ function describeTuples(
   const points = widths.filter((width) => width === 0).length;
   if (copies > 0 && copies + points === widths.length) {
     const lines = copies === 1 ? of(over) : `${of(over)} in ${inWords(copies)} copies`;
-    return points === 0 ? lines : `${lines}, with ${count(points, "point")} beside`;
+    const more = points === 1 ? "one more point" : `${inWords(points)} more points`;
+    return points === 0 ? lines : `${lines} with ${more}`;
   }
   const kinds = [...new Set(widths)].map((width) => {
     const many = widths.filter((other) => other === width).length;

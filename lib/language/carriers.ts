@@ -14,7 +14,7 @@ import { carrierHelp, SIMPLE_CARRIERS } from "./carrier-help.ts";
 import type { Place } from "./diagnostics.ts";
 import { listWords } from "./help.ts";
 import type { Token } from "./lexer.ts";
-import { isKeptWord } from "./names.ts";
+import { isKeptWord, type Names } from "./names.ts";
 import { nearestName } from "./nearest.ts";
 import { readWhole } from "./numbers.ts";
 import { quote, type Reader } from "./reader.ts";
@@ -33,14 +33,27 @@ export function isWord(token: Token, ...words: readonly string[]): boolean {
   return token.kind === "word" && words.includes(token.text);
 }
 
+/** Whether a token is `and`, the sign or in LaTeX the word between parts of a structure. */
+export function isAnd(token: Token): boolean {
+  return token.kind === "and" || isWord(token, "and");
+}
+
 /** Whether a carrier, or what can only be meant for one, begins at the token after so many others. */
 export function isCarrierAhead(reader: Reader, after = 0): boolean {
-  let at = after;
-  while (reader.peekAfter(at).kind === "open") at += 1;
-  const token = reader.peekAfter(at);
-  const next = reader.peekAfter(at + 1);
+  return beginsCarrier((count) => reader.peekAfter(after + count), reader.names);
+}
+
+/**
+ * Whether a carrier, or what can only be meant for one, begins at a token.
+ * @param tokenAt the token so many places after that one
+ */
+export function beginsCarrier(tokenAt: (count: number) => Token, names: Names): boolean {
+  let at = 0;
+  while (tokenAt(at).kind === "open") at += 1;
+  const token = tokenAt(at);
+  const next = tokenAt(at + 1);
   if (token.kind === "number") return isWord(next, "copy", "copies");
-  if (token.kind !== "word" || reader.names.find(token.text) !== null) return false;
+  if (token.kind !== "word" || names.find(token.text) !== null) return false;
   if (token.text === "points" || SIMPLE_CARRIERS.some((word) => word === token.text)) return true;
   if (next.lineStart) return false;
   if (token.text === "generic") return next.kind === "word";
@@ -49,7 +62,7 @@ export function isCarrierAhead(reader: Reader, after = 0): boolean {
   if (token.text === "tuples") return next.kind === "open" || isWord(next, "of", "over");
   if (token.text === "sum") return isWord(next, "of");
   // An unknown word, taken for the name of a carrier.
-  return isWord(next, "where") || (isWord(next, "at") && isWord(reader.peekAfter(at + 2), "each"));
+  return isWord(next, "where") || (isWord(next, "at") && isWord(tokenAt(at + 2), "each"));
 }
 
 /** The words that a carrier may begin with. */
@@ -57,6 +70,17 @@ export const carrierWords: readonly string[] = [
   "points",
   ...carrierHelp.map(({ word }) => word).filter((word) => word !== "copies" && word !== "at each point of"),
 ];
+
+/** Goes on to the next part, definition or table over `and`, `,` or both; whether there is one. */
+export function acceptSeparator(reader: Reader): boolean {
+  const isComma = reader.accept("comma") !== null;
+  if (isComma) reader.crossLine();
+  const isJoined = isAnd(reader.peek());
+  if (isJoined) reader.next();
+  if (!isComma && !isJoined) return false;
+  reader.crossLine();
+  return true;
+}
 
 /** Reads a carrier; null after a mistake about numbers or names. */
 export function readCarrier(reader: Reader): CarrierReading | null {
@@ -210,7 +234,7 @@ class CarrierReader {
     if (isWord(reader.peek(), "top"))
       reader.failExpected("`zero`", `${hint}: without its top alone it looks like that upside down`);
     this.#expectWord("zero", hint);
-    const isTopless = reader.at("and") && isWord(reader.peekAfter(1), "top");
+    const isTopless = isAnd(reader.peek()) && isWord(reader.peekAfter(1), "top");
     if (isTopless) {
       reader.next();
       reader.next();
@@ -263,10 +287,7 @@ class CarrierReader {
     reader.next();
     this.#expectWord("of", hint);
     const parts = [this.#operand()];
-    while (reader.at("and") || reader.at("comma")) {
-      reader.next();
-      reader.accept("and");
-      reader.crossLine();
+    while (acceptSeparator(reader)) {
       parts.push(this.#operand());
     }
     if (parts.length < 2) reader.failExpected("`and` and another part of the sum", hint);

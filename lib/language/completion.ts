@@ -1,4 +1,6 @@
 /** What can be written at the cursor. */
+import { proposeInStructure, structureBegun } from "./carrier-completion.ts";
+import { carrierWords } from "./carriers.ts";
 import { claimForms, normalFormHelp, optionHelp, statementHelp } from "./help.ts";
 import { readTokens, type Token } from "./lexer.ts";
 import type { NameKind, Names } from "./names.ts";
@@ -101,6 +103,7 @@ function words(type: MatchType, texts: readonly string[]): readonly Match[] {
   return texts.map((text) => ({ text, type }));
 }
 
+const CARRIER_WORDS = words("keyword", carrierWords);
 const THEORY_WORDS = words("keyword", ["converse", "complement"]);
 const FORMULA_WORDS = words("keyword", ["exists", "false", "forall", "not", "true"]);
 
@@ -112,15 +115,15 @@ function matchesAfter(tokens: readonly Token[], names: Names): readonly Match[] 
   if (labels !== null) return words("label", labels);
   if (statement === "relation") return afterRelation(tokens, last);
   const bracket = innermostBracket(tokens);
-  const isStructure = tokens.some(
-    (token, at) => token.text === "points" && tokens[at - 1]?.kind !== "number",
-  );
   if (tokens.some(({ kind }) => kind === "raw")) return [];
-  if (bracket === "open-brace") return isStructure ? [] : formulaMatches(names);
+  const isAsked = tokens.some((token) => token.kind === "entails" || token.kind === "does-not-entail");
+  const structure = isAsked ? null : structureBegun(tokens, names);
+  if (bracket === "open-brace") return structure !== null ? [] : formulaMatches(names);
+  if (structure !== null) return structureMatches(structure, names, statement);
   if (statement === "normalise") return afterNormalise(tokens, last, names);
   if (statement === "write" && tokens.some(({ text }) => text === "as"))
     return words("keyword", last.text === "as" ? ["SMT-LIB", "DIMACS of size"] : []);
-  if (tokens.some((token) => token.kind === "entails" || token.kind === "does-not-entail")) {
+  if (isAsked) {
     if (!endsOperand(last)) return formulaMatches(names);
     return [
       ...(statement === "write" ? words("keyword", ["as"]) : optionMatches(tokens, last)),
@@ -129,11 +132,11 @@ function matchesAfter(tokens: readonly Token[], names: Names): readonly Match[] 
   }
   switch (statement) {
     case "define":
-      return tokens.some((token) => token.kind === "assign") ? afterAssign(last, names, isStructure) : [];
+      return tokens.some((token) => token.kind === "assign") ? afterAssign(last, names) : [];
     case "describe":
       return endsOperand(last) && tokens.length > 1
         ? words("keyword", ["replacing"])
-        : listed(names, ["theory", "structure", "formula", "relation"]);
+        : [...listed(names, ["theory", "structure", "formula", "relation"]), ...CARRIER_WORDS];
     case "claim":
     case "conjecture":
       return afterClaim(tokens, last, names);
@@ -207,19 +210,25 @@ function afterRelation(tokens: readonly Token[], last: Token): readonly Match[] 
   return words("keyword", ["infix", "of"]);
 }
 
-function afterAssign(last: Token, names: Names, isStructure: boolean): readonly Match[] {
-  if (isStructure) {
-    if (last.kind === "number") return words("keyword", ["where"]);
-    const isName = last.text === "where" || last.kind === "and" || last.kind === "comma";
-    if (isName) return listed(names, ["relation"]);
-    return last.kind === "word" ? words("keyword", ["is"]) : [];
-  }
+/** In a structure that is written out, and after one in a claim. */
+function structureMatches(structure: readonly Token[], names: Names, statement: string): readonly Match[] {
+  const proposals = proposeInStructure(structure, names);
+  const isClaimed = (statement === "claim" || statement === "conjecture") && proposals.words.includes("and");
+  return [
+    ...(proposals.relations ? listed(names, ["relation"]) : []),
+    ...words("keyword", proposals.words),
+    ...(isClaimed ? words("symbol", ["⊨", "⊭"]) : []),
+  ];
+}
+
+function afterAssign(last: Token, names: Names): readonly Match[] {
   if (last.kind !== "assign")
     return [...(endsOperand(last) ? words("keyword", ["replacing"]) : []), ...formulaMatches(names)];
   return [
     ...listed(names, ["theory", "structure", "formula", "relation"]),
     ...THEORY_WORDS,
-    ...words("keyword", ["points", "smt-lib"]),
+    ...CARRIER_WORDS,
+    ...words("keyword", ["smt-lib"]),
     ...FORMULA_WORDS,
     ...words("keyword", sentenceWords),
   ];
@@ -234,7 +243,8 @@ function afterClaim(tokens: readonly Token[], last: Token, names: Names): readon
     }
   if (rest.length > 0) return words("keyword", rest.sort());
   const isDone = tokens.some((token) => token.text === "is" || token.text === "has");
-  if (tokens.length === 1) return [...listed(names, ["theory", "structure"]), ...THEORY_WORDS];
+  if (tokens.length === 1)
+    return [...listed(names, ["theory", "structure"]), ...THEORY_WORDS, ...CARRIER_WORDS];
   return afterTheory(tokens, last, names, isDone ? [] : ["⊨", "⊭", "has", "is"]);
 }
 

@@ -2,6 +2,7 @@
 import type { Formula, RelationSymbol } from "../logic/formula.ts";
 import { findProperty, type NamedProperty, propertyOf } from "../logic/properties.ts";
 import type { Theory } from "../logic/theory.ts";
+import { carrierHelp, elementHelp } from "./carrier-help.ts";
 import { describeCarrier } from "./carrier-words.ts";
 import type { Place } from "./diagnostics.ts";
 import { claimForms, helpOf, listWords, normalFormHelp, optionHelp } from "./help.ts";
@@ -50,6 +51,10 @@ export function inspectAt(text: string, cursor: number, scope: Scope): Inspectio
   const named = names.find(token.text);
   if (named?.kind === "relation") return inspectRelation(named.relation, place);
   if (named !== null && named.kind !== "damaged") return inspectDefinition(named.definition, place);
+  const before = tokens[at - 1]?.text ?? "";
+  const generic = carrierHelp.find(({ word }) => before === "generic" && word === `generic ${token.text}`);
+  if (generic !== undefined)
+    return { kind: "keyword", name: token.text, signature: generic.form, meaning: generic.meaning, ...place };
   if (named === null && token.kind === "word") {
     const property = findProperty(token.text);
     if (property !== undefined) return inspectProperty(property, names.relations, place);
@@ -59,7 +64,7 @@ export function inspectAt(text: string, cursor: number, scope: Scope): Inspectio
   const help = helpOf(token.text);
   if (help !== undefined && (token.lineStart || at === 0))
     return { kind: "statement", name: help.word, signature: help.form, meaning: help.meaning, ...place };
-  const word = inspectWord(token.text);
+  const word = inspectWord(token.text) ?? inspectCarrierWord(tokens, at);
   if (word !== null) return { kind: "keyword", name: token.text, ...word, ...place };
   const letter = names.find(String.fromCodePoint(token.text.codePointAt(0)!));
   if (letter?.kind === "relation" && token.kind === "word") return inspectRelation(letter.relation, place);
@@ -107,6 +112,24 @@ function inspectWord(word: string): { readonly signature: string; readonly meani
     return { signature: `normalise φ to ${form.phrase.join(" ")} form`, meaning: form.meaning };
   const claim = claimForms.find(({ phrase }) => phrase.includes(word));
   return claim === undefined ? null : { signature: claim.form, meaning: claim.meaning };
+}
+
+/** A word of carriers, or of what is said of their elements. */
+function inspectCarrierWord(
+  tokens: readonly Token[],
+  at: number,
+): { readonly signature: string; readonly meaning: string } | null {
+  const { text } = tokens[at]!;
+  const element = elementHelp.find(({ word }) => word === text);
+  const isCalled = tokens[at + 1]?.kind === "open" || tokens[at - 1]?.kind === "dot";
+  if (element !== undefined && isCalled) return { signature: element.form, meaning: element.meaning };
+  const singular = text === "copy" ? "copies" : text === "forest" ? "tree" : text;
+  const pairs = [`${singular} ${tokens[at + 1]?.text}`, `${tokens[at - 1]?.text} ${singular}`];
+  const help =
+    carrierHelp.find(({ word }) => pairs.includes(word)) ??
+    carrierHelp.find(({ word }) => word === singular) ??
+    carrierHelp.find(({ word }) => word === "at each point of" && ["at", "each"].includes(text));
+  return help === undefined ? null : { signature: help.form, meaning: help.meaning };
 }
 
 function inspectSign(token: Token): Inspection | null {

@@ -3,6 +3,7 @@ import { buildCarrier } from "../carriers/build.ts";
 import { fitCarrier, largestBound } from "../carriers/fit.ts";
 import { countKinds } from "../carriers/listing.ts";
 import { vocabularyOf } from "../carriers/vocabulary/of.ts";
+import { atomsOf } from "../logic/carrier-formulas.ts";
 import type { RelationSymbol } from "../logic/formula.ts";
 import {
   type CarrierDescription,
@@ -22,6 +23,9 @@ import { callForm, countOf, kindText } from "./wording.ts";
 /** Tokens of the brackets after the name of a relation that are looked at for an `iff` behind them. */
 const FARTHEST = 210;
 
+/** Truth values of atoms that the tables of a structure may take, all relations together. */
+const MOST_VALUES = 2_000_000;
+
 /** Whether the definition of a relation, up to its `iff`, begins at the token after so many others. */
 export function isDefinitionAhead(reader: Reader, after = 0): boolean {
   const at = (count: number) => reader.peekAfter(after + count);
@@ -35,18 +39,6 @@ export function isDefinitionAhead(reader: Reader, after = 0): boolean {
   }
   if (isIff(1)) return true;
   return (second.kind === "word" || second.kind === "relation-sign") && at(2).kind === "word" && isIff(3);
-}
-
-/** Goes on to the next definition or table over `and`, `,` or both; whether there is one. */
-export function acceptSeparator(reader: Reader): boolean {
-  if (reader.accept("comma") === null) {
-    if (reader.accept("and") === null) return false;
-  } else {
-    reader.crossLine();
-    reader.accept("and");
-  }
-  reader.crossLine();
-  return true;
 }
 
 interface Head extends Place {
@@ -305,10 +297,23 @@ function checkTables(
 ): void {
   const carrier = buildCarrier(description);
   let entries = 0;
-  relations.forEach(({ relation }, index) => {
+  let values = 0;
+  relations.forEach(({ relation, formula }, index) => {
     const kinds = countKinds(carrier, relation.places);
     entries += kinds;
-    if (entries <= LARGEST_TABLES) return;
+    if (entries <= LARGEST_TABLES) {
+      values += kinds * atomsOf(formula).length;
+      if (values > MOST_VALUES) {
+        reader.report(
+          "size-too-large",
+          places[index]!,
+          `the formula of ${quote(relation.name)} is too long for the ${kinds} kinds of tuples that it would have to be decided for`,
+          "write a shorter one",
+        );
+        values = 0;
+      }
+      return;
+    }
     reader.report(
       "size-too-large",
       places[index]!,

@@ -9,17 +9,12 @@ import {
   type ListedRelation,
   type StructureDefinition,
 } from "../logic/structure-definition.ts";
-import { isCarrierAhead, isWord, readCarrier } from "./carriers.ts";
+import { acceptSeparator, isCarrierAhead, isWord, readCarrier } from "./carriers.ts";
 import type { Token } from "./lexer.ts";
 import { readWhole } from "./numbers.ts";
 import { quote, type Reader, Unreadable } from "./reader.ts";
 import type { NamedStructure } from "./statements.ts";
-import {
-  acceptSeparator,
-  DefinitionReader,
-  isDefinitionAhead,
-  resolveRelation,
-} from "./structure-definitions.ts";
+import { DefinitionReader, isDefinitionAhead, resolveRelation } from "./structure-definitions.ts";
 import { countOf } from "./wording.ts";
 
 /** Whether a structure expression comes next. */
@@ -84,7 +79,8 @@ function readTable(reader: Reader, size: number | null, seen: Set<string>): List
     );
   seen.add(name.token.text);
   checkTable(reader, name, size);
-  reader.expectWord("is", `write \`${name.token.text} is { … }\``);
+  if (!isWord(reader.peek(), "is")) reader.failExpected("`is`", `write \`${name.token.text} is { … }\``);
+  reader.next();
   reader.crossLine();
   const tuples = readTuples(reader, name.token.text, name.relation, size);
   return name.relation === null ? null : { relation: name.relation, tuples };

@@ -420,7 +420,11 @@ export const keywords: readonly Keyword[] = [
     meaning:
       "`points 3 where R is { (1,2) }`: the structure whose points are 1, 2 and 3; `at-most 3 points`.",
   },
-  { word: "where", meaning: "`points 3 where R is { (1,2) }`: says which tuples the relations hold of." },
+  {
+    word: "where",
+    meaning:
+      "`points 3 where R is { (1,2) }`, `dense-line where Rxy iff x < y`: says of what the relations hold.",
+  },
   { word: "is", meaning: "`claim T is consistent`; `where R is { (1,2) }`." },
   { word: "has", meaning: "`claim T has no finite model`." },
   { word: "converse", meaning: "`converse(T)`: the theory with every two-place relation read backwards." },
@@ -456,7 +460,11 @@ export const keywords: readonly Keyword[] = [
   { word: "full", meaning: "The relation, in relation terms, that relates every element to every element." },
   { word: "none", meaning: "The relation, in relation terms, that relates no elements." },
   { word: "point", meaning: "`exactly 1 point`: how many elements there are." },
-  { word: "iff", meaning: "Kept for structures on infinite domains." },
+  {
+    word: "iff",
+    meaning:
+      "`dense-line where Rxy iff x < y`: the relation holds of those elements of which the formula is true.",
+  },
 ];
 
 /** A spelling of a sign or a relation symbol, for completion: `\fora` offers `∀`. */
