@@ -1,6 +1,5 @@
 /** Structures on carriers made of others, for tests: descriptions, definitions in short, what they define. */
 import { buildCarrier } from "../../lib/carriers/build.ts";
-import type { Carrier } from "../../lib/carriers/carrier.ts";
 import { kindExamplesOf } from "../../lib/carriers/kind-examples.ts";
 import type { Structure, Table } from "../../lib/carriers/structure.ts";
 import { vocabularyOf } from "../../lib/carriers/vocabulary/of.ts";
@@ -113,4 +112,61 @@ export function isTrue(structure: Structure, said: Formula | string): boolean {
   return satisfies(structure, typeof said === "string" ? sentence(said) : said, new Meter(1e9, () => false));
 }
 
-export type AnyCarrier = Carrier<unknown>;
+/** Carriers made of lines and points, in many ways. */
+export const composites: readonly CarrierDescription[] = [
+  tuples(rationals, 1, 0),
+  tuples(rationals, 1, 1),
+  tuples(rationals, 2),
+  tuples(rationals, 2, 1, 0),
+  tuples({ kind: "dense-line", colours: 2 }, 1, 1),
+  tuples(naturals(), 1, 1),
+  tuples(naturals(), 2),
+  tuples(naturals(1, 1), 1, 1, 0),
+  tuples(integers(1), 1, 0),
+  tuples(integers(), 2, 1),
+  tuples(points(2), 2, 0),
+  tuples(rationals, 0, 0),
+  sum(naturals(), integers()),
+  sum(naturals(1, 2), integers(1)),
+  sum(rationals, points(1), rationals),
+  sum(tuples(rationals, 1, 0), naturals()),
+  sum(sum(naturals(), rationals), points(2)),
+  product(rationals, integers()),
+  product(naturals(), naturals()),
+  product(rationals, points(2)),
+  product(points(3), naturals(1, 1)),
+  product(integers(1), rationals),
+  product(sum(naturals(), rationals), points(2)),
+  product(tuples(rationals, 1, 0), naturals()),
+  product(product(naturals(), rationals), points(2)),
+  tuples(product(rationals, integers()), 1, 1),
+  tuples(sum(rationals, points(1)), 2),
+];
+
+/** A short name of a carrier. */
+export function nameOf(description: CarrierDescription): string {
+  switch (description.kind) {
+    case "points":
+      return String(description.size);
+    case "dense-line":
+      return description.colours === 1 ? "ℚ" : `ℚ in ${description.colours} colours`;
+    case "integer-line":
+      return description.offset === 0 ? "ℤ" : `ℤ(${description.offset})`;
+    case "half-line":
+      return description.offset + description.ends === 0
+        ? "ω"
+        : `ω(${description.offset},${description.ends})`;
+    case "tuples":
+      return `[${description.widths}] over ${nameOf(description.over)}`;
+    case "sum":
+      return `(${description.parts.map(nameOf).join(" + ")})`;
+    case "product":
+      return `(${nameOf(description.outer)} × ${nameOf(description.inner)})`;
+    case "generic":
+      return description.of;
+    case "forest":
+      return `forest ${description.branching} ${description.rooted} ${description.offset} ${description.ends}`;
+    default:
+      return JSON.stringify(Object.values(description));
+  }
+}

@@ -76,7 +76,10 @@ export function tuplesVocabulary(carrier: Tuples, of: VocabularyOf): Vocabulary<
   };
 }
 
-/** The vocabulary of a sum. */
+/**
+ * The vocabulary of a sum. Its atoms leave out what is unsettled in some part, so that they tell all kinds apart when
+ * lines, and forests, that are parts have the same bounds.
+ */
 export function sumVocabulary(carrier: Sum, of: VocabularyOf): Vocabulary<SumConfiguration> {
   const within = carrier.parts.map(of);
   return {
@@ -109,7 +112,7 @@ export function sumVocabulary(carrier: Sum, of: VocabularyOf): Vocabulary<SumCon
           const text = JSON.stringify(atom);
           if (isLabel(atom, "part") || seen.has(text)) return false;
           seen.add(text);
-          return true;
+          return within.every((other) => other.complaint(atom)?.isUnsettled !== true);
         }),
       );
       return [...own, ...others];

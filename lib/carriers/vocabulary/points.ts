@@ -1,9 +1,10 @@
 /**
  * What definitions may say of points where they are components of other carriers: they are the numbers 1, …, n, so that
- * `x = 2`, `x < y` and `y = x + 1` are said of them as of numbers. A sum that is no point is less than or greater than some.
+ * `x = 2`, `x < y` and `y = x + 1` are said of them as of numbers. A sum that is no point is less than or greater than some. `copy(x) = 2` says the same as
+ * `x = 2`, where beside points there are lines of which the latter would be said too.
  */
-import { termsOf } from "../../logic/carrier-formulas.ts";
-import type { ElementTerm } from "../../logic/structure-definition.ts";
+import { type NamedElement, termsOf } from "../../logic/carrier-formulas.ts";
+import type { CarrierAtom, ElementTerm } from "../../logic/structure-definition.ts";
 import type { Points, PointsConfiguration } from "../points.ts";
 import { compare, complain, element, firstComplaint, number, pairsOf } from "./terms.ts";
 import type { Complaint, Vocabulary } from "./vocabulary.ts";
@@ -13,6 +14,7 @@ export function pointsVocabulary(carrier: Points): Vocabulary<PointsConfiguratio
   const { size } = carrier;
   return {
     complaint(atom) {
+      if (isCopy(atom)) return termComplaint(atom.of, size) ?? termComplaint(number(atom.value), size);
       if (atom.kind !== "compare")
         return complain(`\`${atom.name}\` says nothing of points`, "a comparison, as in `x = 1` or `x < y`");
       const terms = termsOf(atom);
@@ -21,6 +23,9 @@ export function pointsVocabulary(carrier: Points): Vocabulary<PointsConfiguratio
       return firstComplaint(atom, (term) => termComplaint(term, size));
     },
     holds(atom, configuration, place) {
+      if (isCopy(atom)) {
+        return configuration[place(atom.of.variable)] === atom.value - 1;
+      }
       if (atom.kind !== "compare") throw new Error(`${atom.name} on points`);
       const value = (term: ElementTerm): number => {
         if (term.kind === "element") return configuration[place(term.variable)]! + 1;
@@ -39,9 +44,23 @@ export function pointsVocabulary(carrier: Points): Vocabulary<PointsConfiguratio
         ...pairs.map(([x, y]) => compare(x, "=", y)),
         ...variables.flatMap((x) => numbers.map((value) => compare(element(x), "=", value))),
         ...pairs.flatMap(([x, y]) => [compare(x, "<", y), compare(y, "<", x)]),
+        ...variables.flatMap((x) =>
+          Array.from({ length: size === 1 ? 0 : size }, (_, point) => copyOf(element(x), point + 1)),
+        ),
       ];
     },
   };
+}
+
+/** In which copy of a point a point is. */
+type Copy = CarrierAtom & { readonly kind: "label"; readonly of: NamedElement };
+
+function isCopy(atom: CarrierAtom): atom is Copy {
+  return atom.kind === "label" && atom.name === "copy" && atom.of.kind === "element";
+}
+
+function copyOf(of: NamedElement, value: number): Copy {
+  return { kind: "label", name: "copy", of, value };
 }
 
 function numberIn(term: ElementTerm): boolean {
