@@ -23,6 +23,8 @@ export type Inline =
   | { readonly kind: "strong"; readonly text: string }
   /** What the user wrote or named. */
   | { readonly kind: "code"; readonly text: string }
+  /** Text of a cell that can also be set as mathematics. */
+  | { readonly kind: "cell"; readonly text: string; readonly latex: string }
   /** A word of the closed lists of verdicts; one that leads a line is set off from what follows. */
   | { readonly kind: "verdict"; readonly word: string; readonly leads: boolean };
 
@@ -35,9 +37,9 @@ export interface TableBlock {
   readonly rows: readonly (readonly (readonly Inline[])[])[];
   /**
    * `prose` wraps its last column; `matrix` sets every cell to the same width; `numbers` sets digits under digits;
-   * `derivation` has a number, a formula and its reason in each row.
+   * `derivation` has a number, a formula and its reason in each row; `kinds` has 0 or 1 in all columns but the first.
    */
-  readonly look: "prose" | "matrix" | "numbers" | "derivation";
+  readonly look: "prose" | "matrix" | "numbers" | "derivation" | "kinds";
 }
 
 export interface PictureBlock {
@@ -106,6 +108,10 @@ export function termOf(term: Term): Inline {
 
 export function mathOf(text: string, latex: string): Maths {
   return { kind: "math", text, latex };
+}
+
+export function cellOf(text: string, latex: string): Inline {
+  return { kind: "cell", text, latex };
 }
 
 export function strong(text: string): Inline {

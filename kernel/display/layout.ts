@@ -10,8 +10,8 @@ export interface Place {
 export interface Extent {
   readonly width: number;
   readonly height: number;
-  /** `round` is a circle where width and height are equal, else an ellipse; `box` has rounded corners. */
-  readonly outline: "round" | "box";
+  /** `round` is a circle where width and height are equal, else an ellipse; `box` has rounded corners; `none` is bare text. */
+  readonly outline: "round" | "box" | "none";
 }
 
 /** A frame around points, by its upper left corner. */
@@ -33,7 +33,7 @@ export async function prepareLayout(): Promise<void> {
 const POINTS_PER_INCH = 72;
 
 /**
- * Layers bottom to top, every arc going upwards.
+ * Layers bottom to top, every arc going upwards; or left to right.
  * @param arcs pairs counted from 0 that form no cycle
  * @param ends lines with heads get more room
  * @returns places of the points and the arcs' curves in the order given, y growing downwards
@@ -43,6 +43,7 @@ export function layOutLayers(
   extents: readonly Extent[],
   arcs: readonly (readonly [number, number])[],
   ends: "bare" | "heads" = "bare",
+  direction: "up" | "right" = "up",
 ): { readonly places: readonly Place[]; readonly curves: readonly Spline[] } {
   if (graphviz === null) throw new Error("prepareDrawing has not been awaited");
   const nodes = extents.map(
@@ -51,7 +52,7 @@ export function layOutLayers(
   );
   const edges = arcs.map(([from, to]) => `n${from}->n${to};`);
   const drawn = graphviz.renderJSON(
-    `digraph{rankdir=BT;${ends === "bare" ? "nodesep=0.35;ranksep=0.36;" : "nodesep=0.45;ranksep=0.5;"}node[fixedsize=true,label=""];edge[dir=none];${nodes.join("")}${edges.join("")}}`,
+    `digraph{rankdir=${direction === "up" ? "BT" : "LR"};${ends === "bare" ? "nodesep=0.35;ranksep=0.36;" : "nodesep=0.45;ranksep=0.5;"}node[fixedsize=true,label=""];edge[dir=none];${nodes.join("")}${edges.join("")}}`,
     { engine: "dot" },
   ) as {
     bb: string;

@@ -44,7 +44,7 @@ export interface Style {
 }
 
 /** Signs that are read "greater than": of such an order the greater point stands higher, so that lines lead down. */
-const DESCENDING: ReadonlySet<string> = new Set(">≥≻⪰≽≫⊐⊒⊃⊇⊳⊵");
+export const DESCENDING: ReadonlySet<string> = new Set(">≥≻⪰≽≫⊐⊒⊃⊇⊳⊵");
 
 /** The style that says most comes first; the last fits everything. */
 export const styles: readonly Style[] = [
@@ -199,7 +199,7 @@ function explainOrder(name: string, orders: readonly Matrix[], leavesOutLoops: b
   return `${name} by ${direction} lines${omitted.length === 0 ? "" : `; ${enumerate(omitted)} left out`}`;
 }
 
-function explainArrows(name: string, relations: readonly Matrix[]): string {
+export function explainArrows(name: string, relations: readonly Matrix[]): string {
   const arrow = `an arrow from x to y: ${name} holds of (x, y)`;
   return relations.some(hasPairBothWays) ? `${arrow}; heads at both ends: of (y, x) as well` : arrow;
 }
@@ -210,7 +210,7 @@ function mostLines(relation: Matrix): number {
   );
 }
 
-function mostPredecessors(relation: Matrix): number {
+export function mostPredecessors(relation: Matrix): number {
   return Math.max(...relation.map((_, j) => relation.filter((row, i) => i !== j && row[j]).length));
 }
 
@@ -222,7 +222,7 @@ function hasLines(relation: Matrix): boolean {
   return relation.some((row, i) => row.some((holds, j) => i !== j && holds));
 }
 
-function hasLoops(relation: Matrix): boolean {
+export function hasLoops(relation: Matrix): boolean {
   return relation.some((row, i) => row[i]!);
 }
 
@@ -232,7 +232,7 @@ function pairsOf(matrix: Matrix): readonly (readonly [number, number])[] {
   );
 }
 
-function pointsAt(
+export function pointsAt(
   places: readonly Place[],
   extents: readonly Extent[],
   labels: readonly PointLabel[],
@@ -240,7 +240,7 @@ function pointsAt(
   return places.map((place, i) => ({ ...place, ...extents[i]!, lines: labels[i]! }));
 }
 
-function extentOf(label: PointLabel): Extent {
+export function extentOf(label: PointLabel): Extent {
   const width = Math.max(...label.map(displayWidth));
   if (label.length === 2) return { width: Math.max(34, 14 + 7 * width), height: 36, outline: "round" };
   return width <= 2

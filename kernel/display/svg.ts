@@ -90,11 +90,13 @@ function renderFrame({ x, y, width, height }: Frame): string {
 
 function renderPoint({ x, y, width, height, outline: shape, lines }: DrawnPoint): string {
   const outline =
-    shape === "box"
-      ? `<rect x="${num(x - width / 2)}" y="${num(y - height / 2)}" width="${num(width)}" height="${num(height)}" rx="7" fill="${POINT}" stroke="${INK}" stroke-width="1.2"/>`
-      : width === height
-        ? `<circle cx="${num(x)}" cy="${num(y)}" r="${num(width / 2)}" fill="${POINT}" stroke="${INK}" stroke-width="1.2"/>`
-        : `<ellipse cx="${num(x)}" cy="${num(y)}" rx="${num(width / 2)}" ry="${num(height / 2)}" fill="${POINT}" stroke="${INK}" stroke-width="1.2"/>`;
+    shape === "none"
+      ? ""
+      : shape === "box"
+        ? `<rect x="${num(x - width / 2)}" y="${num(y - height / 2)}" width="${num(width)}" height="${num(height)}" rx="7" fill="${POINT}" stroke="${INK}" stroke-width="1.2"/>`
+        : width === height
+          ? `<circle cx="${num(x)}" cy="${num(y)}" r="${num(width / 2)}" fill="${POINT}" stroke="${INK}" stroke-width="1.2"/>`
+          : `<ellipse cx="${num(x)}" cy="${num(y)}" rx="${num(width / 2)}" ry="${num(height / 2)}" fill="${POINT}" stroke="${INK}" stroke-width="1.2"/>`;
   const texts = lines.map((text, index) => {
     const offset = lines.length === 1 ? 4.5 : index === 0 ? -2.5 : 9.5;
     const size = index === 0 ? "" : ` font-size="10.5"`;

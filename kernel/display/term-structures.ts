@@ -1,98 +1,92 @@
 /** Structures of free terms as they are shown: the constructors, and each relation by its recursion. */
 import type { TermStructure } from "../../lib/carriers/any-structure.ts";
-import type { RecursionRecord, TermsRecord } from "../../lib/carriers/free-terms.ts";
+import { printTerm } from "../../lib/language/printer.ts";
+import type { Term, TermFormula } from "../../lib/logic/clausal.ts";
 import { partsOf, type TermFormulaRecord, type TermRecord } from "../../lib/logic/records/formulas.ts";
-import { type Block, line, type TableBlock } from "./blocks.ts";
-import { enumerate } from "./text.ts";
+import { describeTerms } from "../../lib/structures/free-terms/describe.ts";
+import {
+  type Block,
+  enumerated,
+  formulaOf,
+  type Inline,
+  line,
+  type TableBlock,
+  termOf,
+  words,
+} from "./blocks.ts";
+import { inlineToText } from "./to-text.ts";
 
 /** The words for the domain, after `on`: `the free terms of e and f(x, y)`. */
-export function termsWords({ terms }: TermStructure): string {
-  const constructors = Object.entries(terms.constructors).map(([name, args]) =>
-    args.length === 0 ? name : `${name}(${args.join(", ")})`,
-  );
-  return `the free terms of ${enumerate(constructors)}`;
+export function termsWords(structure: TermStructure): string {
+  return inlineToText(domainParts(structure));
+}
+
+function domainParts({ terms }: TermStructure): readonly Inline[] {
+  const { constructors } = describeTerms(terms);
+  return words`the free terms of ${enumerated(constructors.map((one) => termOf(termOfRecord(one))))}`;
 }
 
 /** @param role as a noun phrase: `countermodel` */
 export function termsBlocks(role: string, structure: TermStructure): readonly Block[] {
-  const { terms } = structure;
+  const { clauses } = describeTerms(structure.terms);
   const table: TableBlock = {
     kind: "table",
     caption: null,
     head: ["holds", "exactly when"],
-    rows: Object.entries(terms.relations).flatMap(([name, relation]) => casesOf(terms, name, relation)),
+    rows: clauses.map(({ head, body }) => [
+      [formulaOf(formulaOfRecord(head))],
+      [body[0] === "true" ? "always" : body[0] === "false" ? "never" : formulaOf(formulaOfRecord(body))],
+    ]),
     look: "prose",
   };
-  return [
-    {
-      kind: "group",
-      blocks: [
-        line(`${role}, infinite: ${termsWords(structure)}`),
-        line(
-          "Its elements are all terms that can be made of these; terms that are written differently are different.",
-        ),
-        table,
-      ],
-    },
-  ];
-}
-
-/** For each constructor, where the relation holds of a term that begins with it. */
-function casesOf(
-  { constructors }: TermsRecord,
-  name: string,
-  { on, others, cases }: RecursionRecord,
-): TableBlock["rows"] {
-  return Object.entries(cases).map(([constructor, formula]) => {
-    const term: TermRecord = [constructor, ...constructors[constructor]!];
-    const args: readonly TermRecord[] = others.toSpliced(on, 0, term as never);
-    return [[termText(["is", name, ...args])], [termFormulaText(formula)]];
-  });
+  const remark =
+    "The elements are all terms that can be made of these, and terms that are written differently are different.";
+  const title = line(
+    ...words`${role}${/infinite/.test(role) ? "" : ", infinite"}: ${domainParts(structure)}`,
+  );
+  return [{ kind: "group", blocks: [title, line(remark), table] }];
 }
 
 /** For `eval --json`. */
 export function termsData({ terms }: TermStructure): Readonly<Record<string, unknown>> {
-  return { terms };
+  const { constructors } = describeTerms(terms);
+  return { constructors: constructors.map((one) => printTerm(termOfRecord(one), "ascii")), terms };
 }
 
-/** How tightly the sign of a formula binds. */
-const BINDING: Readonly<Record<string, number>> = { iff: 1, implies: 2, or: 3, and: 4 };
-const SIGNS: Readonly<Record<string, string>> = { iff: " ↔ ", implies: " → ", or: " ∨ ", and: " ∧ " };
+function termOfRecord(record: TermRecord): Term {
+  if (typeof record === "string") return record;
+  const [name, ...args] = record;
+  // Where a function comes from does not matter to printing.
+  const origin = { kind: "parameter", variable: name } as const;
+  return { symbol: { name, places: args.length, origin }, args: args.map(termOfRecord) };
+}
 
-function termFormulaText(formula: TermFormulaRecord, least = 0): string {
-  switch (formula[0]) {
-    case "is":
-    case "=":
-      return termText(formula);
-    case "true":
-      return "always";
-    case "false":
-      return "never";
-    case "not": {
-      const [, body] = formula;
-      return body[0] === "=" ? `${argText(body[1])} ≠ ${argText(body[2])}` : `¬${termFormulaText(body, 5)}`;
+function formulaOfRecord(record: TermFormulaRecord): TermFormula {
+  switch (record[0]) {
+    case "is": {
+      const [, name, ...args] = record;
+      const infix = args.length === 2 && !/^\p{L}/u.test(name);
+      return {
+        kind: "atom",
+        relation: { name, places: args.length, infix },
+        args: args.map(termOfRecord),
+      };
     }
+    case "=":
+      return { kind: "equal", left: termOfRecord(record[1]), right: termOfRecord(record[2]) };
+    case "true":
+    case "false":
+      return { kind: record[0] };
+    case "not":
+      return { kind: "not", body: formulaOfRecord(record[1]) };
+    case "and":
+    case "or":
+      return { kind: record[0], parts: partsOf(record).map(formulaOfRecord) };
+    case "implies":
+    case "iff":
+      return { kind: record[0], left: formulaOfRecord(record[1]), right: formulaOfRecord(record[2]) };
     case "forall":
     case "exists":
-      throw new Error("a quantifier in a definition by recursion");
-    default: {
-      const own = BINDING[formula[0]]!;
-      const text = partsOf(formula)
-        .map((part) => termFormulaText(part, own + 1))
-        .join(SIGNS[formula[0]]);
-      return own < least ? `(${text})` : text;
-    }
+      return { kind: record[0], variable: record[1], body: formulaOfRecord(record[2]) };
   }
-}
-
-function termText(atom: TermFormulaRecord & readonly ["is" | "=", ...unknown[]]): string {
-  if (atom[0] === "=") return `${argText(atom[1] as TermRecord)} = ${argText(atom[2] as TermRecord)}`;
-  const [, name, ...args] = atom as readonly ["is", string, ...TermRecord[]];
-  return `${name}(${args.map(argText).join(", ")})`;
-}
-
-function argText(term: TermRecord): string {
-  if (typeof term === "string") return term;
-  const [name, ...args] = term;
-  return args.length === 0 ? name : `${name}(${args.map(argText).join(", ")})`;
 }

@@ -45,6 +45,7 @@ function pieceToHtml(piece: Inline): string {
       return `<span style="white-space:nowrap">${escapeHtml(piece.text)}</span>`;
     case "strong":
       return `<strong>${escapeHtml(piece.text)}</strong>`;
+    case "cell":
     case "code":
       return `<code>${escapeHtml(piece.text)}</code>`;
     case "verdict": {
@@ -71,7 +72,10 @@ function blockToHtml(block: Block): string {
     case "table":
       return tableToHtml(block);
     case "picture": {
-      const caption = block.caption === "" ? "" : `<br><small>${escapeHtml(block.caption)}</small>`;
+      const caption =
+        block.caption === ""
+          ? ""
+          : `<div style="max-width:32em"><small>${escapeHtml(block.caption)}</small></div>`;
       return `<div style="margin:4px 0">${pictureToHtml(block)}${caption}</div>`;
     }
     case "gallery": {
@@ -96,7 +100,13 @@ function blockToHtml(block: Block): string {
   }
 }
 
-const ALIGN = { matrix: "center", numbers: "right", prose: "left", derivation: "left" } as const;
+const ALIGN = {
+  matrix: "center",
+  numbers: "right",
+  prose: "left",
+  derivation: "left",
+  kinds: "center",
+} as const;
 
 const BESIDE = "display:inline-block;vertical-align:top;margin:0 28px 4px 0;max-width:100%";
 
@@ -111,6 +121,8 @@ function pictureToHtml({ svg, alt }: PictureBlock): string {
 /** Columns that a sentence of a derivation, and a formula in its reason, may take to be kept on one line. */
 const SENTENCE_WIDTH = 36;
 const VALUE_WIDTH = 20;
+/** Columns that the words for a kind of pairs may take to be kept on one line. */
+const KIND_WIDTH = 56;
 
 /** A cell of a derivation: browsers would break short formulas before they make the table wider. */
 function derivationCell(cell: readonly Inline[], isLast: boolean): string {
@@ -129,12 +141,14 @@ function heldPieces(parts: readonly Inline[], width = VALUE_WIDTH): string {
 
 function tableToHtml(table: TableBlock): string {
   const matrix = table.look === "matrix";
-  const align = ALIGN[table.look];
+  const isBinary = matrix || table.look === "kinds";
+  const align = (column: number) => (table.look === "kinds" && column === 0 ? "left" : ALIGN[table.look]);
   const space = {
     matrix: "1px 7px",
     numbers: "3px 4px 3px 18px",
     prose: "3px 14px 3px 4px",
     derivation: "2px 18px 2px 4px",
+    kinds: "1px 9px 1px 4px",
   }[table.look];
   const isLong = longColumns(table);
   // Beside a long last column, browsers would break titles of several words after each of them.
@@ -142,8 +156,8 @@ function tableToHtml(table: TableBlock): string {
     table.look === "prose" && table.rows.some(([title]) => inlineToText(title ?? []).length > 20);
   const isReason = (column: number) => table.look === "derivation" && column === table.head.length - 1;
   const headCell = (title: string, column: number) =>
-    `<th scope="col" style="text-align:${align};padding:${space};border-bottom:1px solid ${RULE}${
-      isLong[column]
+    `<th scope="col" style="text-align:${align(column)};padding:${space};border-bottom:1px solid ${RULE}${
+      isLong[column] && table.look !== "kinds"
         ? ";width:16em"
         : isReason(column)
           ? ";min-width:15em"
@@ -158,11 +172,14 @@ function tableToHtml(table: TableBlock): string {
           ? derivationCell(cell, column === table.head.length - 1)
           : inlineToHtml(cell);
       if (column > 0)
-        return `<td style="text-align:${align};padding:${space};vertical-align:top">${
-          matrix && inner === "1" ? "<strong>1</strong>" : inner
+        return `<td style="text-align:${align(column)};padding:${space};vertical-align:top">${
+          isBinary && inner === "1" ? "<strong>1</strong>" : inner
         }</td>`;
       const rule = matrix ? `;border-right:1px solid ${RULE}` : "";
-      return `<th scope="row" style="text-align:${align};padding:${space};vertical-align:top${rule}">${inner}</th>`;
+      const isHeld = displayWidth(inlineToText(cell)) <= KIND_WIDTH;
+      const weight =
+        table.look === "kinds" ? `;font-weight:normal${isHeld ? ";white-space:nowrap" : ""}` : "";
+      return `<th scope="row" style="text-align:${align(column)};padding:${space};vertical-align:top${rule}${weight}">${inner}</th>`;
     });
     return `<tr>${cells.join("")}</tr>`;
   });

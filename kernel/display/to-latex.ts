@@ -99,6 +99,7 @@ function pieceToLatex(piece: Inline): string {
       return `$${printTerm(piece.term, "latex")}$`;
     case "relation":
       return relationToLatex(piece.name);
+    case "cell":
     case "math":
       return `$${piece.latex}$`;
     case "strong":
@@ -181,6 +182,7 @@ function columnsOf(table: TableBlock): string {
   if (look === "numbers") return "r".repeat(last + 1);
   if (look === "matrix") return `c@{\\quad}${"c".repeat(last)}`;
   if (look === "derivation") return "rp{0.46\\linewidth}p{0.4\\linewidth}";
+  if (look === "kinds") return `${longColumns(table)[0] ? "p{0.6\\linewidth}" : "l"}${"c".repeat(last)}`;
   const isLong = longColumns(table);
   const before = isLong.map((long) => (long && last > 0 ? "p{0.3\\linewidth}" : "l"));
   const rest = last > 2 || isLong.includes(true) ? "0.4" : "0.65";

@@ -20,6 +20,7 @@ function pieceToMarkdown(piece: Inline): string {
       return `$${piece.latex}$`;
     case "strong":
       return `**${escapeMarkdown(piece.text)}**`;
+    case "cell":
     case "code":
       return codeSpan(visible(piece.text));
     case "verdict":

@@ -23,6 +23,7 @@ function pieceToText(piece: Inline): string {
       return printTerm(piece.term, "unicode");
     case "relation":
       return visible(piece.name);
+    case "cell":
     case "code":
     case "math":
     case "strong":
@@ -59,7 +60,9 @@ function blockToText(block: Block): string {
 /** Prose is wrapped; what the user wrote, or may copy, keeps its line. */
 function lineToText(parts: readonly Inline[]): string {
   const text = inlineToText(parts);
-  const isCopied = parts.some((piece) => typeof piece !== "string" && piece.kind === "code");
+  const isCopied = parts.some(
+    (piece) => typeof piece !== "string" && (piece.kind === "code" || piece.kind === "cell"),
+  );
   return isCopied ? text : wrap(text, WIDTH).join("\n");
 }
 
@@ -71,7 +74,7 @@ const SENTENCE_WIDTH = 54;
 export function longColumns({ look, head, rows }: TableBlock): readonly boolean[] {
   return head.map(
     (_, column) =>
-      look === "prose" &&
+      (look === "prose" || look === "kinds") &&
       column < head.length - 1 &&
       rows.some((row) => displayWidth(inlineToText(row[column] ?? [])) > CELL_WIDTH),
   );
@@ -95,7 +98,7 @@ function unbroken(cell: readonly Inline[]): string {
 
 /** Columns set under each other, a rule under the head; long cells of prose go on below themselves. */
 function tableToText(table: TableBlock): string {
-  const isWrapped = table.look === "prose" || table.look === "derivation";
+  const isWrapped = table.look === "prose" || table.look === "derivation" || table.look === "kinds";
   const cellWidth = table.look === "derivation" ? SENTENCE_WIDTH : CELL_WIDTH;
   const head = table.head.map(visible);
   const last = head.length - 1;
