@@ -53,7 +53,7 @@ export function integerLineVocabulary(carrier: IntegerLine): Vocabulary<IntegerC
   return {
     complaint(atom) {
       if (atom.kind !== "compare") return wrongAtom(atom, "the integer line");
-      const wrong = firstComplaint(atom, onLine);
+      const wrong = firstComplaint(atom, onIntegerLine);
       if (wrong !== null) return wrong;
       if (numberIn(atom.left) || numberIn(atom.right))
         return complain(
@@ -218,17 +218,18 @@ function onDenseLine(term: ElementTerm): Complaint | null {
   }
 }
 
-function onLine(term: ElementTerm): Complaint | null {
-  if (term.kind === "element") return pathComplaint(term, "the line");
-  if (term.kind === "apply") return operationComplaint(term, "the line");
-  return term.kind === "shift" ? onLine(term.of) : null;
+function onIntegerLine(term: ElementTerm): Complaint | null {
+  if (term.kind === "element") return pathComplaint(term, "the integer line");
+  if (term.kind === "apply") return operationComplaint(term, "the integer line");
+  return term.kind === "shift" ? onIntegerLine(term.of) : null;
 }
 
 function onHalfLine(term: ElementTerm): Complaint | null {
+  if (term.kind === "element") return pathComplaint(term, "the half line");
+  if (term.kind === "apply") return operationComplaint(term, "the half line");
   if (term.kind === "shift") return onHalfLine(term.of);
-  if (term.kind === "number" && term.value < 0)
-    return complain(`the half line begins with 0, so it has no ${term.value}`, "a number from 0 on");
-  return onLine(term);
+  if (term.value >= 0) return null;
+  return complain(`the half line begins with 0, so it has no ${term.value}`, "a number from 0 on");
 }
 
 function pathComplaint({ variable, path }: Element, line: string): Complaint | null {
