@@ -5,6 +5,7 @@ import { buildCarrier } from "../../lib/carriers/build.ts";
 import type { Carrier } from "../../lib/carriers/carrier.ts";
 import { vocabularyOf } from "../../lib/carriers/vocabulary/of.ts";
 import { allOf, anyOf, notOf } from "../../lib/logic/carrier-formulas.ts";
+import { depthOf, type Formula } from "../../lib/logic/formula.ts";
 import type {
   CarrierDescription,
   CarrierFormula,
@@ -16,10 +17,12 @@ import {
   naturals,
   points,
   product,
+  R,
   rationals,
   sum,
   tuples,
 } from "./carriers-composites.ts";
+import { sentences } from "./random-formulas.ts";
 import { configurationOf, type TrueElement, windowOf } from "./true-elements.ts";
 
 export function allPlaces(length: number): readonly number[] {
@@ -82,6 +85,11 @@ export function definitionsOn(description: CarrierDescription): fc.Arbitrary<Car
   return fc
     .array(fc.array(literal, { minLength: 1, maxLength: 3 }), { minLength: 1, maxLength: 3 })
     .map((parts) => anyOf(parts.map(allOf)));
+}
+
+/** Sentences about R, at most so many quantifiers deep. */
+export function sentencesTo(depth: number): fc.Arbitrary<Formula> {
+  return sentences([R], depth).filter((said) => depthOf(said) <= depth);
 }
 
 /**
