@@ -89,6 +89,11 @@ const STAGES: readonly Stage[] = [
   { kind: "reason", level: 3, share: 1 / 8 },
 ];
 
+/** Finite structures on up to so many points are preferred to an infinite one … */
+const PREFERRED_POINTS = 7;
+/** … where they are found within this part of the budget. */
+const PREFERRED_SHARE = 1 / 100;
+
 /** Each structure that was found before is tried within this part of the budget. */
 const KNOWN_SHARE = 1 / 200;
 
@@ -310,20 +315,35 @@ class Run {
 
   go(): void {
     this.#guard(() => {
-      this.#tryKnown();
-      for (const stage of STAGES) {
-        if (this.#isSettled) return;
-        this.#do(stage);
-      }
-      // What is left is shared by the searches that may still answer; what one leaves goes to the next.
-      const left = () => this.#meter.left / 1000;
-      if (this.#mayDerive) this.#searchAllStructures(left() / 2);
-      this.#searchInfinite(ROUNDS.length, left() / 4);
-      this.#reason(Number.POSITIVE_INFINITY, left() / 4);
-      const kept = this.#finite.isExhausted ? 1 : 3 / 4;
-      this.#derive(Number.POSITIVE_INFINITY, left() * kept);
-      this.#searchAllStructures(left());
+      this.#settle();
+      this.#preferFinite();
     });
+  }
+
+  /** An infinite structure settles an entailment; a small finite one says the same more simply, where a short search meets it. */
+  #preferFinite(): void {
+    const infinite = this.structure;
+    if (infinite === null || sizeOf(infinite) !== null || this.#reasons !== null) return;
+    this.structure = null;
+    this.#searchStructures(PREFERRED_POINTS, this.#budget * PREFERRED_SHARE);
+    this.structure ??= infinite;
+  }
+
+  #settle(): void {
+    this.#tryKnown();
+    for (const stage of STAGES) {
+      if (this.#isSettled) return;
+      this.#do(stage);
+    }
+    if (this.#isSettled) return;
+    // What is left is shared by the searches that may still answer; what one leaves goes to the next.
+    const left = () => this.#meter.left / 1000;
+    if (this.#mayDerive) this.#searchAllStructures(left() / 2);
+    this.#searchInfinite(ROUNDS.length, left() / 4);
+    this.#reason(Number.POSITIVE_INFINITY, left() / 4);
+    const kept = this.#finite.isExhausted ? 1 : 3 / 4;
+    this.#derive(Number.POSITIVE_INFINITY, left() * kept);
+    this.#searchAllStructures(left());
   }
 
   #do(stage: Stage): void {
