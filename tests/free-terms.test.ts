@@ -11,7 +11,7 @@ import {
   type TermsRecord,
 } from "../lib/carriers/free-terms.ts";
 import { checkCertificate } from "../lib/carriers/free-terms-check.ts";
-import { type Formula, not, type RelationSymbol } from "../lib/logic/formula.ts";
+import type { RelationSymbol } from "../lib/logic/formula.ts";
 import { Meter, WorkEnded } from "../lib/logic/meter.ts";
 import {
   type FormulaRecord,
@@ -19,25 +19,22 @@ import {
   type TermFormulaRecord,
   type TermRecord,
 } from "../lib/logic/records/formulas.ts";
-import { complementTheory, converseTheory, sentencesOf } from "../lib/logic/theory.ts";
 import { describeTerms } from "../lib/structures/free-terms/describe.ts";
 import { certify, findFreeTerms } from "../lib/structures/free-terms/find.ts";
 import { changes, wordsIn } from "./support/changes.ts";
-import { claims, infiniteOnly, questions, readSentences, theoryOf } from "./support/corpora.ts";
+import { readSentences } from "./support/corpora.ts";
 import {
-  type Ground,
-  GroundTerms,
-  groundTerms,
-  isSentence,
-  namedBy,
-  usesInduction,
-} from "./support/ground-terms.ts";
-import { sentences } from "./support/random-formulas.ts";
-import { termsRecords } from "./support/random-terms.ts";
+  agreesAtGroundTerms,
+  agreesWithParameters,
+  certifiesOneSide,
+  readsWhatIsWritten,
+  seed,
+} from "./support/free-terms-properties.ts";
+import { type Ground, GroundTerms, groundTerms, isSentence, passes } from "./support/ground-terms.ts";
+import { dualOf, FORMS, wantedBy } from "./support/wanted-models.ts";
 
 const R: RelationSymbol = { name: "R", places: 2, infix: false };
 const P: RelationSymbol = { name: "P", places: 1, infix: false };
-const seed = Number(process.env.TWOPLACE_SEED ?? 20261201);
 const options = (numRuns: number) => ({ seed, numRuns, verbose: 1 as const });
 const meter = () => new Meter(1e6);
 const read = (text: string) => recordFormula(readSentences([text])[0]!);
@@ -77,48 +74,25 @@ function isCertified(record: TermsRecord, sentence: FormulaRecord, steps = 500):
   }
 }
 
-/** The sentences that a model is wanted of: axioms, or premises and a negated conclusion. */
-function wantedBy(id: string): readonly Formula[] {
-  const set = infiniteOnly.find((entry) => entry.id === id);
-  if (set !== undefined) return readSentences(set.axioms);
-  const entry = [...claims, ...questions].find((one) => one.id === id)!;
-  const [conclusion, ...premises] = readSentences([entry.conclusion, ...entry.premises]);
-  return [...premises, not(conclusion!)];
-}
-
-/** Whether what is certified passes for true when ∀ ranges over a few ground terms, ∃ over what the certificate names. */
-function passes(
-  record: TermsRecord,
-  sentence: FormulaRecord,
-  certificate: CertificateRecord,
-  count = 4,
-): boolean {
-  const every = groundTerms(record, count);
-  return new GroundTerms(record).isTrue(sentence, { every, some: namedBy(certificate, every) });
-}
-
 // infinite-only.json, claims.json and questions.json, each entry with its source: empty set and adjunction (Bernays 1937;
 // Tarski, Mostowski and Robinson 1953, p. 34), pairing, singletons without pairs.
 describe("axioms of which no carrier has a model", () => {
   const ids = ["io-47", "io-49", "io-53", "cl-235", "cl-273", "q-h281"];
-  const forms = ["itself", "converse", "complement", "both"] as const;
-  it.each(ids.flatMap((id) => forms.map((form) => [id, form] as const)))("%s, %s", (id, form) => {
-    const given = theoryOf(wantedBy(id));
-    const turned = form === "converse" || form === "both" ? converseTheory(given) : given;
-    const theory = form === "complement" || form === "both" ? complementTheory(turned) : turned;
+  it.each(ids.flatMap((id) => FORMS.map((form) => [id, form] as const)))("%s, %s", (id, form) => {
+    const sentences = dualOf(wantedBy(id), form);
     const work = new Meter();
-    const found = findFreeTerms(sentencesOf(theory), [R], work)!;
+    const found = findFreeTerms(sentences, [R], work)!;
     expect(found).not.toBeNull();
     expect(work.steps).toBeLessThan(1_000);
     expect(readTerms(JSON.parse(JSON.stringify(found.record)))).toEqual(found.record);
-    sentencesOf(theory).forEach((formula, place) => {
+    sentences.forEach((formula, place) => {
       const sentence = recordFormula(formula);
       const certificate = readCertificate(found.certificates[place], found.record)!;
       expect(checkCertificate(found.record, sentence, certificate, meter())).toBe(true);
       expect(passes(found.record, sentence, certificate)).toBe(true);
       expect(isCertified(found.record, ["not", sentence], 50)).toBe(false);
     });
-    expect(findFreeTerms(sentencesOf(theory), [R], new Meter())).toEqual(found);
+    expect(findFreeTerms(sentences, [R], new Meter())).toEqual(found);
   });
 
   it("interprets relations that the sentences do not speak of", () => {
@@ -220,117 +194,78 @@ describe("what is known of these structures", () => {
   });
 });
 
-/** A formula without quantifiers about x and y. */
-const matrices: fc.Arbitrary<TermFormulaRecord> = (() => {
-  const variable = fc.constantFrom("x", "y");
-  const leaf = fc.oneof(
-    fc.tuple(variable, variable).map(([a, b]): TermFormulaRecord => ["is", "R", a, b]),
-    variable.map((a): TermFormulaRecord => ["is", "P", a]),
-    fc.constant<TermFormulaRecord>(["=", "x", "y"]),
-  );
-  const two = fc
-    .tuple(fc.constantFrom("and", "or", "implies", "iff"), leaf, leaf)
-    .map(([kind, a, b]) => [kind, a, b] as TermFormulaRecord);
-  return fc.oneof(
-    leaf,
-    two,
-    two.map((one): TermFormulaRecord => ["not", one]),
-    fc.tuple(two, leaf).map(([a, b]): TermFormulaRecord => ["or", a, b]),
-  );
-})();
-
 describe(`random structures (seed ${seed})`, () => {
-  it("are read as they are written", () => {
-    fc.assert(
-      fc.property(termsRecords(true), (record) => {
-        expect(readTerms(record)).toBe(record);
-      }),
-      options(300),
-    );
-  });
-
-  it("unfolding at ground terms agrees with their definition", () => {
-    let yes = 0;
-    fc.assert(
-      fc.property(termsRecords(true), matrices, fc.nat(7), fc.nat(7), (record, matrix, i, j) => {
-        const terms = groundTerms(record, 8);
-        const [x, y] = [terms[i]!, terms[j]!];
-        const truth = new GroundTerms(record).isTrue(matrix, { every: [], some: [] }, { x, y });
-        const sentence: FormulaRecord = ["exists", "x", ["exists", "y", matrix]];
-        expect(
-          checkCertificate(
-            record,
-            sentence,
-            [
-              ["instances", x],
-              ["instances", y],
-            ],
-            meter(),
-          ),
-        ).toBe(truth);
-        if (truth) yes += 1;
-      }),
-      options(2_000),
-    );
-    expect(yes).toBeGreaterThan(400);
-    expect(yes).toBeLessThan(1_600);
-  });
-
-  it("unfolding with parameters agrees with all ground terms", () => {
-    let [yes, circles] = [0, 0];
-    fc.assert(
-      fc.property(termsRecords(true), matrices, fc.boolean(), (record, matrix, isClosed) => {
-        const sentence: FormulaRecord = isClosed
-          ? ["forall", "x", ["forall", "y", matrix]]
-          : ["forall", "x", ["exists", "y", matrix]];
-        const certificate: CertificateRecord = isClosed
-          ? []
-          : [["instances", ["f", ...Array(record.constructors.f!.length).fill("1")]]];
-        if (!checkCertificate(record, sentence, certificate, meter())) return;
-        yes += 1;
-        expect(passes(record, sentence, certificate, 8)).toBe(true);
-        if (JSON.stringify(matrix).includes('"R","x","x"')) circles += 1;
-      }),
-      options(3_000),
-    );
-    expect(yes).toBeGreaterThan(100);
-    expect(circles).toBeGreaterThan(10);
-  });
-
-  it("no sentence is certified with its negation, and certified ones are true as far as can be seen", () => {
-    let [yes, inductions] = [0, 0];
-    fc.assert(
-      fc.property(termsRecords(true), sentences([R, P], 3), (record, formula) => {
-        const sentence = recordFormula(formula);
-        const found = [sentence, ["not", sentence] as FormulaRecord].filter((one) => {
-          const certificate = certificateOf(record, one, 20);
-          if (certificate === null) return false;
-          if (usesInduction(certificate)) inductions += 1;
-          else expect(passes(record, one, certificate, 3)).toBe(true);
-          return true;
-        });
-        expect(found.length).toBeLessThan(2);
-        yes += found.length;
-      }),
-      options(400),
-    );
-    expect(yes).toBeGreaterThan(300);
-    expect(inductions).toBeGreaterThan(3);
-  });
+  it("are read as they are written", () => readsWhatIsWritten(100));
+  it("unfolding at ground terms agrees with their definition", () => agreesAtGroundTerms(600));
+  it("unfolding with parameters agrees with all ground terms", () => agreesWithParameters(1_200));
+  it("no sentence is certified with its negation, and certified ones are true as far as can be seen", () =>
+    certifiesOneSide(80));
 });
 
-function certificateOf(
-  record: TermsRecord,
-  sentence: FormulaRecord,
-  steps: number,
-): CertificateRecord | null {
-  try {
-    return certify(record, [sentence], new Meter(steps))?.[0] ?? null;
-  } catch (problem) {
-    if (problem instanceof WorkEnded) return null;
-    throw problem;
-  }
-}
+describe("relations that go down", () => {
+  const one = (others: readonly string[], cases: Readonly<Record<string, TermFormulaRecord>>) => ({
+    on: others.length,
+    others,
+    cases: { c: ["false"], ...cases } as const,
+  });
+  const isRefuted = (record: TermsRecord, ...literals: readonly TermFormulaRecord[]) => {
+    expect(readTerms(record)).toBe(record);
+    const body: TermFormulaRecord = literals.length === 1 ? literals[0]! : ["and", ...literals];
+    const sentence: FormulaRecord = ["forall", "x", ["forall", "y", ["not", body]]];
+    return checkCertificate(record, sentence, [], meter());
+  };
+
+  it("go down at some places and not at others", () => {
+    const record: TermsRecord = {
+      constructors: { c: [], f: ["x"] },
+      relations: { G: one(["w1", "w2"], { f: ["=", "w1", "x"] }) },
+    };
+    expect(isRefuted(record, ["is", "G", "x", "y", "x"])).toBe(true);
+    expect(isRefuted(record, ["is", "G", "x", "y", "y"])).toBe(false);
+  });
+
+  it("go down where they hold, where they fail, or neither", () => {
+    const down: TermFormulaRecord = ["or", ["=", "w", "x"], ["is", "R", "w", "x"]];
+    const up: TermFormulaRecord = ["and", ["not", ["=", "w", "x"]], ["is", "R", "w", "x"]];
+    const holds: TermsRecord = {
+      constructors: { c: [], f: ["x"] },
+      relations: { R: one(["w"], { f: down }) },
+    };
+    const both: TermsRecord = { ...holds, relations: { R: one(["w"], { c: ["true"], f: up }) } };
+    const loop: TermFormulaRecord = ["is", "R", "x", "x"];
+    expect(isRefuted(holds, loop)).toBe(true);
+    expect(isRefuted(holds, ["not", loop])).toBe(false);
+    expect(isRefuted(both, ["not", loop])).toBe(true);
+    expect(isRefuted(both, loop)).toBe(false);
+    // At c, everything fails to be related.
+    const neither: TermsRecord = { ...holds, relations: { R: one(["w"], { f: up }) } };
+    expect(isRefuted(neither, ["not", loop])).toBe(false);
+  });
+
+  it("circles have one direction", () => {
+    const path = [["is", "R", "x", "y"]] as const;
+    expect(isRefuted(adjunction, ...path, ["is", "R", "y", "x"])).toBe(true);
+    expect(isRefuted(adjunction, ...path, ["=", "x", "y"])).toBe(true);
+    expect(isRefuted(adjunction, ...path, ["not", ["is", "R", "y", "x"]])).toBe(false);
+    expect(isRefuted(adjunction, ...path)).toBe(false);
+  });
+
+  it("that one goes down never rests on another that does not", () => {
+    // If R went down, Q would, by R(x, x); but R holds of all and any g(x). Both hold of f(g(g(c))) and itself.
+    const [r, q]: TermFormulaRecord[] = [
+      ["is", "R", "x", "x"],
+      ["is", "Q", "x", "x"],
+    ];
+    const record: TermsRecord = {
+      constructors: { c: [], f: ["x"], g: ["x"] },
+      relations: { R: one(["w"], { f: q!, g: ["true"] }), Q: one(["w"], { f: r!, g: r! }) },
+    };
+    const term: Ground = ["f", ["g", ["g", ["c"]]]];
+    const both: TermFormulaRecord = ["and", r!, q!];
+    expect(new GroundTerms(record).isTrue(both, { every: [], some: [] }, { x: term })).toBe(true);
+    expect(isRefuted(record, r!, q!)).toBe(false);
+  });
+});
 
 describe("hostile records and certificates", () => {
   const samples = ["io-47", "io-53", "q-h281"].flatMap((id) => {

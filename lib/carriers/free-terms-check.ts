@@ -188,8 +188,10 @@ export class FreeTerms {
     if (formula[0] === "false") return true;
     if (formula[0] === "true") return this.#isCircular(known);
     const atom = this.#nextAtom(formula);
-    const suppose = (literal: LiteralRecord) =>
-      this.#isRefuted(this.#simplify(formula, addTo(known, literal)), addTo(known, literal));
+    const suppose = (literal: LiteralRecord) => {
+      const more = addTo(known, literal);
+      return this.#isRefuted(this.#simplify(formula, more), more);
+    };
     if (!suppose(["not", atom])) return false;
     if (atom[0] === "is") return suppose(atom);
     const [, parameter, term] = atom;
@@ -344,7 +346,7 @@ function addTo(known: Known, literal: LiteralRecord): Known {
 
 /** The literal, or ⊤ or ⊥ where its atom is known. */
 function settled(literal: LiteralRecord, known: Known): TermFormulaRecord {
-  const taken = known.get(JSON.stringify(atomOf(literal)));
+  const taken = known.size === 0 ? undefined : known.get(JSON.stringify(atomOf(literal)));
   if (taken === undefined) return literal;
   return [(taken[0] === "not") === (literal[0] === "not") ? "true" : "false"];
 }

@@ -116,11 +116,10 @@ export function groundTerms({ constructors }: TermsRecord, count: number): reado
   return [...found.values()];
 }
 
-/** Whether ∃ over what a certificate may name, when ∀ ranges over `every`, is no longer said by the certificate alone. */
-export function usesInduction(certificate: CertificateRecord): boolean {
-  return certificate.some(
-    (step) => step[0] === "induction" || (step[0] === "cases" && Object.values(step[2]).some(usesInduction)),
-  );
+/** Whether a certificate may name elements that are only said to exist, by a hypothesis of an induction. */
+export function takesWitnessesFromHypotheses(certificate: CertificateRecord): boolean {
+  const text = JSON.stringify(certificate);
+  return text.includes('["induction"') && text.includes('["instances"');
 }
 
 /** The values of the terms of a certificate when its parameters are among the given terms, and those terms. */
@@ -184,4 +183,15 @@ export function isSentence(value: unknown, scope: readonly string[] = []): value
     default:
       return false;
   }
+}
+
+/** Whether what is certified passes for true when ∀ ranges over a few ground terms, ∃ over what the certificate names. */
+export function passes(
+  record: TermsRecord,
+  sentence: FormulaRecord,
+  certificate: CertificateRecord,
+  count = 4,
+): boolean {
+  const every = groundTerms(record, count);
+  return new GroundTerms(record).isTrue(sentence, { every, some: namedBy(certificate, every) });
 }

@@ -11,8 +11,8 @@ import { CertificateSearch } from "./certificates.ts";
 import { Sample } from "./sample.ts";
 
 /** Steps that the whole search may take, and the search for certificates in one structure. */
-const MOST_STEPS = 2_000;
-const STEPS_FOR_ONE = 400;
+const MOST_STEPS = 1_000;
+const STEPS_FOR_ONE = 300;
 /** Structures that are looked at. */
 const MOST_CANDIDATES = 200;
 /** Symbols that the terms of a certificate may have together, cases counted as some. */
