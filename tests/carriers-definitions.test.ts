@@ -430,8 +430,10 @@ describe("a found table", () => {
     "rooted tree with 2 children where Rxy iff parent(y) = x",
   ])("of %s gets that definition", (text) => {
     const definition = read(text, emptyScope);
-    const again = definitionOf(buildStructure(definition))!;
+    const { carrier, tables } = buildStructure(definition);
+    const again = definitionOf({ carrier, tables })!;
     expect(printStructureDefinition(again, "unicode")).toBe(text);
+    expect(definitionOf(buildStructure(definition))).toBe(definition);
   });
 });
 

@@ -14,6 +14,7 @@ import type { Structure, Table } from "./structure.ts";
 import { vocabularyOf } from "./vocabulary/of.ts";
 
 const built = new WeakMap<StructureDefinition, Structure>();
+const written = new WeakMap<Structure, StructureDefinition>();
 
 /**
  * Builds a structure from what the user wrote, once for each definition. Points, lengths of tuples, atoms and sizes of tables have been checked where
@@ -30,7 +31,13 @@ export function buildStructure(definition: StructureDefinition): Structure {
   }
   const structure = { carrier, tables };
   built.set(definition, structure);
+  written.set(structure, definition);
   return structure;
+}
+
+/** The definition that a structure was built from; undefined for one that was found. */
+export function writtenDefinition(structure: Structure): StructureDefinition | undefined {
+  return written.get(structure);
 }
 
 function listedTable(carrier: Carrier, { relation, tuples }: ListedRelation): Uint8Array {

@@ -11,6 +11,7 @@ import type {
   PointsDescription,
   StructureDefinition,
 } from "../logic/structure-definition.ts";
+import { writtenDefinition } from "./defined.ts";
 import { fitCarrier } from "./fit.ts";
 import { kindExamplesOf } from "./kind-examples.ts";
 import { shortestFormula } from "./short-formulas.ts";
@@ -21,11 +22,14 @@ import { vocabularyOf } from "./vocabulary/of.ts";
 const MOST_VALUES = 2_000_000;
 
 /**
- * Defines a structure by its tables: tuples on points, formulas on other carriers, relations by name. The bounds of the
- * carrier are those that the formulas need, so that the definition is what its cell text reads as.
+ * Defines a structure: one that was built from a definition by that, and others by their tables, with tuples on points,
+ * formulas on other carriers, relations by name. The bounds of the carrier are those that the formulas need, so that the
+ * definition is what its cell text reads as.
  * @returns null when a relation would take too long to define
  */
 export function definitionOf(structure: Structure): StructureDefinition | null {
+  const written = writtenDefinition(structure);
+  if (written !== undefined) return written;
   const tables = [...structure.tables.keys()].sort().map((name) => structure.tables.get(name)!);
   const { description } = structure.carrier;
   if (description.kind === "points")
