@@ -22,7 +22,7 @@ import { showDerivation, showDerivations } from "./derivations.ts";
 import { numberedStructures } from "./galleries.ts";
 import { reasonBlocks } from "./reasons.ts";
 import { drawStrength } from "./strength.ts";
-import { domainOf, structureBlocks } from "./structures.ts";
+import { definitionBlocks, domainOf, structureBlocks } from "./structures.ts";
 import {
   axiomsAsked,
   budgetOf,
@@ -137,16 +137,20 @@ function detailsOf(statement: Statement, answer: Answer): readonly Block[] {
   }
   function claimBlocks(claim: ClaimAnswer): readonly Block[] {
     if (claim.axioms !== null) return axiomsBlocks(claim, claim.axioms, statement);
-    const kind = claimOf(statement)?.kind;
+    const asked = claimOf(statement);
     // The reader knows the structure: it has been defined, and often several claims about it follow each other.
-    if ((kind === "true-in" || kind === "false-in") && claim.structures.length > 0) {
-      const blocks = claim.structures.flatMap(({ role, structure }) => structureBlocks(role, structure));
-      return [{ kind: "fold", title: "The structure", blocks }];
-    }
+    if ((asked?.kind === "true-in" || asked?.kind === "false-in") && claim.structures.length > 0)
+      return [
+        {
+          kind: "fold",
+          title: "The structure",
+          blocks: definitionBlocks("structure", asked.structure.structure),
+        },
+      ];
     return [
       ...showDerivations(claim.derivations),
-      ...noFiniteBlocks(claim),
       ...foldRest(claim.structures.map(({ role, structure }) => structureBlocks(role, structure))),
+      ...noFiniteBlocks(claim),
     ];
   }
 }

@@ -1,5 +1,4 @@
 /** What is shown for statements that ask nothing: declarations, definitions and descriptions. */
-import { buildStructure } from "../../lib/carriers/defined.ts";
 import type { Findings } from "../../lib/inquiry/examine.ts";
 import type { Definition, DescribeSubject, Statement } from "../../lib/language/statements.ts";
 import { depthOf, type Formula, relationsOf, usesIdentity, variablesOf } from "../../lib/logic/formula.ts";
@@ -9,7 +8,7 @@ import type { Shown } from "./answers.ts";
 import { type Block, code, formulaOf, type Inline, line } from "./blocks.ts";
 import { renderBundle } from "./bundle.ts";
 import { findingBlocks } from "./findings.ts";
-import { domainOfDefinition, structureBlocks } from "./structures.ts";
+import { definitionBlocks, domainOfDefinition } from "./structures.ts";
 import { counted, enumerate } from "./text.ts";
 import {
   FOLDED_AXIOMS,
@@ -95,7 +94,7 @@ export function describeSubject(
         summary,
         blocks: [
           line(code(text), summary.slice(text.length)),
-          ...structureBlocks("in cell text", buildStructure(structure)),
+          ...definitionBlocks("in cell text", structure),
           factTable([["relations", relations || "none"]]),
         ],
       };

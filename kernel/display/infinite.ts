@@ -18,17 +18,24 @@ const SHORT_FORMULA = 2;
 /** Tables of kinds with more rows are closed at first. */
 const OPEN_ROWS = 12;
 
-/** @param role what it is an example of, as a noun phrase: `countermodel` */
-export function definedBlocks(role: string, structure: Structure): readonly Block[] {
-  const { carrier } = structure;
-  const definition = definitionFor(structure);
-  const title = `${role}${carrier.size === null && !/infinite/.test(role) ? ", infinite" : ""}: ${carrierWords(carrier.description)}`;
+/**
+ * @param role what it is an example of, as a noun phrase: `countermodel`
+ * @param own the definition that the user gave; the reader knows then what it lives on
+ */
+export function definedBlocks(
+  role: string,
+  structure: Structure,
+  own: StructureDefinition | null = null,
+): readonly Block[] {
+  const definition = own ?? definitionFor(structure);
+  const title = own === null ? titleOf(role, structure) : role;
   const blocks: Block[] = [];
-  if (definition === null) blocks.push(line(title), line("Its relations have no short definition."));
+  if (definition === null) blocks.push(line(title), line("There is no short definition of its relations."));
   else {
     const text = printStructureDefinition(definition, "unicode");
     const cell = cellOf(text, printStructureDefinition(definition, "latex"));
-    if (title.length + text.length <= SHORT_LINE) blocks.push(line(`${title}; `, cell));
+    if (own !== null) blocks.push(line(`${title}: `, cell));
+    else if (title.length + text.length <= SHORT_LINE) blocks.push(line(`${title}; `, cell));
     else blocks.push(line(title), line(cell));
   }
   const table = definition !== null && isEasy(definition) ? null : kindTable(structure);
@@ -40,6 +47,12 @@ export function definedBlocks(role: string, structure: Structure): readonly Bloc
   if (table !== null && table.rows.length > OPEN_ROWS)
     blocks.push({ kind: "fold", title: `${table.rows.length} kinds of pairs`, blocks: [table] });
   return [{ kind: "group", blocks }];
+}
+
+/** `countermodel, infinite: the rational line`. */
+function titleOf(role: string, { carrier }: Structure): string {
+  const isSaid = carrier.size !== null || /infinite/.test(role);
+  return `${role}${isSaid ? "" : ", infinite"}: ${carrierWords(carrier.description)}`;
 }
 
 function isEasy({ relations }: StructureDefinition): boolean {

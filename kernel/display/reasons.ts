@@ -109,11 +109,18 @@ function obligationsFold(obligations: readonly ShownObligation[], axioms: readon
   };
   return {
     kind: "fold",
-    title: `What this takes from the axioms: ${counted(obligations.length, "sentence")}, ${
-      derivations.length === 0 ? "all of them axioms" : `${derivations.length} of them derived`
-    }`,
+    title: `What this takes from the axioms: ${counted(obligations.length, "sentence")}, ${derivedCount(
+      derivations.length,
+      obligations.length,
+    )}`,
     blocks: [table, ...showDerivations(derivations)],
   };
+}
+
+function derivedCount(derived: number, all: number): string {
+  if (derived === 0) return all === 1 ? "an axiom" : "all of them axioms";
+  if (derived < all) return `${derived} of them derived`;
+  return all === 1 ? "derived" : "all of them derived";
 }
 
 function sourceText(obligation: ShownObligation, axioms: readonly Axiom[]): string {

@@ -4,6 +4,7 @@
  */
 import { type AnyStructure, isOfTerms, sizeOf } from "../../lib/carriers/any-structure.ts";
 import { buildCarrier } from "../../lib/carriers/build.ts";
+import { buildStructure } from "../../lib/carriers/defined.ts";
 import type { StructureDefinition } from "../../lib/logic/structure-definition.ts";
 import type { Block } from "./blocks.ts";
 import { carrierWords, definitionText } from "./definition-text.ts";
@@ -44,6 +45,17 @@ export function structureBlocks(role: string, structure: AnyStructure): readonly
   const numbered = onPoints(structure);
   if (numbered === null) return definedBlocks(role, structure);
   return [...definedBlocks(role, structure), ...pointsBlocks("the same on points", numbered)];
+}
+
+/** As {@link structureBlocks}, for a structure as the user has defined it. */
+export function definitionBlocks(role: string, definition: StructureDefinition): readonly Block[] {
+  const structure = buildStructure(definition);
+  if (isOnPoints(structure)) return pointsBlocks(role, structure);
+  const numbered = onPoints(structure);
+  return [
+    ...definedBlocks(role, structure, definition),
+    ...(numbered === null ? [] : pointsBlocks("the same on points", numbered)),
+  ];
 }
 
 /**

@@ -116,10 +116,12 @@ function depthReason(
   budget: number,
 ): string {
   const count =
-    configurations > MOST_TOLD ? "more than 10^15 configurations" : counted(configurations, "configuration");
+    configurations > MOST_TOLD
+      ? "more than 10^15 configurations"
+      : `up to ${counted(configurations, "configuration")}`;
   const depth = depthOf(claim.sentence.formula);
   const end = ended === "budget" || ended === "interrupted" ? `; ${endText(ended, budget, null)}` : "";
-  return `a sentence of depth ${depth} is too deep for ${domainOfDefinition(claim.structure.structure)}: to list all cases would take up to ${count}${end}`;
+  return `a sentence of depth ${depth} is too deep for ${domainOfDefinition(claim.structure.structure)}: to list all cases would take ${count}${end}`;
 }
 
 /** What the reason that there is no finite model rests on: `by irr and trans`. */
