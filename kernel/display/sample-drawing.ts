@@ -264,6 +264,7 @@ function planLayers(
   const outward = labels.flatMap((_, place) => (others.some(({ from }) => from[place]) ? [place] : []));
   const inward = labels.flatMap((_, place) => (others.some(({ to }) => to[place]) ? [place] : []));
   if (arcs.length === 0 || arcs.length > 2 * labels.length) return null;
+  if (outward.length + inward.length > labels.length + 1) return null;
   const { plan } = layers(labels, arcs, outward, inward, isRow, true);
   const dotted = [...(inward.length > 0 ? ["from"] : []), ...(outward.length > 0 ? ["to"] : [])];
   return {

@@ -89,7 +89,10 @@ function sampleDenseLine(carrier: DenseLine, wanted: number): Sample {
 }
 
 function sampleIntegers(carrier: IntegerLine, wanted: number): Sample {
-  const count = Math.min(MOST_ELEMENTS, Math.max(wanted + 1 - (wanted % 2), carrier.description.offset + 2));
+  const count = Math.min(
+    MOST_ELEMENTS,
+    Math.max(wanted > 3 ? wanted + 1 - (wanted % 2) : wanted, carrier.description.offset + 2),
+  );
   const first = -Math.floor((count - 1) / 2);
   const positions = Array.from({ length: count }, (_, index) => index);
   const names = positions.map((position) => String(position + first).replace("-", "−"));

@@ -106,7 +106,7 @@ export const styles: readonly Style[] = [
     fits: (relation) => isFunctional(relation) || isFunctional(converseOf(relation)),
     plan(relation, labels) {
       const map = isFunctional(relation) ? relation : converseOf(relation);
-      const extents = labels.map(extentOf);
+      const extents = labels.map(roundExtentOf);
       const next = map.map((row) => (row.includes(true) ? row.indexOf(true) : null));
       const places = layOutFunctional(extents, next);
       const arcs = linesBetween([relation], places, extents, [false]);
@@ -135,7 +135,7 @@ export function planCircle(
   labels: readonly PointLabel[],
   bare: readonly boolean[],
 ): Plan {
-  const extents = labels.map(extentOf);
+  const extents = labels.map(roundExtentOf);
   const places = layOutCircle(extents, relations.length, Math.max(...relations.map(mostLines)));
   const arcs = linesBetween(relations, places, extents, bare);
   places.forEach((place, i) => {
@@ -246,4 +246,10 @@ export function extentOf(label: PointLabel): Extent {
   return width <= 2
     ? { width: 26, height: 26, outline: "round" }
     : { width: 14 + 7.5 * width, height: 26, outline: "box" };
+}
+
+/** Lines that come from anywhere end at round outlines. */
+function roundExtentOf(label: PointLabel): Extent {
+  const extent = extentOf(label);
+  return extent.outline === "box" ? { ...extent, width: 1.25 * extent.width, outline: "round" } : extent;
 }

@@ -75,7 +75,7 @@ function blockToHtml(block: Block): string {
       const caption =
         block.caption === ""
           ? ""
-          : `<div style="max-width:32em"><small>${escapeHtml(block.caption)}</small></div>`;
+          : `<div style="max-width:26em"><small>${escapeHtml(block.caption)}</small></div>`;
       return `<div style="margin:4px 0">${pictureToHtml(block)}${caption}</div>`;
     }
     case "gallery": {
