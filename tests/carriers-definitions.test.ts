@@ -4,6 +4,7 @@
  * true there.
  */
 import fc from "fast-check";
+import temml from "temml";
 import { describe, expect, test } from "vitest";
 import { buildCarrier } from "../lib/carriers/build.ts";
 import { buildStructure, definedTable } from "../lib/carriers/defined.ts";
@@ -198,6 +199,16 @@ describe.each(notations)("in %s notation", (notation) => {
     for (const carrier of CARRIERS)
       expect(read(printCarrier(carrier, notation)).carrier).toEqual(fitCarrier(carrier, []));
   });
+});
+
+test("a typesetter of LaTeX accepts what is printed in it", () => {
+  fc.assert(
+    fc.property(definitions, (definition) => {
+      const text = printStructureDefinition(definition, "latex", scope);
+      expect(() => temml.renderToString(text, { throwOnError: true })).not.toThrow();
+    }),
+    { seed: SEED, numRuns: 40 },
+  );
 });
 
 test("samples of each notation", () => {
@@ -410,6 +421,14 @@ describe("a found table", () => {
     }
   });
 
+  test("has no definition where it would be too long to read", () => {
+    const carrier = buildCarrier({ kind: "dense-tree" });
+    const relation = { name: "R", places: 4, infix: false };
+    // Squares modulo a prime: no pattern that a few conjunctions could say.
+    const holds = Uint8Array.from({ length: countKinds(carrier, 4) }, (_, kind) => ((kind * kind) % 997) & 1);
+    expect(definitionOf({ carrier, tables: new Map([["R", { relation, holds }]]) })).toBeNull();
+  });
+
   test.each([
     "dense-line where Rxy iff x < y",
     "dense-line where Rxy iff x ≠ y",
@@ -437,7 +456,7 @@ describe("a found table", () => {
   });
 });
 
-test("a short formula has the values asked for, and there is none where literals cannot tell cases apart", () => {
+test("a short formula has the values asked for, where literals tell cases with different values apart", () => {
   const cases = 12;
   const all = (1n << BigInt(cases)) - 1n;
   const atom = (index: number): CarrierFormula => ({
@@ -466,11 +485,12 @@ test("a short formula has the values asked for, and there is none where literals
           if (known !== undefined && known !== isOn(index)) isTold = false;
           rows.set(row(index), isOn(index));
         }
-        const formula = shortestFormula(literals, wanted, cases);
-        if (!isTold) expect(formula).toBeNull();
-        else
+        if (!isTold) expect(() => shortestFormula(literals, wanted, cases)).toThrow("tell cases apart");
+        else {
+          const formula = shortestFormula(literals, wanted, cases);
           for (let index = 0; index < cases; index += 1)
             expect(isTrueOf(formula!, at(index))).toBe(isOn(index));
+        }
       },
     ),
     { seed: SEED, numRuns: 300 },

@@ -314,6 +314,10 @@ describe("whether a cell goes on", () => {
     ["define Order :=", "incomplete"],
     ["compare Order,", "incomplete"],
     ["claim Order ⊨ ∀x Rxx ∧", "incomplete"],
+    ["define Q := dense-line where", "incomplete"],
+    ["define Q := dense-line where Rxy iff", "incomplete"],
+    ["define Q := dense-line where Rxy iff x < y and", "incomplete"],
+    ["define Q := dense-line where Rxy iff x < y", "complete"],
     ["claim Order ⊨ ∀x Rxx)", "invalid"],
     ["define Order := { irr: (∀x }", "invalid"],
   ])("%j is %s", (text, status) => {

@@ -19,13 +19,13 @@ import { type Structure, type Table, tuplesOf } from "./structure.ts";
 import { vocabularyOf } from "./vocabulary/of.ts";
 
 /** Truth values of atoms at kinds that are worked out for one relation; with more there is no definition. */
-const MOST_VALUES = 2_000_000;
+const MOST_VALUES = 400_000;
 
 /**
  * Defines a structure: one that was built from a definition by that, and others by their tables, with tuples on points,
  * formulas on other carriers, relations by name. The bounds of the carrier are those that the formulas need, so that the
  * definition is what its cell text reads as.
- * @returns null when a relation would take too long to define
+ * @returns null when a relation would take too long to define, or its definition be too long to read
  */
 export function definitionOf(structure: Structure): StructureDefinition | null {
   const written = writtenDefinition(structure);
@@ -50,7 +50,7 @@ export function definitionOf(structure: Structure): StructureDefinition | null {
 
 /**
  * A short formula that is true at exactly the kinds of a table; which one depends on the table and the carrier alone.
- * @returns null when that would take too long
+ * @returns null when that would take too long, or the formula be too long to read
  */
 export function defineRelation({ carrier }: Structure, { relation, holds }: Table): DefinedRelation | null {
   const variables = variablesFor(relation.places);
@@ -75,10 +75,7 @@ export function defineRelation({ carrier }: Structure, { relation, holds }: Tabl
   });
   const table = bitsOf([...holds], (value) => value === 1);
   const formula = shortestFormula(literals, table, examples.length);
-  if (formula === null)
-    throw new Error(
-      `the atoms on ${carrier.description.kind} do not tell the kinds of ${relation.name} apart`,
-    );
+  if (formula === null) return null;
   examples.forEach((example, kind) => {
     const isTrue = isTrueOf(formula, (atom) => vocabulary.holds(atom, example, placeOf));
     if (isTrue !== (holds[kind] === 1)) throw new Error(`a wrong definition of ${relation.name}`);

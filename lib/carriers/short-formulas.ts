@@ -14,9 +14,12 @@ export interface Literal {
 /** Literals up to which conjunctions of three are looked at, and formulas of three literals. */
 const FEW_LITERALS = 60;
 /** Literals up to which conjunctions of two are. */
-const MANY_LITERALS = 600;
-/** Cases up to which formulas of three literals with both signs are looked at. */
-const FEW_CASES = 3_000;
+const MANY_LITERALS = 300;
+/** Cases up to which conjunctions are looked at before they are needed, and formulas of three literals at all. */
+const FEW_CASES = 1_000;
+/** Conjunctions that are chosen from, the cheapest, and that a formula has at most. */
+const MOST_CHOICES = 5_000;
+const MOST_CUBES = 100;
 
 /**
  * A formula with the given truth values, the same for the same arguments. Formulas of at most three literals are tried
@@ -26,7 +29,8 @@ const FEW_CASES = 3_000;
  * @param literals with each its negation
  * @param values bit i is set where the formula is to be true of the i-th case
  * @param cases how many there are
- * @returns null when the literals do not tell cases apart that have different values
+ * @returns null when it would have more than {@link MOST_CUBES} conjunctions
+ * @throws Error when the literals do not tell cases apart that have different values
  */
 export function shortestFormula(
   literals: readonly Literal[],
@@ -40,15 +44,15 @@ export function shortestFormula(
   const few = shortOf(distinct, values, all, cases);
   if (few !== null) return few.formula;
   const negated = new Map(distinct.map((literal) => [literal.values, literal]));
-  const disjunction = cover(distinct, values, all);
-  const other = cover(distinct, all ^ values, all);
-  if (disjunction === null || other === null) return null;
-  const joined = formulaOf(disjunction, false);
-  const conjunction = formulaOf(
-    other.map((cube) => cube.map(({ values: own }) => negated.get(all ^ own)!)),
-    true,
-  );
-  return conjunction.cost < joined.cost ? conjunction.formula : joined.formula;
+  const cubes = cover(distinct, values, all, cases);
+  const disjunction = cubes === null ? null : formulaOf(cubes, false);
+  const others = cover(distinct, all ^ values, all, cases);
+  if (others === null) return disjunction?.formula ?? null;
+  const turned = others.map((cube) => cube.map(({ values: own }) => negated.get(all ^ own)!));
+  const conjunction = formulaOf(turned, true);
+  return disjunction === null || conjunction.cost < disjunction.cost
+    ? conjunction.formula
+    : disjunction.formula;
 }
 
 interface Candidate {
@@ -162,9 +166,15 @@ function costOf(cube: Cube): number {
 /**
  * Cubes that together are true exactly at the given values: at each step the one that covers most cases not yet covered
  * for its cost; then those that the others make superfluous are left out.
+ * @returns null when there are too many
  */
-function cover(literals: readonly Literal[], values: bigint, all: bigint): readonly Cube[] | null {
-  let cubes = cubesWithin(literals, values, all);
+function cover(
+  literals: readonly Literal[],
+  values: bigint,
+  all: bigint,
+  cases: number,
+): readonly Cube[] | null {
+  let cubes = cases > FEW_CASES ? [] : cubesWithin(literals, values);
   const chosen: CubeValues[] = [];
   let left = values;
   while (left !== 0n) {
@@ -176,9 +186,9 @@ function cover(literals: readonly Literal[], values: bigint, all: bigint): reado
     }
     if (best === null) {
       const cube = cubeAround(literals, left & -left, values, all);
-      if (cube === null) return null;
       best = { cube, own: valuesOf(cube, all) };
     }
+    if (chosen.length === MOST_CUBES) return null;
     chosen.push(best);
     left &= ~best.own;
     cubes = cubes.filter(({ own }) => (own & left) !== 0n);
@@ -191,7 +201,7 @@ function cover(literals: readonly Literal[], values: bigint, all: bigint): reado
 }
 
 /** All cubes of few literals, none of which could be left out; of those with the same values the cheapest. */
-function cubesWithin(literals: readonly Literal[], values: bigint, all: bigint): readonly CubeValues[] {
+function cubesWithin(literals: readonly Literal[], values: bigint): readonly CubeValues[] {
   const best = new Map<bigint, CubeValues>();
   const isWithin = (own: bigint) => own !== 0n && (own & ~values) === 0n;
   const add = (own: bigint, cube: Cube) => {
@@ -200,7 +210,7 @@ function cubesWithin(literals: readonly Literal[], values: bigint, all: bigint):
   };
   for (const literal of literals) if (isWithin(literal.values)) add(literal.values, [literal]);
   if (literals.length > MANY_LITERALS) return [...best.values()];
-  const isThree = literals.length <= FEW_LITERALS && all < 1n << BigInt(FEW_CASES);
+  const isThree = literals.length <= FEW_LITERALS;
   const open = literals.filter((literal) => !isWithin(literal.values));
   open.forEach((a, index) => {
     for (let second = index + 1; second < open.length; second += 1) {
@@ -216,14 +226,15 @@ function cubesWithin(literals: readonly Literal[], values: bigint, all: bigint):
         }
     }
   });
-  return [...best.values()];
+  // Sorting is stable: of equally cheap ones those that were met first.
+  return [...best.values()].sort((a, b) => costOf(a.cube) - costOf(b.cube)).slice(0, MOST_CHOICES);
 }
 
 /**
  * A cube that is true of one case: literals true there, each the one that leaves out most of the cases where the whole is
  * to be false; then without those that are not needed.
  */
-function cubeAround(literals: readonly Literal[], one: bigint, values: bigint, all: bigint): Cube | null {
+function cubeAround(literals: readonly Literal[], one: bigint, values: bigint, all: bigint): Cube {
   const there = literals.filter((literal) => (literal.values & one) !== 0n);
   let chosen: Literal[] = [];
   let wrong = all & ~values;
@@ -234,7 +245,7 @@ function cubeAround(literals: readonly Literal[], one: bigint, values: bigint, a
       const worth = countBits(wrong & ~literal.values) / literal.cost;
       if (worth > most) [best, most] = [literal, worth];
     }
-    if (best === null) return null;
+    if (best === null) throw new Error("literals that do not tell cases apart");
     chosen.push(best);
     wrong &= best.values;
   }

@@ -464,6 +464,7 @@ export function isStatementWord(word: string): boolean {
 export function continuesLine(token: Token): boolean {
   switch (token.kind) {
     case "word":
+      return token.text === "where" || token.text === "iff";
     case "number":
     case "raw":
     case "end":
