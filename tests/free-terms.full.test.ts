@@ -18,10 +18,10 @@ import { dualOf, FORMS, infiniteIds, wantedBy } from "./support/wanted-models.ts
 
 describe(`random structures in numbers (seed ${seed})`, () => {
   it("are read as they are written", () => readsWhatIsWritten(2_000));
-  it("unfolding at ground terms agrees with their definition", () => agreesAtGroundTerms(10_000));
-  it("unfolding with parameters agrees with all ground terms", () => agreesWithParameters(20_000));
+  it("unfolding at ground terms agrees with their definition", () => agreesAtGroundTerms(6_000));
+  it("unfolding with parameters agrees with all ground terms", () => agreesWithParameters(10_000));
   it("no sentence is certified with its negation, and certified ones are true as far as can be seen", () =>
-    certifiesOneSide(1_500));
+    certifiesOneSide(800));
 });
 
 function relationsIn(sentences: Parameters<typeof findFreeTerms>[0]): readonly RelationSymbol[] {

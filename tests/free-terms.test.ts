@@ -152,7 +152,7 @@ describe("what is known of these structures", () => {
     expect(checkCertificate(adjunction, ["not", union], certificate, meter())).toBe(false);
   });
 
-  // The coding of finite sets by numbers of Ackermann (1937): m is a member of n if bit m of n is 1.
+  // The coding of finite sets by numbers of Ackermann (1937; from memory): m is a member of n if bit m of n is 1.
   it("adjunction agrees with Ackermann's coding, up to codes of the same set", () => {
     const codeOf = ([symbol, set, member]: Ground): bigint =>
       symbol === "c" ? 0n : codeOf(set!) | (1n << codeOf(member!));
@@ -167,7 +167,7 @@ describe("what is known of these structures", () => {
     }
   });
 
-  // The axioms of locally free algebras (Mal'cev 1961), for one constructor of two arguments and two constants.
+  // The axioms of locally free algebras (Mal'cev 1961; from memory), for one constructor of two arguments and two constants.
   it.each([
     "forall x y. exists z. F(x,y,z)",
     "forall x y u v. F(x,y,u) & F(x,y,v) -> u = v",

@@ -55,7 +55,7 @@ export class GroundTerms {
     return this.#is(formula, true, ranges, values);
   }
 
-  /** Whether the formula has the truth value; ranges are swapped under a negation, so that ∀ is always over `every`. */
+  /** Whether the formula has the truth value. What must be so of all ranges over `every`, what of some over `some`. */
   #is(formula: TermFormulaRecord, wanted: boolean, ranges: Ranges, values: Values): boolean {
     const part = (inner: TermFormulaRecord, truth = wanted) => this.#is(inner, truth, ranges, values);
     switch (formula[0]) {

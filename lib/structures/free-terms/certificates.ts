@@ -50,11 +50,9 @@ export class CertificateSearch {
     } else {
       const atOnce = this.#refuteAtOnce(claim, parameters);
       if (atOnce !== null) return atOnce;
-      for (const [size, terms] of this.#termsOf(parameters, left).entries()) {
-        for (const term of terms) {
-          const rest = this.#refute(this.#terms.instances(claim, [term])!, left - size);
-          if (rest !== null) return [["instances", term], ...rest];
-        }
+      for (const [size, term] of this.#termsOf(parameters, left)) {
+        const rest = this.#refute(this.#terms.instances(claim, [term])!, left - size);
+        if (rest !== null) return [["instances", term], ...rest];
       }
     }
     if (left < COST_OF_CASES) return null;
@@ -104,32 +102,35 @@ export class CertificateSearch {
     return Object.fromEntries(found);
   }
 
-  /** By their number of symbols, the terms with the parameters that have at most so many. */
-  #termsOf(parameters: readonly string[], most: number): readonly (readonly TermRecord[])[] {
+  /** The terms with the parameters that have at most so many symbols, the smallest first; each with that number. */
+  *#termsOf(parameters: readonly string[], most: number): Generator<readonly [number, TermRecord]> {
     const bySize: TermRecord[][] = [[]];
     for (let size = 1; size <= most; size += 1) {
       const terms: TermRecord[] = size === 1 ? [...parameters] : [];
       for (const [symbol, places] of this.#constructors)
-        for (const args of listsOf(bySize, places, size - 1)) terms.push([symbol, ...args]);
-      this.#growth.add(terms.length);
+        for (const args of this.#listsOf(bySize, places, size - 1)) terms.push([symbol, ...args]);
+      for (const term of terms) yield [size, term];
       bySize.push(terms);
     }
-    return bySize;
   }
-}
 
-/** The lists of so many terms that have so many symbols together. */
-function listsOf(
-  bySize: readonly (readonly TermRecord[])[],
-  count: number,
-  size: number,
-): readonly (readonly TermRecord[])[] {
-  if (count === 0) return size === 0 ? [[]] : [];
-  const lists: TermRecord[][] = [];
-  for (let first = 1; first <= size - (count - 1); first += 1)
-    for (const rest of listsOf(bySize, count - 1, size - first))
-      for (const term of bySize[first] ?? []) lists.push([term, ...rest]);
-  return lists;
+  /** The lists of so many terms that have so many symbols together. */
+  #listsOf(
+    bySize: readonly (readonly TermRecord[])[],
+    count: number,
+    size: number,
+  ): readonly (readonly TermRecord[])[] {
+    if (count === 0) return size === 0 ? [[]] : [];
+    const lists: TermRecord[][] = [];
+    for (let first = 1; first <= size - (count - 1); first += 1) {
+      for (const rest of this.#listsOf(bySize, count - 1, size - first)) {
+        // Counted before they are made: there may be very many.
+        this.#growth.add(bySize[first]!.length);
+        for (const term of bySize[first]!) lists.push([term, ...rest]);
+      }
+    }
+    return lists;
+  }
 }
 
 /** The first ∀ outside of other quantifiers. */
