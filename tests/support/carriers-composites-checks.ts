@@ -5,7 +5,19 @@ import { buildCarrier } from "../../lib/carriers/build.ts";
 import type { Carrier } from "../../lib/carriers/carrier.ts";
 import { vocabularyOf } from "../../lib/carriers/vocabulary/of.ts";
 import { allOf, anyOf, notOf } from "../../lib/logic/carrier-formulas.ts";
-import { depthOf, type Formula } from "../../lib/logic/formula.ts";
+import {
+  and,
+  atom,
+  depthOf,
+  equal,
+  exists,
+  type Formula,
+  forall,
+  implies,
+  not,
+  or,
+  type Variable,
+} from "../../lib/logic/formula.ts";
 import type {
   CarrierDescription,
   CarrierFormula,
@@ -89,7 +101,51 @@ export function definitionsOn(description: CarrierDescription): fc.Arbitrary<Car
 
 /** Sentences about R, at most so many quantifiers deep. */
 export function sentencesTo(depth: number): fc.Arbitrary<Formula> {
-  return sentences([R], depth).filter((said) => depthOf(said) <= depth);
+  return fc.oneof(
+    { weight: 1, arbitrary: sentences([R], depth).filter((said) => depthOf(said) <= depth) },
+    { weight: 3, arbitrary: guarded(depth, []) },
+  );
+}
+
+/**
+ * Formulas in which every quantifier speaks of elements on some side of others, as in what is usually said of orders;
+ * among formulas of any form such ones are rare.
+ */
+function guarded(depth: number, scope: readonly Variable[]): fc.Arbitrary<Formula> {
+  const variable = ["x", "y", "z", "w"][scope.length]!;
+  const inner = [...scope, variable];
+  const [newest, ...older] = scope.toReversed();
+  const literal = fc
+    .tuple(fc.constantFrom(...(older.length > 0 ? older : [newest ?? "x"])), fc.nat(5))
+    .map(([other, sort]) => {
+      const one =
+        sort < 2 ? equal(newest!, other) : sort < 4 ? atom(R, newest!, other) : atom(R, other, newest!);
+      return sort % 2 === 0 ? one : not(one);
+    });
+  if (depth === 0) return literal;
+  // On which side of each of the elements in scope, or on any.
+  const sides = fc.tuple(...scope.map(() => fc.nat(2))).map((chosen) =>
+    scope.flatMap((other, place) => {
+      if (chosen[place] === 0) return [];
+      return [chosen[place] === 1 ? atom(R, variable, other) : atom(R, other, variable)];
+    }),
+  );
+  const parts = fc.array(
+    fc.oneof(
+      { weight: scope.length === 0 ? 0 : 1, arbitrary: literal },
+      { weight: 4, arbitrary: guarded(depth - 1, inner) },
+    ),
+    { minLength: 1, maxLength: 2 },
+  );
+  return fc
+    .tuple(fc.boolean(), sides, parts, fc.boolean(), fc.boolean())
+    .map(([all, guards, bodies, either, negated]) => {
+      const body = either ? or(...bodies) : and(...bodies);
+      const quantified = all
+        ? forall(variable, guards.length === 0 ? body : implies(and(...guards), body))
+        : exists(variable, and(...guards, body));
+      return negated ? not(quantified) : quantified;
+    });
 }
 
 /**

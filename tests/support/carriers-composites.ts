@@ -143,6 +143,47 @@ export const composites: readonly CarrierDescription[] = [
   tuples(sum(rationals, points(1)), 2),
 ];
 
+const tournament: CarrierDescription = { kind: "generic", of: "tournament" };
+const tree: CarrierDescription = { kind: "dense-tree" };
+function algebra(zero: boolean, top: boolean): CarrierDescription {
+  return { kind: "boolean-algebra", zero, top };
+}
+function forest(rooted: boolean, offset: number, ends: number): CarrierDescription {
+  return { kind: "forest", branching: 2, rooted, offset, ends };
+}
+
+/** Carriers of all kinds, and made of all kinds. */
+export const ofAllKinds: readonly CarrierDescription[] = [
+  ...composites,
+  points(3),
+  rationals,
+  { kind: "dense-line", colours: 3 },
+  integers(2),
+  naturals(2, 2),
+  tournament,
+  { kind: "generic", of: "partial-order" },
+  tree,
+  algebra(true, true),
+  algebra(false, true),
+  algebra(false, false),
+  forest(true, 1, 1),
+  forest(false, 2, 0),
+  tuples(tournament, 1, 1),
+  tuples({ kind: "generic", of: "graph" }, 2, 0),
+  tuples(tree, 1, 1),
+  tuples(algebra(false, false), 1, 1),
+  tuples(forest(false, 1, 0), 1, 1),
+  sum(tree, naturals()),
+  sum(forest(true, 1, 1), integers(1)),
+  sum(algebra(true, true), rationals),
+  sum(tournament, { kind: "generic", of: "digraph" }),
+  product(tree, points(2)),
+  product(rationals, forest(false, 1, 0)),
+  product(tournament, { kind: "generic", of: "graph" }),
+  product(algebra(true, true), points(2)),
+  product(points(2), tree),
+];
+
 /** A short name of a carrier. */
 export function nameOf(description: CarrierDescription): string {
   switch (description.kind) {
