@@ -37,14 +37,11 @@ describe("formulas of depth 2 and 3", () => {
     },
   );
 
-  it.each([lineCase(0, null), lineCase(0, 0), lineCase(0, 1)])(
-    "on the $name: pairs by keys with 3 to come",
-    (one) => {
-      const { differences, classes } = compareKeys(one, 3);
-      expect(differences).toEqual([]);
-      expect(classes).toBeGreaterThan(2 ** 3);
-    },
-  );
+  it.each([lineCase(0, null), lineCase(0, 1)])("on the $name: pairs by keys with 3 to come", (one) => {
+    const { differences, classes } = compareKeys(one, 3);
+    expect(differences).toEqual([]);
+    expect(classes).toBeGreaterThan(2 ** 3);
+  });
 
   it.each(LINE_CASES)("on the $name: three elements by listing, to depth 2", (one) => {
     const listing = new Listing(one);

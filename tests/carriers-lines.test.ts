@@ -3,7 +3,7 @@
  * themselves, with nothing cut (`support/carriers-lines.ts`); truth against z3-solver in linear arithmetic on a small sample
  * (a larger one is in `carriers-lines.full.test.ts`); and numbers of kinds and sentences against what is published.
  *
- * Tried by hand, and found out by these tests: T(1) or T(2) less by one, T(r) = (r + 1) · (offset + 1), S(1) or S(2) less by one,
+ * Tried by hand, and found out by these tests: T(1), T(2) or T(3) less by one, T(r) = (r + 1) · (offset + 1), S(1) or S(2) less by one,
  * S(r) = ends + r · (offset + 1), keys of the half line without positions or with the first one's only, extensions of gaps that
  * have not been cut before, one extension less at either end, one colour less in a gap.
  */

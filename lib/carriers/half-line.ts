@@ -19,27 +19,26 @@ export interface HalfLineConfiguration {
  *
  * 1. Alike for 0 means of the same kind, and then so are all tuples of their elements, as on the integer line.
  * 2. If c and c′ are alike for r + 1, then for every number a there is an a′ so that c with a and c′ with a′ are alike for
- *    r. Write S, T for S(r), T(r). The elements of c and c′ below S + T are the same; the others of both are at least S + T.
- *    Let p be the largest below (if there is one) and q, q′ the least others (if there are any).
- *    - If a is an element of c, take that of c′.
- *    - If a > p and there is no q, or a lies below p, take a itself: there both configurations are the same. (If there is no
- *      p either, nothing is named, or a lies after no element: covered by the next cases.)
- *    - If a is greater than q, it splits a gap between elements that are all at least S + T, or lies after all of them:
- *      choose a′ as on the integer line; both are at least S.
- *    - There remain p < a < q, or a < q without a p. If a < S take a′ = a: then q − a and q′ − a are both more than T, and the
- *      gap after p and the position are the same. From now on a ≥ S, and it is enough that a′ ≥ S.
- *      If q − a < T, let a′ = q′ − (q − a): that is more than S. Where there is a p and q ≠ q′, both gaps after p are at least 2T, so
- *      that a − p and a′ − p are both more than T; if q = q′, then a′ = a.
- *      If q − a ≥ T, there is no p, or the gaps after p are at least 2T and a − p ≥ T: let a′ = q′ − T: that is at least S, and
- *      a′ − p ≥ T. If q − a ≥ T and a − p < T, let a′ = a: since q′ − p ≥ 2T, q′ − a > T. If the gaps after p are less than 2T,
- *      they are equal, so q = q′ and a′ = a.
+ *    r. Write S and T for S(r) and T(r), so that the positions of c and c′ are cut at S + T and their gaps at 2T. What is named
+ *    below S + T is the same in both; let p be the greatest of it, if there is any. Let q and q′ be the least elements of c and
+ *    c′ from S + T on; if there are none, c and c′ are the same, and a′ = a will do.
+ *    - If a is an element of c, take that of c′. If a < p, take a: its neighbours are the same.
+ *    - If a > q, choose a′ as on the integer line. Both a and a′ are greater than S.
+ *    - Otherwise a < q, and a > p if there is a p. If a < S, take a: q − a and q′ − a are both greater than T.
+ *    - If q − p < 2T, then q′ = q; take a. Otherwise, from here on, p does not exist or q − p and q′ − p are at least 2T; a is at
+ *      least S, and all that is asked of the position of a′ is that it is at least S, too.
+ *    - If q − a < T, let a′ = q′ − (q − a), which is greater than S. If there is a p, a − p and a′ − p are both greater than T.
+ *    - If there is a p and a − p < T, take a: q − a and q′ − a are both greater than T.
+ *    - Otherwise let a′ = q′ − T, which is at least S. If there is a p, a − p and a′ − p are both at least T.
  * 3. So configurations that are alike for r satisfy the same formulas of depth r, by induction as on the integer line, and
  *    it is enough to list, for a configuration that has been cut for r + 1, one of each class of extensions that are alike
- *    for r: all positions up to the greater of S and T more than the last element.
+ *    for r. These are all positions up to S or to T after the last element, whichever is greater: any number beyond is alike
+ *    the last of these.
  *
- * No two of those are alike for r: below S they differ in their positions. From S on, after the last element they differ in
- * the distance to it, at most T, or are S itself; before an element q that is at most S + T they differ in the distance to q, at
- * most T; and a greater q has been moved down until the gap before it is at most 2T, where positions differ as on the integer line.
+ * No two of those, a < b, are alike for r. If a < S, their positions are told apart. If an element is equal to one of them or
+ * lies between them, their order is. After the last element, they are at most T from it, since b > S. Before an element q that is
+ * at most S + T, they are at most T from it. Before a greater q, whose gap to the element before has been cut at 2T, it is as on
+ * the integer line.
  */
 export class HalfLine extends Listed<HalfLineConfiguration> {
   readonly description: HalfLineDescription;

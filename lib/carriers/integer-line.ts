@@ -30,8 +30,9 @@ export interface IntegerConfiguration {
  *    T(r + 1), one of each class of extensions that are alike for r: these are all positions from T(r) left of the first
  *    element to T(r) right of the last.
  *
- * No two of those are alike for r: outside they have different distances of at most T(r); inside a gap of at most 2T they
- * differ in g₁ and g₂, of which one is at most T in each, and if both are equal after cutting then so are the positions.
+ * No two of those are alike for r: outside they have different distances, at most T, from the outermost element. Two that
+ * split a gap of at most 2T into g₁ + g₂ and h₁ + h₂ with g₁ < h₁ differ before the cut if g₁ < T, and otherwise after it, since
+ * then h₂ < g₂ ≤ T.
  *
  * Smaller thresholds would not do: that a gap is at least 2T is said, with one quantifier more, by an element that has
  * gaps of at least T on either side, and for offset 0 the bound is the classical one for orders, where 2^r − 1 elements
