@@ -17,7 +17,7 @@ const END = readTokens("")[0]!;
 /** The tokens of a structure that a statement has begun to write out; null when it has not. */
 export function structureBegun(tokens: readonly Token[], names: Names): readonly Token[] | null {
   const assign = tokens.findIndex(({ kind }) => kind === "assign");
-  const isOther = ["claim", "conjecture", "describe"].includes(tokens[0]?.text ?? "");
+  const isOther = ["claim", "conjecture", "describe", "write"].includes(tokens[0]?.text ?? "");
   const from = assign >= 0 ? assign + 1 : isOther ? 1 : tokens.length;
   // The words before the cursor may be the beginning of what tells a carrier from a name.
   const partial = ["generic", "rooted", "tree", "tuples", "sum"];

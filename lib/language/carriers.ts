@@ -52,7 +52,7 @@ export function beginsCarrier(tokenAt: (count: number) => Token, names: Names): 
   while (tokenAt(at).kind === "open") at += 1;
   const token = tokenAt(at);
   const next = tokenAt(at + 1);
-  if (token.kind === "number") return isWord(next, "copy", "copies");
+  if (token.kind === "number") return next.kind === "word" && !next.lineStart;
   if (token.kind !== "word" || names.find(token.text) !== null) return false;
   if (token.text === "points" || SIMPLE_CARRIERS.some((word) => word === token.text)) return true;
   if (next.lineStart) return false;

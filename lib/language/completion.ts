@@ -213,11 +213,11 @@ function afterRelation(tokens: readonly Token[], last: Token): readonly Match[] 
 /** In a structure that is written out, and after one in a claim. */
 function structureMatches(structure: readonly Token[], names: Names, statement: string): readonly Match[] {
   const proposals = proposeInStructure(structure, names);
-  const isClaimed = (statement === "claim" || statement === "conjecture") && proposals.words.includes("and");
+  const signs = { claim: ["⊨", "⊭"], conjecture: ["⊨", "⊭"], write: ["⊨"] }[statement] ?? [];
   return [
     ...(proposals.relations ? listed(names, ["relation"]) : []),
     ...words("keyword", proposals.words),
-    ...(isClaimed ? words("symbol", ["⊨", "⊭"]) : []),
+    ...(proposals.words.includes("and") ? words("symbol", signs) : []),
   ];
 }
 
