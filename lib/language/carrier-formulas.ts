@@ -262,7 +262,7 @@ export class CarrierFormulaReader extends ConnectiveReader<CarrierFormula> {
       return relation === "=" ? one === other : relation === "<" ? lesser < greater : lesser <= greater;
     };
     const token = reader.peek();
-    const isLabel = token.kind === "word" && LABELS.has(token.text);
+    const isLabel = token.kind === "word" && LABELS.has(token.text) && reader.peekAfter(1).kind === "open";
     const right = isLabel ? this.#label() : this.#number("the number of a colour, copy or part");
     const place = { from: first.from, to: reader.last.to };
     const said = (label: Label, value: number): CarrierAtom => {
@@ -319,7 +319,9 @@ export class CarrierFormulaReader extends ConnectiveReader<CarrierFormula> {
 
   #term(): ElementTerm {
     const { reader } = this;
-    let term = shifted(this.#factor(), this.#steps);
+    this.#steps = 0;
+    const factor = this.#factor();
+    let term = shifted(factor, this.#steps);
     this.#steps = 0;
     while (reader.at("plus") || reader.at("minus")) {
       const sign = reader.next();
