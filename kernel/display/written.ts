@@ -30,15 +30,17 @@ export function showWritten(statement: Write, text: string): Shown {
   };
 }
 
-/** A text that was not finished. */
-export function showUnwritten(statement: Write, ended: EndReason): Shown {
+/** A text that was not finished, or cannot be written. */
+export function showUnwritten(statement: Write, ended: EndReason | "not-of-numbers"): Shown {
   const subject = subjectOf(statement);
   const reason =
-    ended === "memory"
-      ? "it would be too large"
-      : ended === "budget"
-        ? "it would take too much work"
-        : "interrupted";
+    ended === "not-of-numbers"
+      ? "the structure is not made of rational numbers, integers or natural numbers, or it would be too large"
+      : ended === "memory"
+        ? "it would be too large"
+        : ended === "budget"
+          ? "it would take too much work"
+          : "interrupted";
   const form = statement.format.kind === "dimacs" ? "DIMACS" : "SMT-LIB";
   const summary = `${subject} is not written as ${form}: ${reason}`;
   return {
@@ -47,13 +49,19 @@ export function showUnwritten(statement: Write, ended: EndReason): Shown {
   };
 }
 
-function subjectOf({ theory, conclusion }: Write): string {
+function subjectOf({ subject }: Write): string {
+  if (subject.kind === "structure") return `${subject.structure.text} ⊨ ${subject.asked}`;
+  const { theory, conclusion } = subject;
   return conclusion === null ? theory.text : `${theory.text} ⊨ ${conclusion.text}`;
 }
 
 function summariseWritten(statement: Write, text: string): string {
   const { format } = statement;
   const subject = subjectOf(statement);
+  if (statement.subject.kind === "structure") {
+    const problems = text.match(/^\(check-sat\)/gm)?.length ?? 0;
+    return `${subject} as SMT-LIB: ${counted(problems, "problem")} of arithmetic, unsat where it is true`;
+  }
   if (format.kind === "smt-lib") {
     const commands = text.match(/^\((?:assert|declare)/gm)?.length ?? 0;
     const asserts = text.match(/^\(assert/gm)?.length ?? 0;

@@ -2,8 +2,9 @@
 import { writeDimacs } from "../../lib/inquiry/dimacs.ts";
 import { examineProperties, type Findings } from "../../lib/inquiry/examine.ts";
 import type { Work } from "../../lib/inquiry/work.ts";
+import { printArithmetic } from "../../lib/language/carrier-smt-lib.ts";
 import { printSmtLib } from "../../lib/language/smt-lib.ts";
-import type { Statement } from "../../lib/language/statements.ts";
+import type { Statement, WrittenSubject } from "../../lib/language/statements.ts";
 import { WorkEnded } from "../../lib/logic/meter.ts";
 import { normalise } from "../../lib/logic/normal-forms/normalise.ts";
 import type { Shown } from "../display/answers.ts";
@@ -62,7 +63,15 @@ function describe(statement: Telling & { kind: "describe" }, watch: Watch): Told
 }
 
 function write(statement: Telling & { kind: "write" }, work: Work): Told {
-  const { theory, conclusion, format } = statement;
+  const { subject, format } = statement;
+  if (subject.kind === "structure") {
+    const text = writeTruths(subject);
+    return plain(
+      text === null ? showUnwritten(statement, "not-of-numbers") : showWritten(statement, text),
+      writtenData(statement, text),
+    );
+  }
+  const { theory, conclusion } = subject;
   const sentence = conclusion?.formula ?? null;
   if (format.kind === "smt-lib") {
     const text = printSmtLib(theory.theory, sentence);
@@ -73,4 +82,10 @@ function write(statement: Telling & { kind: "write" }, work: Work): Told {
     return plain(showWritten(statement, written.text), writtenData(statement, written.text));
   if (written.ended === "interrupted") throw new WorkEnded(written.ended);
   return plain(showUnwritten(statement, written.ended), writtenData(statement, null));
+}
+
+/** The problems of all sentences, one after the other, each beginning anew; null when one cannot be written. */
+function writeTruths({ structure, sentences }: WrittenSubject & { kind: "structure" }): string | null {
+  const scripts = sentences.map(({ name, formula }) => printArithmetic(structure.structure, formula, name));
+  return scripts.includes(null) ? null : scripts.join("(reset)\n");
 }

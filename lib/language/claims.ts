@@ -1,5 +1,5 @@
 /** What `claim`, `conjecture` and `derive` say: an entailment, or a property of a theory. */
-import { type RelationSymbol, relationsOf } from "../logic/formula.ts";
+import { type Formula, type RelationSymbol, relationsOf } from "../logic/formula.ts";
 import { findProperty } from "../logic/properties.ts";
 import { theorySignature } from "../logic/theory.ts";
 import type { Place } from "./diagnostics.ts";
@@ -115,7 +115,19 @@ function readTruth(reader: Reader, structure: NamedStructure | null, subject: Pl
   );
   if (structure === null || sentence === null) return null;
   const place = { from: first.from, to: reader.last.to };
-  for (const relation of relationsOf(sentence.formula)) {
+  if (!checkInterpreted(reader, structure, sentence.formula, place)) return null;
+  reader.charge(1, subject);
+  return { kind: sign.kind === "entails" ? "true-in" : "false-in", structure, sentence };
+}
+
+/** Whether a structure says where all relations of a sentence hold; reports the first of which it does not. */
+export function checkInterpreted(
+  reader: Reader,
+  structure: NamedStructure,
+  sentence: Formula,
+  place: Place,
+): boolean {
+  for (const relation of relationsOf(sentence)) {
     const given = structure.structure.relations.find((one) => one.relation.name === relation.name);
     if (given?.relation.places === relation.places) continue;
     reader.report(
@@ -128,10 +140,9 @@ function readTruth(reader: Reader, structure: NamedStructure | null, subject: Pl
         ? `add \`${relation.name} is { … }\` to the structure`
         : `add \`${callForm(relation.name, relation.places)} iff …\` to the structure`,
     );
-    return null;
+    return false;
   }
-  reader.charge(1, subject);
-  return { kind: sign.kind === "entails" ? "true-in" : "false-in", structure, sentence };
+  return true;
 }
 
 /**

@@ -139,8 +139,9 @@ export const statementHelp: readonly StatementHelp[] = [
   },
   {
     word: "write",
-    form: "write T as SMT-LIB, write T ⊨ φ as SMT-LIB, write T ⊨ φ as DIMACS of size n",
-    meaning: "Prints a theory or a question for other programs, in an open standard.",
+    form: "write T as SMT-LIB, write T ⊨ φ as SMT-LIB, write A ⊨ φ as SMT-LIB, write T ⊨ φ as DIMACS of size n",
+    meaning:
+      "Prints a theory, a question or what is true in a structure over numbers for other programs, in an open standard.",
     options: false,
   },
 ];

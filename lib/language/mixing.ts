@@ -5,7 +5,7 @@
 import { type Formula, relationsOf } from "../logic/formula.ts";
 import { sentencesOf } from "../logic/theory.ts";
 import type { StatementBody } from "./statement-readers.ts";
-import type { Claim, Definition, DescribeSubject } from "./statements.ts";
+import type { Claim, Definition, DescribeSubject, WrittenSubject } from "./statements.ts";
 
 /** A relation that occurs in a statement with two numbers of places; null when there is none. */
 export function findMixedRelation(
@@ -45,11 +45,14 @@ function formulasIn(statement: StatementBody): readonly Formula[] {
     case "normalise":
       return [statement.subject.formula];
     case "write":
-      return [
-        ...sentencesOf(statement.theory.theory),
-        ...(statement.conclusion === null ? [] : [statement.conclusion.formula]),
-      ];
+      return formulasWritten(statement.subject);
   }
+}
+
+function formulasWritten(subject: WrittenSubject): readonly Formula[] {
+  if (subject.kind === "structure") return subject.sentences.map(({ formula }) => formula);
+  const { theory, conclusion } = subject;
+  return [...sentencesOf(theory.theory), ...(conclusion === null ? [] : [conclusion.formula])];
 }
 
 function formulasOfDefinition(definition: Definition): readonly Formula[] {

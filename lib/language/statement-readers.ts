@@ -6,7 +6,8 @@ import type { RelationSymbol, Variable } from "../logic/formula.ts";
 import type { NormalFormName } from "../logic/normal-forms/result.ts";
 import { LARGEST_DOMAIN } from "../logic/structure-definition.ts";
 import { MOST_MINIMISED } from "../logic/theory.ts";
-import { readClaim, readConclusion, relationsAbout } from "./claims.ts";
+import { carrierWords } from "./carriers.ts";
+import { checkInterpreted, readClaim, readConclusion, relationsAbout } from "./claims.ts";
 import { readClosed, readOpen } from "./formulas.ts";
 import { normalFormHelp } from "./help.ts";
 import { isSmtLib, type Token } from "./lexer.ts";
@@ -262,7 +263,9 @@ function failRelation(reader: Reader, expected: string): never {
 function readUnknown(reader: Reader): null {
   const name = reader.next();
   if (reader.names.find(name.text)?.kind === "damaged") return null;
-  const near = reader.names.nearest(name.text, ["relation", "formula", "theory", "structure"]);
+  const near =
+    reader.names.nearest(name.text, ["relation", "formula", "theory", "structure"]) ??
+    nearestName(name.text, carrierWords);
   reader.report(
     "unknown-name",
     name,
@@ -435,6 +438,7 @@ function readForm(reader: Reader): NormalFormName {
 }
 
 function readWrite(reader: Reader): StatementBody | null {
+  if (isStructureAhead(reader)) return readWriteTruth(reader);
   const theory = readTheory(reader);
   const asks = reader.accept("entails") !== null;
   const conclusion = asks ? readConclusion(reader, relationsAbout(theory)) : null;
@@ -443,7 +447,42 @@ function readWrite(reader: Reader): StatementBody | null {
   reader.expectWord("as", "write `write T as SMT-LIB`");
   const format = readFormat(reader);
   if (theory === null || format === null || (asks && conclusion === null)) return null;
-  return { kind: "write", theory, conclusion, format };
+  return { kind: "write", subject: { kind: "theory", theory, conclusion }, format };
+}
+
+/** Reads `A ⊨ φ as SMT-LIB`, or a theory in place of φ. */
+function readWriteTruth(reader: Reader): StatementBody | null {
+  const structure = readStructure(reader);
+  const hint = "of a structure a truth is written: `write A ⊨ φ as SMT-LIB`";
+  if (reader.accept("entails") === null) reader.failExpected("`⊨` after a structure", hint);
+  reader.crossLine();
+  const first = reader.peek();
+  const named = reader.names.find(first.text);
+  const isTheory = first.kind === "open-brace" || named?.kind === "theory";
+  const theory = isTheory ? readTheory(reader) : null;
+  const relations = structure?.structure.relations.map(({ relation }) => relation) ?? null;
+  const sentence = isTheory ? null : readConclusion(reader, relations);
+  const place = { from: first.from, to: reader.last.to };
+  reader.expectWord("as", hint);
+  const word = reader.peek();
+  const format = readFormat(reader);
+  if (format?.kind === "dimacs")
+    reader.report(
+      "wrong-kind",
+      word,
+      "what is true in a structure is a problem of arithmetic, not of clauses",
+      "write `as SMT-LIB`",
+    );
+  if (structure === null || format?.kind !== "smt-lib") return null;
+  const sentences =
+    theory !== null
+      ? theory.theory.axioms.map(({ label, formula }) => ({ name: label, formula }))
+      : sentence !== null
+        ? [{ name: sentence.text.replaceAll(/\s+/g, " "), formula: sentence.formula }]
+        : null;
+  if (!sentences?.every(({ formula }) => checkInterpreted(reader, structure, formula, place))) return null;
+  const asked = theory?.text ?? sentence!.text;
+  return { kind: "write", subject: { kind: "structure", structure, sentences, asked }, format };
 }
 
 function readFormat(reader: Reader): WrittenFormat | null {

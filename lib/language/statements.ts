@@ -106,14 +106,36 @@ export type Statement = StatementBase &
       }
     | {
         readonly kind: "write";
-        readonly theory: NamedTheory;
-        /** The sentence asked about; null when the theory alone is written. */
-        readonly conclusion: NamedSentence | null;
+        readonly subject: WrittenSubject;
         readonly format: WrittenFormat;
       }
   );
 
 export type StatementKind = Statement["kind"];
+
+/** What `write` prints. */
+export type WrittenSubject =
+  | {
+      readonly kind: "theory";
+      readonly theory: NamedTheory;
+      /** The sentence asked about; null when the theory alone is written. */
+      readonly conclusion: NamedSentence | null;
+    }
+  /** What is true in a structure, as SMT-LIB: a problem for each sentence. */
+  | {
+      readonly kind: "structure";
+      readonly structure: NamedStructure;
+      /** One, or the axioms of a theory. */
+      readonly sentences: readonly WrittenSentence[];
+      /** What was asked of the structure, as written. */
+      readonly asked: string;
+    };
+
+/** A sentence, and what it is called where it is written. */
+export interface WrittenSentence {
+  readonly name: string;
+  readonly formula: Formula;
+}
 
 /** How `write` prints a theory or a question for other programs. */
 export type WrittenFormat =

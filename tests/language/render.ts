@@ -53,9 +53,16 @@ function renderStatement(statement: Statement): string {
     case "normalise":
       return `normalise ${sentence(statement.subject)} to ${statement.form}${statement.steps ? " steps" : ""}`;
     case "write": {
-      const asked = statement.conclusion === null ? "" : ` |= ${sentence(statement.conclusion)}`;
-      const { format } = statement;
-      return `write ${theory(statement.theory)}${asked} as ${format.kind}${format.kind === "dimacs" ? ` of size ${format.size}` : ""}`;
+      const { subject, format } = statement;
+      const as = `as ${format.kind}${format.kind === "dimacs" ? ` of size ${format.size}` : ""}`;
+      if (subject.kind === "structure") {
+        const sentences = subject.sentences.map(
+          ({ name, formula }) => `${name}: ${printFormula(formula, "ascii")}`,
+        );
+        return `write ${subject.structure.text} |= { ${sentences.join("; ")} } ${as}`;
+      }
+      const asked = subject.conclusion === null ? "" : ` |= ${sentence(subject.conclusion)}`;
+      return `write ${theory(subject.theory)}${asked} ${as}`;
     }
   }
 }
