@@ -23,19 +23,29 @@ import type {
   CarrierFormula,
   ElementTerm,
 } from "../../lib/logic/structure-definition.ts";
+import { isTrue as isTrueByLoops } from "./brute-force.ts";
 import {
   formula,
   integers,
+  isTrue,
   naturals,
   points,
   product,
   R,
   rationals,
+  structureOf,
   sum,
   tuples,
 } from "./carriers-composites.ts";
 import { sentences } from "./random-formulas.ts";
-import { configurationOf, type TrueElement, windowOf } from "./true-elements.ts";
+import { configurationOf, elementsWith, isFormulaTrue, type TrueElement, windowOf } from "./true-elements.ts";
+
+/** How often, and with which seed. */
+export interface Options {
+  readonly seed: number;
+  readonly numRuns: number;
+  readonly verbose: 1;
+}
 
 export function allPlaces(length: number): readonly number[] {
   return Array.from({ length }, (_, place) => place);
@@ -189,6 +199,50 @@ export function play(
     }
   const places = allPlaces(elements.length);
   expect(carrier.kindOf(configuration, places)).toBe(carrier.kindOf(truly, places));
+}
+
+/** Random games on a carrier. */
+export function checkGames(description: CarrierDescription, moves: number, options: Options): void {
+  const carrier = buildCarrier(description);
+  fc.assert(
+    fc.property(fc.gen(), (choose) => play(carrier, description, moves, choose)),
+    options,
+  );
+}
+
+/** Random sentences about random definitions on a finite carrier, against loops over its elements. */
+export function checkByLoops(description: CarrierDescription, options: Options): void {
+  const elements = elementsWith(description, []);
+  fc.assert(
+    fc.property(definitionsOn(description), sentencesTo(3), (defined, said) => {
+      const holds = new Set<string>();
+      for (const [i, x] of elements.entries())
+        for (const [j, y] of elements.entries())
+          if (isFormulaTrue(defined, description, (variable) => (variable === "x" ? x : y)))
+            holds.add(`${i},${j}`);
+      const structure = structureOf(description, { relation: R, variables: ["x", "y"], formula: defined });
+      expect(isTrue(structure, said)).toBe(isTrueByLoops(said, elements.length, new Map([["R", holds]])));
+    }),
+    options,
+  );
+}
+
+/** Random sentences about two orders that none tells apart. */
+export function checkEquivalent(
+  left: CarrierDescription,
+  right: CarrierDescription,
+  depth: number,
+  options: Options,
+): void {
+  const [first, second] = [left, right].map((description) =>
+    structureOf(description, { relation: R, variables: ["x", "y"], formula: lexicographic(description) }),
+  );
+  fc.assert(
+    fc.property(sentencesTo(depth), (said) => {
+      expect(isTrue(first!, said)).toBe(isTrue(second!, said));
+    }),
+    options,
+  );
 }
 
 /** Which of the elements x and y comes first: copies, parts and components in their order. */

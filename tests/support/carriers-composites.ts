@@ -143,6 +143,18 @@ export const composites: readonly CarrierDescription[] = [
   tuples(sum(rationals, points(1)), 2),
 ];
 
+/** Finite ones. */
+export const finite: readonly CarrierDescription[] = [
+  tuples(points(2), 2),
+  tuples(points(3), 1, 0, 1),
+  tuples(points(2), 2, 1),
+  sum(points(2), points(3)),
+  sum(points(1), tuples(points(2), 1, 0)),
+  product(points(2), points(3)),
+  product(sum(points(1), points(2)), points(2)),
+  tuples(product(points(2), points(1)), 1, 1),
+];
+
 const tournament: CarrierDescription = { kind: "generic", of: "tournament" };
 const tree: CarrierDescription = { kind: "dense-tree" };
 function algebra(zero: boolean, top: boolean): CarrierDescription {
