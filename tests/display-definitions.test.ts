@@ -17,8 +17,9 @@ import {
   inlineTheory,
   inlineVerdict,
 } from "../kernel/display/inline.ts";
-import { sourceOf, structureData } from "../kernel/display/structures.ts";
+import { sourceOf } from "../kernel/display/structures.ts";
 import { buildStructure } from "../lib/carriers/defined.ts";
+import { recordStructure } from "../lib/carriers/structure-record.ts";
 import { parseCell } from "../lib/language/parser.ts";
 import { emptyScope, type NamedTheory, type Scope, type Statement } from "../lib/language/statements.ts";
 import { MAX_AXIOMS } from "../lib/language/theories.ts";
@@ -69,8 +70,8 @@ describe("text of cells", () => {
         const [statement] = statements;
         if (statement?.kind !== "define" || statement.definition.kind !== "structure")
           throw new Error("no structure");
-        expect(structureData(buildStructure(statement.definition.structure))).toEqual(
-          structureData(structure),
+        expect(recordStructure(buildStructure(statement.definition.structure))).toEqual(
+          recordStructure(structure),
         );
       }),
       { seed: 20260404 },

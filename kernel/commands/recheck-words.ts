@@ -13,10 +13,12 @@ import type {
 } from "../../lib/evidence/format.ts";
 import { dualsOf } from "../../lib/inquiry/dualise.ts";
 import type { Statement } from "../../lib/language/statements.ts";
-import { type Formula, not } from "../../lib/logic/formula.ts";
+import { type Formula, not, type RelationSymbol, relationsOf } from "../../lib/logic/formula.ts";
 import { findProperty, propertyOf } from "../../lib/logic/properties.ts";
 import { recordFormula } from "../../lib/logic/records/formulas.ts";
 import { type Theory, theorySignature } from "../../lib/logic/theory.ts";
+
+import { findOtherInfinite } from "./recheck-infinite.ts";
 
 /** The parts of a stored result that say what was found. */
 export interface Stored {
@@ -44,6 +46,7 @@ export function findDisagreement(
         findOtherVerdict(stored.verdict, evidence.verdict) ??
         findInconsistency(stored, evidence) ??
         findOtherSizes(stored, evidence) ??
+        findOtherInfinite(stored.data, evidence, relationsAsked(statement)) ??
         findUnused(statement, stored, evidence) ??
         findOtherAxioms(statement, stored, evidence)
       );
@@ -236,6 +239,17 @@ function findUnused(statement: Asking, { data }: Stored, { sentences, facts }: E
     );
   const unused = used.find((label) => !isUsed(label));
   return unused === undefined ? null : `${quoted(unused)} is said to be used, and no derivation uses it`;
+}
+
+function relationsAsked(statement: Asking): readonly RelationSymbol[] {
+  const axioms = theoriesOf(statement).flatMap(({ axioms: own }) => own.map(({ formula }) => formula));
+  const conclusion =
+    statement.kind === "derive"
+      ? [statement.conclusion.formula]
+      : statement.kind !== "check-finite" && "conclusion" in statement.claim
+        ? [statement.claim.conclusion.formula]
+        : [];
+  return [...axioms, ...conclusion].flatMap(relationsOf);
 }
 
 function theoriesOf(statement: Asking): readonly Theory[] {

@@ -1,7 +1,6 @@
 /** The `data` of `eval --json`: what a program wants to know of an answer. The README lists the keys. */
 
 import { sizeOf } from "../../lib/carriers/any-structure.ts";
-import { buildStructure } from "../../lib/carriers/defined.ts";
 import type { Answer, ClaimAnswer, FiniteAnswer, ShownDerivation } from "../../lib/inquiry/answer.ts";
 import type { Findings } from "../../lib/inquiry/examine.ts";
 import { printFormula } from "../../lib/language/printer.ts";
@@ -18,6 +17,7 @@ import { describeSyntax } from "../../lib/logic/fragments.ts";
 import { sentencesOf, type Theory, theoryDepth, theorySignature } from "../../lib/logic/theory.ts";
 import { countData } from "./counts.ts";
 import { findingsData } from "./findings.ts";
+import { onPoints, pointsData } from "./finite-structures.ts";
 import { reasonData } from "./reasons.ts";
 import { infiniteData, structureData } from "./structures.ts";
 import { claimOf } from "./summaries.ts";
@@ -49,7 +49,7 @@ export function dataOf(statement: Statement, answer: Answer | null, findings: Fi
     case "models":
       return {
         size: answer.size,
-        models: answer.models.map((model) => structureData(model).relations),
+        models: answer.models.map((model) => pointsData(onPoints(model)!)),
         complete: answer.complete,
       };
     case "count":
@@ -121,7 +121,7 @@ function claimData(statement: Statement, answer: ClaimAnswer): Data {
 
 /** Why there is no finite model; nothing where that was not derived. */
 function reasonOf({ noFinite }: ClaimAnswer | FiniteAnswer): Data {
-  return noFinite === null ? {} : { reason: reasonData(noFinite) };
+  return noFinite === null ? {} : { reason: reasonData(noFinite.reason) };
 }
 
 /** The axioms that derivations use, by label; nothing where nothing was derived. */
@@ -158,7 +158,7 @@ function definitionData(definition: Definition): Data {
     case "theory":
       return { kind, name, axioms: axiomsData(definition.theory) };
     case "structure":
-      return { kind, name, ...structureData(buildStructure(definition.structure)) };
+      return { kind, name, ...structureData(definition.structure) };
   }
 }
 
@@ -181,7 +181,7 @@ function subjectData(subject: DescribeSubject): Data {
       };
     }
     case "structure":
-      return { kind: "structure", ...structureData(buildStructure(subject.structure.structure)) };
+      return { kind: "structure", ...structureData(subject.structure.structure) };
     case "formula":
       return {
         kind: "formula",

@@ -76,7 +76,7 @@ export function usedLabels(
 }
 
 /** For `eval --json`: the principle, and its formulas in the ASCII spelling. */
-export function reasonData({ reason }: ShownReason): Readonly<Record<string, unknown>> {
+export function reasonData(reason: FinitenessReason): Readonly<Record<string, unknown>> {
   const { record, parameters, given, domain, relation } = reason;
   const ascii = (formula: Formula) => printFormula(formula, "ascii");
   const counts =

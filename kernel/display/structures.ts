@@ -5,12 +5,13 @@
 import { type AnyStructure, isOfTerms, sizeOf } from "../../lib/carriers/any-structure.ts";
 import { buildCarrier } from "../../lib/carriers/build.ts";
 import { buildStructure } from "../../lib/carriers/defined.ts";
+import { printStructureDefinition } from "../../lib/language/carrier-printing.ts";
 import type { StructureDefinition } from "../../lib/logic/structure-definition.ts";
 import type { Block } from "./blocks.ts";
 import { carrierWords, definitionText } from "./definition-text.ts";
 import { isOnPoints, onPoints, pointsBlocks, pointsData, pointsSource } from "./finite-structures.ts";
 import { definedBlocks } from "./infinite.ts";
-import { termsBlocks, termsData, termsWords } from "./term-structures.ts";
+import { termsBlocks, termsWords } from "./term-structures.ts";
 import { counted } from "./text.ts";
 
 /** What a structure lives on, as it is said after `on`: `3 points`, `the rational line`. */
@@ -59,20 +60,23 @@ export function definitionBlocks(role: string, definition: StructureDefinition):
 }
 
 /**
- * For `eval --json`: the size, null for an infinite one, and for each relation its tuples of points counted from 1; where
- * these are too many or infinitely many, the definition instead.
+ * A definition for `eval --json`: the size, null for an infinite structure, and for each relation its tuples of points
+ * counted from 1; where these are too many or infinitely many, the definition instead.
  */
-export function structureData(structure: AnyStructure): Readonly<Record<string, unknown>> {
-  const size = sizeOf(structure);
-  if (isOfTerms(structure)) return { size, ...termsData(structure) };
+export function structureData(definition: StructureDefinition): Readonly<Record<string, unknown>> {
+  const structure = buildStructure(definition);
   const numbered = onPoints(structure);
-  return numbered === null
-    ? { size, definition: definitionText(structure) }
-    : { size, relations: pointsData(numbered) };
+  return {
+    size: structure.carrier.size,
+    ...(numbered === null
+      ? { definition: printStructureDefinition(definition, "ascii") }
+      : { relations: pointsData(numbered) }),
+  };
 }
 
 /** For `eval --json`, beside the size of a structure that was found: what it is, where the size does not say it. */
 export function infiniteData(structure: AnyStructure | null): Readonly<Record<string, unknown>> {
   if (structure === null || sizeOf(structure) !== null) return {};
-  return { infiniteModel: sourceOf(structure) ?? domainOf(structure) };
+  const definition = isOfTerms(structure) ? null : definitionText(structure, "ascii");
+  return { infiniteModel: definition ?? domainOf(structure) };
 }

@@ -1,6 +1,5 @@
 /** Structures of free terms as they are shown: the constructors, and each relation by its recursion. */
 import type { TermStructure } from "../../lib/carriers/any-structure.ts";
-import { printTerm } from "../../lib/language/printer.ts";
 import type { Term, TermFormula } from "../../lib/logic/clausal.ts";
 import { partsOf, type TermFormulaRecord, type TermRecord } from "../../lib/logic/records/formulas.ts";
 import { describeTerms } from "../../lib/structures/free-terms/describe.ts";
@@ -45,12 +44,6 @@ export function termsBlocks(role: string, structure: TermStructure): readonly Bl
     ...words`${role}${/infinite/.test(role) ? "" : ", infinite"}: ${domainParts(structure)}`,
   );
   return [{ kind: "group", blocks: [title, line(remark), table] }];
-}
-
-/** For `eval --json`. */
-export function termsData({ terms }: TermStructure): Readonly<Record<string, unknown>> {
-  const { constructors } = describeTerms(terms);
-  return { constructors: constructors.map((one) => printTerm(termOfRecord(one), "ascii")), terms };
 }
 
 function termOfRecord(record: TermRecord): Term {
