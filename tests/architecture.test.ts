@@ -93,16 +93,21 @@ describe("the checker of evidence", () => {
     return [...found];
   }
 
-  it("has less than 700 lines of code", () => {
+  it("has less than 900 lines of code", () => {
     const lines = files.filter((file) => file.startsWith("lib/evidence/")).map(codeLines);
-    expect(lines.reduce((sum, count) => sum + count, 0)).toBeLessThan(700);
+    expect(lines.reduce((sum, count) => sum + count, 0)).toBeLessThan(900);
   });
 
-  it("stands on records of formulas, on carriers and on the meter, and on nothing else: less than 1,600 lines", () => {
+  it("stands on records of formulas, on carriers and on the meter, and on nothing else: less than 3,900 lines", () => {
     const closure = closureOf("lib/evidence/check.ts");
     const allowed =
-      /^lib\/(evidence|carriers|logic\/records)\/|^lib\/logic\/(meter|structure-definition)\.ts$/;
+      /^lib\/(evidence|carriers|logic\/records)\/[^/]+\.ts$|^lib\/logic\/(meter|structure-definition)\.ts$/;
     for (const file of closure) expect(file).toMatch(allowed);
-    expect(closure.map(codeLines).reduce((sum, count) => sum + count, 0)).toBeLessThan(1600);
+    expect(closure.map(codeLines).reduce((sum, count) => sum + count, 0)).toBeLessThan(3900);
+  });
+
+  it("needs less than 1,300 of them for derivations", () => {
+    const lines = closureOf("lib/evidence/derivation.ts").map(codeLines);
+    expect(lines.reduce((sum, count) => sum + count, 0)).toBeLessThan(1300);
   });
 });
