@@ -84,7 +84,7 @@ export function findingBlocks(findings: Findings): readonly Block[] {
       kind: "fold",
       title: `${counted(settled.length, "property", "properties")} that a model has and another lacks${
         evidence === null ? "" : " (checked)"
-      }, with the points of each`,
+      }${settled.some(hasFinite) ? ", with the points of each" : ", both infinite"}`,
       blocks: [line(...sized(settled, nameOf))],
     });
   return blocks;
@@ -97,6 +97,10 @@ function soleSubject(properties: readonly PropertyFinding[]): string | null {
   return subjects.size === 1 && first !== undefined && first !== "" ? first : null;
 }
 
+function hasFinite({ having, lacking }: PropertyFinding): boolean {
+  return [having, lacking].some((search) => search.kind === "found" && search.size !== null);
+}
+
 function sized(
   properties: readonly PropertyFinding[],
   nameOf: (finding: PropertyFinding) => string,
@@ -106,7 +110,8 @@ function sized(
     const sizes = [having, lacking].flatMap((search) =>
       search.kind === "found" ? [search.size ?? "infinite"] : [],
     );
-    return [index === 0 ? "" : ", ", nameOf(finding), ` (${sizes.join(";\u00a0")})`];
+    const places = sizes.every((size) => size === "infinite") ? "" : ` (${sizes.join(";\u00a0")})`;
+    return [index === 0 ? "" : ", ", nameOf(finding) + places];
   });
 }
 

@@ -39,6 +39,8 @@ function evaluate(expression: ProseExpression, memory: Memory, isInterrupted: ()
   switch (expression.kind) {
     case "verdict":
       return inlineVerdict(entryOf(expression.claim, memory).verdict);
+    case "reason":
+      return reasonOf(entryOf(expression.claim, memory));
     case "claim":
       return inlineText(entryOf(expression.claim, memory).text);
     case "count":
@@ -69,6 +71,11 @@ function entryOf(number: number, { ledger }: Memory): LedgerEntry {
   throw new NoValue(
     `there is no claim ${number}; so far there ${ledger.length === 1 ? "is 1" : `are ${ledger.length}`}`,
   );
+}
+
+function reasonOf({ number, reason }: LedgerEntry): MimeBundle {
+  if (reason !== null) return reason;
+  throw new NoValue(`claim ${number} does not rest on a reason why there is no finite model`);
 }
 
 function countOn(

@@ -12,6 +12,7 @@ import { type Spent, WorkEnded } from "../../lib/logic/meter.ts";
 import { showAnswer } from "../display/answers.ts";
 import { showProgress } from "../display/bundle.ts";
 import { dataOf } from "../display/data.ts";
+import { inlineReason } from "../display/inline.ts";
 import { showTrouble } from "../display/trouble.ts";
 import type { CellEvent, CellOutcome, MimeBundle, StatementResult } from "./evaluator.ts";
 import { storeResult } from "./metadata.ts";
@@ -30,6 +31,8 @@ export interface LedgerEntry {
   readonly text: string;
   readonly verdict: ClaimVerdict;
   readonly summary: string;
+  /** Why there is no finite model, for prose; null when the claim does not rest on that. */
+  readonly reason: MimeBundle | null;
 }
 
 /** What a session remembers from cell to cell. */
@@ -116,6 +119,8 @@ function unmetClaims(unmet: readonly StatementResult[]): [string, string[]] {
 interface Shown {
   readonly result: StatementResult;
   readonly data: MimeBundle;
+  /** Why there is no finite model, for prose; null when nothing rests on that. */
+  readonly reason: MimeBundle | null;
   readonly interrupted: boolean;
 }
 
@@ -138,6 +143,7 @@ function runStatement(statement: Statement, memory: Memory, surroundings: Surrou
       text: result.text,
       verdict: result.verdict as ClaimVerdict,
       summary: result.summary,
+      reason: shown.reason,
     });
   display.finish(shown.data, result);
   return shown;
@@ -157,7 +163,8 @@ function ask(question: Question, watch: Watch): Shown {
     evidence: answer.evidence,
     diagnostics: [],
   };
-  return { result, data, interrupted: wasInterrupted(answer) };
+  const reason = inlineReason(question, answer);
+  return { result, data, reason, interrupted: wasInterrupted(answer) };
 }
 
 /** Shows what a statement that asks nothing brings about. */
@@ -175,6 +182,7 @@ function show(statement: Telling, watch: Watch): Shown {
       diagnostics: [],
     },
     data,
+    reason: null,
     interrupted,
   };
 }

@@ -2,7 +2,7 @@
  * Expressions for sentences of prose, as Jupyter's `user_expressions` asks for them: `{verdict of claim 3}`,
  * `{count of Order on 4 points}`, `{formula of Order.trans}`.
  *
- *     expression = "verdict" "of" "claim" WHOLE
+ *     expression = ( "verdict" | "reason" ) "of" "claim" WHOLE
  *                | "claim" WHOLE
  *                | [ "labelled" ] "count" "of" theory "on" WHOLE ( "point" | "points" )
  *                | "formula" "of" formula
@@ -20,8 +20,11 @@ import type { Definition, NamedSentence, NamedTheory, Scope } from "./statements
 import { readTheory } from "./theories.ts";
 
 export type ProseExpression =
-  /** The verdict of the claim or conjecture with that number in the ledger, from 1. */
-  | { readonly kind: "verdict"; readonly claim: number }
+  /**
+   * The verdict of the claim or conjecture with that number in the ledger, from 1; the reason why there is no finite model
+   * that it rests on.
+   */
+  | { readonly kind: "verdict" | "reason"; readonly claim: number }
   /** Its text. */
   | { readonly kind: "claim"; readonly claim: number }
   /** How many models a theory has on so many points: up to isomorphism, or labelled. */
@@ -42,6 +45,7 @@ export type ParsedExpression =
 
 const FORMS = [
   "verdict of claim 3",
+  "reason of claim 3",
   "claim 3",
   "count of T on 4 points",
   "labelled count of T on 4 points",
@@ -71,11 +75,12 @@ function readBody(reader: Reader): ProseExpression | null {
   const next = reader.peekAfter(1);
   const isForm = (form: string, second: string) =>
     reader.atWord(form) && next.kind === "word" && next.text === second;
-  if (isForm("verdict", "of")) {
+  for (const kind of ["verdict", "reason"] as const) {
+    if (!isForm(kind, "of")) continue;
     reader.next();
     reader.next();
-    reader.expectWord("claim", "write `verdict of claim 3`");
-    return readClaimNumber(reader, "verdict");
+    reader.expectWord("claim", `write \`${kind} of claim 3\``);
+    return readClaimNumber(reader, kind);
   }
   if (reader.atWord("claim")) {
     reader.next();
@@ -98,7 +103,7 @@ function readBody(reader: Reader): ProseExpression | null {
   return readName(reader);
 }
 
-function readClaimNumber(reader: Reader, kind: "verdict" | "claim"): ProseExpression | null {
+function readClaimNumber(reader: Reader, kind: "verdict" | "reason" | "claim"): ProseExpression | null {
   const claim = readWhole(reader, "the number of a claim");
   return claim === null ? null : { kind, claim };
 }
@@ -121,7 +126,7 @@ function readName(reader: Reader): ProseExpression | null {
     return { kind: "definition", definition: named.definition };
   const near =
     reader.names.nearest(word.text, ["formula", "theory", "structure"]) ??
-    nearestName(word.text, ["verdict", "claim", "count", "labelled", "formula", "axioms"]);
+    nearestName(word.text, ["verdict", "reason", "claim", "count", "labelled", "formula", "axioms"]);
   return reader.fail(
     named === null ? "unknown-name" : "wrong-kind",
     word,
