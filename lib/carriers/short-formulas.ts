@@ -15,6 +15,8 @@ export interface Literal {
 const FEW_LITERALS = 60;
 /** Literals up to which conjunctions of two are. */
 const MANY_LITERALS = 300;
+/** Formulas of two literals up to this cost are taken before any of three. */
+const PLAIN_COST = 32;
 /** Cases up to which conjunctions are looked at before they are needed, and formulas of three literals at all. */
 const FEW_CASES = 1_000;
 /** Conjunctions that are chosen from, the cheapest, and that a formula has at most. */
@@ -96,9 +98,10 @@ function shortOf(literals: readonly Literal[], values: bigint, all: bigint, case
   forPairs(below, (a, b) => {
     if ((a.values | b.values) === values) two.offer(a.cost + b.cost, () => anyOf([a.formula, b.formula]));
   });
-  if (two.found !== null) return two.found;
-  if (literals.length > FEW_LITERALS || cases > FEW_CASES) return null;
-  const three = new Best();
+  if (two.found !== null && two.found.cost <= PLAIN_COST) return two.found;
+  if (literals.length > FEW_LITERALS || cases > FEW_CASES) return two.found;
+  // Two literals of which one is hard to read may be longer than three.
+  const three = two;
   above.forEach((a, index) => {
     forPairs(above.slice(index + 1), (b, c) => {
       if ((a.values & b.values & c.values) === values)
