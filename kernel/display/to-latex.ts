@@ -98,7 +98,7 @@ function pieceToLatex(piece: Inline): string {
     case "term":
       return `$${printTerm(piece.term, "latex")}$`;
     case "relation":
-      return relationToLatex(piece.name);
+      return relationAsMathematics(piece.name) ?? `\\textit{${escapeLatex(piece.name)}}`;
     case "cell":
     case "math":
       return `$${piece.latex}$`;
@@ -111,10 +111,11 @@ function pieceToLatex(piece: Inline): string {
   }
 }
 
-/** A relation by its name: in mathematics a letter or a sign, else text in italics. */
-export function relationToLatex(name: string): string {
+/** A relation by its name, as mathematics; null where that is a word. */
+export function relationAsMathematics(name: string): string | null {
   if (/^\p{L}$/u.test(name)) return `$${name}$`;
-  return /^\p{L}/u.test(name) ? `\\textit{${escapeLatex(name)}}` : escapeLatex(name);
+  const sign = SIGNS.get(name);
+  return sign === undefined ? null : `$${sign}$`;
 }
 
 function blockToLatex(block: Block): string {

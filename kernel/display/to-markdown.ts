@@ -2,6 +2,7 @@
 import { printFormula, printTerm } from "../../lib/language/printer.ts";
 import type { Inline } from "./blocks.ts";
 import { visible } from "./text.ts";
+import { relationAsMathematics } from "./to-latex.ts";
 
 export function inlineToMarkdown(parts: readonly Inline[]): string {
   return parts.map(pieceToMarkdown).join("");
@@ -15,7 +16,7 @@ function pieceToMarkdown(piece: Inline): string {
     case "term":
       return `$${printTerm(piece.term, "latex")}$`;
     case "relation":
-      return /^[A-Za-z]$/.test(piece.name) ? `$${piece.name}$` : escapeMarkdown(piece.name);
+      return relationAsMathematics(piece.name) ?? escapeMarkdown(piece.name);
     case "math":
       return `$${piece.latex}$`;
     case "strong":
