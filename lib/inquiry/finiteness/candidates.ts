@@ -4,7 +4,7 @@
  */
 import { and, exists, type Formula, verum } from "../../logic/formula.ts";
 import type { Signature } from "../../logic/theory.ts";
-import { type Clues, negated } from "./clues.ts";
+import { cluesOf, negated } from "./clues.ts";
 import * as parts from "./parts.ts";
 import {
   type Different,
@@ -21,7 +21,7 @@ export interface Family {
 }
 
 /** The likeliest literals, and how many of them are put together in pairs. */
-const MOST_BASES = 8;
+const MOST_BASES = 12;
 const MOST_PAIRED = 6;
 
 const order: PrincipleShape = { principle: "endless-order", everywhere: true };
@@ -40,7 +40,8 @@ export class Candidates {
   readonly rare: readonly Family[];
   readonly #domains: readonly parts.Part[];
 
-  constructor(signature: Signature, clues: Clues) {
+  constructor(axioms: readonly Formula[], signature: Signature) {
+    const clues = cluesOf(axioms);
     const principles = principlesOf(signature);
     const { injective, maps } = principles;
     const ranked = parts.basesOf(signature, clues);
@@ -50,7 +51,8 @@ export class Candidates {
     const formulas = bases.flatMap(({ formula, witness }) => (witness === null ? [formula] : []));
     const steps = clues.steps.flatMap(parts.stepPartsOf);
     const relations = unique(steps.map(({ relation }) => relation));
-    const self = parts.selfPartsOf(signature);
+    const { sorts, loops } = parts.selfPartsOf(signature, axioms);
+    const self = [...sorts, ...loops];
 
     const ordersOf = ({ formula, witness }: parts.Part): readonly Family[] =>
       [formula, ...(signature.identity ? [parts.unequal(formula)] : []), parts.strict(formula)].map(
@@ -87,8 +89,24 @@ export class Candidates {
     ]);
     const paired = formulas.slice(0, MOST_PAIRED);
     const pairs = paired.flatMap((first) => paired.map((second) => [first, second] as const));
+    const isIn = (domain: Formula, families: readonly Family[]) =>
+      families.flatMap(({ shape, relation: { formula, witness } }) =>
+        witness === null ? [there(shape, domain, parts.within(formula, domain))] : [],
+      );
     this.special = [
-      ...self.flatMap((domain) =>
+      ...steps.flatMap(({ relation, domain }) =>
+        domain === null
+          ? []
+          : [order, ...maps].map((shape) =>
+              reasonOf(restrict(shape), {
+                domain: domain.formula,
+                relation: relation.formula,
+                witness: relation.witness,
+              }),
+            ),
+      ),
+      ...sorts.flatMap((domain) => isIn(domain, this.likely)),
+      ...loops.flatMap((domain) =>
         formulas.flatMap((relation) => [order, ...maps].map((shape) => there(shape, domain, relation))),
       ),
       ...formulas.flatMap((base) =>
@@ -105,6 +123,14 @@ export class Candidates {
           ),
         ),
       ),
+      ...sorts.flatMap((sort) =>
+        orders.flat().flatMap(({ shape, relation: { formula, witness } }) => {
+          const relation = parts.within(formula, sort);
+          return witness === null
+            ? [there(shape, and(sort, exists("y", and(parts.at(sort, "y"), relation))), relation)]
+            : [];
+        }),
+      ),
     ];
     this.unlikely = unique([
       ...others.flatMap((base) => [...ordersOf(base), ...maps.flatMap((shape) => mapsOf(base, shape))]),
@@ -114,7 +140,10 @@ export class Candidates {
       })),
       ...[
         ...pairs.map(([first, second]) => parts.composed(first, second)),
-        ...pairsOfLiterals(formulas, self),
+        ...pairsOfLiterals(formulas, [
+          ...others.flatMap((base) => (base.witness === null ? [base.formula] : [])).slice(0, MOST_PAIRED),
+          ...self,
+        ]),
       ].flatMap((formula) =>
         [order, ...injective].map((shape) => ({ shape, relation: { formula, witness: null } })),
       ),
@@ -194,8 +223,8 @@ function jointWitness(one: Witness | null, other: Witness | null): Witness | nul
 }
 
 /** φ and another literal of x and y, or of one of them. */
-function pairsOfLiterals(bases: readonly Formula[], self: readonly Formula[]): readonly Formula[] {
-  const literals = [...bases, ...self, ...self.map((one) => parts.at(one, "y"))];
+function pairsOfLiterals(bases: readonly Formula[], others: readonly Formula[]): readonly Formula[] {
+  const literals = unique([...bases, ...others, ...others.map((one) => parts.at(one, "y"))]);
   return bases.flatMap((base, place) => literals.slice(place + 1).map((other) => and(base, other)));
 }
 

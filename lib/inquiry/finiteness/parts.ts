@@ -16,6 +16,7 @@ import {
   not,
   or,
   type RelationSymbol,
+  sameFormula,
   substitute,
   type Variable,
   variablesOf,
@@ -101,7 +102,7 @@ export interface Base extends Part {
 
 /**
  * Literals of one relation, those that axioms speak of most first. Of relations with more than two places, two are x
- * and y; at the others there is anything, x, y, or one element, whichever it is.
+ * and y; at the others there is one element, of a witness or whichever it is, or anything, x or y.
  */
 export function basesOf({ relations }: Signature, clues: Clues): readonly Base[] {
   const found = relations
@@ -110,7 +111,10 @@ export function basesOf({ relations }: Signature, clues: Clues): readonly Base[]
       [true, false].flatMap((isPositive) =>
         pairsOf(relation.places).flatMap(([first, second]) => {
           const partners = clues.partners.get(partnerKey(relation, isPositive, first, second)) ?? 0;
-          return literalsOf(relation, first, second, isPositive).map((part) => ({ ...part, partners }));
+          return literalsOf(relation, first, second, isPositive, clues.witnesses).map((part) => ({
+            ...part,
+            partners,
+          }));
         }),
       ),
     );
@@ -122,6 +126,7 @@ function literalsOf(
   first: number,
   second: number,
   isPositive: boolean,
+  witnesses: readonly Witness[],
 ): readonly Part[] {
   const literal = (others: (place: number) => Variable) => {
     const args = Array.from({ length: relation.places }, (_, place) =>
@@ -132,7 +137,11 @@ function literalsOf(
   if (relation.places === 2) return [{ formula: literal(() => "x"), witness: null }];
   const names = OTHERS.slice(0, relation.places);
   const rest = names.filter((_, place) => place !== first && place !== second);
+  const kept = [...witnesses, { parameters: ["a"], given: verum }];
   return [
+    ...kept.flatMap((witness) =>
+      witness.parameters.map((parameter) => ({ formula: literal(() => parameter), witness })),
+    ),
     {
       formula: exists(
         rest,
@@ -142,7 +151,6 @@ function literalsOf(
     },
     { formula: literal(() => "x"), witness: null },
     { formula: literal(() => "y"), witness: null },
-    { formula: literal(() => "a"), witness: { parameters: ["a"], given: verum } },
   ];
 }
 
@@ -183,8 +191,10 @@ export function stepPartsOf({ witness, from, guard, to, body }: Step): readonly 
       const renaming = new Map(others.map((one, place) => [one, names[place]!])).set(start, "x").set(to, "y");
       const [relation, domain] = [substitute(body, renaming), substitute(guard, renaming)];
       if (names[0] === "z") add(exists(names, and(domain, relation)), exists(names, domain));
-      else if (witness === null && freeVariables(domain).length > names.length)
-        add(relation, domain, { parameters: names, given: exists("x", domain) });
+      else if (witness === null) {
+        const isWhole = domain.kind === "true";
+        add(relation, domain, { parameters: names, given: isWhole ? verum : exists("x", domain) });
+      }
     }
   }
   return found;
@@ -200,14 +210,29 @@ function tidy(formula: Formula): Formula {
   return (inner.kind === "and" ? and : or)(...parts);
 }
 
-/** Parts of the elements by what is said of an element alone. */
-export function selfPartsOf({ relations }: Signature): readonly Formula[] {
-  return relations
-    .filter(({ places }) => places <= 2)
-    .flatMap((relation) => {
-      const own = atom(relation, ...(relation.places === 1 ? ["x"] : ["x", "x"]));
-      return [own, not(own)];
-    });
+/** Parts of the elements by what is said of an element alone: by relations of one place, and by loops. */
+export function selfPartsOf(
+  { relations }: Signature,
+  axioms: readonly Formula[],
+): { readonly sorts: readonly Formula[]; readonly loops: readonly Formula[] } {
+  const own = ({ places }: RelationSymbol) => Array.from({ length: places }, () => "x");
+  const both = (relation: RelationSymbol) => [
+    atom(relation, ...own(relation)),
+    not(atom(relation, ...own(relation))),
+  ];
+  const isSettled = (relation: RelationSymbol) =>
+    both(relation).some((one) => axioms.some((axiom) => sameFormula(axiom, forall("x", one))));
+  return {
+    sorts: relations.filter(({ places }) => places === 1).flatMap(both),
+    loops: relations.filter((relation) => relation.places === 2 && !isSettled(relation)).flatMap(both),
+  };
+}
+
+/** The formula with all its quantifiers about a part of the elements. */
+export function within(formula: Formula, sort: Formula): Formula {
+  const inner = mapParts(formula, (part) => within(part, sort));
+  if (inner.kind === "forall") return { ...inner, body: implies(at(sort, inner.variable), inner.body) };
+  return inner.kind === "exists" ? { ...inner, body: and(at(sort, inner.variable), inner.body) } : inner;
 }
 
 /** Elements without loops through which a relation is transitive, backwards and forwards. */

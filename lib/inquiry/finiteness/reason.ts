@@ -15,7 +15,8 @@ import {
 import {
   type CountingRecord,
   type EndlessOrderRecord,
-  obligationsOf,
+  type ObligationKind,
+  obligationRecordsOf,
   type PairsRecord,
   type PrincipleRecord,
 } from "../../logic/records/finiteness.ts";
@@ -39,16 +40,6 @@ export interface Obligation {
   /** What it says, for people: "it is transitive there". */
   readonly role: string;
 }
-
-export type ObligationKind =
-  | "parameters"
-  | "size"
-  | "irreflexive"
-  | "transitive"
-  | "successors"
-  | "predecessors"
-  | "spare"
-  | "values";
 
 export type Different = CountingRecord["different"];
 
@@ -96,36 +87,13 @@ export function obligationsFor(
   { record }: FinitenessReason,
   symbols: ReadonlyMap<string, RelationSymbol>,
 ): readonly Obligation[] | null {
-  const formulas = obligationsOf(record);
-  if (formulas === null) return null;
-  const kinds = kindsOf(record);
-  if (kinds.length !== formulas.length)
-    throw new Error(`${formulas.length} obligations, ${kinds.length} kinds`);
-  return formulas.map((formula, place) => {
-    const kind = kinds[place]!;
-    return { formula: formulaOf(formula, symbols), kind, role: roleOf(record, kind) };
-  });
-}
-
-function kindsOf(record: PrincipleRecord): readonly ObligationKind[] {
-  const parameters: readonly ObligationKind[] =
-    record.given === null || record.given[0] === "true" ? [] : ["parameters"];
-  const isEverywhere = record.domain[0] === "true";
-  const size: readonly ObligationKind[] = isEverywhere ? [] : ["size"];
-  switch (record.principle) {
-    case "endless-order": {
-      const parts = record.relation[0] === "and" ? partsOf(record.relation) : [record.relation];
-      return [...parameters, ...size, "irreflexive", ...parts.map(() => "transitive" as const), "successors"];
-    }
-    case "counting":
-      return record.spare === null
-        ? [...parameters, ...size, "successors", "predecessors"]
-        : [...parameters, "successors", "predecessors", "spare"];
-    case "pairs":
-      return [...parameters, "values", "predecessors", "size"];
-    case "comprehension":
-      return [...parameters, "spare", "values"];
-  }
+  const obligations = obligationRecordsOf(record);
+  if (obligations === null) return null;
+  return obligations.map(({ kind, sentence }) => ({
+    formula: formulaOf(sentence, symbols),
+    kind,
+    role: roleOf(record, kind),
+  }));
 }
 
 function roleOf(record: PrincipleRecord, kind: ObligationKind): string {

@@ -1,24 +1,29 @@
-/** The search for a reason why a theory has no finite model. */
+/**
+ * The search for a reason why a theory has no finite model: candidates in turn, the obligations of each derived with few
+ * clauses first and with more later. Where a model is known, all that is false in it falls away without a derivation.
+ */
 import type { Structure } from "../../carriers/structure.ts";
 import type { Derivation, DerivationTask } from "../../derivation/derive.ts";
 import { DerivationSearch } from "../../derivation/turns.ts";
 import type { Formula, RelationSymbol } from "../../logic/formula.ts";
-import { type Meter, WorkEnded } from "../../logic/meter.ts";
+import type { Meter } from "../../logic/meter.ts";
+import type { ObligationKind } from "../../logic/records/finiteness.ts";
 import { recordFormula } from "../../logic/records/formulas.ts";
 import type { Signature } from "../../logic/theory.ts";
 import { Solver } from "../../structures/sat/solver.ts";
-import { Candidates, everywhere } from "./candidates.ts";
-import { cluesOf } from "./clues.ts";
-import { isTrueIn } from "./filter.ts";
-import { type FinitenessReason, type Obligation, type ObligationKind, obligationsFor } from "./reason.ts";
-
+import { Candidates, everywhere, type Family } from "./candidates.ts";
+import { Filter } from "./filter.ts";
+import { type FinitenessReason, type Obligation, obligationsFor } from "./reason.ts";
 import { LONG, MIDDLE, OBLIGATION_TURNS, SHORT } from "./turns.ts";
 
 export type { FinitenessReason } from "./reason.ts";
 
 export interface NoFiniteModel {
   readonly reason: FinitenessReason;
-  /** What the reason asks for, in its order, each an axiom or derived. */
+  /**
+   * What the reason asks for, in its order, each an axiom or derived. When the axioms are found to contradict each
+   * other, there is just one, and its derivation does not use the conclusion.
+   */
   readonly obligations: readonly ShownObligation[];
 }
 export interface ShownObligation {
@@ -26,19 +31,19 @@ export interface ShownObligation {
   /** What it says, for people: "it is transitive there". */
   readonly role: string;
   /** Null when the very same sentence is an axiom. */
-  readonly spent?: number;
   readonly derived: { readonly task: DerivationTask; readonly derivation: Derivation } | null;
 }
 
 type Segment = "likely" | "parts" | "inclusions" | "special" | "unlikely" | "restricted" | "rare";
 
-/** One kind of reasons, each obligation with so many clauses. */
+/** Going through candidates of one kind, with so many clauses for each obligation. */
 interface Pass {
   readonly level: number;
   readonly segment: Segment;
   readonly clauses: number;
 }
 
+/** In a pass, an obligation that was given up before is begun again, since keeping all searches would take memory. */
 const PASSES: readonly Pass[] = [
   { level: 0, segment: "likely", clauses: SHORT },
   { level: 0, segment: "parts", clauses: SHORT },
@@ -73,221 +78,226 @@ const PASSES: readonly Pass[] = [
   { level: 5, segment: "rare", clauses: 20_000 },
 ];
 
+/** Thousandths of a step for looking at a candidate. */
+const LOOK = 200;
+
+/** A reason that is tried. */
 interface Attempt {
   readonly reason: FinitenessReason;
+  /** For each obligation. */
   readonly clauses: number;
-  /** Whether only what is asked of the relation is to be derived. */
-  readonly isPartial: boolean;
+  /** Whether only what is asked of φ is to be derived, to see whether φ is worth trying on parts of the elements. */
+  readonly ofRelation: boolean;
 }
 
-/** An obligation of some reasons. */
+/** A sentence that reasons ask for. */
 interface Goal {
   readonly formula: Formula;
-  readonly isAxiom: boolean;
+  state: "open" | "axiom" | "derived" | "refuted";
+  /** When it was derived. */
   derivation: Derivation | null;
-  /** Whether it is known not to follow. */
-  isRefuted: boolean;
-  /** Clauses that were generated in vain. */
+  /** Clauses that were generated for it in vain. */
   spent: number;
-  /** The last structure in which it is known to be true, or could not be evaluated. */
-  seen: Structure | null;
 }
 
+/** What is asked of φ alone. */
+const OF_RELATION: ReadonlySet<ObligationKind> = new Set(["irreflexive", "transitive", "predecessors"]);
+
+/** Obligations in the order in which they are derived: what fails soonest and what candidates share come first. */
+const ORDER: readonly ObligationKind[] = [
+  "parameters",
+  "size",
+  "successors",
+  "irreflexive",
+  "spare",
+  "predecessors",
+  "transitive",
+  "values",
+];
+
+/** The search for one theory. The same theory has the same outcome, however the steps are handed out. */
 export class FinitenessSearch {
-  /** Reasons tried. */
+  /** Reasons that were tried. */
   tried = 0;
-  costs: Record<string, { steps: number; n: number }> = {};
-  segment = "";
   readonly #axioms: readonly Formula[];
-  readonly #symbols: ReadonlyMap<string, RelationSymbol>;
   readonly #signature: Signature;
+  readonly #symbols: ReadonlyMap<string, RelationSymbol>;
+  /** By text. */
   readonly #goals = new Map<string, Goal>();
-  readonly #known: ReadonlySet<string>;
+  readonly #filter = new Filter();
   #candidates: Candidates | null = null;
-  #pass = 0;
-  #attempts: Generator<Attempt> | null = null;
-  #attempt: Attempt | null = null;
-  /** The search that was begun and could not be finished. */
-  #unfinished: { readonly goal: Goal; readonly search: DerivationSearch } | null = null;
+  /** How many passes are finished. */
+  #passes = 0;
+  /** The rest of the pass that was begun. */
+  #attempts: Iterator<Attempt, undefined> | null = null;
+  /** What was begun and could not be finished. */
+  #unfinished: Attempt | null = null;
+  #derivation: { readonly goal: Goal; readonly search: DerivationSearch } | null = null;
+
+  /**
+   * @param axioms closed
+   * @param signature that of the axioms
+   */
   constructor(axioms: readonly Formula[], signature: Signature) {
     this.#axioms = axioms;
     this.#signature = signature;
     this.#symbols = new Map(signature.relations.map((relation) => [relation.name, relation]));
-    this.#known = new Set(axioms.map((axiom) => JSON.stringify(recordFormula(axiom))));
+    for (const formula of axioms)
+      this.#goals.set(textOf(formula), { formula, state: "axiom", derivation: null, spent: 0 });
   }
 
+  /** Whether all levels are finished. */
   get isExhausted(): boolean {
-    return this.#pass >= PASSES.length;
+    return this.#passes === PASSES.length;
   }
 
+  /**
+   * Goes on from where it was, to the end of a level. Levels are of growing effort, from 0.
+   * @param model in which all axioms are true and that interprets the whole signature; null when none is known
+   * @returns null when there is nothing on these levels
+   * @throws WorkEnded when the meter ends; the next call goes on with the same reason
+   */
   advance(level: number, meter: Meter, model: Structure | null): NoFiniteModel | null {
-    for (; this.#pass < PASSES.length && PASSES[this.#pass]!.level <= level; this.#pass += 1) {
-      this.#attempts ??= this.#attemptsOf(PASSES[this.#pass]!);
-      for (;;) {
-        this.#attempt ??= this.#attempts.next().value ?? null;
-        if (this.#attempt === null) break;
-        const before = meter.left;
-        const found = this.#try(this.#attempt, meter, model);
-        const c = (this.costs[`${this.#pass} ${this.segment}`] ??= { steps: 0, n: 0 });
-        c.steps += (before - meter.left) / 1000;
-        c.n++;
-        if (found !== null) return found;
-        this.#attempt = null;
-        this.tried += 1;
-      }
+    for (; this.#passes < PASSES.length; this.#passes += 1) {
+      const pass = PASSES[this.#passes]!;
+      if (pass.level > level) break;
+      this.#attempts ??= this.#attemptsOf(pass);
+      const found = this.#finishPass(this.#attempts, meter, model);
+      if (found !== null) return found;
       this.#attempts = null;
     }
     return null;
   }
 
-  *#attemptsOf(pass: Pass): Generator<Attempt, undefined> {
-    if (this.#candidates === null) {
-      const clues = cluesOf(this.#axioms);
-      if (!clues.hasExistence) return;
-      this.#candidates = new Candidates(this.#signature, clues);
+  #finishPass(attempts: Iterator<Attempt, undefined>, meter: Meter, model: Structure | null) {
+    for (;;) {
+      const attempt = this.#unfinished ?? attempts.next().value;
+      if (attempt === undefined) return null;
+      this.#unfinished = attempt;
+      const found = this.#try(attempt, meter, model);
+      this.#unfinished = null;
+      this.tried += 1;
+      if (found !== null) return found;
     }
+  }
+
+  *#attemptsOf({ segment, clauses }: Pass): Generator<Attempt, undefined> {
+    this.#candidates ??= new Candidates(this.#axioms, this.#signature);
     const candidates = this.#candidates;
-    const { clauses } = pass;
-    this.segment = pass.segment;
-    switch (pass.segment) {
+    const attempt = (reason: FinitenessReason): Attempt => ({ reason, clauses, ofRelation: false });
+    switch (segment) {
       case "likely":
       case "unlikely":
       case "rare":
-        for (const family of candidates[pass.segment])
-          yield { reason: everywhere(family), clauses, isPartial: false };
+        for (const family of candidates[segment]) yield attempt(everywhere(family));
         return;
       case "special":
-        for (const reason of candidates.special) yield { reason, clauses, isPartial: false };
+        for (const reason of candidates.special) yield attempt(reason);
         return;
       case "restricted":
-        for (const reason of candidates.restricted()) yield { reason, clauses, isPartial: false };
+        for (const reason of candidates.restricted()) yield attempt(reason);
         return;
       case "parts":
-      case "inclusions": {
-        const lists =
-          pass.segment === "parts" ? candidates.alternatives : candidates.inclusions.map((one) => [one]);
-        for (const families of lists)
-          for (const family of families) {
-            const reason = everywhere(family);
-            yield { reason, clauses, isPartial: true };
-            if (!this.#isAsAsked(reason)) continue;
-            for (const part of candidates.onParts(family)) yield { reason: part, clauses, isPartial: false };
-            break;
-          }
-      }
+        for (const families of candidates.alternatives) yield* this.#onParts(families, clauses);
+        return;
+      case "inclusions":
+        for (const family of candidates.inclusions) yield* this.#onParts([family], clauses);
+        return;
     }
   }
 
-  #isAsAsked(reason: FinitenessReason): boolean {
-    const obligations = this.#obligationsOf(reason) ?? [];
-    return obligations.every(({ kind, formula }) => {
-      if (!OF_RELATION.has(kind)) return true;
-      const goal = this.#goal(formula);
-      return goal.isAxiom || goal.derivation !== null;
-    });
+  /** Of some families, the first whose φ is as its principle asks of all elements, on parts of them. */
+  *#onParts(families: readonly Family[], clauses: number): Generator<Attempt, undefined> {
+    for (const family of families) {
+      const reason = everywhere(family);
+      yield { reason, clauses, ofRelation: true };
+      const asked = obligationsFor(reason, this.#symbols)?.filter(({ kind }) => OF_RELATION.has(kind));
+      if (asked?.every(({ formula }) => isShown(this.#goal(formula))) !== true) continue;
+      for (const part of this.#candidates!.onParts(family))
+        yield { reason: part, clauses, ofRelation: false };
+      return;
+    }
   }
 
-  #try({ reason, clauses, isPartial }: Attempt, meter: Meter, model: Structure | null): NoFiniteModel | null {
-    meter.charge(100);
-    const obligations = this.#obligationsOf(reason);
+  #try(
+    { reason, clauses, ofRelation }: Attempt,
+    meter: Meter,
+    model: Structure | null,
+  ): NoFiniteModel | null {
+    meter.charge(LOOK);
+    const obligations = obligationsFor(reason, this.#symbols);
     if (obligations === null) return null;
-    const goals = obligations.map(({ formula }) => this.#goal(formula));
-    if (isPartial) {
-      obligations.every(
-        ({ kind }, place) => !OF_RELATION.has(kind) || this.#derive(goals[place]!, clauses, meter, model),
-      );
+    const asked = obligations
+      .filter(({ kind }) => !ofRelation || OF_RELATION.has(kind))
+      .map((obligation) => ({ obligation, goal: this.#goal(obligation.formula) }));
+    // What cannot be derived with so many clauses, or at all, is seen before anything is derived.
+    if (asked.some(({ goal }) => !isShown(goal) && !this.#isHopeful(goal, clauses, meter, model)))
       return null;
+    const inOrder = [...asked].sort(
+      (a, b) => ORDER.indexOf(a.obligation.kind) - ORDER.indexOf(b.obligation.kind),
+    );
+    for (const { obligation, goal } of inOrder) {
+      if (!isShown(goal)) this.#derive(goal, clauses, meter);
+      if (!isShown(goal)) return null;
+      if (goal.derivation?.usesConclusion === false)
+        return { reason, obligations: [this.#show(obligation, goal)] };
     }
-    if (goals.some((goal) => goal.isRefuted)) return null;
-    if (model !== null && !goals.every((goal) => this.#passes(goal, meter, model))) return null;
-    const order = [...goals.keys()].sort((a, b) => RANK[obligations[a]!.kind] - RANK[obligations[b]!.kind]);
-    if (!order.every((place) => this.#derive(goals[place]!, clauses, meter, model))) return null;
-    return {
-      reason,
-      obligations: obligations.map(({ formula, role }, place) => {
-        const { derivation, spent } = goals[place]!;
-        return {
-          formula,
-          role,
-          spent,
-          derived: derivation === null ? null : { task: this.#task(formula), derivation },
-        };
-      }),
-    };
+    if (ofRelation) return null;
+    return { reason, obligations: asked.map(({ obligation, goal }) => this.#show(obligation, goal)) };
   }
 
-  #obligationsOf(reason: FinitenessReason): readonly Obligation[] | null {
-    return obligationsFor(reason, this.#symbols);
+  #isHopeful(goal: Goal, clauses: number, meter: Meter, model: Structure | null): boolean {
+    if (goal.state === "refuted" || goal.spent >= clauses) return false;
+    if (model !== null && this.#filter.isFalse(model, goal.formula, meter)) goal.state = "refuted";
+    return goal.state === "open";
+  }
+
+  #derive(goal: Goal, clauses: number, meter: Meter): void {
+    const begun = this.#derivation?.goal === goal ? this.#derivation.search : null;
+    const search =
+      begun ??
+      new DerivationSearch(
+        this.#task(goal),
+        (onDerived) => new Solver({ observer: { onDerived } }),
+        OBLIGATION_TURNS,
+      );
+    this.#derivation = { goal, search };
+    while (goal.state === "open" && search.generated < clauses) {
+      const outcome = search.next(meter);
+      if (outcome.result === "derived") {
+        goal.state = "derived";
+        goal.derivation = outcome.derivation;
+      } else if (outcome.result === "saturated") goal.state = "refuted";
+    }
+    goal.spent = search.generated;
+    this.#derivation = null;
   }
 
   #goal(formula: Formula): Goal {
-    const text = JSON.stringify(recordFormula(formula));
+    const text = textOf(formula);
     let goal = this.#goals.get(text);
     if (goal === undefined) {
-      goal = {
-        formula,
-        isAxiom: this.#known.has(text),
-        derivation: null,
-        isRefuted: false,
-        spent: 0,
-        seen: null,
-      };
+      goal = { formula, state: "open", derivation: null, spent: 0 };
       this.#goals.set(text, goal);
     }
     return goal;
   }
 
-  #passes(goal: Goal, meter: Meter, model: Structure): boolean {
-    if (goal.isRefuted) return false;
-    if (goal.isAxiom || goal.derivation !== null || goal.seen === model) return true;
-    if (isTrueIn(model, goal.formula, meter) === false) goal.isRefuted = true;
-    goal.seen = model;
-    return !goal.isRefuted;
+  #task({ formula }: Goal): DerivationTask {
+    return { premises: this.#axioms, conclusion: formula };
   }
 
-  #task(conclusion: Formula): DerivationTask {
-    return { premises: this.#axioms, conclusion };
-  }
-
-  #derive(goal: Goal, clauses: number, meter: Meter, model: Structure | null): boolean {
-    if (goal.isAxiom || goal.derivation !== null) return true;
-    if (goal.isRefuted || goal.spent >= clauses) return false;
-    if (model !== null && !this.#passes(goal, meter, model)) return false;
-    let search = this.#unfinished?.goal === goal ? this.#unfinished.search : null;
-    search ??= new DerivationSearch(
-      this.#task(goal.formula),
-      (onDerived) => new Solver({ observer: { onDerived } }),
-      OBLIGATION_TURNS,
-    );
-    this.#unfinished = { goal, search };
-    while (search.generated < clauses) {
-      const outcome = search.next(meter);
-      if (outcome.result === "derived") {
-        goal.derivation = outcome.derivation;
-        break;
-      }
-      if (outcome.result === "saturated") {
-        goal.isRefuted = true;
-        break;
-      }
-    }
-    this.#unfinished = null;
-    goal.spent = search.generated;
-    return goal.derivation !== null;
+  #show({ formula, role }: Obligation, goal: Goal): ShownObligation {
+    const { derivation } = goal;
+    return { formula, role, derived: derivation === null ? null : { task: this.#task(goal), derivation } };
   }
 }
 
-/** Obligations about a relation alone. */
-const OF_RELATION: ReadonlySet<ObligationKind> = new Set(["irreflexive", "transitive", "predecessors"]);
+function isShown({ state }: Goal): boolean {
+  return state === "axiom" || state === "derived";
+}
 
-const RANK: Readonly<Record<ObligationKind, number>> = {
-  parameters: 0,
-  size: 1,
-  irreflexive: 3,
-  successors: 2,
-  spare: 3,
-  predecessors: 4,
-  transitive: 4,
-  values: 5,
-};
-void WorkEnded;
+/** As evidence sees a sentence: names of variables included. */
+function textOf(formula: Formula): string {
+  return JSON.stringify(recordFormula(formula));
+}

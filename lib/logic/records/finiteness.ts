@@ -111,13 +111,35 @@ export type PrincipleRecord = EndlessOrderRecord | CountingRecord | PairsRecord 
 /** Up to what successors, predecessors and pairs are counted. */
 export const MOST_COUNTED = 12;
 
+/** What an obligation is about. */
+export type ObligationKind =
+  | "parameters"
+  | "size"
+  | "irreflexive"
+  | "transitive"
+  | "successors"
+  | "predecessors"
+  | "spare"
+  | "values";
+
+/** A closed sentence. */
+export interface ObligationRecord {
+  readonly kind: ObligationKind;
+  readonly sentence: FormulaRecord;
+}
+
 /**
- * Closed sentences of which holds: a theory that entails all of them has no finite model. Empty domains do not occur. Each
+ * Sentences of which holds: a theory that entails all of them has no finite model. Empty domains do not occur. Each
  * proof stands at the type of its principle.
  * @param principle of the right types; nothing else is trusted
  * @returns null when the principle is not of its form, or its obligations would be too large
  */
 export function obligationsOf(principle: PrincipleRecord): readonly FormulaRecord[] | null {
+  return obligationRecordsOf(principle)?.map(({ sentence }) => sentence) ?? null;
+}
+
+/** The same, each with what it is about. */
+export function obligationRecordsOf(principle: PrincipleRecord): readonly ObligationRecord[] | null {
   try {
     const growth = new Growth();
     return isWellFormed(principle, growth) ? new Obligations(principle, growth).all() : null;
@@ -175,6 +197,9 @@ function isCounted(principle: Exclude<PrincipleRecord, EndlessOrderRecord>, grow
 /** Places of relations by which elements are told apart. */
 const MOST_PLACES = 100;
 
+/** What is asked of chosen parameters. */
+type Condition = readonly [ObligationKind, FormulaRecord];
+
 class Obligations {
   readonly #principle: PrincipleRecord;
   readonly #growth: Growth;
@@ -186,22 +211,24 @@ class Obligations {
     this.#parameters = new Set(principle.parameters);
   }
 
-  all(): readonly FormulaRecord[] {
+  all(): readonly ObligationRecord[] {
     const { parameters, given } = this.#principle;
-    const conditions = this.#conditions();
+    const conditions = this.#conditions().map(([kind, sentence]) => ({ kind, sentence }));
     if (given === null) return conditions;
     const isAnything = given[0] === "true";
     // What does not speak of the parameters is true whatever they are.
-    const isAbout = (condition: FormulaRecord) => freeVariables(condition).length > 0;
+    const close = (condition: FormulaRecord) =>
+      freeVariables(condition).length === 0
+        ? condition
+        : forall(parameters, implies(isAnything ? [] : [given], condition));
+    const existence = { kind: "parameters", sentence: exists(parameters, given) } as const;
     return [
-      ...(isAnything ? [] : [exists(parameters, given)]),
-      ...conditions.map((condition) =>
-        isAbout(condition) ? forall(parameters, implies(isAnything ? [] : [given], condition)) : condition,
-      ),
+      ...(isAnything ? [] : [existence]),
+      ...conditions.map(({ kind, sentence }) => ({ kind, sentence: close(sentence) })),
     ];
   }
 
-  #conditions(): readonly FormulaRecord[] {
+  #conditions(): readonly Condition[] {
     const principle = this.#principle;
     switch (principle.principle) {
       case "endless-order":
@@ -213,17 +240,16 @@ class Obligations {
         ];
       case "counting": {
         const { successors: k, predecessors: j, spare } = principle;
-        const balance = [this.#everySuccessors(k), this.#everyPredecessors(j, principle.everywhere)];
+        const balance = [this.#everySuccessors(k), ...this.#everyPredecessors(j, principle.everywhere)];
         if (spare === null) return [...this.#sizeAtLeast(1), ...balance];
-        return [
-          ...balance,
-          spare === "fewer-predecessors" ? this.#somePredecessors(k - 1) : this.#someSuccessors(k + 1),
-        ];
+        const one =
+          spare === "fewer-predecessors" ? this.#somePredecessors(k - 1) : this.#someSuccessors(k + 1);
+        return [...balance, one];
       }
       case "pairs":
         return [
           this.#everyPair(),
-          this.#everyValue(principle.pairs),
+          ...this.#everyValue(principle.pairs),
           ...this.#sizeAtLeast(principle.pairs + 1),
         ];
       case "comprehension":
@@ -232,73 +258,73 @@ class Obligations {
   }
 
   /** None when it is true of all domains. */
-  #sizeAtLeast(count: number): readonly FormulaRecord[] {
+  #sizeAtLeast(count: number): readonly Condition[] {
     const elements = this.#names(count);
     const parts = [...this.#inside(elements), ...this.#allDifferent(elements)];
-    return parts.length === 0 ? [] : [exists(elements, and(parts))];
+    return parts.length === 0 ? [] : [["size", exists(elements, and(parts))]];
   }
 
-  #irreflexive(everywhere: boolean): FormulaRecord {
+  #irreflexive(everywhere: boolean): Condition {
     const [x] = this.#names(1) as [string];
-    return forall([x], deny([...this.#inside([x], everywhere), this.#related(x, x)]));
+    return ["irreflexive", forall([x], deny([...this.#inside([x], everywhere), this.#related(x, x)]))];
   }
 
-  /** One sentence for each part of the conclusion. */
-  #transitive(everywhere: boolean): readonly FormulaRecord[] {
+  #transitive(everywhere: boolean): readonly Condition[] {
     const [x, y, z] = this.#names(3) as [string, string, string];
     const given = [...this.#inside([x, y, z], everywhere), this.#related(x, y), this.#related(y, z)];
-    const conclusion = this.#related(x, z);
-    const parts = conclusion[0] === "and" ? partsOf(conclusion) : [conclusion];
-    return parts.map((part) => forall([x, y, z], implies(given, part)));
+    return splitUp("transitive", [x, y, z], given, this.#related(x, z));
   }
 
-  #everySuccessors(count: number): FormulaRecord {
+  #everySuccessors(count: number): Condition {
     const [x, ...others] = this.#names(count + 1) as [string, ...string[]];
     const has = exists(others, and(this.#successors(x, others)));
-    return forall([x], implies(this.#inside([x]), has));
+    return ["successors", forall([x], implies(this.#inside([x]), has))];
   }
 
-  #someSuccessors(count: number): FormulaRecord {
+  #someSuccessors(count: number): Condition {
     const [x, ...others] = this.#names(count + 1) as [string, ...string[]];
-    return exists([x, ...others], and([...this.#inside([x]), ...this.#successors(x, others)]));
+    return ["spare", exists([x, ...others], and([...this.#inside([x]), ...this.#successors(x, others)]))];
   }
 
-  #everyPredecessors(most: number, everywhere: boolean): FormulaRecord {
+  #everyPredecessors(most: number, everywhere: boolean): readonly Condition[] {
     const elements = this.#names(most + 2);
     const [y, others] = [elements.at(-1)!, elements.slice(0, -1)];
     const given = [...this.#inside([y], everywhere), ...this.#predecessors(others, y, everywhere)];
-    return forall([...others, y], implies(given, this.#someSame(others.map((one) => [one]))));
+    // Of two: since they can change places, it is enough that what one is related to, the other is.
+    const conclusion =
+      most === 1 ? this.#same(others[0]!, others[1]!, "implies") : this.#someSame(others.map((one) => [one]));
+    return splitUp("predecessors", [...others, y], given, conclusion);
   }
 
-  #somePredecessors(most: number): FormulaRecord {
+  #somePredecessors(most: number): Condition {
     const elements = this.#names(most + 2);
     const [y, others] = [elements.at(-1)!, elements.slice(0, -1)];
     const given = this.#predecessors(others, y);
     const body = most === 0 ? deny(given) : implies(given, this.#someSame(others.map((one) => [one])));
-    return exists([y], and([...this.#inside([y]), forall(others, body)]));
+    return ["spare", exists([y], and([...this.#inside([y]), forall(others, body)]))];
   }
 
-  #everyPair(): FormulaRecord {
+  #everyPair(): Condition {
     const [x, y, z] = this.#names(3) as [string, string, string];
     const has = exists([z], and([...this.#inside([z]), this.#related(x, y, z)]));
-    return forall([x, y], implies(this.#inside([x, y]), has));
+    return ["values", forall([x, y], implies(this.#inside([x, y]), has))];
   }
 
   /** Of one more pairs of the same value than there may be, two are the same. */
-  #everyValue(most: number): FormulaRecord {
+  #everyValue(most: number): readonly Condition[] {
     const elements = this.#names(2 * most + 3);
     const [z, others] = [elements.at(-1)!, elements.slice(0, -1)];
     const pairs = Array.from({ length: most + 1 }, (_, place) => others.slice(2 * place, 2 * place + 2));
     const given = [...this.#inside(elements), ...pairs.map(([x, y]) => this.#related(x!, y!, z))];
-    return forall(elements, implies(given, this.#someSame(pairs)));
+    return splitUp("predecessors", elements, given, this.#someSame(pairs));
   }
 
-  #adjunction(): FormulaRecord {
+  #adjunction(): Condition {
     const [x, y, z, w] = this.#names(4) as [string, string, string, string];
     const either = or([this.#related(w, x), this.#same(w, y)]);
     const like = forall([w], implies(this.#inside([w]), ["iff", this.#related(w, z), either]));
     const has = exists([z], and([...this.#inside([z]), like]));
-    return forall([x, y], implies(this.#inside([x, y]), has));
+    return ["values", forall([x, y], implies(this.#inside([x, y]), has))];
   }
 
   /** That different elements of D are successors of x. */
@@ -328,20 +354,26 @@ class Obligations {
     );
   }
 
-  #same(one: string, other: string): FormulaRecord {
+  /** @param how `implies` for what, said of both elements in both orders, says that they are the same */
+  #same(one: string, other: string, how: "iff" | "implies" = "iff"): FormulaRecord {
     const { different } = this.#principle as Exclude<PrincipleRecord, EndlessOrderRecord>;
     this.#growth.add();
     if (different === "identity") return ["=", one, other];
-    return and(different.flatMap((relation) => this.#alike(relation, one, other)));
+    return and(different.flatMap((relation) => this.#alike(relation, one, other, how)));
   }
 
-  /** For each place of a relation: that one element can stand there just if the other can. */
-  #alike([name, places]: CountedRelation, one: string, other: string): readonly FormulaRecord[] {
+  /** For each place of a relation: that the other element can stand there if (just if) the one can. */
+  #alike(
+    [name, places]: CountedRelation,
+    one: string,
+    other: string,
+    how: "iff" | "implies",
+  ): readonly FormulaRecord[] {
     this.#growth.add(2 * places * places);
     const others = newNames(places - 1, new Set([one, other]));
     return Array.from({ length: places }, (_, place): FormulaRecord => {
       const holds = (element: string): FormulaRecord => ["is", name, ...others.toSpliced(place, 0, element)];
-      return forall(others, ["iff", holds(one), holds(other)]);
+      return forall(others, [how, holds(one), holds(other)]);
     });
   }
 
@@ -405,6 +437,17 @@ function or(parts: readonly FormulaRecord[]): FormulaRecord {
 
 function implies(given: readonly FormulaRecord[], body: FormulaRecord): FormulaRecord {
   return given.length === 0 ? body : ["implies", and(given), body];
+}
+
+/** A sentence for each part of a conclusion, since they are derived one by one. */
+function splitUp(
+  kind: ObligationKind,
+  variables: readonly string[],
+  given: readonly FormulaRecord[],
+  conclusion: FormulaRecord,
+): readonly Condition[] {
+  const parts = conclusion[0] === "and" ? partsOf(conclusion) : [conclusion];
+  return parts.map((part) => [kind, forall(variables, implies(given, part))]);
 }
 
 /** That not all of some formulas, at least one, are true. */
