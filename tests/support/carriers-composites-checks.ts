@@ -37,6 +37,7 @@ import {
   sum,
   tuples,
 } from "./carriers-composites.ts";
+import type { Types } from "./carriers-lines.ts";
 import { sentences } from "./random-formulas.ts";
 import { configurationOf, elementsWith, isFormulaTrue, type TrueElement, windowOf } from "./true-elements.ts";
 
@@ -207,6 +208,44 @@ export function checkGames(description: CarrierDescription, moves: number, optio
   fc.assert(
     fc.property(fc.gen(), (choose) => play(carrier, description, moves, choose)),
     options,
+  );
+}
+
+/**
+ * What formulas of a depth say of true elements: of depth 0 their kind, of depth r + 1 the types of depth r of all tuples with
+ * one element more (Ehrenfeucht 1961, Fraïssé 1954). Kinds are checked elsewhere.
+ */
+export function typeOfTrue(
+  carrier: Carrier,
+  description: CarrierDescription,
+  elements: readonly TrueElement[],
+  depth: number,
+  types: Types,
+): number {
+  if (depth === 0) {
+    const configuration = configurationOf(description, elements);
+    return types.of(`kind ${carrier.kindOf(configuration, allPlaces(elements.length))}`);
+  }
+  return types.ofAll(
+    windowOf(description, elements, depth - 1).map((element) =>
+      typeOfTrue(carrier, description, [...elements, element], depth - 1, types),
+    ),
+  );
+}
+
+/** The same of what a carrier lists, a configuration of so many elements. */
+export function typeOfListed(
+  carrier: Carrier,
+  configuration: unknown,
+  length: number,
+  depth: number,
+  types: Types,
+): number {
+  if (depth === 0) return types.of(`kind ${carrier.kindOf(configuration, allPlaces(length))}`);
+  return types.ofAll(
+    carrier
+      .extensions(configuration, depth - 1)
+      .map((extended) => typeOfListed(carrier, extended, length + 1, depth - 1, types)),
   );
 }
 
