@@ -130,7 +130,7 @@ function sourceText(obligation: ShownObligation, axioms: readonly Axiom[]): stri
     return label === undefined ? "an axiom" : `axiom ${label}`;
   }
   const labels = derivation.premises.map(({ label }) => label);
-  return labels.length === 0 ? "no axiom: it is always true" : enumerate(labels);
+  return labels.length === 0 ? "always true" : enumerate(labels);
 }
 
 const NUMBERS = ["no", "one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten", "eleven", "twelve", "thirteen"]; // biome-ignore format: a list

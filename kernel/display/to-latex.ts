@@ -5,8 +5,8 @@
 import { printFormula, printTerm } from "../../lib/language/printer.ts";
 import { relationSigns } from "../../lib/language/tokens.ts";
 import type { Block, Inline, TableBlock } from "./blocks.ts";
-import { visible } from "./text.ts";
-import { longColumns } from "./to-text.ts";
+import { visible, widestOf } from "./text.ts";
+import { inlineToText, longColumns } from "./to-text.ts";
 
 /** Rows above which a table may break across pages. */
 const LONG_TABLE = 24;
@@ -147,11 +147,15 @@ function blockToLatex(block: Block): string {
 function tableToLatex(table: TableBlock): string {
   const columns = columnsOf(table);
   // In ragged columns \\ ends a line of the cell.
-  const rowEnd = table.look === "derivation" ? "\\tabularnewline" : "\\\\";
+  const isNarrow = table.look === "derivation" || table.look === "prose";
+  const rowEnd = isNarrow ? "\\tabularnewline" : "\\\\";
+  const isLong = longColumns(table);
   const row = (cells: readonly string[]) => `${cells.join(" & ")} ${rowEnd}`;
   const head = row(table.head.map(escapeLatex));
   // Sentences and reasons are in narrow columns, where lines of equal length would tear formulas apart.
-  const isRagged = (column: number) => table.look === "derivation" && column > 0;
+  const isRagged = (column: number) =>
+    (table.look === "derivation" && column > 0) ||
+    (table.look === "prose" && (isLong[column]! || column === table.head.length - 1));
   const rows = table.rows.map((cells) =>
     row(
       cells.map((cell, column) => {
@@ -186,6 +190,18 @@ function columnsOf(table: TableBlock): string {
   if (look === "kinds") return `${longColumns(table)[0] ? "p{0.6\\linewidth}" : "l"}${"c".repeat(last)}`;
   const isLong = longColumns(table);
   const before = isLong.map((long) => (long && last > 0 ? "p{0.3\\linewidth}" : "l"));
-  const rest = last > 2 || isLong.includes(true) ? "0.4" : "0.65";
+  const most = last > 2 || isLong.includes(true) ? 0.4 : 0.65;
+  const used = isLong.slice(0, last).map((long, column) => (long ? 0.3 : naturalShare(table, column)));
+  const left = 0.98 - used.reduce((sum, share) => sum + share + BETWEEN_COLUMNS, 0);
+  const rest = Math.max(0.3, Math.min(most, Math.floor(left * 100) / 100));
   return `${before.slice(0, last).join("")}p{${rest}\\linewidth}`;
+}
+
+/** Parts of the line that a character takes on the average, and the space between columns. */
+const CHARACTER = 0.0135;
+const BETWEEN_COLUMNS = 0.035;
+
+/** The part of the line that a column takes by its widest cell. */
+function naturalShare({ head, rows }: TableBlock, column: number): number {
+  return CHARACTER * widestOf([head[column]!, ...rows.map((row) => inlineToText(row[column] ?? []))]);
 }
