@@ -4,15 +4,13 @@
  * `lib/logic`.
  */
 
-import { buildCarrier } from "../carriers/build.ts";
 import { readCertificate } from "../carriers/free-terms.ts";
 import { checkCertificate } from "../carriers/free-terms-check.ts";
-import { countKinds } from "../carriers/listing.ts";
 import { Meter, WorkEnded } from "../logic/meter.ts";
 import { FormulaTooLarge } from "../logic/records/formulas.ts";
 import { checkDerivation } from "./derivation.ts";
 import { digestOf } from "./digest.ts";
-import { isTrueIn } from "./evaluate.ts";
+import { evaluatorOf } from "./evaluate.ts";
 import type { FormulaRecord, StructureFact, TermsFact } from "./format.ts";
 import { checkNoFiniteModel } from "./no-finite-model.ts";
 import { checkNoModel } from "./no-model.ts";
@@ -64,13 +62,8 @@ function checkStructure(
   at: string,
   meter: Meter,
 ): void {
-  const carrier = buildCarrier(structure.carrier);
-  for (const [relation, { places, holds: kinds }] of Object.entries(structure.tables)) {
-    const count = countKinds(carrier, places);
-    if (!Number.isFinite(count) || (kinds.at(-1) ?? 0) >= count)
-      reject(`${at}: ${relation} has kinds of tuples that there are not, or that are too many to list`);
-  }
-  const isTrue = (index: number) => isTrueIn(structure, sentences[index]!, meter);
+  const evaluate = evaluatorOf(structure, at, meter);
+  const isTrue = (index: number) => evaluate(sentences[index]!);
   const wrong = holds.find((index) => !isTrue(index));
   if (wrong !== undefined) reject(`${at}: sentence ${wrong} is said to hold in the structure and does not`);
   if (fails?.every(isTrue))

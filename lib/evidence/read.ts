@@ -5,6 +5,9 @@
 import { readTerms } from "../carriers/free-terms.ts";
 import { type FormulaRecord, freeVariables } from "../logic/records/formulas.ts";
 import {
+  type BooleanAlgebraDescription,
+  type CarrierDescription,
+  countComponents,
   GENERIC_CLASSES,
   LARGEST_DOMAIN,
   LARGEST_OFFSET,
@@ -28,6 +31,8 @@ export function reject(message: string): never {
 
 /** Nesting beyond which evidence is refused, so that no recursion here runs out of stack. */
 const DEEPEST = 2_000;
+/** Places of relations in structures, and parameters of principles. */
+const MOST_PLACES = 100;
 
 /**
  * Refuses what does not have a shape.
@@ -122,31 +127,40 @@ const flag: Shape = (value, at) => {
   if (typeof value !== "boolean") reject(`${at}: ${show(value)} is neither true nor false`);
 };
 const offset = whole(0, LARGEST_OFFSET);
-const carrier: Shape = (value, at, sentences) => carriers(value, at, sentences);
-const carriers = oneOf("kind", {
+const component: Shape = (value, at, sentences) => components(value, at, sentences);
+const components = oneOf("kind", {
   points: object({ kind: name, size: whole(1, LARGEST_DOMAIN) }),
   "dense-line": object({ kind: name, colours: whole(1, MOST_COLOURS) }),
   "integer-line": object({ kind: name, offset }),
   "half-line": object({ kind: name, offset, ends: offset }),
   tuples: object({
     kind: name,
-    over: carrier,
+    over: component,
     widths: list([whole(0, MOST_COMPONENTS)], whole(0, MOST_COMPONENTS)),
   }),
-  sum: object({ kind: name, parts: list([carrier, carrier], carrier) }),
-  product: object({ kind: name, outer: carrier, inner: carrier }),
+  sum: object({ kind: name, parts: list([component, component], component) }),
+  product: object({ kind: name, outer: component, inner: component }),
   generic: object({ kind: name, of: wordOf(GENERIC_CLASSES) }),
-  "boolean-algebra": object({ kind: name, zero: flag, top: flag }),
+  "boolean-algebra": (value, at, sentences) => {
+    object({ kind: name, zero: flag, top: flag })(value, at, sentences);
+    const { zero, top } = value as BooleanAlgebraDescription;
+    if (zero && !top) reject(`${at}: there is no Boolean algebra with its zero and without its top`);
+  },
   "dense-tree": object({ kind: name }),
   forest: object({ kind: name, branching: whole(1, MOST_COMPONENTS), rooted: flag, offset, ends: offset }),
 });
+const carrier: Shape = (value, at, sentences) => {
+  component(value, at, sentences);
+  const count = countComponents(value as CarrierDescription);
+  if (count > MOST_COMPONENTS) reject(`${at} has ${count} components, more than ${MOST_COMPONENTS}`);
+};
 
 const structure: Shape = (value, at, sentences) => {
   object({ carrier, tables: readObject })(value, at, sentences);
   const record = value as StructureRecord;
   for (const [relation, table] of Object.entries(record.tables)) {
     const where = `${at}, table ${relation}`;
-    object({ places: whole(1), holds: listOf(number) })(table, where, sentences);
+    object({ places: whole(1, MOST_PLACES), holds: listOf(number) })(table, where, sentences);
     if (table.holds.some((kind, place) => kind <= (table.holds[place - 1] ?? -1)))
       reject(`${where}: kinds are not in ascending order`);
   }
@@ -175,7 +189,11 @@ const derivation = {
   made: listOf(made),
   lines: listOf(line),
 };
-const withoutTerms = { parameters: listOf(name), given: nullOr(plain), domain: plain, relation: plain };
+const parameters: Shape = (value, at, sentences) => {
+  listOf(name)(value, at, sentences);
+  if ((value as unknown[]).length > MOST_PLACES) reject(`${at}: more than ${MOST_PLACES} parameters`);
+};
+const withoutTerms = { parameters, given: nullOr(plain), domain: plain, relation: plain };
 const different: Shape = (value, at, sentences) =>
   (value === "identity" ? any : listOf(list([name, whole(1)])))(value, at, sentences);
 const principle = oneOf("principle", {

@@ -4,6 +4,7 @@
  */
 import {
   type CarrierDescription,
+  countComponents,
   GENERIC_CLASSES,
   LARGEST_DOMAIN,
   MOST_COLOURS,
@@ -102,22 +103,6 @@ export function readCarrier(reader: Reader): CarrierReading | null {
     return null;
   }
   return { description, coordinates: carriers.coordinates };
-}
-
-/** How many carriers that are made of no others an element, or another one, may be in or have coordinates in. */
-function countComponents(description: CarrierDescription): number {
-  switch (description.kind) {
-    case "tuples": {
-      const over = countComponents(description.over);
-      return description.widths.reduce((sum, width) => sum + Math.max(1, width * over), 0);
-    }
-    case "sum":
-      return description.parts.reduce((sum, part) => sum + countComponents(part), 0);
-    case "product":
-      return countComponents(description.outer) + countComponents(description.inner);
-    default:
-      return 1;
-  }
 }
 
 class CarrierReader {

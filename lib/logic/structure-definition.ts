@@ -122,13 +122,33 @@ export type CarrierDescription =
   | DenseTreeDescription
   | ForestDescription;
 
+/** How many carriers that are made of no others an element, or another one, may be in or have coordinates in. */
+export function countComponents(description: CarrierDescription): number {
+  switch (description.kind) {
+    case "tuples": {
+      const over = countComponents(description.over);
+      return description.widths.reduce((sum, width) => sum + Math.max(1, width * over), 0);
+    }
+    case "sum":
+      return description.parts.reduce((sum, part) => sum + countComponents(part), 0);
+    case "product":
+      return countComponents(description.outer) + countComponents(description.inner);
+    default:
+      return 1;
+  }
+}
+
 /**
  * What a definition on an infinite carrier says of its elements. Variables stand for elements; where the carrier is made
  * of others, a path leads to a component: of tuples the number of the coordinate, from 1; of a product `"outer"` or
  * `"inner"`; of a sum nothing, since its elements are those of the parts.
  */
 export type ElementTerm =
-  | { readonly kind: "element"; readonly variable: string; readonly path: readonly (number | "outer" | "inner")[] }
+  | {
+      readonly kind: "element";
+      readonly variable: string;
+      readonly path: readonly (number | "outer" | "inner")[];
+    }
   /**
    * A number of the half line or the integer line; the zero and the one of a Boolean algebra; in a rooted forest an
    * element so many steps from the root (of which there may be several: `x = 1` says that x is one).
@@ -137,14 +157,32 @@ export type ElementTerm =
   /** So many steps further along an integer line or half line; to the left when negative. */
   | { readonly kind: "shift"; readonly of: ElementTerm; readonly by: number }
   /** `meet` of two in a dense tree or Boolean algebra, `join` of two and `co` of one there, `parent` of one in a forest. */
-  | { readonly kind: "apply"; readonly name: "meet" | "join" | "co" | "parent"; readonly args: readonly ElementTerm[] };
+  | {
+      readonly kind: "apply";
+      readonly name: "meet" | "join" | "co" | "parent";
+      readonly args: readonly ElementTerm[];
+    };
 
 export type CarrierAtom =
-  | { readonly kind: "compare"; readonly relation: "=" | "<" | "≤"; readonly left: ElementTerm; readonly right: ElementTerm }
+  | {
+      readonly kind: "compare";
+      readonly relation: "=" | "<" | "≤";
+      readonly left: ElementTerm;
+      readonly right: ElementTerm;
+    }
   /** The colour of an element of a coloured line, the copy (tag) of a tuple, the part of a sum; counted from 1. */
-  | { readonly kind: "label"; readonly name: "colour" | "copy" | "part"; readonly of: ElementTerm; readonly value: number }
+  | {
+      readonly kind: "label";
+      readonly name: "colour" | "copy" | "part";
+      readonly of: ElementTerm;
+      readonly value: number;
+    }
   /** `adjacent` in the generic graph, `arc` from one to the other in the generic digraph, `beats` in the tournament. */
-  | { readonly kind: "holds"; readonly name: "adjacent" | "arc" | "beats"; readonly args: readonly ElementTerm[] };
+  | {
+      readonly kind: "holds";
+      readonly name: "adjacent" | "arc" | "beats";
+      readonly args: readonly ElementTerm[];
+    };
 
 /** A formula without quantifiers about elements of a carrier. */
 export type CarrierFormula =
@@ -172,4 +210,7 @@ export interface DefinedRelation {
 /** A carrier and the relations that are defined on it; other relations are undefined there. */
 export type StructureDefinition =
   | { readonly carrier: PointsDescription; readonly relations: readonly ListedRelation[] }
-  | { readonly carrier: Exclude<CarrierDescription, PointsDescription>; readonly relations: readonly DefinedRelation[] };
+  | {
+      readonly carrier: Exclude<CarrierDescription, PointsDescription>;
+      readonly relations: readonly DefinedRelation[];
+    };
