@@ -39,8 +39,8 @@ async function runDemo(name: string): Promise<readonly Ran[]> {
 }
 
 describe("demo notebooks", () => {
-  it("are four", () => {
-    expect(files).toHaveLength(4);
+  it("are five", () => {
+    expect(files).toHaveLength(5);
   });
 
   it.each(files)("%s is of nbformat 4.5, for this kernel, without outputs", (name) => {
