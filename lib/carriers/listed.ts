@@ -21,8 +21,8 @@ export abstract class Listed<Configuration extends object> implements Carrier<Co
   /** By how many quantifiers are still to come: extensions by the key of what they extend. */
   readonly #extensions: Map<string, readonly Configuration[]>[] = [];
   #remembered = 0;
-  /** For each configuration, kinds of tuples by their places. */
-  readonly #kinds = new WeakMap<Configuration, Map<number | string, number>>();
+  /** Where a configuration remembers the kinds of its tuples, by their places. Weak maps of so many would be slow. */
+  readonly #kinds = Symbol("kinds");
 
   /** What {@link extensions} lists, without a configuration twice. */
   protected abstract list(configuration: Configuration, toCome: number): readonly Configuration[];
@@ -53,10 +53,11 @@ export abstract class Listed<Configuration extends object> implements Carrier<Co
   }
 
   kindOf(configuration: Configuration, places: readonly number[]): number {
-    let kinds = this.#kinds.get(configuration);
+    const memory = configuration as { [kinds: symbol]: Map<number | string, number> | undefined };
+    let kinds = memory[this.#kinds];
     if (kinds === undefined) {
       kinds = new Map();
-      this.#kinds.set(configuration, kinds);
+      memory[this.#kinds] = kinds;
     }
     const place = places.length === 2 ? places[0]! * 4096 + places[1]! : places.join();
     let kind = kinds.get(place);
