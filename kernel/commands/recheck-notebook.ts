@@ -4,7 +4,7 @@
  * evidence that the checker accepts.
  */
 import * as v from "valibot";
-import { checkEvidence } from "../../lib/evidence/check.ts";
+import { checkEvidence, meterForCheck } from "../../lib/evidence/check.ts";
 import type { Evidence } from "../../lib/evidence/format.ts";
 import { type Asked, digestOfAsked } from "../../lib/inquiry/question-record.ts";
 import { parseCell } from "../../lib/language/parser.ts";
@@ -169,7 +169,7 @@ function recheckOutput(statement: Statement, { result, data }: StoredOutput): Om
     return judge("does not hold", `the stored evidence is damaged: ${(problem as Error).message}`);
   }
   const wrong =
-    findRejection(evidence) ??
+    findRejection(statement, evidence) ??
     findOtherQuestion(statement, evidence) ??
     findDisagreement(statement, result, evidence) ??
     findOtherReading(statement, result) ??
@@ -181,9 +181,10 @@ function recheckOutput(statement: Statement, { result, data }: StoredOutput): Om
   return judge("accepted", uncertified);
 }
 
-function findRejection(evidence: unknown): string | null {
+function findRejection(statement: Statement, evidence: unknown): string | null {
   if (evidence === null) return null;
-  const check = checkEvidence(evidence);
+  const budget = isQuestion(statement) ? statement.options.within : null;
+  const check = checkEvidence(evidence, meterForCheck(budget ?? undefined));
   return check.accepted ? null : `the checker rejects the evidence: ${check.reason}`;
 }
 

@@ -6,7 +6,7 @@
 
 import { readCertificate } from "../carriers/free-terms.ts";
 import { checkCertificate } from "../carriers/free-terms-check.ts";
-import { Meter, WorkEnded } from "../logic/meter.ts";
+import { DEFAULT_BUDGET, Meter, type Poll, WorkEnded } from "../logic/meter.ts";
 import { FormulaTooLarge } from "../logic/records/formulas.ts";
 import { checkDerivation } from "./derivation.ts";
 import { digestOf } from "./digest.ts";
@@ -21,14 +21,22 @@ export type CheckResult =
   | { readonly accepted: true; readonly steps: number }
   | { readonly accepted: false; readonly reason: string };
 
+/** A check may take so many times the steps of the question. */
+const STEPS_FOR_EACH = 5;
+
+/**
+ * The meter of a check: evidence that is accepted once is accepted by every check with the same budget.
+ * @param budget steps that the question may take; checks of small questions are not cut short
+ */
+export function meterForCheck(budget: number = DEFAULT_BUDGET, isInterrupted?: Poll): Meter {
+  return new Meter(STEPS_FOR_EACH * Math.max(budget, DEFAULT_BUDGET), isInterrupted);
+}
+
 /**
  * Checks evidence of any origin.
  * @param meter bounds the check; when it ends, the evidence is not accepted
  */
-export function checkEvidence(
-  value: unknown,
-  meter: Meter = new Meter(Number.POSITIVE_INFINITY),
-): CheckResult {
+export function checkEvidence(value: unknown, meter: Meter = meterForCheck()): CheckResult {
   try {
     const evidence = readEvidence(value);
     const { sentences, facts } = evidence;
