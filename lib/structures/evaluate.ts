@@ -17,7 +17,7 @@ export function satisfies(structure: Structure, sentence: Formula, meter: Meter)
   const { carrier, tables } = structure;
   const memory = new Memory<boolean>();
   let unmetered = 0;
-  const result = truth(planSentence(sentence), carrier.empty);
+  const result = truth(planSentence(sentence, carrier.size === null), carrier.empty);
   meter.charge(unmetered);
   return result;
 

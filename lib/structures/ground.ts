@@ -47,7 +47,7 @@ export function ground(
 ): Reference {
   const memory = new Memory<Reference>();
   let unmetered = 0;
-  const result = unfold(planSentence(sentence), carrier.empty);
+  const result = unfold(planSentence(sentence, carrier.size === null), carrier.empty);
   meter.charge(unmetered);
   return result;
 

@@ -31,7 +31,10 @@ export function findLazily(task: SearchTask, meter: Meter): SearchOutcome {
 }
 
 function search({ carrier, sentences, relations }: SearchTask, meter: Meter): SearchOutcome {
-  const plans = sentences.map((sentence) => ({ sentence, plan: planSentence(sentence) }));
+  const plans = sentences.map((sentence) => ({
+    sentence,
+    plan: planSentence(sentence, carrier.size === null),
+  }));
   const deep: { readonly plan: Plan; readonly visits: number }[] = [];
   const solver = new Solver();
   const circuit = new Circuit(meter);

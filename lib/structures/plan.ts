@@ -34,10 +34,14 @@ export type Plan =
   | { readonly kind: "implies" | "iff"; readonly first: Plan; readonly second: Plan }
   | QuantifierPlan;
 
-/** Prepares a closed formula. */
-export function planSentence(sentence: Formula): Plan {
+/**
+ * Prepares a closed formula.
+ * @param recurs whether the same configuration comes back everywhere, as it does on infinite carriers: of those listed for
+ *   one quantifier many need not be told apart any more by the next
+ */
+export function planSentence(sentence: Formula, recurs = false): Plan {
   let quantifiers = 0;
-  return prepare(sentence, [], false);
+  return prepare(sentence, [], recurs);
 
   /**
    * @param scope the variables of the configuration, in its order, each once
