@@ -11,6 +11,7 @@ import { drawSample } from "../kernel/display/sample-drawing.ts";
 import { relationOn } from "../kernel/display/sample-relations.ts";
 import { sampleOf } from "../kernel/display/samples.ts";
 import { domainOf, structureBlocks } from "../kernel/display/structures.ts";
+import { drawTerms } from "../kernel/display/term-samples.ts";
 import { blocksToText, inlineToText } from "../kernel/display/to-text.ts";
 import { buildCarrier } from "../lib/carriers/build.ts";
 import { definedTable } from "../lib/carriers/defined.ts";
@@ -470,6 +471,19 @@ describe("structures of free terms", () => {
     checkBundle(data);
     expect(data["text/plain"]).toContain("R(w, e)        never\nR(w, f(x, y))  Rwx ∨ w = y");
     expect(data["text/latex"]).toContain("$R(w,f(x,y))$");
+  });
+
+  it("are drawn by their smallest terms", () => {
+    // Sets made of e, the empty set, by adding a second one: {e}, {e, {e}}, {e}, {e, {e}} …
+    const { caption, alt, svg } = drawTerms(terms)!;
+    expect(caption).toContain(
+      "a = e, b = f(e, e), c = f(e, f(e, e)), d = f(f(e, e), e), g = f(e, f(e, f(e, e)))",
+    );
+    expect(alt).toContain("Among them R holds of (a,b), (a,d), (b,c) and (c,g).");
+    expect(strokesOf(svg)).toEqual([4, 0, 0, 4]);
+    expect(findOverlaps(svg)).toEqual([]);
+    const two = { ...terms, relations: { ...terms.relations, S: { ...terms.relations.R } } };
+    expect(drawTerms(two)).toBeNull();
   });
 });
 

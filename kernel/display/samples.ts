@@ -84,7 +84,8 @@ function sampleDenseLine(carrier: DenseLine, wanted: number): Sample {
       mark: colours === 1 ? null : `colour ${(rank % colours) + 1}`,
     })),
     isRow: true,
-    legend: [`${names.join(" < ")} on the line`],
+    // In one piece.
+    legend: [`${names.join("\u00a0<\u00a0")} on the line`],
   };
 }
 

@@ -72,11 +72,7 @@ function blockToHtml(block: Block): string {
     case "table":
       return tableToHtml(block);
     case "picture": {
-      const caption =
-        block.caption === ""
-          ? ""
-          : `<div style="max-width:26em"><small>${escapeHtml(block.caption)}</small></div>`;
-      return `<div style="margin:4px 0">${pictureToHtml(block)}${caption}</div>`;
+      return `<div style="margin:4px 0">${pictureToHtml(block)}${captionOf(block)}</div>`;
     }
     case "gallery": {
       const tiles = block.pictures.map(
@@ -116,6 +112,19 @@ const TILE =
 function pictureToHtml({ svg, alt }: PictureBlock): string {
   const data = Buffer.from(svg, "utf8").toString("base64");
   return `<img src="data:image/svg+xml;base64,${data}" alt="${escapeHtml(alt)}" style="max-width:100%">`;
+}
+
+/** Captions beyond this length stand beside pictures up to this width, in pixels, where there is room. */
+const LONG_CAPTION = 90;
+const NARROW_PICTURE = 200;
+
+function captionOf({ svg, caption }: PictureBlock): string {
+  if (caption === "") return "";
+  const width = Number(/ width="([\d.]+)"/.exec(svg)?.[1] ?? 0);
+  const isBeside = caption.length > LONG_CAPTION && width < NARROW_PICTURE;
+  const place = isBeside ? ";display:inline-block;vertical-align:bottom;padding:0 0 6px 10px" : "";
+  const largest = isBeside ? 20 : 26;
+  return `<div style="max-width:${largest}em${place}"><small>${escapeHtml(caption)}</small></div>`;
 }
 
 /** Columns that a sentence of a derivation, and a formula in its reason, may take to be kept on one line. */
