@@ -27,6 +27,7 @@ import { unwatchedWork } from "../lib/inquiry/work.ts";
 import { and, atom, equal, exists, forall, implies, not, or } from "../lib/logic/formula.ts";
 import { changes } from "./support/changes.ts";
 import { isRight } from "./support/evidence-judge.ts";
+import { onCarrier } from "./support/structures.ts";
 import { theoryFrom } from "./support/theories.ts";
 
 const R = (x: string, y: string) => atom({ name: "R", places: 2, infix: false }, x, y);
@@ -53,7 +54,7 @@ const evidences: Readonly<Record<string, Evidence | null>> = {
   "infinite-only": askInfiniteOnly(order, unwatchedWork).evidence,
   independent: askIndependent(order, unwatchedWork).evidence,
   equivalent: askEquivalent(order, theoryFrom({ total }), unwatchedWork).evidence,
-  "true-in": askTruth("true-in", model.model!, serial, unwatchedWork).evidence,
+  "true-in": askTruth("true-in", onCarrier(model.model), serial, unwatchedWork).evidence,
   "check-finite": model.evidence,
   independence: askIndependence(theoryFrom({ symmetric, transitive, serial }), unwatchedWork).evidence,
   compare: compareTheories(

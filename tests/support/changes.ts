@@ -43,7 +43,8 @@ export function* changes(
     yield { ...value, foreign: 1 };
   } else if (typeof value === "number") yield* [value + 1, value - 1, -value, 0.5, null, `${value}`];
   else if (typeof value === "string") yield* wordsFor().filter((word) => word !== value);
-  else yield* ["something", 0];
+  else if (typeof value === "boolean") yield* [!value, "something", 0];
+  else yield* ["something", 0, [], [0]];
 }
 
 /** The words that occur in a value. */

@@ -1,17 +1,24 @@
 /**
- * Whether evidence is right, by the meaning of its words on small structures. It shares nothing with the checker but the
- * format: truth is evaluated by nested loops, and what follows from what is tried on relations on up to 3 points.
+ * Whether evidence is right, by the meaning of its words. It shares nothing with the checker but the format: truth is
+ * evaluated by nested loops, on infinite carriers as `infinite-judge.ts` does; what follows from what is tried on relations
+ * on up to 3 points and on the infinite structures of the evidence.
  */
+
 import type {
   AtomRecord,
   ClauseRecord,
   Evidence,
+  Fact,
   FormulaRecord,
+  NoFiniteModelFact,
   StructureRecord,
   TermFormulaRecord,
   TermRecord,
+  TermsFact,
   TheoryRecord,
 } from "../../lib/evidence/format.ts";
+import { obligationsOf } from "../../lib/logic/records/finiteness.ts";
+import { isTrueInfinite, mayBeCertified, sizeOf } from "./infinite-judge.ts";
 
 /** Points are 0, …, size − 1. */
 export interface Interpretation {
@@ -74,8 +81,19 @@ function noFunctions(name: string): never {
   throw new Error(`${name} has no meaning in a sentence`);
 }
 
-function interpretationOf(record: StructureRecord): Interpretation {
-  const { size } = record.carrier;
+/** Truth of a sentence in a structure; false when the structure does not say what its relations are. */
+function isTrueIn(record: StructureRecord, sentence: FormulaRecord): boolean {
+  if (record.carrier.kind !== "points") return isTrueInfinite(record, sentence);
+  const isSaid = (relation: string) => {
+    const [, name, places] = /^(.*)\/(\d+)$/s.exec(relation)!;
+    return record.tables[name!]?.places === Number(places);
+  };
+  return (
+    relationsOf([sentence]).every(isSaid) && isTrue(sentence, interpretationOf(record, record.carrier.size))
+  );
+}
+
+function interpretationOf(record: StructureRecord, size: number): Interpretation {
   return {
     size,
     holds: (relation, points) =>
@@ -146,26 +164,113 @@ function hasModel(sentences: readonly FormulaRecord[], size: number): boolean {
   return all.some((over) => sentences.every((sentence) => isTrue(sentence, over)));
 }
 
-/** Whether all facts are true and the verdict is one that is true and that they can show. */
-export function isRight({ sentences, question, verdict, facts }: Evidence): boolean {
+/** Whether sentences have no model on up to 3 points, as far as there is not too much to go through. */
+function haveNoSmallModel(sentences: readonly FormulaRecord[]): boolean {
+  return follows(sentences, [["false"]]);
+}
+
+/** What a fact says of a structure. */
+interface Model {
+  /** Null for infinitely many elements. */
+  readonly size: number | null;
+  /** Whether all axioms of a theory are true in it. */
+  readonly has: (theory: TheoryRecord) => boolean;
+  /** Whether some axiom of a theory is false in it. */
+  readonly lacks: (theory: TheoryRecord) => boolean;
+}
+
+/**
+ * Whether all facts are true and the verdict is one that is true and that they can show.
+ * @param others infinite structures besides those of the evidence in which what is derived must be so
+ */
+export function isRight(
+  { sentences, question, verdict, facts }: Evidence,
+  others: readonly StructureRecord[] = [],
+): boolean {
   const at = (theory: TheoryRecord) => theory.map((index) => sentences[index]!);
   const structures = facts.flatMap((fact) => (fact.fact === "structure" ? [fact.structure] : []));
   const isModel = (record: StructureRecord, theory: TheoryRecord) =>
-    at(theory).every((sentence) => isTrue(sentence, interpretationOf(record)));
-  const separated = (first: TheoryRecord, second: TheoryRecord) =>
-    structures.some((record) => isModel(record, first) && !isModel(record, second));
-  const entailed = (first: TheoryRecord, second: TheoryRecord) => follows(at(first), at(second));
-  const contradictory = (theory: TheoryRecord) => follows(at(theory), [["false"]]);
-  const others = (axioms: TheoryRecord, place: number) => axioms.filter((_, index) => index !== place);
-  const areFactsTrue = facts.every((fact) => {
-    if (fact.fact === "derivation")
-      return follows(at(fact.premises), fact.conclusion === null ? [["false"]] : at([fact.conclusion]));
-    if (fact.fact === "no-model") return !hasModel(at(fact.axioms), fact.size);
-    return (
-      isModel(fact.structure, fact.holds) && (fact.fails === null || !isModel(fact.structure, fact.fails))
-    );
+    at(theory).every((sentence) => isTrueIn(record, sentence));
+  const contains = (larger: TheoryRecord, smaller: TheoryRecord) =>
+    smaller.every((index) => larger.includes(index));
+  const models = facts.flatMap((fact): readonly Model[] => {
+    if (fact.fact === "structure") {
+      const has = (theory: TheoryRecord) => isModel(fact.structure, theory);
+      return [{ size: sizeOf(fact.structure.carrier), has, lacks: (theory) => !has(theory) }];
+    }
+    if (fact.fact !== "terms") return [];
+    // What else is true there is not decided.
+    const has = (theory: TheoryRecord) => contains(fact.holds, theory);
+    return [{ size: null, has, lacks: (theory) => fact.fails !== null && contains(theory, fact.fails) }];
   });
-  return areFactsTrue && isVerdictRight();
+  const separated = (first: TheoryRecord, second: TheoryRecord) =>
+    models.some(({ has, lacks }) => has(first) && lacks(second));
+  const infinite = [...structures, ...others].filter(({ carrier }) => sizeOf(carrier) === null);
+  /** Besides, what a derivation shows must be so in every infinite structure that is there. */
+  const isConsequence = (premises: TheoryRecord, conclusions: readonly FormulaRecord[]) =>
+    follows(at(premises), conclusions) &&
+    infinite.every(
+      (record) =>
+        !isModel(record, premises) || conclusions.every((conclusion) => isTrueIn(record, conclusion)),
+    );
+  const isDerived = (premises: TheoryRecord, conclusion: number | null) =>
+    facts.some(
+      (fact) =>
+        fact.fact === "derivation" &&
+        (fact.conclusion === null || fact.conclusion === conclusion) &&
+        contains(premises, fact.premises),
+    );
+  const entailed = (first: TheoryRecord, second: TheoryRecord) =>
+    isConsequence(first, at(second)) &&
+    second.every((axiom) => first.includes(axiom) || isDerived(first, axiom));
+  const contradictory = (theory: TheoryRecord) =>
+    isConsequence(theory, [["false"]]) && isDerived(theory, null);
+  const without = (axioms: TheoryRecord, place: number) => axioms.filter((_, index) => index !== place);
+  return facts.every(isFactTrue) && isVerdictRight();
+
+  function isFactTrue(fact: Fact): boolean {
+    switch (fact.fact) {
+      case "derivation":
+        return isConsequence(fact.premises, fact.conclusion === null ? [["false"]] : at([fact.conclusion]));
+      case "no-model":
+        return !hasModel(at(fact.axioms), fact.size);
+      case "no-finite-model":
+        return isReasonRight(fact);
+      case "structure":
+        return (
+          isModel(fact.structure, fact.holds) && (fact.fails === null || !isModel(fact.structure, fact.fails))
+        );
+      case "terms":
+        return areCertificatesRight(fact);
+    }
+  }
+
+  /** What a principle asks for has no small model, nor do the axioms; and it is true in every infinite model of them. */
+  function isReasonRight({ axioms, principle }: NoFiniteModelFact): boolean {
+    const obligations = obligationsOf(principle);
+    return (
+      obligations !== null &&
+      haveNoSmallModel(obligations) &&
+      haveNoSmallModel(at(axioms)) &&
+      infinite.every(
+        (record) =>
+          !isModel(record, axioms) || obligations.every((obligation) => isTrueIn(record, obligation)),
+      )
+    );
+  }
+
+  function areCertificatesRight({ terms, holds, fails, certificates }: TermsFact): boolean {
+    const shown = at(holds);
+    if (fails?.length === 0) return false;
+    if (fails !== null) {
+      const negated = at(fails).map((sentence): FormulaRecord => ["not", sentence]);
+      shown.push(negated.length === 1 ? negated[0]! : ["or", ...negated]);
+    }
+    return (
+      shown.length === certificates.length &&
+      shown.every((sentence, place) => mayBeCertified(terms, sentence, certificates[place]!))
+    );
+  }
 
   function isVerdictRight(): boolean {
     switch (question.ask) {
@@ -181,15 +286,23 @@ export function isRight({ sentences, question, verdict, facts }: Evidence): bool
       case "check-finite":
       case "infinite-only":
       case "no-finite-model": {
-        const model = structures.some((record) => isModel(record, question.axioms));
-        const none = contradictory(question.axioms);
+        const { axioms, ask } = question;
+        const model = models.some(({ has }) => has(axioms));
+        const finite = models.some(({ has, size }) => size !== null && has(axioms));
+        const none = contradictory(axioms);
+        const excluded =
+          haveNoSmallModel(at(axioms)) &&
+          facts.some((fact) => fact.fact === "no-finite-model" && contains(axioms, fact.axioms));
         const right: Readonly<Record<string, Readonly<Record<string, boolean>>>> = {
           consistent: { holds: model, fails: none },
-          "check-finite": { finite: model, inconsistent: none },
-          "infinite-only": { fails: model || none },
-          "no-finite-model": { fails: model, holds: none },
+          "check-finite": {
+            ...{ finite, inconsistent: none, consistent: model },
+            ...{ "infinite-only": model && excluded, "no-finite-model": excluded },
+          },
+          "infinite-only": { holds: model && excluded, fails: finite || none },
+          "no-finite-model": { holds: none || excluded, fails: finite },
         };
-        return right[question.ask]![verdict as string] === true;
+        return right[ask]![verdict as string] === true;
       }
       case "equivalent":
         return isWordRight(verdict === "holds" ? "equivalent" : "different", question.left, question.right);
@@ -199,11 +312,11 @@ export function isRight({ sentences, question, verdict, facts }: Evidence): bool
           : separated(question.right, question.left) || entailed(question.left, question.right);
       case "independent":
         return verdict === "holds"
-          ? question.axioms.every((axiom, place) => separated(others(question.axioms, place), [axiom]))
-          : question.axioms.some((axiom, place) => entailed(others(question.axioms, place), [axiom]));
+          ? question.axioms.every((axiom, place) => separated(without(question.axioms, place), [axiom]))
+          : question.axioms.some((axiom, place) => entailed(without(question.axioms, place), [axiom]));
       case "independence":
         return (verdict as string[]).every((word, place) => {
-          const rest = others(question.axioms, place);
+          const rest = without(question.axioms, place);
           const axiom = question.axioms[place]!;
           if (word === "independent") return separated(rest, [axiom]);
           return word === "open" || (word === "redundant" && entailed(rest, [axiom]));
@@ -214,7 +327,7 @@ export function isRight({ sentences, question, verdict, facts }: Evidence): bool
         return verdict === (value === (question.ask === "true-in") ? "holds" : "fails");
       }
       case "models":
-        return verdict === null && structures.every((record) => isModel(record, question.axioms));
+        return verdict === null && models.every(({ has }) => has(question.axioms));
       case "minimise":
         return isMinimiseRight(question.axioms, verdict as string[]);
       case "compare":
