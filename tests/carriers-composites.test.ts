@@ -153,6 +153,7 @@ describe(`by definition (seed ${seed})`, () => {
   it("exchanges copies of the same width and parts that are alike", () => {
     const count = (description: CarrierDescription) => buildCarrier(description).symmetries().length;
     expect(count(tuples(rationals, 1, 1, 1, 0, 0))).toBe(4);
+    expect(count(tuples(rationals, 1, 1, 1, 1, 1, 1, 1, 0))).toBe(6);
     expect(count(tuples(rationals, 2, 1))).toBe(0);
     expect(count(sum(naturals(), integers(), naturals()))).toBe(1);
     expect(count(sum(naturals(), naturals(1, 0)))).toBe(0);
@@ -222,6 +223,33 @@ describe("all atoms together", () => {
             );
       }),
       options(20),
+    );
+  });
+});
+
+describe("keys", () => {
+  it.each(named(ofAllKinds))("on $name that are the same stay so", ({ description }) => {
+    const carrier = buildCarrier(description);
+    /** For each key for two to come, those for fewer and those of restrictions. */
+    const found = new Map<string | number, string>();
+    fc.assert(
+      fc.property(fc.gen(), (choose) => {
+        // Told apart more finely than is asked for, so that keys recur.
+        let configuration = carrier.empty;
+        for (const toCome of [4, 3]) {
+          if (carrier.mostExtensions(4 - toCome, toCome) > 20_000) return;
+          const extensions = carrier.extensions(configuration, toCome);
+          configuration = extensions[choose(fc.nat, { max: extensions.length - 1 })];
+        }
+        const keys = [
+          ...[1, 0].map((toCome) => carrier.key(configuration, toCome)),
+          ...[[0], [1], [1, 0]].map((places) => carrier.key(carrier.restrict(configuration, places), 2)),
+        ].join(" | ");
+        const key = carrier.key(configuration, 2);
+        expect(found.get(key) ?? keys).toBe(keys);
+        found.set(key, keys);
+      }),
+      options(40),
     );
   });
 });

@@ -18,6 +18,8 @@ import type { CarrierDescription } from "../logic/structure-definition.ts";
  *   true when quantifiers range over `extensions`; each carrier proves this in its file, with its source;
  * - `extensions(c, r)` is never empty, and lists the same configurations in the same order at every call;
  * - `kindOf(restrict(c, p), [0, 1, …])` is `kindOf(c, p)`;
+ * - configurations with the same `key` for some quantifiers to come have the same for fewer, and so have their
+ *   restrictions to the same places;
  * - configurations with the same `key` for nothing to come have the same kinds and identities;
  * - two elements of a configuration are the same only if the configuration says so: `same` never depends on what is
  *   still to come.

@@ -31,11 +31,16 @@ export function keyOf(groups: readonly number[], keys: readonly (string | number
   return key;
 }
 
-/** All pairs of places at which a list has the same member, the earlier one first. */
+/** Members beyond which only neighbours are exchanged: all pairs would cost more than they save. */
+const MANY = 6;
+
+/** Pairs of places at which a list has the same member, the earlier one first: all, or in a long list those of neighbours. */
 export function pairsWithSame(list: readonly unknown[]): readonly (readonly [number, number])[] {
-  return list.flatMap((member, first) =>
-    list.flatMap((other, second) => (first < second && member === other ? [[first, second] as const] : [])),
-  );
+  return list.flatMap((member, first) => {
+    const others = [...list.keys()].filter((place) => place > first && list[place] === member);
+    const kept = list.length > MANY ? others.slice(0, 1) : others;
+    return kept.map((second) => [first, second] as const);
+  });
 }
 
 /** The number that a number becomes when two are exchanged. */

@@ -18,11 +18,13 @@ export interface TuplesConfiguration {
  * Why the extensions suffice: to name an element with tag t is to name its coordinates one after another, at most W of
  * them for W the largest width. Let tuples with the same tags be alike for r elements to come when all their
  * coordinates together are alike for r·W elements of the other carrier to come. Of two tuples that are alike for r + 1
- * let one be extended by an element of width w ≤ W. By the law of the other carrier each of its coordinates in turn is
- * answered in the other tuple, the i-th (from 0) with r·W + w − 1 − i to come, and what has been answered is alike for
- * r·W. So r moves in the game of Ehrenfeucht and Fraïssé are answered, and the listed extensions represent all. This
- * is the usual proof that what is interpreted in a structure, here with tags and in dimension W, inherits from it what
- * can be told apart (common practice; Hodges, Model Theory, 1993, chapter 5).
+ * let one be extended by an element of width w ≤ W. What is alike for (r + 1)·W is alike for r·W + w, so by the law of the
+ * other carrier each of its coordinates in turn is answered in the other tuple, the i-th (from 0) with r·W + w − 1 − i to
+ * come, and in the end all coordinates are alike for r·W. Likewise the other way round. So r moves in the game of
+ * Ehrenfeucht and Fraïssé are answered, and the listed extensions represent all. This is the usual proof that what is
+ * interpreted in a structure, here with tags and in dimension W, inherits from it what can be told apart (common
+ * practice; Hodges, Model Theory, 1993, chapter 5). Tuples that are alike for 0 have the same tags, and their coordinates
+ * are of the same kind, which tells which of the elements are the same.
  *
  * Kinds are numbered by the tags in lexicographic order, then by the kind of all coordinates.
  */
