@@ -34,8 +34,11 @@ export interface Clues {
    * at the first place there is one at the second.
    */
   readonly partners: ReadonlyMap<string, number>;
-  /** Whether some axiom says that something exists. If none does, any one element of a model is a model by itself. */
-  readonly hasExistence: boolean;
+  /**
+   * Whether some axiom says that for all elements there are others. If none does and there is a model at all, then there
+   * is a finite one (Bernays & Schönfinkel 1928; with identity Ramsey 1930).
+   */
+  readonly hasSteps: boolean;
 }
 
 export function partnerKey(
@@ -90,7 +93,7 @@ class Collector implements Clues {
   readonly steps: Step[] = [];
   readonly witnesses: Witness[] = [];
   readonly partners = new Map<string, number>();
-  hasExistence = false;
+  hasSteps = false;
   #left = 0;
 
   collect(axiom: Formula): void {
@@ -101,7 +104,7 @@ class Collector implements Clues {
   #walk(formula: Formula, place: Place): void {
     this.#left -= 1;
     if (this.#left < 0) {
-      this.hasExistence = true;
+      this.hasSteps = true;
       return;
     }
     const { isPositive, guard } = place;
@@ -159,7 +162,7 @@ class Collector implements Clues {
     const { isPositive, scope, guard, witness } = place;
     const isSome = (formula.kind === "exists") === isPositive;
     if (isSome) {
-      this.hasExistence = true;
+      if (scope.some((one) => !one.isSome)) this.hasSteps = true;
       if (scope.length === 0 && guard.length === 0 && witness === null) {
         const found = witnessOf(isPositive ? formula : negated(formula));
         this.witnesses.push(found);

@@ -89,6 +89,12 @@ function sameness({ relations, identity }: Signature, one: Variable, other: Vari
   );
 }
 
+/** φ and another literal of x and y, or of one of them. */
+export function conjunctions(bases: readonly Formula[], others: readonly Formula[]): readonly Formula[] {
+  const literals = [...bases, ...others, ...others.map((one) => at(one, "y", "x"))];
+  return bases.flatMap((base, place) => literals.slice(place + 1).map((other) => and(base, other)));
+}
+
 /** By way of a z, which may have to be in a part of the elements. */
 export function composed(first: Formula, second: Formula, between: Formula = verum): Formula {
   const way = [at(first, "x", "z"), at(second, "z", "y")];
@@ -202,6 +208,33 @@ export function stepPartsOf({ witness, from, guard, to, body }: Step): readonly 
 
 const PARAMETERS = [..."abcdefgh"];
 
+/** φ(x, y, z) that an axiom says is true of some z for all x and y, and what relations of three places say. */
+export function pairPartsOf({ relations }: Signature, steps: readonly Step[]): readonly Formula[] {
+  const ofSteps = steps.flatMap(({ witness, from, guard, to, body }) => {
+    if (witness !== null || from.length !== 2 || guard.kind !== "true") return [];
+    const [one, other] = from as [Variable, Variable];
+    return [
+      substitute(
+        body,
+        new Map([
+          [one, "x"],
+          [other, "y"],
+          [to, "z"],
+        ]),
+      ),
+    ];
+  });
+  const orders = [
+    ["x", "y", "z"],
+    ["x", "z", "y"],
+    ["z", "x", "y"],
+  ];
+  const ofRelations = relations
+    .filter(({ places }) => places === 3)
+    .flatMap((relation) => orders.map((order) => atom(relation, ...order)));
+  return [...ofSteps, ...ofRelations];
+}
+
 /** Without repeated parts, which come of two variables being made one. */
 function tidy(formula: Formula): Formula {
   const inner = mapParts(formula, tidy);
@@ -210,22 +243,24 @@ function tidy(formula: Formula): Formula {
   return (inner.kind === "and" ? and : or)(...parts);
 }
 
-/** Parts of the elements by what is said of an element alone: by relations of one place, and by loops. */
-export function selfPartsOf(
-  { relations }: Signature,
-  axioms: readonly Formula[],
-): { readonly sorts: readonly Formula[]; readonly loops: readonly Formula[] } {
-  const own = ({ places }: RelationSymbol) => Array.from({ length: places }, () => "x");
-  const both = (relation: RelationSymbol) => [
-    atom(relation, ...own(relation)),
-    not(atom(relation, ...own(relation))),
-  ];
-  const isSettled = (relation: RelationSymbol) =>
-    both(relation).some((one) => axioms.some((axiom) => sameFormula(axiom, forall("x", one))));
-  return {
-    sorts: relations.filter(({ places }) => places === 1).flatMap(both),
-    loops: relations.filter((relation) => relation.places === 2 && !isSettled(relation)).flatMap(both),
-  };
+/** Parts of the elements by relations of one place. */
+export function sortsOf({ relations }: Signature): readonly Formula[] {
+  return relations
+    .filter(({ places }) => places === 1)
+    .flatMap((relation) => withNegation(atom(relation, "x")));
+}
+
+/** Parts of the elements by relations of two places to themselves, where axioms do not say that all or none have them. */
+export function loopsOf({ relations }: Signature, axioms: readonly Formula[]): readonly Formula[] {
+  const isSettled = (loop: Formula) => axioms.some((axiom) => sameFormula(axiom, forall("x", loop)));
+  return relations
+    .filter(({ places }) => places === 2)
+    .map((relation) => withNegation(atom(relation, "x", "x")))
+    .flatMap((both) => (both.some(isSettled) ? [] : both));
+}
+
+function withNegation(formula: Formula): readonly Formula[] {
+  return [formula, not(formula)];
 }
 
 /** The formula with all its quantifiers about a part of the elements. */

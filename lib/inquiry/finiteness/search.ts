@@ -184,6 +184,7 @@ export class FinitenessSearch {
   *#attemptsOf({ segment, clauses }: Pass): Generator<Attempt, undefined> {
     this.#candidates ??= new Candidates(this.#axioms, this.#signature);
     const candidates = this.#candidates;
+    if (!candidates.areAny) return;
     const attempt = (reason: FinitenessReason): Attempt => ({ reason, clauses, ofRelation: false });
     switch (segment) {
       case "likely":
