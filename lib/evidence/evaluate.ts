@@ -51,7 +51,8 @@ export function evaluatorOf(
   let [listed, remembered] = [0, 0];
   const known = new Map<FormulaRecord, Test>();
   return (sentence) => {
-    const test = known.get(sentence) ?? prepare(sentence, [], false);
+    // On an infinite carrier configurations come back as soon as fewer quantifiers are to come.
+    const test = known.get(sentence) ?? prepare(sentence, [], carrier.size === null);
     known.set(sentence, test);
     return test(carrier.empty);
   };
