@@ -88,11 +88,14 @@ describe("a cell", () => {
   });
 });
 
+/** Graphs in which any two points are joined by one or two steps in one way only: the least of these has 50 points. */
+const hard =
+  "{ ∀x ¬Rxx; ∀x ∀y (Rxy → Ryx); ∀x ∀y (x ≠ y → Rxy ∨ ∃z (Rxz ∧ Rzy)); ∀x ∀y ∀z ¬(Rxy ∧ Ryz ∧ Rzx); ∀x ∀y ∀z ∀w (Rxz ∧ Rzy ∧ Rxw ∧ Rwy → x = y ∨ z = w); ∀x ∃y ∃z ∃w ∃u (Rxy ∧ Rxz ∧ Rxw ∧ Rxu ∧ y ≠ z ∧ y ≠ w ∧ y ≠ u ∧ z ≠ w ∧ z ≠ u ∧ w ≠ u) }";
+
 describe("an interrupt", () => {
   it("ends the cell, keeps what was answered and every definition", async () => {
     let polls = 0;
     const { run } = begin(() => polls++ > 40);
-    const hard = "{ ∀x ¬Rxx; ∀x ∀y (x ≠ y → Rxy ∨ Ryx); ∀x ∀y (Rxy → ¬Ryx); ∀x ∀y ∀z ∃w (Rwx ∧ Rwy ∧ Rwz) }";
     const { outcome } = await run(
       `${order}\ncheck-finite ${hard} up to 18 within 10000000 steps\ndefine Late := {}`,
     );
@@ -121,7 +124,7 @@ describe("reasons", () => {
 });
 
 describe("budgets", () => {
-  const cell = "check-finite { ∀x ¬Rxx; ∀x ∀y ∀z (Rxy ∧ Ryz → Rxz); ∀x ∃y Rxy } up to 30 within 100 steps";
+  const cell = `check-finite ${hard} up to 30 within 100 steps`;
 
   it("end a search at the same place each time, and say how far it came", async () => {
     const first = await begin().run(cell);
@@ -130,7 +133,7 @@ describe("budgets", () => {
     const [result] = first.outcome.results;
     expect(result).toMatchObject({ verdict: "open", steps: 100 });
     const { noModelUpTo } = result!.data as { noModelUpTo: number };
-    expect(noModelUpTo).toBeGreaterThan(3);
+    expect(noModelUpTo).toBeGreaterThan(1);
     expect(noModelUpTo).toBeLessThan(30);
   });
 

@@ -165,7 +165,10 @@ export function derivedText(derivations: readonly ShownDerivation[]): string {
 
 /** How far both searches came without settling anything. */
 function openText(search: Search, report: DerivationReport | null, budget: number, steps: number): string {
-  return [reportText(report), searchText(search, budget, steps)].filter(Boolean).join("; ");
+  // Whatever was being done when the user interrupted, that is why it ended.
+  const isInterrupted = report?.ended === "interrupted" && search.ended !== "interrupted";
+  const ended = isInterrupted ? { ...search, ended: "interrupted" as const, endedAt: null } : search;
+  return [reportText(report), searchText(ended, budget, steps)].filter(Boolean).join("; ");
 }
 
 /** `no derivation among 12,345 clauses`; empty when none was looked for. */
