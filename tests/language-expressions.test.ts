@@ -18,6 +18,7 @@ function read(text: string) {
 
 test("claims by number", () => {
   expect(read("verdict of claim 3")).toEqual({ kind: "verdict", claim: 3 });
+  expect(read("reason of claim 4")).toEqual({ kind: "reason", claim: 4 });
   expect(read(" claim 12 ")).toEqual({ kind: "claim", claim: 12 });
 });
 
@@ -60,6 +61,7 @@ describe("mistakes are diagnostics", () => {
     ["verdict of claim", "unexpected"],
     ["verdict of claim 0", "not-whole"],
     ["verdict of 3", "unexpected"],
+    ["reason of 3", "unexpected"],
     ["count of Order", "unexpected"],
     ["count of Order on 4 points today", "unexpected"],
     ["formula of Order", "wrong-kind"],

@@ -182,6 +182,21 @@ describe("expressions for prose", () => {
       data: { "text/markdown": "$\\forall x\\, \\neg Rxx$", "text/latex": "$\\forall x\\, \\neg Rxx$" },
     });
   });
+
+  it("are reasons why there is no finite model, where a claim rests on one", async () => {
+    const { session, run } = begin();
+    await run(`${order}\nclaim Order + { up: ∀x ∃y Rxy } has no finite model\nclaim Order is consistent`);
+    const outcome = await session.evaluateExpression("reason of claim 1");
+    if (outcome.status !== "ok") throw new Error(outcome.evalue);
+    expect(outcome.data["text/plain"]).toMatch(
+      /^(Let|By) .* irr, trans and up, .* So every model is infinite\.$/,
+    );
+    expect(outcome.data["text/markdown"]).toMatch(/\$x\$ has some \$y\$ with \$/);
+    expect(await session.evaluateExpression("reason of claim 2")).toMatchObject({
+      status: "error",
+      evalue: "claim 2 does not rest on a reason why there is no finite model",
+    });
+  });
 });
 
 describe("stored evidence", () => {
