@@ -281,6 +281,13 @@ describe("pictures", () => {
     expect(findOverlaps(svg)).toEqual([]);
   });
 
+  it("say it when the relation holds of nothing, and of everything", () => {
+    const draw = (holds: boolean) => drawSample(tabled({ kind: "dense-line", colours: 1 }, () => holds))!;
+    expect(draw(false).caption).toContain("R holds of no pair");
+    expect(strokesOf(draw(false).svg)).toEqual([0, 0, 0, 0]);
+    expect(draw(true).caption).toContain("exactly when x and y stand in one frame; dots: others");
+  });
+
   it("merge what a preorder does not tell apart", () => {
     const { svg, caption } = drawSample(definedStructure("2 copies of dense-line where Rxy iff x.1 <= y.1"))!;
     expect(readMarkup(svg, []).text).toContain("a₁, a₂");

@@ -36,7 +36,9 @@ import { enumerate, shorten } from "./text.ts";
 const SAMPLED = 4;
 
 /** Strokes by what they say in pictures of one relation. */
-const [PLAIN, WITH_OTHERS, TO_OTHERS] = [0, 1, 2];
+const PLAIN = 0;
+const WITH_OTHERS = 1;
+const TO_OTHERS = 2;
 
 /** Where a line to others ends: nothing is drawn there. */
 const NOWHERE: Extent = { width: 3, height: 3, outline: "none" };
@@ -103,6 +105,10 @@ function planOne(
   labels: readonly PointLabel[],
   isRow: boolean,
 ): Explained {
+  if (!table.holds.includes(1)) {
+    const { plan } = planRound(relation, labels);
+    return { plan, remarks: [`${relation.name} holds of no pair`] };
+  }
   const whole = wholeRelation(structure, table);
   if (whole.isEquivalence) return planGroups(relation, labels);
   const isMarked = labels.some(({ length }) => length > 1);
@@ -188,11 +194,11 @@ function planOrder(
     strokes.push(stroke);
   };
   for (const [low, high] of coveringPairs(order))
-    add([low, high], others.some((other) => above(low, other) && below(high, other)) ? WITH_OTHERS! : PLAIN!);
+    add([low, high], others.some((other) => above(low, other) && below(high, other)) ? WITH_OTHERS : PLAIN);
   const nowhere = () => extents.push(NOWHERE) - 1;
   for (const of of numbers) {
-    if (hasAbove(of)) add([of, nowhere()], TO_OTHERS!);
-    if (hasBelow(of)) add([nowhere(), of], TO_OTHERS!);
+    if (hasAbove(of)) add([of, nowhere()], TO_OTHERS);
+    if (hasBelow(of)) add([nowhere(), of], TO_OTHERS);
   }
   const { places, curves } = layOutLayers(extents, pairs);
   const arcs = curves.map(
@@ -207,12 +213,12 @@ function planOrder(
     plan: { points: pointsAt(places, extents, shown).slice(0, shown.length), arcs, frames: [] },
     remarks: [
       `${name} by ${descends ? "downward" : "upward"} lines`,
-      ...(isAmong(WITH_OTHERS!)
-        ? [`dashed: others lie between${isAmong(PLAIN!) ? "; solid: none does" : ""}`]
-        : isAmong(PLAIN!)
+      ...(isAmong(WITH_OTHERS)
+        ? [`dashed: others lie between${isAmong(PLAIN) ? "; solid: none does" : ""}`]
+        : isAmong(PLAIN)
           ? ["none lies between two that a line joins"]
           : []),
-      ...(isAmong(TO_OTHERS!) ? ["dotted: others above or below"] : []),
+      ...(isAmong(TO_OTHERS) ? ["dotted: others above or below"] : []),
       ...(isApart ? ["others are comparable to none of these"] : []),
       ...(shown.some((label) => label[0].includes(", ")) ? ["in one outline: related both ways"] : []),
       ...(isReflexive || left
@@ -294,7 +300,7 @@ function layers(
   ];
   const { places, curves } = layOutLayers(extents, pairs, heads ? "heads" : "bare", isRow ? "right" : "up");
   const arcs = curves.map((curve, index): Arc => {
-    const stroke = index < lines.length ? PLAIN! : TO_OTHERS!;
+    const stroke = index < lines.length ? PLAIN : TO_OTHERS;
     return { curve, stroke, headAtEnd: heads, headAtStart: false };
   });
   const points = pointsAt(places, extents, labels).slice(0, labels.length);
