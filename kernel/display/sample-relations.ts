@@ -56,7 +56,7 @@ export function relationOn({ carrier }: Structure, table: Table, sample: Sample)
 }
 
 /** Steps that finding out about the whole structure may cost. */
-const STEPS = 1_000;
+const STEPS = 300;
 
 /** Properties of a relation in the whole structure; false also where that would take too long to find out. */
 export interface WholeRelation {
