@@ -22,7 +22,7 @@ export type CheckResult =
   | { readonly accepted: false; readonly reason: string };
 
 /** A check may take so many times the steps of the question. */
-const STEPS_FOR_EACH = 5;
+const STEPS_FOR_EACH = 2;
 
 /**
  * The meter of a check: evidence that is accepted once is accepted by every check with the same budget.
@@ -48,7 +48,7 @@ export function checkEvidence(value: unknown, meter: Meter = meterForCheck()): C
       else if (fact.fact === "terms") checkTerms(fact, sentences, at, meter);
       else if (fact.fact === "derivation") checkDerivation(fact, sentences, at, meter);
       else if (fact.fact === "no-model") checkNoModel(fact, sentences, at, meter);
-      else checkNoFiniteModel(fact, evidence, at);
+      else checkNoFiniteModel(fact, evidence, at, meter);
     }
     if (!isBorneOut(evidence, meter))
       reject(`the facts do not bear out the verdict ${JSON.stringify(evidence.verdict)}`);

@@ -6,6 +6,7 @@ import { buildCarrier } from "../carriers/build.ts";
 import { countKinds, listExtensions } from "../carriers/listing.ts";
 import type { Meter } from "../logic/meter.ts";
 import { atomTerms, freeVariables, partsOf } from "../logic/records/formulas.ts";
+import { countComponents } from "../logic/structure-definition.ts";
 import type { FormulaRecord, StructureRecord } from "./format.ts";
 import { reject } from "./read.ts";
 
@@ -20,7 +21,7 @@ type Scope = readonly string[];
 
 /**
  * @param sentence closed and without functions
- * @param meter counts a thousandth of a step for each subformula looked at
+ * @param meter counts a thousandth of a step for each subformula looked at and for each component of each configuration listed
  * @throws Rejected when the structure is none, or does not interpret a relation of the sentence
  */
 export function isTrueIn(record: StructureRecord, sentence: FormulaRecord, meter: Meter): boolean {
@@ -48,6 +49,7 @@ export function evaluatorOf(
       return [name, { places, holds: new Set(holds) }];
     }),
   );
+  const components = countComponents(record.carrier);
   let [listed, remembered] = [0, 0];
   const known = new Map<FormulaRecord, Test>();
   return (sentence) => {
@@ -121,6 +123,8 @@ export function evaluatorOf(
       const before = memory.get(key);
       if (before !== undefined) return before;
       const extensions = listExtensions(carrier, own, free.length, toCome, meter);
+      // Elements of carriers that are made of many others take as much more work.
+      if (components > 1) meter.charge(extensions.length * (components - 1));
       listed += extensions.length;
       if (listed > MOST_AT_ONCE) meter.endForMemory();
       const result = isForall ? extensions.every(test) : extensions.some(test);

@@ -1,7 +1,8 @@
 /** Checking that there is no finite model, by a principle about finite sets. */
 
+import type { Meter } from "../logic/meter.ts";
 import { obligationsOf } from "../logic/records/finiteness.ts";
-import type { Evidence, NoFiniteModelFact } from "./format.ts";
+import type { Evidence, FormulaRecord, NoFiniteModelFact } from "./format.ts";
 import { reject } from "./read.ts";
 
 /**
@@ -13,17 +14,29 @@ export function checkNoFiniteModel(
   fact: NoFiniteModelFact,
   { sentences, facts }: Evidence,
   at: string,
+  meter: Meter,
 ): void {
   const obligations = obligationsOf(fact.principle) ?? reject(`${at}: the principle is not of its form`);
   const axioms = new Set(fact.axioms);
-  const shown = new Set(fact.axioms.map((axiom) => JSON.stringify(sentences[axiom])));
-  for (const other of facts)
-    if (
-      other.fact === "derivation" &&
-      other.conclusion !== null &&
-      other.premises.every((one) => axioms.has(one))
-    )
-      shown.add(JSON.stringify(sentences[other.conclusion]));
-  for (const [place, obligation] of obligations.entries())
-    if (!shown.has(JSON.stringify(obligation))) reject(`${at}: what it asks for at ${place} is not derived`);
+  const texts = textsOf(sentences);
+  const shown = new Set(fact.axioms.map((axiom) => texts[axiom]!));
+  for (const other of facts) {
+    if (other.fact !== "derivation" || other.conclusion === null) continue;
+    meter.charge(1 + other.premises.length);
+    if (other.premises.every((one) => axioms.has(one))) shown.add(texts[other.conclusion]!);
+  }
+  for (const [place, obligation] of obligations.entries()) {
+    const text = JSON.stringify(obligation);
+    meter.charge(text.length);
+    if (!shown.has(text)) reject(`${at}: what it asks for at ${place} is not derived`);
+  }
+}
+
+/** Remembered, since every principle asks for it. */
+const known = new WeakMap<readonly FormulaRecord[], readonly string[]>();
+
+function textsOf(sentences: readonly FormulaRecord[]): readonly string[] {
+  const texts = known.get(sentences) ?? sentences.map((sentence) => JSON.stringify(sentence));
+  known.set(sentences, texts);
+  return texts;
 }

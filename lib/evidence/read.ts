@@ -3,7 +3,7 @@
  * is not in the format passes: no foreign keys, no missing ones, no sentence with free variables.
  */
 import { readTerms } from "../carriers/free-terms.ts";
-import { type FormulaRecord, freeVariables } from "../logic/records/formulas.ts";
+import { atomTerms, type FormulaRecord, partsOf } from "../logic/records/formulas.ts";
 import {
   type BooleanAlgebraDescription,
   type CarrierDescription,
@@ -18,6 +18,7 @@ import {
   EVIDENCE_FORMAT,
   EVIDENCE_VERSION,
   type Evidence,
+  type PrincipleRecord,
   type StructureRecord,
   THEORY_QUESTIONS,
 } from "./format.ts";
@@ -117,8 +118,24 @@ function formulaOf(is: Shape, same: Shape): Shape {
 const plain = formulaOf(list([name, name, name], name), list([name, name, name]));
 const closed: Shape = (value, at, sentences) => {
   plain(value, at, sentences);
-  for (const free of freeVariables(value as FormulaRecord)) reject(`${at} has the free variable ${free}`);
+  requireBound(value as FormulaRecord, new Set(), at);
 };
+
+/**
+ * Refuses other free variables than some: from the outside, before anything collects the variables of each part.
+ * @param allowed is as before afterwards
+ */
+function requireBound(formula: FormulaRecord, allowed: Set<string>, at: string): void {
+  if (formula[0] === "is" || formula[0] === "=") {
+    for (const variable of atomTerms(formula))
+      if (!allowed.has(variable as string)) reject(`${at} has the free variable ${variable}`);
+    return;
+  }
+  const binds = (formula[0] === "forall" || formula[0] === "exists") && !allowed.has(formula[1]);
+  if (binds) allowed.add(formula[1]);
+  for (const part of partsOf(formula)) requireBound(part, allowed, at);
+  if (binds) allowed.delete(formula[1]);
+}
 const atoms = { is: list([name, name], term), "=": list([name, term, term]) };
 const formula = formulaOf(atoms.is, atoms["="]);
 const clause = listOf(oneOf("0", { ...atoms, not: list([name, oneOf("0", atoms)]) }));
@@ -196,7 +213,7 @@ const parameters: Shape = (value, at, sentences) => {
 const withoutTerms = { parameters, given: nullOr(plain), domain: plain, relation: plain };
 const different: Shape = (value, at, sentences) =>
   (value === "identity" ? any : listOf(list([name, whole(1)])))(value, at, sentences);
-const principle = oneOf("principle", {
+const principles = oneOf("principle", {
   "endless-order": object({ principle: name, ...withoutTerms, everywhere: flag }),
   counting: object({
     ...{
@@ -212,6 +229,13 @@ const principle = oneOf("principle", {
   pairs: object({ principle: name, ...withoutTerms, different, pairs: number }),
   comprehension: object({ principle: name, ...withoutTerms, different }),
 });
+const principle: Shape = (value, at, sentences) => {
+  principles(value, at, sentences);
+  const { parameters: own, given, domain, relation } = value as PrincipleRecord;
+  requireBound(given ?? ["true"], new Set(own), `${at}, given`);
+  requireBound(domain, new Set([...own, "x"]), `${at}, domain`);
+  requireBound(relation, new Set([...own, "x", "y", "z"]), `${at}, relation`);
+};
 const proof = listOf(listOf(whole(-Number.MAX_SAFE_INTEGER)));
 const fact = oneOf("fact", {
   structure: object({ fact: name, structure, holds: theory, fails: nullOr(theory) }),
