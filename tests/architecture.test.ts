@@ -93,9 +93,9 @@ describe("the checker of evidence", () => {
     return [...found];
   }
 
-  it("has less than 900 lines of code", () => {
+  it("has less than 950 lines of code", () => {
     const lines = files.filter((file) => file.startsWith("lib/evidence/")).map(codeLines);
-    expect(lines.reduce((sum, count) => sum + count, 0)).toBeLessThan(900);
+    expect(lines.reduce((sum, count) => sum + count, 0)).toBeLessThan(950);
   });
 
   it("stands on records of formulas, on carriers and on the meter, and on nothing else: less than 3,900 lines", () => {
