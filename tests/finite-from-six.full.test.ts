@@ -29,15 +29,14 @@ describe(`${sets} theories that are inconsistent or have finite models from 6 po
     expect(examples.filter(({ model }) => model !== null).length).toBeGreaterThan(150);
   });
 
-  it.each(examples.map((example, number) => [number, example] as const))(
-    "%i",
-    (_, { name, theory, model }) => {
-      const budget = model === null ? DEFAULT_BUDGET : short;
+  // Numbers only: the runner would write whole theories and structures into the names of tests.
+  it.each([...examples.keys()])("%i", (number) => {
+    const { name, theory, model } = examples[number]!;
+    const budget = model === null ? DEFAULT_BUDGET : short;
     const answer = checkFinite(theory, { ...unwatchedWork, budget, symmetricUpTo: 12 });
-      expect(model === null ? ["inconsistent", "open"] : ["finite", "consistent", "open"], name).toContain(
-        answer.verdict,
-      );
-      if (answer.leastSize !== null) expect(answer.leastSize, name).toBeGreaterThanOrEqual(6);
-    },
-  );
+    expect(model === null ? ["inconsistent", "open"] : ["finite", "consistent", "open"], name).toContain(
+      answer.verdict,
+    );
+    if (answer.leastSize !== null) expect(answer.leastSize, name).toBeGreaterThanOrEqual(6);
+  });
 });
