@@ -31,6 +31,9 @@ const MOST_STEPS = 40;
 const MOST_WITNESSES = 8;
 const MOST_SORTS = 6;
 const MOST_LOOPS = 8;
+/** Parts of the elements that are looked at, and literals that those around a witness are made of. */
+const MOST_DOMAINS = 60;
+const MOST_AROUND = 4;
 
 const order: PrincipleShape = { principle: "endless-order", everywhere: true };
 
@@ -41,8 +44,8 @@ export class Candidates {
   readonly likely: readonly Family[];
   /** To be tried on parts: of each list the first whose φ is as its principle asks. */
   readonly alternatives: readonly (readonly Family[])[];
-  /** Orders by inclusion, to be tried on parts. */
-  readonly inclusions: readonly Family[];
+  /** To be tried on parts: those whose φ is as its principle asks by what it is, so that this says nothing for them. */
+  readonly sure: readonly Family[];
   /** Reasons on parts of the elements on which φ may be as its principle asks, and not elsewhere. */
   readonly special: readonly FinitenessReason[];
   /** To be tried on all elements, less likely. */
@@ -86,15 +89,16 @@ export class Candidates {
       ...this.#bases.flatMap((base) => maps.map((shape) => this.#mapsOf(base, shape))),
       ...ofSteps.flatMap((relation) => maps.map((shape) => [{ shape, relation }])),
     ];
-    this.inclusions = this.#bases.map((base) => withRelation(order, parts.strictlyContains, base));
+    const inclusions = this.#bases.map((base) => withRelation(order, parts.strictlyContains, base));
     this.likely = unique([
       ...orders.flat(),
-      ...this.inclusions,
+      ...inclusions,
       ...counted.flatMap((families) => families.slice(0, 1)),
       ...counted.flatMap((families) => families.slice(1)),
     ]);
     // On parts, what is simplest comes first.
-    this.alternatives = [...orders.map(simplestFirst), ...counted];
+    this.alternatives = [...orders.map(simplestFirst), ...counted.map((families) => families.slice(0, 1))];
+    this.sure = [...inclusions, ...counted.flatMap((families) => families.slice(1))];
     this.special = this.#listSpecial(orders.flat());
     this.unlikely = this.#listUnlikely();
     this.rare = this.#listRare(clues);
@@ -218,9 +222,9 @@ export class Candidates {
       ...this.#steps.flatMap(({ domain }) => domain ?? []),
       ...[...this.#sorts, ...this.#loops].map((formula) => ({ formula, witness: null })),
       ...witnesses.flatMap((witness) =>
-        parts.witnessPartsOf(this.#baseFormulas, witness, this.#signature.identity),
+        parts.witnessPartsOf(this.#baseFormulas.slice(0, MOST_AROUND), witness, this.#signature.identity),
       ),
-    ]);
+    ]).slice(0, MOST_DOMAINS);
   }
 
   /** Literals without parameters. */

@@ -98,13 +98,14 @@ export function obligationsFor(
 
 function roleOf(record: PrincipleRecord, kind: ObligationKind): string {
   const there = record.domain[0] === "true" ? "" : " there";
+  const anywhere = "everywhere" in record && record.everywhere ? "" : there;
   switch (kind) {
     case "parameters":
       return record.parameters.length === 1 ? "there is such an element" : "there are such elements";
     case "irreflexive":
-      return `it is irreflexive${there}`;
+      return `it is irreflexive${anywhere}`;
     case "transitive":
-      return `it is transitive${there}`;
+      return `it is transitive${anywhere}`;
     case "size":
       return record.principle === "pairs"
         ? `there are at least ${record.pairs + 1} elements${there}`
@@ -117,7 +118,7 @@ function roleOf(record: PrincipleRecord, kind: ObligationKind): string {
       if (record.principle === "pairs")
         return `every element${there} stands for at most ${pairs(record.pairs)}`;
       const count = (record as CountingRecord).predecessors;
-      return `every element${there} has at most ${count} predecessor${plural(count)}${there}`;
+      return `every element${anywhere} has at most ${count} predecessor${plural(count)}${anywhere}`;
     }
     case "spare": {
       if (record.principle === "comprehension") return `some element${there} has no predecessors${there}`;

@@ -34,7 +34,7 @@ export interface ShownObligation {
   readonly derived: { readonly task: DerivationTask; readonly derivation: Derivation } | null;
 }
 
-type Segment = "likely" | "parts" | "inclusions" | "special" | "unlikely" | "restricted" | "rare";
+type Segment = "likely" | "parts" | "sure" | "special" | "unlikely" | "restricted" | "rare";
 
 /** Going through candidates of one kind, with so many clauses for each obligation. */
 interface Pass {
@@ -51,17 +51,18 @@ const PASSES: readonly Pass[] = [
   { level: 1, segment: "likely", clauses: MIDDLE },
   { level: 1, segment: "parts", clauses: MIDDLE },
   { level: 2, segment: "special", clauses: LONG },
-  { level: 2, segment: "inclusions", clauses: SHORT },
-  { level: 2, segment: "unlikely", clauses: SHORT },
+  { level: 2, segment: "rare", clauses: LONG },
   { level: 2, segment: "likely", clauses: LONG },
+  { level: 2, segment: "sure", clauses: SHORT },
   { level: 2, segment: "parts", clauses: LONG },
+  { level: 2, segment: "unlikely", clauses: SHORT },
   { level: 3, segment: "unlikely", clauses: MIDDLE },
   { level: 3, segment: "restricted", clauses: SHORT },
-  { level: 3, segment: "rare", clauses: LONG },
+  { level: 3, segment: "rare", clauses: 1_000 },
   { level: 3, segment: "likely", clauses: 1_000 },
   { level: 3, segment: "special", clauses: 1_000 },
   { level: 3, segment: "parts", clauses: 1_000 },
-  { level: 3, segment: "inclusions", clauses: LONG },
+  { level: 3, segment: "sure", clauses: LONG },
   { level: 3, segment: "unlikely", clauses: LONG },
   { level: 4, segment: "restricted", clauses: LONG },
   { level: 4, segment: "likely", clauses: 3_000 },
@@ -72,7 +73,7 @@ const PASSES: readonly Pass[] = [
   { level: 5, segment: "likely", clauses: 20_000 },
   { level: 5, segment: "special", clauses: 20_000 },
   { level: 5, segment: "parts", clauses: 20_000 },
-  { level: 5, segment: "inclusions", clauses: 20_000 },
+  { level: 5, segment: "sure", clauses: 20_000 },
   { level: 5, segment: "unlikely", clauses: 20_000 },
   { level: 5, segment: "restricted", clauses: 20_000 },
   { level: 5, segment: "rare", clauses: 20_000 },
@@ -201,8 +202,8 @@ export class FinitenessSearch {
       case "parts":
         for (const families of candidates.alternatives) yield* this.#onParts(families, clauses);
         return;
-      case "inclusions":
-        for (const family of candidates.inclusions) yield* this.#onParts([family], clauses);
+      case "sure":
+        for (const family of candidates.sure) yield* this.#onParts([family], clauses);
         return;
     }
   }

@@ -30,6 +30,8 @@ export const MIDDLE = 150;
 export const LONG = 330;
 
 export const OBLIGATION_TURNS: readonly PlannedTurn[] = [
+  // An axiom with other names of variables costs nothing, however large it is.
+  { ...PLAIN, name: "as letters", engine: { by: "instances" }, letters: "alone", clauses: 10 },
   { ...PLAIN, name: "terse", engine: by(TERSE_STRATEGY), clauses: 25 },
   { ...PLAIN, name: "shallow, complements", engine: byComplements(SUPPORTED_STRATEGY), clauses: 25 },
   { ...PLAIN, name: "careful", engine: by(CAREFUL_STRATEGY), clauses: 50 },
