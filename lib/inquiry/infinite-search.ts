@@ -1,8 +1,11 @@
 /** The search for infinite structures, carrier by carrier. */
 import { buildCarrier } from "../carriers/build.ts";
 import type { Structure } from "../carriers/structure.ts";
+import { recordStructure } from "../carriers/structure-record.ts";
+import { evaluatorOf } from "../evidence/evaluate.ts";
 import type { Formula } from "../logic/formula.ts";
-import type { Meter } from "../logic/meter.ts";
+import { type Meter, WorkEnded } from "../logic/meter.ts";
+import { recordFormula } from "../logic/records/formulas.ts";
 import { MeterShare } from "../logic/share.ts";
 import type { Signature } from "../logic/theory.ts";
 import { findLazily } from "../structures/lazy-search.ts";
@@ -25,6 +28,9 @@ export const ROUNDS: readonly { readonly carriers: number; readonly steps: numbe
   { carriers: Number.POSITIVE_INFINITY, steps: 4_000 },
   { carriers: Number.POSITIVE_INFINITY, steps: 40_000 },
 ];
+
+/** Steps for the check of a structure that was found. */
+const CHECK_STEPS = 20_000;
 
 /**
  * Goes through the carriers in rounds of growing effort until a structure is found. A carrier that was searched completely
@@ -81,7 +87,27 @@ export class InfiniteSearch {
     const carrier = buildCarrier(CARRIERS[number]!);
     const outcome = findLazily({ carrier, sentences, relations: signature.relations }, share.meter);
     share.settle();
-    if (outcome.result === "found") this.found = outcome.structure;
+    if (outcome.result === "found" && this.#isChecked(outcome.structure, payer))
+      this.found = outcome.structure;
     if (outcome.result === "none") this.#none.add(number);
+  }
+
+  /**
+   * Whether the checker's evaluator comes to an end on the structure: what it cannot finish is no evidence, however the
+   * search has come to it.
+   */
+  #isChecked(structure: Structure, payer: MeterShare): boolean {
+    const share = new MeterShare(payer.meter, CHECK_STEPS);
+    try {
+      const isTrue = evaluatorOf(recordStructure(structure), "the structure", share.meter);
+      for (const sentence of this.#task.sentences)
+        if (!isTrue(recordFormula(sentence))) throw new Error("the two evaluators do not agree");
+      return true;
+    } catch (problem) {
+      if (!(problem instanceof WorkEnded)) throw problem;
+      return false;
+    } finally {
+      share.settle();
+    }
   }
 }
