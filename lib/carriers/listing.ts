@@ -2,8 +2,10 @@
 import type { Meter } from "../logic/meter.ts";
 import type { Carrier } from "./carrier.ts";
 
-/** Extensions of one configuration, and configurations that kinds are numbered by, that are listed at most. */
+/** Configurations that kinds are numbered by, at most. */
 export const MOST_LISTED = 200_000;
+/** Extensions of one configuration that are listed at most: all at once, so that an interrupt is seen soon. */
+const MOST_EXTENSIONS = 40_000;
 
 /** Points that are listed without being counted. */
 const FEW_POINTS = 1_000;
@@ -11,7 +13,7 @@ const FEW_POINTS = 1_000;
 /**
  * The extensions of a configuration of so many elements.
  * @param meter counts a thousandth of a step for each, but for few points; ends with the reason `memory` when they may
- *   be more than {@link MOST_LISTED} and are not points
+ *   be more than {@link MOST_EXTENSIONS} and are not points
  * @throws WorkEnded
  */
 export function listExtensions<Configuration>(
@@ -22,7 +24,7 @@ export function listExtensions<Configuration>(
   meter: Meter,
 ): readonly Configuration[] {
   const isListed = !isOfPoints(carrier);
-  if (isListed && carrier.mostExtensions(named, toCome) > MOST_LISTED) meter.endForMemory();
+  if (isListed && carrier.mostExtensions(named, toCome) > MOST_EXTENSIONS) meter.endForMemory();
   const extensions = carrier.extensions(configuration, toCome);
   if (isListed || extensions.length > FEW_POINTS) meter.charge(extensions.length);
   return extensions;
