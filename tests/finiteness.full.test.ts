@@ -33,7 +33,7 @@ const OPEN: Readonly<Record<string, readonly string[]>> = {
   "for the elements of a part alone": ["io-49", "io-51", "io-55", "io-67"],
   "with an element at a third place": ["io-51", "io-67", "io-71"],
   "for all elements at a third place": ["io-51", "io-67", "io-75"],
-  "of a defined relation": ["io-17", "io-51"],
+  "of a defined relation": [],
 };
 
 describe("infinite-only.json, said in another signature", () => {
@@ -62,6 +62,6 @@ describe("infinite-only.json, said in another signature", () => {
 
 describe("premises and negated conclusion where there is a finite countermodel, with more steps", () => {
   it.each(refutable("fails").map(({ id, axioms }) => [id, axioms] as const))("%s", (_, axioms) => {
-    expect(findReason(axioms, 20_000)).toBeNull();
+    expect(findReason(axioms, 6_000)).toBeNull();
   });
 });

@@ -88,10 +88,7 @@ export const variants: Readonly<Record<string, (axioms: readonly Formula[]) => r
     exists("k0", and(...axioms.map((one) => withThird(one, "k0")))),
   ],
   "for all elements at a third place": (axioms) => axioms.map((one) => forall("k0", withThird(one, "k0"))),
-  "of a defined relation": (axioms) => [
-    ...readSentences(["forall x y. R(x,y) <-> S(x,y) & ~S(y,x)"]),
-    ...axioms,
-  ],
+  "of a defined relation": (axioms) => [...readSentences(["forall x y. R(x,y) <-> ~S(y,x)"]), ...axioms],
 };
 
 function withinPart(formula: Formula): Formula {

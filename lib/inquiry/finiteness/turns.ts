@@ -1,8 +1,9 @@
 /**
  * How obligations are derived. Nearly all that follow do so within a few dozen clauses by some strategy, so the turns at
- * the beginning are short and as different as they can be, each strategy also by way of the complements: axioms about a
- * relation and about its complement should cost the same. Of 355 obligations that were met in tests/data and its
- * complements, 319 are derived by the first turn, and each turn of the list below derives some that those before do not.
+ * the beginning are short and as different as they can be, and most strategies also go by way of the complements: axioms
+ * about a relation and about its complement should cost the same. Of 355 obligations that were met in tests/data and in
+ * its complements, the first strategy derives 319 within 20 clauses and 349 within 100; those of the other turns were
+ * chosen to derive the others.
  */
 import type { Engine } from "../../derivation/derive.ts";
 import type { Strategy } from "../../derivation/saturation/strategy.ts";
