@@ -40,6 +40,8 @@ const order: PrincipleShape = { principle: "endless-order", everywhere: true };
 export class Candidates {
   /** Whether there may be any reason at all. */
   readonly areAny: boolean;
+  /** Orders on parts of the elements on which an axiom says that each has a successor. */
+  readonly steps: readonly FinitenessReason[];
   /** To be tried on all elements, best first. */
   readonly likely: readonly Family[];
   /** To be tried on parts: of each list the first whose φ is as its principle asks. */
@@ -99,6 +101,7 @@ export class Candidates {
     // On parts, what is simplest comes first.
     this.alternatives = [...orders.map(simplestFirst), ...counted.map((families) => families.slice(0, 1))];
     this.sure = [...inclusions, ...counted.flatMap((families) => families.slice(1))];
+    this.steps = this.#listSteps([order]);
     this.special = this.#listSpecial(orders.flat());
     this.unlikely = this.#listUnlikely();
     this.rare = this.#listRare(clues);
@@ -141,20 +144,20 @@ export class Candidates {
     ];
   }
 
+  #listSteps(shapes: readonly PrincipleShape[]): readonly FinitenessReason[] {
+    return this.#steps.flatMap(({ relation: { formula, witness }, domain }) =>
+      domain === null
+        ? []
+        : shapes.map((shape) =>
+            reasonOf(restrict(shape), { domain: domain.formula, relation: formula, witness }),
+          ),
+    );
+  }
+
   #listSpecial(orders: readonly Family[]): readonly FinitenessReason[] {
     const { maps, injective } = this.#principles;
     const formulas = this.#baseFormulas;
-    const ofSteps = this.#steps.flatMap(({ relation, domain }) =>
-      domain === null
-        ? []
-        : [order, ...maps].map((shape) =>
-            reasonOf(restrict(shape), {
-              domain: domain.formula,
-              relation: relation.formula,
-              witness: relation.witness,
-            }),
-          ),
-    );
+    const ofSteps = this.#listSteps([order, ...maps]);
     const inSorts = this.#sorts.flatMap((sort) =>
       this.likely.flatMap(({ shape, relation: { formula, witness } }) =>
         witness === null ? [there(shape, sort, parts.within(formula, sort))] : [],

@@ -34,7 +34,7 @@ export interface ShownObligation {
   readonly derived: { readonly task: DerivationTask; readonly derivation: Derivation } | null;
 }
 
-type Segment = "likely" | "parts" | "sure" | "special" | "unlikely" | "restricted" | "rare";
+type Segment = "steps" | "likely" | "parts" | "sure" | "special" | "unlikely" | "restricted" | "rare";
 
 /** Going through candidates of one kind, with so many clauses for each obligation. */
 interface Pass {
@@ -45,7 +45,9 @@ interface Pass {
 
 /** In a pass, an obligation that was given up before is begun again, since keeping all searches would take memory. */
 const PASSES: readonly Pass[] = [
+  { level: 0, segment: "steps", clauses: SHORT },
   { level: 0, segment: "likely", clauses: SHORT },
+  { level: 0, segment: "steps", clauses: 600 },
   { level: 0, segment: "parts", clauses: SHORT },
   { level: 1, segment: "special", clauses: SHORT },
   { level: 1, segment: "likely", clauses: MIDDLE },
@@ -193,8 +195,9 @@ export class FinitenessSearch {
       case "rare":
         for (const family of candidates[segment]) yield attempt(everywhere(family));
         return;
+      case "steps":
       case "special":
-        for (const reason of candidates.special) yield attempt(reason);
+        for (const reason of candidates[segment]) yield attempt(reason);
         return;
       case "restricted":
         for (const reason of candidates.restricted()) yield attempt(reason);
