@@ -101,7 +101,8 @@ export class Candidates {
     // On parts, what is simplest comes first.
     this.alternatives = [...orders.map(simplestFirst), ...counted.map((families) => families.slice(0, 1))];
     this.sure = [...inclusions, ...counted.flatMap((families) => families.slice(1))];
-    this.steps = this.#listSteps([order]);
+    // Those with elements that are kept are harder to read than others that may do.
+    this.steps = this.#listSteps([order]).filter(({ given }) => given === null);
     this.special = this.#listSpecial(orders.flat());
     this.unlikely = this.#listUnlikely();
     this.rare = this.#listRare(clues);
