@@ -6,6 +6,8 @@ export default defineConfig({
   test: {
     testTimeout: 120_000,
     hookTimeout: 60_000,
+    // Without it, a machine with two cores would use one.
+    maxWorkers: 2,
     projects: [
       {
         extends: true,
