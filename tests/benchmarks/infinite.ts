@@ -70,7 +70,11 @@ if (seconds > 0) {
   const oracle = await startOracle();
   const answers: Record<string, number> = {};
   for (const { axioms } of entries) {
-    const { answer } = await oracle.read(printSmtLib(readTheory(axioms), null), { timeout: seconds * 1000 }, true);
+    const { answer } = await oracle.read(
+      printSmtLib(readTheory(axioms), null),
+      { timeout: seconds * 1000 },
+      true,
+    );
     const word = answer === 1 ? "a model" : answer === -1 ? "no model" : "unknown";
     answers[word] = (answers[word] ?? 0) + 1;
   }
