@@ -4,20 +4,14 @@
  */
 
 import { buildCarrier } from "../../lib/carriers/build.ts";
-import type {
-  Evidence,
-  Fact,
-  FormulaRecord,
-  StructureRecord,
-  TheoryRecord,
-} from "../../lib/evidence/format.ts";
+import type { Evidence, Fact, StructureRecord, TheoryRecord } from "../../lib/evidence/format.ts";
 import { dualsOf } from "../../lib/inquiry/dualise.ts";
 import type { Statement } from "../../lib/language/statements.ts";
-import { type Formula, not, type RelationSymbol, relationsOf } from "../../lib/logic/formula.ts";
-import { findProperty, propertyOf } from "../../lib/logic/properties.ts";
+import { type RelationSymbol, relationsOf } from "../../lib/logic/formula.ts";
 import { recordFormula } from "../../lib/logic/records/formulas.ts";
-import { type Theory, theorySignature } from "../../lib/logic/theory.ts";
-
+import type { Theory } from "../../lib/logic/theory.ts";
+import { claimOf } from "../display/summaries.ts";
+import { findOtherFindings } from "./recheck-findings.ts";
 import { findOtherInfinite } from "./recheck-infinite.ts";
 
 /** The parts of a stored result that say what was found. */
@@ -44,6 +38,7 @@ export function findDisagreement(
     case "check-finite":
       return (
         findOtherVerdict(stored.verdict, evidence.verdict) ??
+        findOtherClaim(statement, stored.data) ??
         findInconsistency(stored, evidence) ??
         findOtherSizes(stored, evidence) ??
         findOtherInfinite(stored.data, evidence, relationsAsked(statement)) ??
@@ -60,7 +55,7 @@ export function findDisagreement(
     case "count":
       return findForeignSize(statement.options.upTo ?? 0, evidence);
     case "describe":
-      return findOtherFindings(statement, stored.data.properties, evidence);
+      return findOtherProperties(statement, stored.data.properties, evidence);
     default:
       return "the statement has no evidence of its own";
   }
@@ -107,6 +102,12 @@ function quoted(value: unknown): string {
 function findOtherVerdict(stored: string | null, shown: Evidence["verdict"]): string | null {
   if (stored === shown) return null;
   return `the stored verdict is ${quoted(stored)}, and the evidence is for ${quoted(shown)}`;
+}
+
+/** The data name the claim that they are about. */
+function findOtherClaim(statement: Asking, { claim }: Stored["data"]): string | null {
+  const own = claimOf(statement)?.kind;
+  return claim === own ? null : `the stored data are about ${quoted(claim)}, and the claim is ${quoted(own)}`;
 }
 
 /** The words of a result with several verdicts, in the order of the evidence; null when the data are damaged. */
@@ -191,7 +192,9 @@ function findPairs(statement: Statement, stored: Stored, { question, facts }: Ev
     const said = pairsIn(stored.data)?.[place]?.jointlyInconsistent;
     if (said === true && !contradicts(facts, both))
       return "a pair is said to be jointly inconsistent, and no derivation shows that";
-    if (said === false && !facts.some((fact) => fact.fact === "structure" && contains(fact.holds, both)))
+    const isCommon = (fact: Fact) =>
+      (fact.fact === "structure" || fact.fact === "terms") && contains(fact.holds, both);
+    if (said === false && !facts.some(isCommon))
       return "a pair is said to have a common model, and no structure shows that";
   }
   const { inconsistent } = stored.data;
@@ -297,20 +300,39 @@ function settles(fact: Fact, word: unknown, axiom: number, others: TheoryRecord)
   }
 }
 
-/** Keys of data that give the size of a structure in the evidence. */
-const SIZES = ["modelSize", "countermodelSize", "separatingSize"];
+/** Keys of data that give the size of a structure in the evidence, null for an infinite one, and up to where none was found. */
+const SIZES = [
+  ["modelSize", "noModelUpTo"],
+  ["countermodelSize", "noCountermodelUpTo"],
+  ["separatingSize", "noneUpTo"],
+] as const;
 
 function findOtherSizes({ data }: Stored, { facts }: Evidence): string | null {
   const structures = structuresIn(facts);
-  for (const key of SIZES) {
-    const size = data[key] ?? null;
+  for (const [key, none] of SIZES) {
+    if (data[key] === undefined && data[none] === undefined) continue;
+    const [size, noneUpTo] = [data[key], data[none]];
+    if ((size !== null && !isCount(size)) || !isCount(noneUpTo)) return DAMAGED;
     if (size !== null && !structures.some((structure) => pointsOf(structure) === size))
-      return `a structure on ${String(size)} points is stored, and the evidence has none of that size`;
+      return `a structure on ${size} points is stored, and the evidence has none of that size`;
+    if (size !== null && noneUpTo >= size)
+      return `there is said to be none up to ${noneUpTo} points, and one on ${size} points is stored`;
   }
+  return findOtherLeast(data, facts);
+}
+
+function isCount(value: unknown): value is number {
+  return Number.isSafeInteger(value) && (value as number) >= 0;
+}
+
+/** What `check-finite` says of the least size, and of the sizes that are proven to have no model. */
+function findOtherLeast(data: Stored["data"], facts: readonly Fact[]): string | null {
+  const { leastSize = null, modelSize = null, noModelUpTo, provenUpTo = 0 } = data;
+  if (!isCount(provenUpTo)) return DAMAGED;
+  if (leastSize !== null && (leastSize !== modelSize || noModelUpTo !== (modelSize as number) - 1))
+    return `${String(leastSize)} is said to be the least size, and that is not what the other sizes say`;
   const proven = facts.flatMap((fact) => (fact.fact === "no-model" ? [fact.size] : []));
-  const upTo = data.provenUpTo ?? 0;
-  if (typeof upTo !== "number") return DAMAGED;
-  for (let size = 1; size <= upTo; size += 1)
+  for (let size = 1; size <= provenUpTo; size += 1)
     if (!proven.includes(size))
       return `that no model has ${size} points is said to be proven, and no proof is there`;
   return null;
@@ -369,65 +391,11 @@ function findForeignSize(upTo: number, { facts }: Evidence): string | null {
     : `the evidence has a model on ${sizeText(larger)} points, where up to ${upTo} were asked for`;
 }
 
-interface StoredSearch {
-  readonly size?: unknown;
-  readonly infinite?: unknown;
-}
-interface StoredFinding {
-  readonly property?: unknown;
-  readonly status?: unknown;
-  readonly modelWith?: StoredSearch | null;
-  readonly modelWithout?: StoredSearch | null;
-}
-
-/** What `describe` has found out about named properties. */
-function findOtherFindings(
+function findOtherProperties(
   statement: Statement & { kind: "describe" },
   properties: unknown,
   evidence: Evidence,
 ): string | null {
   if (statement.subject.kind !== "theory" || !isListOfObjects(properties)) return DAMAGED;
-  const { theory } = statement.subject.theory;
-  for (const { property, status, modelWith, modelWithout } of properties as readonly StoredFinding[]) {
-    const sentence = sentenceOfProperty(String(property), theory);
-    if (sentence === null) return `${quoted(property)} is no property of a relation of the theory`;
-    const shows = (wanted: Formula, search: StoredSearch | null | undefined) => {
-      if (search?.infinite === true) return hasModel(evidence, wanted, null);
-      return search?.size == null || hasModel(evidence, wanted, search.size);
-    };
-    if (!shows(sentence, modelWith) || !shows(not(sentence), modelWithout))
-      return `no structure of the evidence shows what is stored of ${quoted(property)}`;
-    const derived = status === "follows" ? not(not(sentence)) : status === "excluded" ? not(sentence) : null;
-    if (derived !== null && !hasDerivation(evidence, derived))
-      return `no derivation of the evidence shows what is stored of ${quoted(property)}`;
-  }
-  return null;
-}
-
-/** The sentence that a property, written `transitive(R)`, is of a relation of the theory; null when it is none. */
-function sentenceOfProperty(text: string, theory: Theory): Formula | null {
-  const [, name, of] = /^([^()]+)\((.*)\)$/.exec(text) ?? [];
-  const property = findProperty(name ?? "");
-  const relation = theorySignature(theory).relations.find((one) => one.name === of && one.places === 2);
-  return property === undefined || relation === undefined ? null : propertyOf(property, relation);
-}
-
-function indexOf({ sentences }: Evidence, formula: Formula): number {
-  const text = JSON.stringify(recordFormula(formula));
-  return sentences.findIndex((sentence: FormulaRecord) => JSON.stringify(sentence) === text);
-}
-
-/** @param size null for an infinite one */
-function hasModel(evidence: Evidence, formula: Formula, size: unknown): boolean {
-  const index = indexOf(evidence, formula);
-  return evidence.facts.some(
-    (fact) => fact.fact === "structure" && pointsOf(fact.structure) === size && fact.holds.includes(index),
-  );
-}
-
-function hasDerivation(evidence: Evidence, formula: Formula): boolean {
-  const index = indexOf(evidence, formula);
-  return evidence.facts.some(
-    (fact) => fact.fact === "derivation" && (fact.conclusion === null || fact.conclusion === index),
-  );
+  return findOtherFindings(statement.subject.theory.theory, properties, evidence, DAMAGED);
 }
