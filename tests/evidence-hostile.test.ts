@@ -174,16 +174,34 @@ describe("structures", () => {
     expectRefusal(truth(carrier), /the kinds of tuples for R are too many to list/);
   }); // biome-ignore format: a row each
 
-  it("with two variables that take turns for hundreds of levels", () => {
-    const step = (inner: Json): Json => [
-      "forall",
-      "x",
-      ["exists", "y", ["or", ["is", "R", "x", "y"], inner]],
-    ];
-    const deep = nested(300, step, ["true"]);
+  it("with two variables that take turns for dozens of levels", () => {
+    const either = ["or", ["is", "R", "x", "y"], ["not", ["is", "R", "x", "y"]]];
+    let deep: Json = ["true"];
+    for (let level = 0; level < 60; level += 1)
+      deep = ["forall", level % 2 === 0 ? "x" : "y", ["and", either, deep]];
     // What recurs is not worked out again; on the half line listing itself runs out.
-    expect(truth(rationals, deep)).toMatchObject({ accepted: true });
-    expectRefusal(truth(naturals, deep), /ended early/);
+    expect(truth(rationals, ["forall", "x", deep])).toMatchObject({ accepted: true });
+    expectRefusal(truth(naturals, ["forall", "x", deep]), /ended early/);
+  });
+
+  it("with quantifiers that each list a million points: not all are kept in memory", () => {
+    const deep = forall(names(20), ["true"]);
+    const question = {
+      ask: "true-in",
+      structure: { carrier: { kind: "points", size: 1_000_000 }, tables: {} },
+      sentence: 0,
+    };
+    expectRefusal(check({ sentences: [deep], question }, 50_000), /ended early: memory/);
+  });
+
+  it("on carriers of many parts, which cost more", () => {
+    const steps = (parts: number) => {
+      const carrier = { kind: "sum", parts: Array(parts).fill({ kind: "points", size: 50 / parts }) };
+      const question = { ask: "true-in", structure: { carrier, tables: nowhere }, sentence: 0 };
+      const result = check({ sentences: [tautology(2)], question }, 1_000);
+      return result.accepted ? result.steps : Number.NaN;
+    };
+    expect(steps(50)).toBeGreaterThan(5 * steps(2));
   });
 
   it("again and again: the meter pays for them", () => {
@@ -321,7 +339,7 @@ describe("reasons", () => {
     ["differences by relations, and = in the relation", { ...comprehension, different: [["R", 2]], relation: ["=", "x", "y"] }, wrongForm],
     ["differences by something", { ...counting, different: "equality" }, /not a list/],
     ["a huge domain", { ...endless, domain: ["and", ...Array(90_000).fill(["is", "R", "x", "x"])] }, wrongForm],
-    ["a deep domain", { ...endless, domain: nested(1_900, (inner) => ["not", inner], ["is", "R", "x", "x"]) }, /is not derived/],
+    ["a deep domain", { ...endless, domain: nested(1_900, (inner) => ["not", inner], ["is", "R", "x", "x"]) }, /is not derived|not of its form|too large/],
     ["an unknown principle", { ...endless, principle: "compactness" }, /unknown kind "compactness"/],
     ["the keys of another principle", { ...endless, different: "identity" }, /foreign key "different"/],
     ["pairs of two-place relations", { ...pairs, relation: ["is", "R", "x", "y"] }, /is not derived/],
@@ -450,6 +468,29 @@ describe("free terms", () => {
   function place(on: number): Json {
     return { ...successors, relations: { R: { ...successors.relations.R, on } } };
   }
+
+  it("in which not all of some sentences are true", () => {
+    const sentences = [
+      first,
+      ["forall", "x", ["exists", "y", ["is", "R", "y", "x"]]],
+      ["forall", "x", ["not", ["is", "R", "x", "x"]]],
+    ];
+    const fact = { fact: "terms", terms: successors, holds: [0], fails: [1, 2] };
+    const question = { ask: "consistent", axioms: [0] };
+    // That nothing is before c: of the two, the first is false.
+    const refutation = [["instances", ["e"]]];
+    const shows = (fails: Json, certificates: Json) =>
+      check({ sentences, question, facts: [{ ...fact, fails, certificates }] }).accepted;
+    expect(shows([1, 2], [firstShown, refutation])).toBe(true);
+    expect(shows([2, 1], [firstShown, refutation])).toBe(false);
+    expect(shows([2, 1], [firstShown, [["instances"], ...refutation]])).toBe(true);
+    expect(shows([1], [firstShown, refutation])).toBe(true);
+    expect(shows([2], [firstShown, refutation])).toBe(false);
+    expect(shows([1, 2], [firstShown, []])).toBe(false);
+    expect(shows([1, 2], [firstShown])).toBe(false);
+    expect(shows([0], [firstShown, firstShown])).toBe(false);
+    expect(shows([0, 2], [firstShown, firstShown])).toBe(false);
+  });
 
   it("that would take for ever", () => {
     const doubling = Array.from({ length: 20 }, (_, levels) => nested(levels, (one) => ["f", one, one], ["e"]));
