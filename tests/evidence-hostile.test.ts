@@ -194,6 +194,13 @@ describe("structures", () => {
     expectRefusal(check({ sentences: [deep], question }, 50_000), /ended early: memory/);
   });
 
+  it("that list much and look at little pay for what they list", () => {
+    const carrier = { kind: "half-line", offset: 1000, ends: 1000 };
+    const question = { ask: "true-in", structure: { carrier, tables: {} }, sentence: 0 };
+    const result = check({ sentences: [["exists", "x", ["=", "x", "x"]]], question });
+    expect(result).toMatchObject({ accepted: true, steps: 2 });
+  });
+
   it("on carriers of many parts, which cost more", () => {
     const steps = (parts: number) => {
       const carrier = { kind: "sum", parts: Array(parts).fill({ kind: "points", size: 50 / parts }) };

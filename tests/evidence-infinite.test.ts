@@ -6,16 +6,27 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { checkEvidence } from "../lib/evidence/check.ts";
+import { digestOf } from "../lib/evidence/digest.ts";
 import { isTrueIn } from "../lib/evidence/evaluate.ts";
-import type { Evidence, StructureRecord } from "../lib/evidence/format.ts";
+import type {
+  Evidence,
+  Fact,
+  FormulaRecord,
+  StructureRecord,
+  TheoryQuestion,
+} from "../lib/evidence/format.ts";
+import { checkFinite } from "../lib/inquiry/check-finite.ts";
+import { unwatchedWork } from "../lib/inquiry/work.ts";
 import { Meter, WorkEnded } from "../lib/logic/meter.ts";
 import { recordFormula } from "../lib/logic/records/formulas.ts";
 import { composites, finite, nameOf, ofAllKinds } from "./support/carriers-composites.ts";
+import { readTheory } from "./support/corpora.ts";
 import { isRight } from "./support/evidence-judge.ts";
 import {
   type Attack,
   attack,
   evidenceOfAllQuestions,
+  expectEvidence,
   finitenessEvidence,
   structuresIn,
   truthEvidence,
@@ -59,6 +70,59 @@ describe("evidence with infinite structures and reasons", () => {
       expectRejections(attack(evidence, { others: 37, derivations: 1 }));
     },
   );
+});
+
+describe("what facts bear out", () => {
+  const both = evidences["io-03"]!;
+  const ofTerms = evidences["io-47"]!;
+  const isModel = ({ fact }: Fact) => fact === "structure" || fact === "terms";
+  const finite = expectEvidence(checkFinite(readTheory(["exists x y. R(x,y)"]), unwatchedWork).evidence);
+  const contradiction = expectEvidence(
+    checkFinite(readTheory(["exists x. R(x,x)", "forall x. ~R(x,x)"]), unwatchedWork).evidence,
+  );
+  const words = [
+    ...["holds", "fails", "open", "finite", "inconsistent", "consistent", "infinite-only", "no-finite-model"],
+    ...["equivalent", "constructor", ""],
+  ];
+
+  it.each<[string, Evidence, (fact: Fact) => boolean, Readonly<Record<string, readonly string[]>>]>([
+    ["a model and a reason", both, () => true, { "check-finite": ["consistent", "infinite-only", "no-finite-model"], "infinite-only": ["holds"], "no-finite-model": ["holds"], consistent: ["holds"] }],
+    ["a model of terms and a reason", ofTerms, () => true, { "check-finite": ["consistent", "infinite-only", "no-finite-model"], "infinite-only": ["holds"], "no-finite-model": ["holds"], consistent: ["holds"] }],
+    ["an infinite model", both, isModel, { "check-finite": ["consistent"], "infinite-only": [], "no-finite-model": [], consistent: ["holds"] }],
+    ["a model of terms", ofTerms, isModel, { "check-finite": ["consistent"], "infinite-only": [], "no-finite-model": [], consistent: ["holds"] }],
+    ["a reason", both, (fact) => !isModel(fact), { "check-finite": ["no-finite-model"], "infinite-only": [], "no-finite-model": ["holds"], consistent: [] }],
+    ["derivations alone", both, ({ fact }) => fact === "derivation", { "check-finite": [], "infinite-only": [], "no-finite-model": [], consistent: [] }],
+    ["nothing", both, () => false, { "check-finite": [], "infinite-only": [], "no-finite-model": [], consistent: [] }],
+    ["a finite model", finite, () => true, { "check-finite": ["finite", "consistent"], "infinite-only": ["fails"], "no-finite-model": ["fails"], consistent: ["holds"] }],
+    ["a contradiction", contradiction, () => true, { "check-finite": ["inconsistent"], "infinite-only": ["fails"], "no-finite-model": ["holds"], consistent: ["fails"] }],
+  ])("%s: these verdicts and no others", (_, evidence, isKept, expected) => {
+    const { sentences, facts } = evidence;
+    const { axioms } = evidence.question as { readonly axioms: readonly number[] };
+    for (const [ask, verdicts] of Object.entries(expected)) {
+      const accepted = words.filter((verdict) => {
+        const question = { ask: ask as TheoryQuestion, axioms };
+        const changed = { ...evidence, question, verdict, facts: facts.filter(isKept) };
+        return checkEvidence({ ...changed, digest: digestOf(sentences, question) }).accepted;
+      });
+      expect(accepted.sort(), ask).toEqual([...verdicts].sort());
+    }
+  }); // biome-ignore format: a row each
+
+  it("of a theory with more axioms than the reason needs, and not with fewer", () => {
+    const { sentences } = both;
+    const more: FormulaRecord = ["exists", "x", ["true"]];
+    const check = (axioms: readonly number[]) => {
+      const question = { ask: "no-finite-model" as const, axioms };
+      const all = [...sentences, more];
+      const facts = both.facts.filter((fact) => !isModel(fact));
+      const changed = { ...both, sentences: all, question, verdict: "holds", facts };
+      return checkEvidence({ ...changed, digest: digestOf(all, question) }).accepted;
+    };
+    const { axioms } = both.question as { readonly axioms: readonly number[] };
+    expect(check([...axioms, sentences.length])).toBe(true);
+    expect(check([sentences.length])).toBe(false);
+    expect(check([])).toBe(false);
+  });
 });
 
 describe(`truth on infinite carriers (seed ${seed})`, () => {

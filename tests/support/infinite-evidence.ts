@@ -131,7 +131,8 @@ export function evidenceOfAllQuestions(): Readonly<Record<string, Evidence>> {
   );
 }
 
-function expectEvidence(evidence: Evidence | null): Evidence {
+/** The evidence, which must be there, after a way through JSON. */
+export function expectEvidence(evidence: Evidence | null): Evidence {
   if (evidence === null) throw new Error("a question of the tests was left open");
   return JSON.parse(JSON.stringify(evidence)) as Evidence;
 }
