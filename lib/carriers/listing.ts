@@ -7,12 +7,14 @@ export const MOST_LISTED = 200_000;
 /** Extensions of one configuration that are listed at most: all at once, so that an interrupt is seen soon. */
 const MOST_EXTENSIONS = 40_000;
 
+/** A configuration of an infinite carrier is as much work as so many visits to a subformula. */
+const VISITS_EACH = 10;
 /** Points that are listed without being counted. */
 const FEW_POINTS = 1_000;
 
 /**
  * The extensions of a configuration of so many elements.
- * @param meter counts a thousandth of a step for each, but for few points; ends with the reason `memory` when they may
+ * @param meter counts ten thousandths of a step for each, on points one, and nothing for few points; ends with the reason `memory` when they may
  *   be more than {@link MOST_EXTENSIONS} and are not points
  * @throws WorkEnded
  */
@@ -26,7 +28,8 @@ export function listExtensions<Configuration>(
   const isListed = !isOfPoints(carrier);
   if (isListed && carrier.mostExtensions(named, toCome) > MOST_EXTENSIONS) meter.endForMemory();
   const extensions = carrier.extensions(configuration, toCome);
-  if (isListed || extensions.length > FEW_POINTS) meter.charge(extensions.length);
+  if (isListed) meter.charge(extensions.length * VISITS_EACH);
+  else if (extensions.length > FEW_POINTS) meter.charge(extensions.length);
   return extensions;
 }
 

@@ -149,15 +149,21 @@ function planDepth(plan: Plan): number {
   }
 }
 
+/** Results that are remembered at most; what comes after them is worked out again. */
+const MOST_REMEMBERED = 1_000_000;
+
 /** What has been found out about quantifiers at configurations, for those that recur. */
 export class Memory<Result> {
   readonly #results: Map<string | number, Result>[] = [];
+  #count = 0;
 
   get(quantifier: QuantifierPlan, key: string | number): Result | undefined {
     return this.#results[quantifier.id]?.get(key);
   }
 
   set(quantifier: QuantifierPlan, key: string | number, result: Result): void {
+    if (this.#count >= MOST_REMEMBERED) return;
+    this.#count += 1;
     let results = this.#results[quantifier.id];
     if (results === undefined) {
       results = new Map();
