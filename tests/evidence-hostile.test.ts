@@ -396,7 +396,7 @@ describe("reasons", () => {
     const derivation = { fact: "derivation", premises: [0], conclusion: 0, made: [], lines: [] };
     const question = { ask: "no-finite-model", axioms: [0, 1, 2] };
     const own = { fact: "no-finite-model", axioms: [0, 1, 2], principle: endless };
-    const facts = [...Array(5_000).fill(own), ...Array(5_000).fill(derivation)];
+    const facts = [...Array(60).fill(own), ...Array(5_000).fill(derivation)];
     expectRefusal(check({ sentences: axioms, question, facts }), /ended early: budget/);
   });
 });

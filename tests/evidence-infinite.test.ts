@@ -108,6 +108,21 @@ describe("what facts bear out", () => {
     }
   }); // biome-ignore format: a row each
 
+  it.each([both, ofTerms])("of a model that is said to be one of fewer axioms: none", (evidence) => {
+    const { question } = evidence;
+    const facts = evidence.facts.filter(isModel).map((fact): Fact => {
+      if (fact.fact === "structure") return { ...fact, holds: fact.holds.slice(1) };
+      if (fact.fact !== "terms") return fact;
+      return { ...fact, holds: fact.holds.slice(1), certificates: fact.certificates.slice(1) };
+    });
+    expect(checkEvidence({ ...evidence, facts, verdict: "consistent" })).toMatchObject({
+      accepted: false,
+      reason: expect.stringMatching(/do not bear out/),
+    });
+    const whole = evidence.facts.filter(isModel);
+    expect(checkEvidence({ ...evidence, question, facts: whole, verdict: "consistent" }).accepted).toBe(true);
+  });
+
   it("of a theory with more axioms than the reason needs, and not with fewer", () => {
     const { sentences } = both;
     const more: FormulaRecord = ["exists", "x", ["true"]];
