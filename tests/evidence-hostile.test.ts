@@ -5,8 +5,10 @@
 import { describe, expect, it } from "vitest";
 import { checkEvidence, meterForCheck } from "../lib/evidence/check.ts";
 import { digestOf } from "../lib/evidence/digest.ts";
-import type { Evidence } from "../lib/evidence/format.ts";
+import type { Evidence, PrincipleRecord } from "../lib/evidence/format.ts";
 import { DEFAULT_BUDGET, Meter } from "../lib/logic/meter.ts";
+import { obligationsOf } from "../lib/logic/records/finiteness.ts";
+import { sameUpToNames } from "../lib/logic/records/formulas.ts";
 
 /** Anything that JSON can say. */
 type Json = unknown;
@@ -344,6 +346,7 @@ describe("reasons", () => {
     ["differences by a relation of 100 places, counted often", { ...counting, successors: 12, predecessors: 12, different: [["R", 2], ["S", 100]] }, wrongForm],
     ["differences by a relation again and again", { ...counting, different: [["R", 2], ...Array(300_000).fill(["S", 2])] }, wrongForm],
     ["differences by relations, and =", { ...counting, different: [["R", 2]], domain: ["=", "x", "x"] }, wrongForm],
+    ["differences by a relation called like a variable, and =", { ...counting, different: [["R", 2], ["x", 1]], domain: ["=", "x", "x"] }, wrongForm],
     ["differences by relations, and = in the relation", { ...comprehension, different: [["R", 2]], relation: ["=", "x", "y"] }, wrongForm],
     ["differences by something", { ...counting, different: "equality" }, /not a list/],
     ["a huge domain", { ...endless, domain: ["and", ...Array(90_000).fill(["is", "R", "x", "x"])] }, wrongForm],
@@ -354,6 +357,29 @@ describe("reasons", () => {
   ])("with %s", (_, principle, why) => {
     expectRefusal(reason(principle), why);
   }); // biome-ignore format: a row each
+
+  it("whose parameters have names that variables of what is asked for could have", () => {
+    const about = (parameter: string): PrincipleRecord[] => {
+      const given = ["is", "R", parameter, parameter];
+      const relation = ["and", ["is", "R", "x", "y"], ["not", ["is", "R", "y", parameter]]];
+      const own = { parameters: [parameter], given, domain: ["is", "R", "x", parameter], relation };
+      return [
+        { ...endless, ...own },
+        { ...counting, ...own, successors: 7, predecessors: 7 },
+        { ...counting, ...own, different: [["R", 2]], spare: "more-successors" },
+        { ...pairs, ...own, pairs: 3 },
+        { ...comprehension, ...own },
+      ] as unknown as PrincipleRecord[];
+    };
+    const expected = about("p").map((principle) => obligationsOf(principle)!);
+    for (const parameter of ["w", "u", "v", "x1", "y1", "x'", "w'"])
+      for (const [place, principle] of about(parameter).entries()) {
+        const obligations = obligationsOf(principle)!;
+        expect(obligations.length).toBe(expected[place]!.length);
+        for (const [number, obligation] of obligations.entries())
+          expect(sameUpToNames(obligation, expected[place]![number]!), parameter).toBe(true);
+      }
+  });
 
   it("of which something is not derived", () => {
     for (const place of axioms.keys())
