@@ -526,6 +526,14 @@ describe("free terms", () => {
     expect(shows([0, 2], [firstShown, firstShown])).toBe(false);
   });
 
+  it("with steps after a distinction of cases, which is the last", () => {
+    const same = ["forall", "x", ["=", "x", "x"]];
+    const cases = ["cases", "1", { e: [], f: [] }];
+    expect(ofTerms([[cases]], same)).toMatchObject({ accepted: true });
+    expectRefusal(ofTerms([[cases, ["instances", ["e"]]]], same), notShown);
+    expectRefusal(ofTerms([[cases, cases]], same), notShown);
+  });
+
   it("that would take for ever", () => {
     const doubling = Array.from({ length: 20 }, (_, levels) => nested(levels, (one) => ["f", one, one], ["e"]));
     const some = ["exists", "x", ["exists", "y", ["and", ["is", "R", "x", "y"], ["is", "R", "y", "x"]]]];

@@ -55,7 +55,7 @@ describe(`changed evidence (exchanged parts by seed ${seed})`, () => {
     // A question of a few hundred steps at least is checked in a few.
     const meter = new Meter(100);
     expect(checkEvidence(evidence, meter)).toMatchObject({ accepted: true });
-    attackAll(evidence, { others: 9, derivations: 500 }, 100);
+    attackAll(evidence, { others: 8, derivations: 300 }, 100);
   });
 
   it.each(infiniteQuestions.map((question) => [question.id, question] as const))(
