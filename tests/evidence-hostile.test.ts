@@ -560,6 +560,8 @@ describe("free terms", () => {
 
 describe("the meter of a check", () => {
   it("is the same with and without a small budget, and grows with a large one", () => {
+    expect(meterForCheck().limit).toBeGreaterThan(DEFAULT_BUDGET);
+    expect(meterForCheck().limit).toBeLessThan(Number.POSITIVE_INFINITY);
     expect(meterForCheck().limit).toBe(meterForCheck(10).limit);
     expect(meterForCheck(10 * DEFAULT_BUDGET).limit).toBe(10 * meterForCheck().limit);
   });
