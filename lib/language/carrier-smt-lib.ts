@@ -6,6 +6,9 @@
  * sum a part, on a product each has the coordinates of both components. So ∀x φ becomes a conjunction over the shapes
  * of x, with ∀ over its coordinates; a relation becomes a defined function for each choice of shapes.
  */
+import { buildCarrier } from "../carriers/build.ts";
+import { vocabularyOf } from "../carriers/vocabulary/of.ts";
+import { mapElements, termsOf } from "../logic/carrier-formulas.ts";
 import type { Formula, RelationSymbol, Variable } from "../logic/formula.ts";
 import { relationsOf } from "../logic/formula.ts";
 import type {
@@ -27,7 +30,13 @@ type Element =
   | { readonly kind: "number"; readonly name: string; readonly sort: Sort; readonly least: number | null }
   | { readonly kind: "point"; readonly point: number }
   | { readonly kind: "tuple"; readonly copy: number; readonly coordinates: readonly Element[] }
-  | { readonly kind: "part"; readonly part: number; readonly of: Element }
+  /** With what the part is a part: the carrier itself, not a sum of others. */
+  | {
+      readonly kind: "part";
+      readonly part: number;
+      readonly carrier: CarrierDescription;
+      readonly of: Element;
+    }
   | { readonly kind: "pair"; readonly outer: Element; readonly inner: Element };
 type Sort = "Real" | "Int";
 
@@ -108,7 +117,7 @@ function shapesOf(carrier: CarrierDescription): readonly Shape[] | null {
               const of = make(name);
               // Of a part that is a sum itself, its parts are told apart.
               if (of.kind === "part") return { ...of, part: before + of.part };
-              return { kind: "part", part: before, of };
+              return { kind: "part", part: before, carrier: carrier.parts[place]!, of };
             },
         );
       });
@@ -145,6 +154,7 @@ function choices<Choice>(of: readonly Choice[], length: number): readonly (reado
 }
 
 type Numbers = Extract<Element, { kind: "number" }>;
+type Point = Extract<Element, { kind: "point" }>;
 
 function numbersOf(element: Element): readonly Numbers[] {
   switch (element.kind) {
@@ -288,48 +298,71 @@ function writeCarrierFormula(formula: CarrierFormula, elements: ReadonlyMap<stri
   }
 }
 
-/** What a term stands for: a number with a shift, or an element that is none; and in which copies and parts it is. */
+/** What a term stands for: a number or an element with a shift; and in which copies and parts it is. */
 interface Meant {
   readonly element: Element | number;
   readonly shift: number;
   /** Components are compared only within one copy of a product, elements only within one part of a sum. */
   readonly within: readonly Within[];
 }
-type Within = { readonly outer: Element } | { readonly part: number };
+type Within =
+  | { readonly outer: Element }
+  /** @param depth how many steps of the path lead to the element that is in the part */
+  | { readonly part: number; readonly carrier: CarrierDescription; readonly depth: number };
 
 function writeAtom(atom: CarrierAtom, elements: ReadonlyMap<string, Element>): string {
   if (atom.kind === "holds") return "false";
+  const terms = termsOf(atom).map((term) =>
+    meaningOf(term, elements, atom.kind === "label" && atom.name === "part"),
+  );
+  const [left, right] = terms;
+  if (!left || right === null) return "false";
+  for (const meant of [left, ...(right === undefined ? [] : [right])])
+    for (const within of meant.within) if ("part" in within && isSilent(atom, within)) return "false";
   if (atom.kind === "label") {
-    let meant = meaningOf(atom.of, elements)?.element;
-    if (meant === undefined || typeof meant === "number") return "false";
-    if (atom.name === "part") return partOf(meant) === atom.value - 1 ? "true" : "false";
-    while (meant.kind === "part") meant = meant.of;
-    return atom.name === "copy" && meant.kind === "tuple" && meant.copy === atom.value - 1 ? "true" : "false";
+    const { element } = left;
+    if (typeof element === "number") return "false";
+    const number =
+      atom.name === "part" && element.kind === "part"
+        ? element.part
+        : atom.name === "copy" && element.kind === "tuple"
+          ? element.copy
+          : atom.name === "copy" && element.kind === "point"
+            ? element.point
+            : null;
+    return number === atom.value - 1 ? "true" : "false";
   }
-  const [left, right] = [meaningOf(atom.left, elements), meaningOf(atom.right, elements)];
-  if (left === null || right === null) return "false";
-  const together = haveInCommon(left.within, right.within);
+  const together = haveInCommon(left.within, right!.within);
   if (together === null) return "false";
-  const [one, other] = [left.element, right.element];
+  const [one, other] = [left.element, right!.element];
   if (isNumeric(one) && isNumeric(other)) {
     const operator = atom.relation === "≤" ? "<=" : atom.relation;
-    const compared = `(${operator} ${writeNumber(one, left.shift)} ${writeNumber(other, right.shift)})`;
+    const compared = `(${operator} ${writeNumber(one, left.shift)} ${writeNumber(other, right!.shift)})`;
     return all("and", [...together, compared]);
   }
   if (atom.relation !== "=" || typeof one === "number" || typeof other === "number") return "false";
   return all("and", [...together, areSame(one, other)]);
 }
 
-function partOf(element: Element): number | null {
-  return element.kind === "part" ? element.part : null;
+/** Whether an atom says nothing in a part of a sum, and so is false there. */
+function isSilent(atom: CarrierAtom, { carrier, depth }: Extract<Within, { part: number }>): boolean {
+  const own = mapElements(atom, (element) => ({ ...element, path: element.path.slice(depth) }));
+  // That elements are the same is said of all.
+  const isIdentity =
+    own.kind === "compare" &&
+    own.relation === "=" &&
+    [own.left, own.right].every((term) => term.kind === "element" && term.path.length === 0);
+  return !isIdentity && vocabularyOf(buildCarrier(carrier)).complaint(own) !== null;
 }
 
-function isNumeric(meant: Element | number): meant is Numbers | number {
-  return typeof meant === "number" || meant.kind === "number";
+function isNumeric(meant: Element | number): meant is Numbers | Point | number {
+  return typeof meant === "number" || meant.kind === "number" || meant.kind === "point";
 }
 
-function writeNumber(number: Numbers | number, shift: number): string {
+/** Points are the numbers from 1 on. */
+function writeNumber(number: Numbers | Point | number, shift: number): string {
   if (typeof number === "number") return numeral(number + shift);
+  if (number.kind === "point") return numeral(number.point + 1 + shift);
   const name = writeSymbol(number.name);
   return shift === 0 ? name : `(+ ${name} ${numeral(shift)})`;
 }
@@ -338,8 +371,11 @@ function numeral(value: number): string {
   return value < 0 ? `(- ${-value})` : String(value);
 }
 
-/** Null when a component is not there. */
-function meaningOf(term: ElementTerm, elements: ReadonlyMap<string, Element>): Meant | null {
+/**
+ * Null when a component is not there.
+ * @param isPart whether the part of a sum is meant, and not the element in it
+ */
+function meaningOf(term: ElementTerm, elements: ReadonlyMap<string, Element>, isPart = false): Meant | null {
   switch (term.kind) {
     case "number":
       return { element: term.value, shift: 0, within: [] };
@@ -352,8 +388,8 @@ function meaningOf(term: ElementTerm, elements: ReadonlyMap<string, Element>): M
     case "element": {
       let element = elements.get(term.variable)!;
       const within: Within[] = [];
-      for (const step of term.path) {
-        element = withoutParts(element, within);
+      for (const [depth, step] of term.path.entries()) {
+        element = withoutParts(element, within, depth);
         if (element.kind === "tuple" && typeof step === "number") {
           const coordinate = element.coordinates[step - 1];
           if (coordinate === undefined) return null;
@@ -364,14 +400,19 @@ function meaningOf(term: ElementTerm, elements: ReadonlyMap<string, Element>): M
           element = element.inner;
         } else return null;
       }
-      return { element: term.path.length > 0 ? withoutParts(element, within) : element, shift: 0, within };
+      return {
+        element: isPart ? element : withoutParts(element, within, term.path.length),
+        shift: 0,
+        within,
+      };
     }
   }
 }
 
-function withoutParts(element: Element, within: Within[]): Element {
+function withoutParts(element: Element, within: Within[], depth: number): Element {
   let inner = element;
-  for (; inner.kind === "part"; inner = inner.of) within.push({ part: inner.part });
+  for (; inner.kind === "part"; inner = inner.of)
+    within.push({ part: inner.part, carrier: inner.carrier, depth });
   return inner;
 }
 
