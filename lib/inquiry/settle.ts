@@ -302,7 +302,7 @@ class Run {
         ? "derived"
         : this.#saturated
           ? "saturated"
-          : this.structure !== null
+          : (this.structure ?? this.infinite) !== null
             ? "stopped"
             : "ended";
     return {

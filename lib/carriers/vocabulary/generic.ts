@@ -13,15 +13,16 @@ import type { BooleanAlgebra, BooleanConfiguration } from "../boolean-algebra.ts
 import { BOTH, between, EQUAL, FORTH, type Generic, type GenericConfiguration } from "../generic.ts";
 import {
   apply,
-  type Comparison,
+  asComparison,
   compare,
   complain,
-  type Element,
   element,
   firstComplaint,
+  labelComplaint,
   number,
   type Operation,
   pairsOf,
+  pathComplaint,
   writeComparison,
   writeTerm,
 } from "./terms.ts";
@@ -51,7 +52,7 @@ export function genericVocabulary(carrier: Generic): Vocabulary<GenericConfigura
   const example = relation === null ? "x < y" : `${relation}(x, y)`;
   return {
     complaint(atom) {
-      if (atom.kind === "label") return labelComplaint(atom.name, name, example);
+      if (atom.kind === "label") return labelComplaint(atom.name, name, `\`${example}\``);
       const wrong = firstComplaint(atom, (term) => plainComplaint(term, name, example));
       if (wrong !== null) return wrong;
       if (atom.kind === "holds") return relationComplaint(atom, name, relation);
@@ -87,7 +88,7 @@ export function booleanAlgebraVocabulary(carrier: BooleanAlgebra): Vocabulary<Bo
   const { zero, top } = carrier.description;
   return {
     complaint(atom) {
-      if (atom.kind === "label") return labelComplaint(atom.name, ALGEBRA, "x ≤ y");
+      if (atom.kind === "label") return labelComplaint(atom.name, ALGEBRA, "`x ≤ y`");
       if (atom.kind === "holds") return relationComplaint(atom, ALGEBRA, null);
       const wrong = firstComplaint(atom, algebraComplaint);
       if (wrong !== null) return wrong;
@@ -210,11 +211,6 @@ function operationComplaint({ name, args }: Operation): Complaint | null {
   );
 }
 
-function pathComplaint({ variable, path }: Element, where: string): Complaint | null {
-  if (path.length === 0) return null;
-  return complain(`the elements of ${where} have no components`, `\`${variable}\` itself`);
-}
-
 /** @param relation the relation that is there; null where elements are compared by order */
 function relationComplaint(
   { name, args }: CarrierAtom & { readonly kind: "holds" },
@@ -238,11 +234,6 @@ function relationComplaint(
   return complain(`\`${name}\` is said of two elements, and not of ${args.length}`, `\`${name}(x, y)\``);
 }
 
-function labelComplaint(name: "colour" | "copy" | "part", where: string, example: string): Complaint {
-  const plural = { colour: "colours", copy: "copies", part: "parts" }[name];
-  return complain(`${where} has no ${plural}`, `\`${example}\``);
-}
-
 function hasElement(term: ElementTerm): boolean {
   return term.kind === "element" || (term.kind === "apply" && term.args.some(hasElement));
 }
@@ -250,11 +241,6 @@ function hasElement(term: ElementTerm): boolean {
 function variableOf(term: ElementTerm): string {
   if (term.kind !== "element") throw new Error("a term that is no element, in a generic structure");
   return term.variable;
-}
-
-function asComparison(atom: CarrierAtom): Comparison {
-  if (atom.kind !== "compare") throw new Error(`${atom.name} in a Boolean algebra`);
-  return atom;
 }
 
 function ordersOf(x: ElementTerm, y: ElementTerm): CarrierAtom[] {

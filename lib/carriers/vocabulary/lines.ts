@@ -9,10 +9,24 @@ import type { CarrierAtom, ElementTerm } from "../../logic/structure-definition.
 import type { DenseConfiguration, DenseLine } from "../dense-line.ts";
 import type { HalfLine, HalfLineConfiguration } from "../half-line.ts";
 import type { IntegerConfiguration, IntegerLine } from "../integer-line.ts";
+import {
+  asComparison,
+  type Comparison,
+  compare,
+  complain,
+  type Element,
+  element,
+  firstComplaint,
+  labelComplaint,
+  number,
+  type Operation,
+  pairsOf,
+  pathComplaint,
+  unsettled,
+  writeComparison,
+  writeTerm,
+} from "./terms.ts";
 import type { Complaint, Vocabulary } from "./vocabulary.ts";
-
-type Comparison = CarrierAtom & { readonly kind: "compare" };
-type Element = ElementTerm & { readonly kind: "element" };
 
 /** An element and steps from it, or a number alone. */
 interface Sum {
@@ -57,7 +71,7 @@ export function integerLineVocabulary(carrier: IntegerLine): Vocabulary<IntegerC
       if (wrong !== null) return wrong;
       if (numberIn(atom.left) || numberIn(atom.right))
         return complain(
-          `the integer line looks the same from every element, so \`${writeAtom(atom)}\` says nothing there`,
+          `the integer line looks the same from every element, so \`${writeComparison(atom)}\` says nothing there`,
           "two elements and the steps between them, as in `y = x + 1`, or the half line, which begins with 0",
         );
       return offsetComplaint(atom, offset);
@@ -77,13 +91,13 @@ export function halfLineVocabulary(carrier: HalfLine): Vocabulary<HalfLineConfig
       if (wrong !== null) return wrong;
       if (sumOf(atom.left).element === null && sumOf(atom.right).element === null)
         return complain(
-          `\`${writeAtom(atom)}\` says nothing of an element`,
+          `\`${writeComparison(atom)}\` says nothing of an element`,
           "an element and a number, as in `x < 3`",
         );
       const needed = needsOf(atom).ends;
       if (needed > ends)
         return unsettled(
-          `this half line tells its first ${ends} numbers apart, and \`${writeAtom(atom)}\` needs the first ${needed}`,
+          `this half line tells its first ${ends} numbers apart, and \`${writeComparison(atom)}\` needs the first ${needed}`,
         );
       return offsetComplaint(atom, offset);
     },
@@ -92,10 +106,10 @@ export function halfLineVocabulary(carrier: HalfLine): Vocabulary<HalfLineConfig
       ...pairsOf(variables).flatMap(([x, y]) => [...orders(x, y), ...steps(x, y, offset)]),
       ...variables.flatMap((x) =>
         upTo(0, ends - 1).flatMap((value) => {
-          const number: ElementTerm = { kind: "number", value };
+          const end = number(value);
           // That x is greater than 0 is said by x = 0 already.
-          const greater = value === 0 ? [] : [compare(number, "<", element(x))];
-          return [compare(element(x), "=", number), ...greater];
+          const greater = value === 0 ? [] : [compare(end, "<", element(x))];
+          return [compare(element(x), "=", end), ...greater];
         }),
       ),
     ],
@@ -178,25 +192,12 @@ function elementOf(term: ElementTerm): Element {
   return term;
 }
 
-function asComparison(atom: CarrierAtom): Comparison {
-  if (atom.kind !== "compare") throw new Error(`${atom.name} on a line`);
-  return atom;
-}
-
 function isSameElement(first: Element, second: Element): boolean {
   return first.variable === second.variable && first.path.join() === second.path.join();
 }
 
 function numberIn(term: ElementTerm): boolean {
   return term.kind === "number" || (term.kind === "shift" && numberIn(term.of));
-}
-
-/** The complaint about the left side, or else about the right. */
-function firstComplaint(
-  { left, right }: Comparison,
-  complaint: (term: ElementTerm) => Complaint | null,
-): Complaint | null {
-  return complaint(left) ?? complaint(right);
 }
 
 function onDenseLine(term: ElementTerm): Complaint | null {
@@ -232,12 +233,7 @@ function onHalfLine(term: ElementTerm): Complaint | null {
   return complain(`the half line begins with 0, so it has no ${term.value}`, "a number from 0 on");
 }
 
-function pathComplaint({ variable, path }: Element, line: string): Complaint | null {
-  if (path.length === 0) return null;
-  return complain(`the elements of ${line} have no components`, `\`${variable}\` itself`);
-}
-
-function operationComplaint({ name }: ElementTerm & { readonly kind: "apply" }, line: string): Complaint {
+function operationComplaint({ name }: Operation, line: string): Complaint {
   const where =
     name === "parent" ? "a forest" : name === "meet" ? "a tree or a Boolean algebra" : "a Boolean algebra";
   return complain(`\`${name}\` says nothing on ${line}`, `${where}, where it is defined`);
@@ -246,8 +242,7 @@ function operationComplaint({ name }: ElementTerm & { readonly kind: "apply" }, 
 function wrongAtom(atom: Exclude<CarrierAtom, Comparison>, line: string): Complaint {
   if (atom.kind === "holds")
     return complain(`\`${atom.name}\` says nothing on ${line}`, "a comparison, as in `x < y`");
-  const plural = { colour: "colours", copy: "copies", part: "parts" }[atom.name];
-  return complain(`${line} has no ${plural}`, "a comparison, as in `x < y`");
+  return labelComplaint(atom.name, line, "a comparison, as in `x < y`");
 }
 
 function colourComplaint(value: number, colours: number): Complaint | null {
@@ -259,24 +254,8 @@ function offsetComplaint(atom: Comparison, offset: number): Complaint | null {
   const needed = needsOf(atom).offset;
   if (needed <= offset) return null;
   return unsettled(
-    `this line tells differences up to ${offset} apart, and \`${writeAtom(atom)}\` needs those up to ${needed}`,
+    `this line tells differences up to ${offset} apart, and \`${writeComparison(atom)}\` needs those up to ${needed}`,
   );
-}
-
-function complain(message: string, suggestion: string | null): Complaint {
-  return { message, suggestion };
-}
-
-function unsettled(message: string): Complaint {
-  return { message, suggestion: null, isUnsettled: true };
-}
-
-function element(variable: string): Element {
-  return { kind: "element", variable, path: [] };
-}
-
-function compare(left: ElementTerm, relation: Comparison["relation"], right: ElementTerm): CarrierAtom {
-  return { kind: "compare", relation, left, right };
 }
 
 function orders(x: string, y: string): CarrierAtom[] {
@@ -299,27 +278,6 @@ function steps(x: string, y: string, offset: number): CarrierAtom[] {
   ]);
 }
 
-function pairsOf(variables: readonly string[]): (readonly [string, string])[] {
-  return variables.flatMap((x, i) => variables.slice(i + 1).map((y) => [x, y] as const));
-}
-
 function upTo(first: number, last: number): number[] {
   return Array.from({ length: Math.max(0, last - first + 1) }, (_, index) => first + index);
-}
-
-function writeTerm(term: ElementTerm): string {
-  switch (term.kind) {
-    case "element":
-      return term.variable;
-    case "number":
-      return String(term.value);
-    case "shift":
-      return `${writeTerm(term.of)} ${term.by < 0 ? "-" : "+"} ${Math.abs(term.by)}`;
-    case "apply":
-      return `${term.name}(${term.args.map(writeTerm).join(", ")})`;
-  }
-}
-
-function writeAtom({ left, relation, right }: Comparison): string {
-  return `${writeTerm(left)} ${relation} ${writeTerm(right)}`;
 }

@@ -4,6 +4,7 @@ import type { CarrierAtom, ElementTerm } from "../../logic/structure-definition.
 import type { Complaint } from "./vocabulary.ts";
 
 export type Comparison = CarrierAtom & { readonly kind: "compare" };
+export type Label = CarrierAtom & { readonly kind: "label" };
 export type Element = ElementTerm & { readonly kind: "element" };
 export type Operation = ElementTerm & { readonly kind: "apply" };
 
@@ -25,6 +26,29 @@ export function compare(left: ElementTerm, relation: Comparison["relation"], rig
 
 export function complain(message: string, suggestion: string | null): Complaint {
   return { message, suggestion };
+}
+
+/** That an atom says something that the kinds of the carrier do not tell. */
+export function unsettled(message: string): Complaint {
+  return { message, suggestion: null, isUnsettled: true };
+}
+
+/** That elements of a carrier are no others' components. */
+export function pathComplaint({ variable, path }: Element, where: string): Complaint | null {
+  if (path.length === 0) return null;
+  return complain(`the elements of ${where} have no components`, `\`${variable}\` itself`);
+}
+
+/** That elements of a carrier have no colours, copies or parts. */
+export function labelComplaint(name: Label["name"], where: string, suggestion: string): Complaint {
+  const plural = { colour: "colours", copy: "copies", part: "parts" }[name];
+  return complain(`${where} has no ${plural}`, suggestion);
+}
+
+/** The atom, which is known to be a comparison. */
+export function asComparison(atom: CarrierAtom): Comparison {
+  if (atom.kind !== "compare") throw new Error(`${atom.name} is no comparison`);
+  return atom;
 }
 
 /** The first complaint about a term of the atom. */

@@ -11,15 +11,19 @@ import { type DenseTree, meetOfNodes, type TreeConfiguration } from "../dense-tr
 import type { Forest, ForestConfiguration } from "../forest.ts";
 import {
   apply,
+  asComparison,
   type Comparison,
   compare,
   complain,
   type Element,
   element,
   firstComplaint,
+  labelComplaint,
   number,
   type Operation,
   pairsOf,
+  pathComplaint,
+  unsettled,
   writeComparison,
   writeTerm,
 } from "./terms.ts";
@@ -152,13 +156,12 @@ function needsOf({ left, right }: Comparison): { readonly offset: number; readon
 
 function boundsComplaint(atom: Comparison, offset: number, ends: number): Complaint | null {
   const needed = needsOf(atom);
-  const unsettled = (told: string, needs: number): Complaint => ({
-    message: `this forest tells elements apart that are ${told}, and \`${writeComparison(atom)}\` needs ${stepsOf(needs)}`,
-    suggestion: null,
-    isUnsettled: true,
-  });
-  if (needed.offset > offset) return unsettled(`at most ${stepsOf(offset)} from each other`, needed.offset);
-  if (needed.ends > ends) return unsettled(`less than ${stepsOf(ends)} from the root`, needed.ends);
+  const tooFew = (told: string, needs: number): Complaint =>
+    unsettled(
+      `this forest tells elements apart that are ${told}, and \`${writeComparison(atom)}\` needs ${stepsOf(needs)}`,
+    );
+  if (needed.offset > offset) return tooFew(`at most ${stepsOf(offset)} from each other`, needed.offset);
+  if (needed.ends > ends) return tooFew(`less than ${stepsOf(ends)} from the root`, needed.ends);
   return null;
 }
 
@@ -257,15 +260,9 @@ function operationComplaint(
   );
 }
 
-function pathComplaint({ variable, path }: Element, where: string): Complaint | null {
-  if (path.length === 0) return null;
-  return complain(`the elements of ${where} have no components`, `\`${variable}\` itself`);
-}
-
 function wrongAtom(atom: Exclude<CarrierAtom, Comparison>, where: string, example: string): Complaint {
   if (atom.kind === "holds") return complain(`\`${atom.name}\` says nothing in ${where}`, `\`${example}\``);
-  const plural = { colour: "colours", copy: "copies", part: "parts" }[atom.name];
-  return complain(`${where} has no ${plural}`, `\`${example}\``);
+  return labelComplaint(atom.name, where, `\`${example}\``);
 }
 
 function nodeOf(
@@ -307,9 +304,4 @@ function climbOf(term: ElementTerm): Climb {
 
 function ancestor(of: ElementTerm, steps: number): ElementTerm {
   return steps === 0 ? of : apply("parent", ancestor(of, steps - 1));
-}
-
-function asComparison(atom: CarrierAtom): Comparison {
-  if (atom.kind !== "compare") throw new Error(`${atom.name} in a tree`);
-  return atom;
 }
