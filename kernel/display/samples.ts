@@ -258,7 +258,7 @@ function sampleTree(_carrier: DenseTree): Sample {
     configuration: { nodes: [0, 1, 2, 3, 4], parents: [-1, 0, 0, 1, 1] },
     elements: named(["a", "b", "c", "d", "e"]),
     isRow: false,
-    legend: ["a is below b and c, b below d and e"],
+    legend: ["a < b, a < c, b < d and b < e in the tree"],
   };
 }
 
