@@ -15,6 +15,7 @@ import type { CarrierAtom, ElementTerm, ForestDescription } from "../lib/logic/s
 import {
   ballAround,
   denseTree,
+  forest,
   isAtOrBelow,
   meet,
   orderOfMeets,
@@ -33,14 +34,6 @@ const [x, y] = [element("x"), element("y")];
 const place = (variable: string) => VARIABLES.indexOf(variable);
 const parents = (of: ElementTerm, steps: number): ElementTerm =>
   steps === 0 ? of : apply("parent", parents(of, steps - 1));
-
-const forest = (branching: number, rooted: boolean, offset: number, ends = 0): ForestDescription => ({
-  kind: "forest",
-  branching,
-  rooted,
-  offset,
-  ends,
-});
 
 describe("atoms", () => {
   const dense = new DenseTree();

@@ -17,12 +17,14 @@ import {
   atomicOfForest,
   denseTree,
   depthOf,
+  forest,
   isTrueOfTree,
   listedTypes,
   orderOfMeets,
   orderOfNodes,
   regularTree,
   Types,
+  told,
   trueTypes,
 } from "./support/carriers-trees.ts";
 import { sentences } from "./support/random-formulas.ts";
@@ -32,16 +34,6 @@ console.log(`seed ${seed}`);
 const options = (numRuns: number) => ({ seed, numRuns, verbose: 1 as const });
 
 const R: RelationSymbol = { name: "R", places: 2, infix: false };
-
-const forest = (branching: number, rooted: boolean, offset: number, ends = 0): ForestDescription => ({
-  kind: "forest",
-  branching,
-  rooted,
-  offset,
-  ends,
-});
-const told = ({ branching, rooted, offset, ends }: ForestDescription) =>
-  `${branching} children, ${rooted ? `a root, ends ${ends}` : "no root"}, offset ${offset}`;
 
 /** Forest, depth, and how much wider neighbourhoods are than they need be. */
 const compared: readonly (readonly [ForestDescription, number, number])[] = [

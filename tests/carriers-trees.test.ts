@@ -21,6 +21,7 @@ import {
   atomicOfForest,
   denseTree,
   depthOf,
+  forest,
   isTrueOfTree,
   listedTypes,
   orderOfMeets,
@@ -28,6 +29,7 @@ import {
   regularTree,
   type TrueTree,
   Types,
+  told,
   trueTypes,
 } from "./support/carriers-trees.ts";
 import { infiniteOnly, readSentences } from "./support/corpora.ts";
@@ -39,14 +41,6 @@ const options = (numRuns: number) => ({ seed, numRuns, verbose: 1 as const });
 
 const R: RelationSymbol = { name: "R", places: 2, infix: false };
 const B: RelationSymbol = { name: "B", places: 3, infix: false };
-
-const forest = (branching: number, rooted: boolean, offset: number, ends = 0): ForestDescription => ({
-  kind: "forest",
-  branching,
-  rooted,
-  offset,
-  ends,
-});
 
 /** Forests small enough to walk over the neighbourhoods of true elements. */
 const forests: readonly ForestDescription[] = [
@@ -63,8 +57,6 @@ const forests: readonly ForestDescription[] = [
   forest(3, true, 0, 2),
   forest(3, true, 1, 1),
 ];
-const told = (description: ForestDescription) =>
-  `${description.rooted ? "rooted, " : ""}${description.branching} children, offset ${description.offset}, ends ${description.ends}`;
 
 /** The configurations of so many elements that are listed when a formula of this depth is walked through. */
 function configurations<Configuration>(

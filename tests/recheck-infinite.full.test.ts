@@ -18,6 +18,7 @@ import { formulaOf } from "../lib/inquiry/finiteness/reason.ts";
 import { unwatchedWork } from "../lib/inquiry/work.ts";
 import { obligationsOf } from "../lib/logic/records/finiteness.ts";
 import { readTheory } from "./support/corpora.ts";
+import { changeAt, leavesOf } from "./support/leaves.ts";
 
 const launcher = join(resolve(import.meta.dirname, ".."), "kernel", "launch.mjs");
 let folder: string;
@@ -271,26 +272,6 @@ function set(value: object, path: string, part: unknown): void {
   const holder = keys.reduce<unknown>((inner, key) => (inner as Record<string, unknown>)[key], value);
   if (part === undefined) delete (holder as Record<string, unknown>)[last];
   else (holder as Record<string, unknown>)[last] = part;
-}
-
-function leavesOf(value: unknown, path: readonly (string | number)[] = []): (string | number)[][] {
-  if (typeof value !== "object" || value === null) return [[...path]];
-  return Object.entries(value).flatMap(([key, part]) =>
-    leavesOf(part, [...path, Array.isArray(value) ? Number(key) : key]),
-  );
-}
-
-function changeAt(value: unknown, path: readonly (string | number)[]): void {
-  const holder = path.slice(0, -1).reduce((part, key) => (part as never)[key], value) as Record<
-    string,
-    unknown
-  >;
-  const key = path.at(-1)!;
-  const old = holder[key];
-  if (typeof old === "number") holder[key] = old + 1;
-  else if (typeof old === "boolean") holder[key] = !old;
-  else if (old === null) holder[key] = 0;
-  else holder[key] = `${String(old)}x`;
 }
 
 describe("strange evidence that the checker accepts", () => {

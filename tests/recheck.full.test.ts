@@ -8,6 +8,7 @@ import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { type Finding, recheckNotebook } from "../kernel/commands/recheck-notebook.ts";
 import { prepareDrawing } from "../kernel/display/drawing.ts";
 import { readNotebook } from "../kernel/notebook/read.ts";
+import { changeAt, leavesOf } from "./support/leaves.ts";
 
 const root = resolve(import.meta.dirname, "..");
 const launcher = join(root, "kernel", "launch.mjs");
@@ -91,27 +92,6 @@ function resultOf(notebook: Cells, cell: number, output: number): Record<string,
 
 function failuresIn(findings: readonly Finding[]): readonly Finding[] {
   return findings.filter(({ outcome }) => outcome === "does not hold" || outcome === "missing");
-}
-
-/** Everything in a value that can be changed by itself: the paths to its numbers, texts, booleans and nulls. */
-function leavesOf(value: unknown, path: readonly (string | number)[] = []): (string | number)[][] {
-  if (typeof value !== "object" || value === null) return [[...path]];
-  return Object.entries(value).flatMap(([key, part]) =>
-    leavesOf(part, [...path, Array.isArray(value) ? Number(key) : key]),
-  );
-}
-
-function changeAt(value: unknown, path: readonly (string | number)[]): void {
-  const holder = path.slice(0, -1).reduce((part, key) => (part as never)[key], value) as Record<
-    string,
-    unknown
-  >;
-  const key = path.at(-1)!;
-  const old = holder[key];
-  if (typeof old === "number") holder[key] = old + 1;
-  else if (typeof old === "boolean") holder[key] = !old;
-  else if (old === null) holder[key] = 0;
-  else holder[key] = `${String(old)}x`;
 }
 
 describe("a notebook as it was run", () => {

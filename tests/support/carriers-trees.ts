@@ -5,6 +5,7 @@
 import type { Carrier } from "../../lib/carriers/carrier.ts";
 import type { Forest, ForestConfiguration } from "../../lib/carriers/forest.ts";
 import { type Formula, freeVariables, type RelationSymbol } from "../../lib/logic/formula.ts";
+import type { ForestDescription } from "../../lib/logic/structure-definition.ts";
 
 /** Elements of a tree; what a table may tell of them; and, for a tuple, elements that stand for all others. */
 export interface TrueTree<Element> {
@@ -356,4 +357,13 @@ export function depthOf(formula: Formula): number {
     default:
       return 0;
   }
+}
+
+export function forest(branching: number, rooted: boolean, offset: number, ends = 0): ForestDescription {
+  return { kind: "forest", branching, rooted, offset, ends };
+}
+
+/** What a forest is called in the names of tests. */
+export function told({ branching, rooted, offset, ends }: ForestDescription): string {
+  return `${branching} children, ${rooted ? `a root, ends ${ends}` : "no root"}, offset ${offset}`;
 }
